@@ -1,0 +1,19 @@
+//! The arm: joints, placement, masses, limits. Built once from checked data, never changed afterwards.
+
+mod body;
+mod build;
+mod chain;
+mod flange;
+mod joint;
+mod joints;
+mod placement;
+mod task;
+
+pub use body::{Body, Grounds};
+pub use build::{Arm, ArmData, CharacteristicLength};
+pub use chain::Chain;
+pub use flange::{Flange, WristLimit};
+pub use joint::{Joint, JointKind, Range, TorqueRating};
+pub use joints::{Joints, MAX_JOINTS};
+pub use placement::{Convention, Placement};
+pub use task::{Task, TaskRow};

@@ -1,0 +1,10 @@
+//! Elbowroom reviews a taught robot-arm program before its first run: what happens between the taught points, at speed, with the
+//! real tool and part, why something fails, and which change makes it right.
+//!
+//! The modules stand in layers; each may name only those above it in this list:
+//! [`units`], [`geometry`], [`arm`], [`program`].
+
+pub mod arm;
+pub mod geometry;
+pub mod program;
+pub mod units;

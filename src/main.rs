@@ -1,0 +1,3 @@
+//! The program that people start.
+
+fn main() {}

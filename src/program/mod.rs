@@ -1,0 +1,18 @@
+//! The program: what was taught. A [`Recipe`] is plain data, SI inside; [`Recipe::faults`] tells what in it can't be.
+
+mod acceptance;
+mod arrive;
+mod carried;
+mod faults;
+mod frame;
+mod recipe;
+mod tool;
+mod waypoint;
+
+pub use acceptance::Acceptance;
+pub use arrive::{Arrive, PathSpeed};
+pub use carried::Carried;
+pub use frame::{BASE, Frame, WORLD, frame_in_base};
+pub use recipe::{Recipe, Usual};
+pub use tool::{Load, Tool};
+pub use waypoint::{Given, Push, PushAxes, Shown, Taught, Then, Waypoint};

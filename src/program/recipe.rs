@@ -1,0 +1,97 @@
+use crate::geometry::Pose;
+use crate::units::{Acceleration, Share, Speed, TurnAcceleration, TurnRate};
+
+use super::{Acceptance, Frame, Load, Then, Tool, Waypoint};
+
+/// What segments use where they say nothing themselves.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Usual {
+    /// Speed of the TCP on lines and arcs.
+    pub speed: Option<Speed>,
+    /// Acceleration of the TCP on lines and arcs.
+    pub accel: Acceleration,
+    /// Turning rate of the tool on lines and arcs.
+    pub turn_speed: TurnRate,
+    /// Turning acceleration of the tool on lines and arcs.
+    pub turn_accel: TurnAcceleration,
+    /// Share of the joints' rates on joint moves.
+    pub share: Option<Share>,
+    /// Share of the joints' accelerations on joint moves.
+    pub accel_share: Share,
+}
+
+impl Default for Usual {
+    fn default() -> Self {
+        Self {
+            speed: None,
+            accel: Acceleration::mm_per_s2(1000.0),
+            turn_speed: TurnRate::deg_per_s(90.0),
+            turn_accel: TurnAcceleration::deg_per_s2(360.0),
+            share: None,
+            accel_share: Share::WHOLE,
+        }
+    }
+}
+
+/// A recipe is everything a person opens to be judged: which arm, how it is mounted, tools, loads, frames, waypoints, criteria.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Recipe {
+    /// Its name.
+    pub name: String,
+    /// The arm file, as the recipe writes it (a path relative to the recipe).
+    pub arm: String,
+    /// Where the base stands in the world; gravity is world -z.
+    pub mount: Pose,
+    /// What it is judged by.
+    pub acceptance: Acceptance,
+    /// What segments use where they say nothing.
+    pub usual: Usual,
+    /// Tools; the first is on the flange at the first waypoint.
+    pub tools: Vec<Tool>,
+    /// Loads.
+    pub loads: Vec<Load>,
+    /// Frames.
+    pub frames: Vec<Frame>,
+    /// The load in the tool at the first waypoint.
+    pub carrying: Option<String>,
+    /// Waypoints in order.
+    pub waypoints: Vec<Waypoint>,
+}
+
+impl Recipe {
+    /// The tool on the flange on the segment that arrives at waypoint `index` (and at the first waypoint for 0); `None` for a bare
+    /// flange.
+    pub fn tool_at(&self, index: usize) -> Option<&Tool> {
+        self.waypoints[..=index]
+            .iter()
+            .rev()
+            .find_map(|waypoint| waypoint.tool.as_deref())
+            .map_or_else(|| self.tools.first(), |name| self.tools.iter().find(|tool| tool.name == name))
+    }
+
+    /// The load in the tool while the segment that arrives at waypoint `index` runs; what is taken there comes after.
+    pub fn load_before(&self, index: usize) -> Option<&Load> {
+        let name = self.waypoints[..index].iter().rev().find_map(|waypoint| waypoint.then.as_ref()).map_or(
+            self.carrying.as_ref(),
+            |then| match then {
+                Then::Take(name) => Some(name),
+                Then::Release => None,
+            },
+        )?;
+        self.loads.iter().find(|load| &load.name == name)
+    }
+
+    /// The load in the tool when waypoint `index` is left.
+    pub fn load_after(&self, index: usize) -> Option<&Load> {
+        match &self.waypoints[index].then {
+            Some(Then::Take(name)) => self.loads.iter().find(|load| &load.name == name),
+            Some(Then::Release) => None,
+            None => self.load_before(index),
+        }
+    }
+
+    /// The waypoint of that name, counted from 0.
+    pub fn waypoint_named(&self, name: &str) -> Option<usize> {
+        self.waypoints.iter().position(|waypoint| waypoint.name == name)
+    }
+}

@@ -1,0 +1,22 @@
+use crate::arm::Body;
+use crate::geometry::Pose;
+
+/// A tool is what is bolted to the flange.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Tool {
+    /// Its name.
+    pub name: String,
+    /// Where its TCP stands on the flange.
+    pub tcp: Pose,
+    /// Its mass, centre and inertia in flange axes; `None` where the recipe gives no mass.
+    pub body: Option<Body>,
+}
+
+/// A load is what the tool carries (ISO: payload), such as the part.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Load {
+    /// Its name.
+    pub name: String,
+    /// Its mass, centre and inertia in the TCP system of the tool that carries it.
+    pub body: Body,
+}

@@ -1,0 +1,19 @@
+//! Quantities as types, and the one place where numbers become text.
+//!
+//! Files and screens speak mm, degrees, kg, N, N·m, s; everything inside is SI and radians. A [`Measure`] carries a number
+//! whose kind is known only at run time (a joint may turn or slide); the named types carry one whose kind is known.
+
+mod fault;
+mod measure;
+mod named;
+mod near;
+mod room;
+
+pub use fault::{Fault, Field, Step};
+pub use measure::{Dimension, Measure};
+pub use named::{Acceleration, Angle, Force, Length, Mass, Seconds, Share, Speed, Torque, TurnAcceleration, TurnRate};
+pub use near::nearest_word;
+pub use room::Room;
+
+/// Standard gravity, m/s². Exact by definition (3rd CGPM, 1901).
+pub const STANDARD_GRAVITY: f64 = 9.806_65;
