@@ -5,6 +5,9 @@
 //! [`units`], [`geometry`], [`arm`], [`program`].
 
 pub mod arm;
+pub mod dynamics;
 pub mod geometry;
+pub mod kinematics;
+pub mod motion;
 pub mod program;
 pub mod units;

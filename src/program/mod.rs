@@ -12,6 +12,7 @@ mod waypoint;
 pub use acceptance::Acceptance;
 pub use arrive::{Arrive, PathSpeed};
 pub use carried::Carried;
+pub(crate) use faults::arc_fault;
 pub use frame::{BASE, Frame, WORLD, frame_in_base};
 pub use recipe::{Recipe, Usual};
 pub use tool::{Load, Tool};

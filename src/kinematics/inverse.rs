@@ -1,0 +1,248 @@
+use crate::arm::{Arm, Joint, JointKind, Joints, MAX_JOINTS, Task};
+use crate::geometry::Pose;
+
+use super::error::{pose_error, within};
+use super::{Jacobian, Lu, Posture, smallest_singular_value};
+
+/// How exactly a pose must be reached, m. Far below what any arm repeats to.
+pub(crate) const REACHED_M: f64 = 1e-10;
+/// How exactly an orientation must be reached, rad.
+pub(crate) const REACHED_RAD: f64 = 1e-10;
+/// Two sets of joint values count as one branch when no joint differs by more, rad or m.
+const SAME_BRANCH: f64 = 1e-5;
+/// Postures tried at a waypoint.
+const SEEDS: usize = 96;
+/// Steps of Levenberg-Marquardt for one seed.
+const STEPS: usize = 60;
+/// Smallest singular value below which the place where the search stopped counts as a limit of the arm's reach.
+const LIMIT_SIGMA: f64 = 2e-3;
+
+/// What came of looking for joint values that reach a pose.
+#[derive(Debug, Clone, PartialEq)]
+pub enum Reached {
+    /// The branch nearest to what was asked.
+    Yes {
+        /// Joint values.
+        q: Joints,
+        /// How many branches were found in all.
+        branches: usize,
+    },
+    /// None was found.
+    No {
+        /// The posture that came nearest.
+        nearest: Joints,
+        /// What is missing there: metres along and rad about the base axes.
+        gap: [f64; 6],
+        /// Smallest singular value there. Near 0 the arm is at the limit of its reach; otherwise the search just failed.
+        sigma: f64,
+    },
+}
+
+impl Reached {
+    /// Whether the search ended at a limit of the arm, so that "out of reach" is more than a failed search.
+    pub fn at_limit(sigma: f64) -> bool {
+        sigma < LIMIT_SIGMA
+    }
+}
+
+/// All joint values found for one pose, each once, turned into the joints' ranges where a whole turn does that.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Branches {
+    /// The branches in the order found.
+    pub found: Vec<Joints>,
+    /// The nearest miss: posture, what is missing, and the smallest singular value there.
+    pub miss: Option<(Joints, [f64; 6], f64)>,
+}
+
+/// Joint values that put the TCP (`tcp` on the flange) at `target` (base), of the branch nearest to `near`. Branches within the
+/// joints' ranges go before those outside.
+pub fn reach(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Reached {
+    let branches = every_branch(arm, tcp, target, near);
+    let in_range = |q: &Joints| q.iter().zip(arm.joints()).all(|(v, joint)| joint.range.to_end(*v) >= 0.0);
+    let far = |q: &Joints| {
+        q.iter().zip(near.iter()).zip(arm.joints()).map(|((a, b), joint)| ((a - b) / joint.rate).powi(2)).sum::<f64>()
+    };
+    let best = branches.found.iter().min_by(|a, b| (!in_range(a), far(a)).partial_cmp(&(!in_range(b), far(b))).expect("finite"));
+    match (best, branches.miss) {
+        (Some(q), _) => Reached::Yes { q: *q, branches: branches.found.len() },
+        (None, Some((nearest, gap, sigma))) => Reached::No { nearest, gap, sigma },
+        (None, None) => Reached::No { nearest: *near, gap: [f64::INFINITY; 6], sigma: f64::NAN },
+    }
+}
+
+/// Every branch that Levenberg-Marquardt finds from `near` and from postures spread evenly over the ranges (a fixed sequence, so
+/// the same input yields the same output).
+pub fn every_branch(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Branches {
+    branches_from(arm, tcp, target, near, SEEDS)
+}
+
+fn branches_from(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints, seeds: usize) -> Branches {
+    let mut branches = Branches { found: Vec::new(), miss: None };
+    let wrist = super::spherical_wrist(arm.chain()).is_some();
+    let keep = |branches: &mut Branches, q: Joints| {
+        let mut q = q;
+        for ((value, joint), near) in q.iter_mut().zip(arm.joints()).zip(near.iter()) {
+            *value = nearest_turn(joint, *value, *near);
+        }
+        let known = branches.found.iter().any(|other| same_branch(arm, other, &q));
+        if !known {
+            branches.found.push(q);
+        }
+        !known
+    };
+    for index in 0..=seeds {
+        let seed = if index == 0 { *near } else { spread(arm.joints(), index) };
+        match descend(arm, tcp, target, seed) {
+            Ok(q) => {
+                if keep(&mut branches, q) && wrist {
+                    // The same pose with the wrist turned over; polished, since the formula is exact only for an exact wrist.
+                    let mut over = q;
+                    over[3] += std::f64::consts::PI;
+                    over[4] = flipped(arm, &q);
+                    over[5] += std::f64::consts::PI;
+                    if let Ok(over) = descend(arm, tcp, target, over) {
+                        keep(&mut branches, over);
+                    }
+                }
+                // A redundant arm has endless branches: the nearest few are enough.
+                if arm.is_redundant() && branches.found.len() >= 8 {
+                    return branches;
+                }
+            }
+            Err(miss) => {
+                let size = |gap: &[f64; 6]| gap.iter().map(|g| g * g).sum::<f64>();
+                if branches.miss.as_ref().is_none_or(|(_, gap, _)| size(&miss.1) < size(gap)) {
+                    branches.miss = Some(miss);
+                }
+            }
+        }
+    }
+    branches
+}
+
+/// The value of the middle wrist joint that, with both others half a turn on, yields the same orientation: mirrored at the value
+/// where the outer axes are in line.
+fn flipped(arm: &Arm, q: &Joints) -> f64 {
+    let posture = Posture::at(arm.chain(), q);
+    let (a, b, c) = (posture.axis(3), posture.axis(4), posture.axis(5));
+    // Angle from the first to the last wrist axis about the middle one, as it stands.
+    let bend = b.dot(&a.cross(&c)).atan2(a.dot(&c));
+    q[4] - 2.0 * bend
+}
+
+fn same_branch(arm: &Arm, a: &Joints, b: &Joints) -> bool {
+    arm.joints().iter().enumerate().all(|(j, joint)| {
+        let gap = a[j] - b[j];
+        let gap = if joint.kind == JointKind::Revolute { wrapped(gap) } else { gap };
+        gap.abs() < SAME_BRANCH
+    })
+}
+
+/// An angle brought to -pi to pi.
+fn wrapped(angle: f64) -> f64 {
+    angle - (angle / std::f64::consts::TAU).round() * std::f64::consts::TAU
+}
+
+/// The joint value that is `value` but for whole turns, within the joint's range if one is, and nearest to `near`.
+pub fn nearest_turn(joint: &Joint, value: f64, near: f64) -> f64 {
+    if joint.kind == JointKind::Prismatic {
+        return value;
+    }
+    let turn = std::f64::consts::TAU;
+    let nearest = near + wrapped(value - near);
+    (-3..=3)
+        .map(|k| nearest + f64::from(k) * turn)
+        .min_by(|a, b| {
+            let rank = |v: f64| ((-joint.range.to_end(v)).max(0.0), (v - near).abs());
+            rank(*a).partial_cmp(&rank(*b)).expect("finite")
+        })
+        .expect("not empty")
+}
+
+/// Seed number `index` (from 1): a point of the R-sequence (additive recurrence with the generalised golden ratio, which covers
+/// a box evenly for every count), in each joint's range, a turn at most.
+fn spread(joints: &[Joint], index: usize) -> Joints {
+    let n = joints.len();
+    let mut golden = 2.0f64;
+    for _ in 0..40 {
+        golden = (1.0 + golden).powf(1.0 / (n as f64 + 1.0));
+    }
+    Joints::from_fn(n, |j| {
+        let share = (0.5 + index as f64 / golden.powi(j as i32 + 1)).fract();
+        let range = joints[j].range;
+        let half = if joints[j].kind == JointKind::Revolute { range.half().min(std::f64::consts::PI) } else { range.half() };
+        range.middle() + (2.0 * share - 1.0) * half
+    })
+}
+
+/// Levenberg-Marquardt from one seed: the joint values reached, or where it got stuck.
+fn descend(arm: &Arm, tcp: &Pose, target: &Pose, seed: Joints) -> Result<Joints, (Joints, [f64; 6], f64)> {
+    let (chain, task, n) = (arm.chain(), arm.task(), arm.len());
+    let length = arm.characteristic_length().m;
+    let cost = |gap: &[f64; 6]| task.rows().iter().map(|&row| weigh(row, length, gap[row]).powi(2)).sum::<f64>();
+    let mut q = seed;
+    let mut posture = Posture::at(chain, &q);
+    let mut gap = pose_error(&posture.tcp(tcp), target);
+    let mut damping = 1e-3;
+    for _ in 0..STEPS {
+        if within(&gap, task, REACHED_M, REACHED_RAD) {
+            return Ok(q);
+        }
+        let jacobian = Jacobian::at(chain, &posture, &posture.tcp(tcp).at);
+        let (normal, pull) = normal_equations(&jacobian, task, length, &gap);
+        let before = cost(&gap);
+        let mut moved = false;
+        for _ in 0..8 {
+            let mut damped = normal;
+            for (k, row) in damped.iter_mut().enumerate().take(n) {
+                row[k] += damping * (row[k] + 1e-6);
+            }
+            let step = Lu::of(damped, n).solve(&pull);
+            let mut next = q;
+            next.iter_mut().zip(&step).for_each(|(v, s)| *v += s.clamp(-1.0, 1.0));
+            let there = Posture::at(chain, &next);
+            let missing = pose_error(&there.tcp(tcp), target);
+            if cost(&missing) < before {
+                (q, posture, gap) = (next, there, missing);
+                damping = (damping * 0.1).max(1e-14);
+                moved = true;
+                break;
+            }
+            damping = (damping * 8.0).min(1e6);
+        }
+        if !moved {
+            break;
+        }
+    }
+    if within(&gap, task, REACHED_M, REACHED_RAD) {
+        return Ok(q);
+    }
+    let jacobian = Jacobian::at(chain, &posture, &posture.tcp(tcp).at);
+    Err((q, gap, smallest_singular_value(&jacobian.scaled_rows(task, length))))
+}
+
+fn weigh(row: usize, length: f64, value: f64) -> f64 {
+    if row < 3 { value / length } else { value }
+}
+
+/// `JᵀJ` and `Jᵀe` of the task's rows, translations divided by `length`.
+fn normal_equations(
+    jacobian: &Jacobian,
+    task: &Task,
+    length: f64,
+    gap: &[f64; 6],
+) -> ([[f64; MAX_JOINTS]; MAX_JOINTS], [f64; MAX_JOINTS]) {
+    let scaled = jacobian.scaled_rows(task, length);
+    let mut normal = [[0.0; MAX_JOINTS]; MAX_JOINTS];
+    let mut pull = [0.0; MAX_JOINTS];
+    for i in 0..scaled.columns {
+        for j in 0..=i {
+            let sum: f64 = scaled.entries[..scaled.rows].iter().map(|row| row[i] * row[j]).sum();
+            normal[i][j] = sum;
+            normal[j][i] = sum;
+        }
+        pull[i] =
+            scaled.entries[..scaled.rows].iter().zip(task.rows()).map(|(row, &axis)| row[i] * weigh(axis, length, gap[axis])).sum();
+    }
+    (normal, pull)
+}

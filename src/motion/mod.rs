@@ -1,0 +1,18 @@
+//! How the arm moves: the path of each segment, its speed law, the joint values along it, and the timeline of the cycle.
+
+mod follow;
+mod instant;
+mod law;
+mod path;
+mod plan;
+mod resolve;
+mod segment;
+mod track;
+
+pub use follow::Follower;
+pub use instant::Instant;
+pub use law::{Law, Piece, Side};
+pub use path::{Path, Target};
+pub use plan::{Cursor, Plan};
+pub use segment::{NoPath, Push, Segment};
+pub use track::{Lost, Node, Track};

@@ -1,0 +1,131 @@
+use crate::arm::{Arm, Joints, MAX_JOINTS};
+use crate::geometry::Pose;
+use crate::kinematics::{Jacobian, Posture, null_rows, smallest_singular_value};
+
+use super::{Follower, Path};
+
+/// A node is one place of a line or arc whose joint values are known; between nodes Newton finds them.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Node {
+    /// Fraction of the path.
+    pub u: f64,
+    /// Joint values.
+    pub q: Joints,
+    /// Their first derivative by u.
+    pub slope: Joints,
+    /// Their second derivative by u.
+    pub bend: Joints,
+    /// For a redundant arm the rows that make its motion definite in the cell from this node to the next.
+    null: Vec<[f64; MAX_JOINTS]>,
+}
+
+impl Node {
+    pub(super) fn null_rows(&self) -> &[[f64; MAX_JOINTS]] {
+        &self.null
+    }
+}
+
+/// A track is the joint path along a line or arc, as far as it could be followed. Empty for a joint move.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Track {
+    /// Nodes in order of u.
+    pub nodes: Vec<Node>,
+    /// Where it was lost, if it was.
+    pub lost: Option<Lost>,
+}
+
+/// Where and why a path could not be followed further.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Lost {
+    /// Fraction of the path up to which it was followed.
+    pub u: f64,
+    /// Joint values there.
+    pub q: Joints,
+    /// Smallest singular value there.
+    pub sigma: f64,
+}
+
+/// First step along a path, as a fraction of it.
+const FIRST_STEP: f64 = 1.0 / 8.0;
+/// The longest step.
+const LONGEST: f64 = 1.0 / 4.0;
+/// The shortest step: a thousandth of a millimetre on a path of ten metres.
+const SHORTEST: f64 = 1e-7;
+/// A predicted posture may be off by this much, rad or m, so that Newton stays on its branch.
+const MISS: f64 = 0.03;
+/// ... and by this share of the step made, so that a branch that turns sharply is taken in small steps.
+const MISS_SHARE: f64 = 0.2;
+/// Cells of a redundant arm are at least this fine, since the path depends on them: a 32nd of it.
+const REDUNDANT_CELL: f64 = 1.0 / 32.0;
+/// Nodes of one track, at most.
+const MOST_NODES: usize = 4000;
+
+impl Track {
+    /// Follows a line or arc from joint values `start`, which must stand at its beginning.
+    pub fn along(arm: &Arm, path: &Path, tcp: &Pose, start: &Joints) -> Self {
+        let mut track = Self::default();
+        let Some(mut node) = first_node(arm, path, tcp, start) else {
+            track.lost = Some(lost(arm, tcp, 0.0, start));
+            return track;
+        };
+        let mut step = if arm.is_redundant() { REDUNDANT_CELL } else { FIRST_STEP };
+        let longest = if arm.is_redundant() { REDUNDANT_CELL } else { LONGEST };
+        while node.u < 1.0 && track.nodes.len() < MOST_NODES {
+            let u = if node.u + step > 1.0 - SHORTEST { 1.0 } else { node.u + step };
+            match next_node(arm, path, tcp, &node, u) {
+                Some((next, miss)) => {
+                    track.nodes.push(std::mem::replace(&mut node, next));
+                    if miss < 0.25 {
+                        step = (step * 2.0).min(longest);
+                    }
+                }
+                None if step > SHORTEST => step *= 0.5,
+                None => break,
+            }
+        }
+        if node.u < 1.0 {
+            track.lost = Some(lost(arm, tcp, node.u, &node.q));
+        }
+        track.nodes.push(node);
+        track
+    }
+}
+
+fn lost(arm: &Arm, tcp: &Pose, u: f64, q: &Joints) -> Lost {
+    let posture = Posture::at(arm.chain(), q);
+    let jacobian = Jacobian::at(arm.chain(), &posture, &posture.tcp(tcp).at);
+    Lost { u, q: *q, sigma: smallest_singular_value(&jacobian.scaled_rows(arm.task(), arm.characteristic_length().m)) }
+}
+
+fn first_node(arm: &Arm, path: &Path, tcp: &Pose, start: &Joints) -> Option<Node> {
+    let zeros = Joints::zeros(start.len());
+    let bare = Node { u: 0.0, q: *start, slope: zeros, bend: zeros, null: rows(arm, tcp, start) };
+    node_at(arm, path, tcp, &bare, 0.0, *start).map(|(node, _)| node)
+}
+
+/// The node at `u` and how much of the allowed miss the prediction used; `None` if the step was too bold.
+fn next_node(arm: &Arm, path: &Path, tcp: &Pose, node: &Node, u: f64) -> Option<(Node, f64)> {
+    let step = u - node.u;
+    let guess = Joints::from_fn(node.q.len(), |j| node.q[j] + step * (node.slope[j] + 0.5 * step * node.bend[j]));
+    let moved = guess.zip(&node.q, |a, b| a - b).largest();
+    let allowed = MISS.min(MISS_SHARE * moved + 1e-6);
+    let (next, miss) = node_at(arm, path, tcp, node, u, guess)?;
+    (miss <= allowed).then_some((next, miss / allowed))
+}
+
+fn node_at(arm: &Arm, path: &Path, tcp: &Pose, cell: &Node, u: f64, guess: Joints) -> Option<(Node, f64)> {
+    let target = path.target(u)?;
+    let (instant, miss) = Follower::on(arm, path, tcp, &[]).settle(&target, u, cell, guess)?;
+    let null = rows(arm, tcp, &instant.q);
+    Some((Node { u, q: instant.q, slope: instant.slope, bend: instant.bend, null }, miss))
+}
+
+fn rows(arm: &Arm, tcp: &Pose, q: &Joints) -> Vec<[f64; MAX_JOINTS]> {
+    if !arm.is_redundant() {
+        return Vec::new();
+    }
+    let posture = Posture::at(arm.chain(), q);
+    let jacobian = Jacobian::at(arm.chain(), &posture, &posture.tcp(tcp).at);
+    let count = arm.len() - arm.task().rows().len();
+    null_rows(&jacobian, arm.task(), arm.joints())[..count].to_vec()
+}
