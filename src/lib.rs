@@ -5,9 +5,11 @@
 //! [`units`], [`geometry`], [`arm`], [`program`].
 
 pub mod arm;
+pub mod checks;
 pub mod dynamics;
 pub mod geometry;
 pub mod kinematics;
 pub mod motion;
 pub mod program;
+pub mod review;
 pub mod units;

@@ -30,11 +30,8 @@ pub fn holding_torque(chain: &Chain, posture: &Posture, carried: &Carried, gravi
         mass += chain.mass[j];
         moment += posture.frame(j).point(&chain.com[j]) * chain.mass[j];
         let z = posture.axis(j);
-        torque[j] = if chain.turns[j] {
-            -z.dot(&(moment - posture.origin(j) * mass).cross(gravity))
-        } else {
-            -z.dot(gravity) * mass
-        };
+        torque[j] =
+            if chain.turns[j] { -z.dot(&(moment - posture.origin(j) * mass).cross(gravity)) } else { -z.dot(gravity) * mass };
     }
     if let Some(push) = push {
         let tcp = flange.point(&carried.tcp.at);

@@ -20,8 +20,7 @@ pub struct SpeedLeft {
 
 /// Speeds left, from the inverse of the stacked Jacobian (rows: joints; columns: the task's rows in order).
 pub fn speed_left(inverse: &[[f64; MAX_JOINTS]; MAX_JOINTS], task: &Task, joints: &[Joint]) -> SpeedLeft {
-    let mut left =
-        SpeedLeft { moving: f64::INFINITY, direction: V3::x(), joint: 0, turning: f64::INFINITY, axis: V3::x() };
+    let mut left = SpeedLeft { moving: f64::INFINITY, direction: V3::x(), joint: 0, turning: f64::INFINITY, axis: V3::x() };
     for (j, (row, joint)) in inverse.iter().zip(joints).enumerate() {
         let (mut along, mut about) = (V3::zeros(), V3::zeros());
         for (slot, &axis) in task.rows().iter().enumerate() {

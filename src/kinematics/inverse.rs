@@ -59,9 +59,8 @@ pub struct Branches {
 pub fn reach(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Reached {
     let branches = every_branch(arm, tcp, target, near);
     let in_range = |q: &Joints| q.iter().zip(arm.joints()).all(|(v, joint)| joint.range.to_end(*v) >= 0.0);
-    let far = |q: &Joints| {
-        q.iter().zip(near.iter()).zip(arm.joints()).map(|((a, b), joint)| ((a - b) / joint.rate).powi(2)).sum::<f64>()
-    };
+    let far =
+        |q: &Joints| q.iter().zip(near.iter()).zip(arm.joints()).map(|((a, b), joint)| ((a - b) / joint.rate).powi(2)).sum::<f64>();
     let best = branches.found.iter().min_by(|a, b| (!in_range(a), far(a)).partial_cmp(&(!in_range(b), far(b))).expect("finite"));
     match (best, branches.miss) {
         (Some(q), _) => Reached::Yes { q: *q, branches: branches.found.len() },

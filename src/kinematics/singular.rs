@@ -179,11 +179,8 @@ fn least_root<const N: usize>(diagonal: &[f64; N], beside_squared: &[f64; N]) ->
 /// (Hestenes), exact to the last digits also where tiny.
 pub fn singular_values(scaled: &Scaled) -> [f64; 6] {
     // Work on vectors that are the shorter side's rows or columns, so that there are at most six.
-    let (count, length, transpose) = if scaled.rows <= scaled.columns {
-        (scaled.rows, scaled.columns, false)
-    } else {
-        (scaled.columns, scaled.rows, true)
-    };
+    let (count, length, transpose) =
+        if scaled.rows <= scaled.columns { (scaled.rows, scaled.columns, false) } else { (scaled.columns, scaled.rows, true) };
     let mut vectors = [[0.0; MAX_JOINTS]; 6];
     for (i, vector) in vectors[..count].iter_mut().enumerate() {
         for (k, entry) in vector[..length].iter_mut().enumerate() {

@@ -46,7 +46,8 @@ impl<'a> Follower<'a> {
         }
         let next = self.nodes.partition_point(|node| node.u < u);
         // For a redundant arm a node's null rows rule the cell behind it, so the node before is the one that counts.
-        if next == 0 || (!self.arm.is_redundant() && next < self.nodes.len() && self.nodes[next].u - u < u - self.nodes[next - 1].u) {
+        if next == 0 || (!self.arm.is_redundant() && next < self.nodes.len() && self.nodes[next].u - u < u - self.nodes[next - 1].u)
+        {
             return self.nodes.get(next);
         }
         Some(&self.nodes[next - 1])

@@ -65,11 +65,7 @@ impl Law {
         let up = Piece { start: 0.0, duration: ramp, u: 0.0, rate: 0.0, accel };
         let even = Piece { start: ramp, duration: cruise, u: risen, rate: top, accel: 0.0 };
         let down = Piece { start: ramp + cruise, duration: ramp, u: 1.0 - risen, rate: top, accel: -accel };
-        if cruise > 0.0 {
-            Self { pieces: [up, even, down], count: 3 }
-        } else {
-            Self { pieces: [up, down, down], count: 2 }
-        }
+        if cruise > 0.0 { Self { pieces: [up, even, down], count: 3 } } else { Self { pieces: [up, down, down], count: 2 } }
     }
 
     /// No motion, no time: for a segment whose ends coincide.

@@ -14,5 +14,6 @@ pub use instant::Instant;
 pub use law::{Law, Piece, Side};
 pub use path::{Path, Target};
 pub use plan::{Cursor, Plan};
+pub use resolve::pose_in_base;
 pub use segment::{NoPath, Push, Segment};
 pub use track::{Lost, Node, Track};

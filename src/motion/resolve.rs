@@ -18,7 +18,7 @@ pub(super) struct Place {
 }
 
 /// A pose of the recipe in the base; an open orientation is filled with `otherwise`.
-pub(super) fn in_base(recipe: &Recipe, given: &Given, otherwise: &Pose) -> Pose {
+pub fn pose_in_base(recipe: &Recipe, given: &Given, otherwise: &Pose) -> Pose {
     let frame = given.frame.as_deref().and_then(|name| frame_in_base(recipe, name)).unwrap_or_else(Pose::identity);
     let at = frame.point(&given.at);
     let axes = given.rotation.map_or(otherwise.axes, |rotation| frame.axes * rotation.matrix());
@@ -27,7 +27,7 @@ pub(super) fn in_base(recipe: &Recipe, given: &Given, otherwise: &Pose) -> Pose 
 
 /// A point of the recipe in the base, m.
 pub(super) fn point_in_base(recipe: &Recipe, given: &Given) -> V3 {
-    in_base(recipe, given, &Pose::identity()).at
+    pose_in_base(recipe, given, &Pose::identity()).at
 }
 
 /// The pose that waypoint `index` asks of the TCP, base; `now` is the posture before it.
@@ -35,7 +35,7 @@ pub(super) fn wanted_pose(arm: &Arm, recipe: &Recipe, index: usize, carried: &Ca
     let tcp = |q: &Joints| Posture::at(arm.chain(), q).tcp(&carried.tcp);
     match &recipe.waypoints[index].taught {
         Taught::Joints(q) => tcp(q),
-        Taught::Pose { pose, .. } => in_base(recipe, pose, &tcp(now)),
+        Taught::Pose { pose, .. } => pose_in_base(recipe, pose, &tcp(now)),
     }
 }
 

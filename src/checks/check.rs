@@ -1,0 +1,71 @@
+use crate::arm::MAX_JOINTS;
+
+/// A check is one thing that a segment is judged by. In this order: the arm's limits, then the cell's criteria.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
+pub enum Check {
+    /// Whether a motion exists at all.
+    Reach,
+    /// Joint values against the joints' ranges.
+    Range,
+    /// Joint rates against the joints' rates.
+    Rate,
+    /// Joint accelerations against the joints' accelerations.
+    Accel,
+    /// Holding torque against the drives' continuous ratings.
+    Holding,
+    /// Smallest singular value against the least one allowed.
+    Singular,
+    /// Tool speed left in the worst direction against the least one allowed.
+    SpeedLeft,
+    /// Speed of the TCP against the cell's limit.
+    TcpSpeed,
+}
+
+impl Check {
+    /// All checks in order.
+    pub const ALL: [Self; 8] =
+        [Self::Reach, Self::Range, Self::Rate, Self::Accel, Self::Holding, Self::Singular, Self::SpeedLeft, Self::TcpSpeed];
+
+    /// Its name in data.
+    pub fn key(self) -> &'static str {
+        match self {
+            Self::Reach => "reach",
+            Self::Range => "range",
+            Self::Rate => "rate",
+            Self::Accel => "accel",
+            Self::Holding => "holding",
+            Self::Singular => "singular",
+            Self::SpeedLeft => "speed_left",
+            Self::TcpSpeed => "tcp_speed",
+        }
+    }
+
+    /// Whether it judges by what the arm can do; the others judge by what the cell asks.
+    pub fn is_arm_limit(self) -> bool {
+        matches!(self, Self::Reach | Self::Range | Self::Rate | Self::Accel | Self::Holding)
+    }
+
+    /// Whether it has a channel for every joint.
+    pub fn is_per_joint(self) -> bool {
+        matches!(self, Self::Range | Self::Rate | Self::Accel | Self::Holding)
+    }
+
+    /// Whether breaking it alone makes a segment `tight` at worst: closeness is a matter of care, not of what the arm can do.
+    pub fn is_tight_at_worst(self) -> bool {
+        matches!(self, Self::Singular | Self::SpeedLeft)
+    }
+
+    /// Its first channel; none for reach.
+    pub(super) fn first_channel(self) -> Option<usize> {
+        match self {
+            Self::Reach => None,
+            Self::Range => Some(0),
+            Self::Rate => Some(MAX_JOINTS),
+            Self::Accel => Some(2 * MAX_JOINTS),
+            Self::Holding => Some(3 * MAX_JOINTS),
+            Self::Singular => Some(4 * MAX_JOINTS),
+            Self::SpeedLeft => Some(4 * MAX_JOINTS + 1),
+            Self::TcpSpeed => Some(4 * MAX_JOINTS + 2),
+        }
+    }
+}

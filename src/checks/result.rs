@@ -1,0 +1,123 @@
+use crate::units::{Measure, Room};
+
+use super::{Check, Finding, Verdict};
+
+/// A place is one instant of a segment.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Place {
+    /// Time since the segment started, s.
+    pub time: f64,
+    /// Fraction of its path.
+    pub u: f64,
+}
+
+/// A peak is the worst that one channel asks on a segment.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Peak {
+    /// Which joint, for checks with a channel a joint.
+    pub joint: Option<usize>,
+    /// Where.
+    pub at: Place,
+    /// What is asked there, with its sign (for closeness: what is there).
+    pub demand: Measure,
+    /// What it is told against (for a range: the nearer end). Infinite where there is no limit.
+    pub limit: Measure,
+    /// What is left.
+    pub room: Room,
+    /// What must be left.
+    pub reserve: Room,
+}
+
+/// Why a check that shows nothing bad is not called clear.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Unproved {
+    /// Only samples were looked at; the proof was not tried.
+    SamplesOnly,
+    /// The proof did not close within its budget.
+    BudgetSpent,
+    /// The path could not be followed to its end.
+    NotFollowed,
+    /// The arm file rates no holding torque.
+    NoRating,
+    /// The arm file gives no link masses.
+    NoMasses,
+    /// It rests on a guess.
+    Guess,
+}
+
+/// How far a result is proved.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Proof {
+    /// Proved for every instant: the room is nowhere less than this.
+    Proved(Room),
+    /// A witness was found: an instant where it is not clear.
+    Witness,
+    /// Neither.
+    Open(Unproved),
+}
+
+/// What one check found on one segment.
+#[derive(Debug, Clone, PartialEq)]
+pub struct CheckResult {
+    /// Which check.
+    pub check: Check,
+    /// Whether it was judged here, or only shown.
+    pub judged: bool,
+    /// The verdict; clear where it was not judged.
+    pub verdict: Verdict,
+    /// How far that is proved.
+    pub proof: Proof,
+    /// The worst of every channel. Empty for reach and for a segment without motion.
+    pub peaks: Vec<Peak>,
+}
+
+impl CheckResult {
+    /// The peak nearest to its reserve.
+    pub fn worst(&self) -> Option<&Peak> {
+        let over_reserve = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
+        self.peaks.iter().filter(|peak| peak.limit.si.is_finite()).min_by(|a, b| over_reserve(a).total_cmp(&over_reserve(b)))
+    }
+}
+
+/// A profile is the room of every check at many instants of a segment, the worst ones included, in order of time.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Profile {
+    /// Instants.
+    pub places: Vec<Place>,
+    /// Room of each check, in the order of [`Check::ALL`]; `NAN` where it is not judged.
+    pub rooms: Vec<[f32; Check::ALL.len()]>,
+}
+
+/// What all checks found on one segment.
+#[derive(Debug, Clone, PartialEq)]
+pub struct SegmentSurvey {
+    /// Which segment of the plan, counted from 0.
+    pub segment: usize,
+    /// The worst verdict of all checks.
+    pub verdict: Verdict,
+    /// One result a check, in the order of [`Check::ALL`].
+    pub checks: Vec<CheckResult>,
+    /// Its findings.
+    pub findings: Vec<Finding>,
+    /// Room along it.
+    pub profile: Profile,
+    /// How many instants were looked at.
+    pub looked_at: usize,
+}
+
+impl SegmentSurvey {
+    /// The result of one check.
+    pub fn check(&self, check: Check) -> &CheckResult {
+        self.checks.iter().find(|result| result.check == check).expect("every check has a result")
+    }
+
+    /// The judged check that is nearest to its reserve, with its worst peak: cell criteria only where no arm limit is worse.
+    pub fn nearest(&self) -> Option<(&CheckResult, &Peak)> {
+        self.checks.iter().filter(|result| result.judged).filter_map(|result| Some((result, result.worst()?))).min_by(
+            |(a, p), (b, q)| {
+                let spare = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
+                b.verdict.cmp(&a.verdict).then(spare(p).total_cmp(&spare(q)))
+            },
+        )
+    }
+}

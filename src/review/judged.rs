@@ -1,0 +1,31 @@
+use std::sync::Arc;
+
+use crate::arm::Arm;
+use crate::checks::{Survey, Watch, survey};
+use crate::motion::Plan;
+use crate::program::Recipe;
+
+/// A recipe with what became of it: planned and surveyed. It never changes; an edit makes a new one.
+#[derive(Debug, Clone)]
+pub struct Judged {
+    /// The arm.
+    pub arm: Arc<Arm>,
+    /// What was taught.
+    pub recipe: Arc<Recipe>,
+    /// Its motion.
+    pub plan: Arc<Plan>,
+    /// The result of checking it.
+    pub survey: Arc<Survey>,
+}
+
+impl Judged {
+    /// Plans and surveys a recipe, taking over what `before` judged alike. `None` if the watch stopped it.
+    pub fn of(arm: &Arc<Arm>, recipe: &Arc<Recipe>, before: Option<&Self>, watch: &Watch) -> Option<Self> {
+        let plan = Plan::of(arm, recipe);
+        let before = before
+            .filter(|old| Arc::ptr_eq(&old.arm, arm))
+            .map(|old| (old.recipe.as_ref(), old.plan.as_ref(), old.survey.as_ref()));
+        let survey = survey(arm, recipe, &plan, before, watch)?;
+        Some(Self { arm: Arc::clone(arm), recipe: Arc::clone(recipe), plan: Arc::new(plan), survey: Arc::new(survey) })
+    }
+}

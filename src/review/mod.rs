@@ -1,0 +1,10 @@
+//! The review: a recipe with its plan and survey, and the words in which findings are told. What the screen, the command line and
+//! the reports share.
+
+mod explain;
+mod judged;
+mod not_checked;
+
+pub use explain::{Bar, Explanation, Label, Paragraph, doubt_text, explain, headline, no_finding};
+pub use judged::Judged;
+pub use not_checked::not_checked;
