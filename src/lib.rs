@@ -2,9 +2,10 @@
 //! real tool and part, why something fails, and which change makes it right.
 //!
 //! The modules stand in layers; each may name only those above it in this list:
-//! [`units`], [`geometry`], [`arm`], [`program`].
+//! [`units`], [`geometry`], [`arm`], [`program`], [`files`].
 
 pub mod arm;
+pub mod files;
 pub mod geometry;
 pub mod program;
 pub mod units;
