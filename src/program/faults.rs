@@ -1,7 +1,7 @@
 use std::collections::HashSet;
 
 use crate::arm::{Arm, Joints};
-use crate::units::{Dimension, Fault, Field, Length, Measure, nearest_word};
+use crate::units::{Dimension, Fault, Field, Length, Measure, nearest_word, tidy};
 
 use super::{Arrive, BASE, Given, PushAxes, Recipe, Taught, Then, WORLD, Waypoint, frame_in_base};
 
@@ -75,7 +75,7 @@ impl Recipe {
         for (key, reserve) in
             [("rate-reserve", a.rate_reserve), ("accel-reserve", a.accel_reserve), ("holding-reserve", a.holding_reserve)]
         {
-            let percent = reserve.as_percent();
+            let percent = tidy(reserve.as_percent());
             if !(0.0..100.0).contains(&percent) {
                 faults.push(Fault::new(
                     field.key(key),
@@ -85,7 +85,10 @@ impl Recipe {
         }
         let mut not_negative = |key: &str, value: Measure| {
             if !(value.si.is_finite() && value.si >= 0.0) {
-                faults.push(Fault::new(field.key(key), format!("acceptance: {key} is {}; it must be 0 or more", value.shown())));
+                faults.push(Fault::new(
+                    field.key(key),
+                    format!("acceptance: {key} is {}; it must be 0 or more", tidy(value.shown())),
+                ));
             }
         };
         not_negative("range-least", a.range_least.measure());
@@ -294,11 +297,11 @@ fn not_above_zero(field: Field, thing: &str, key: &str, value: Measure) -> Optio
     if value.si.is_finite() && value.si > 0.0 {
         return None;
     }
-    Some(Fault::new(field, format!("{thing}: {key} is {}; it must be above 0", value.shown())))
+    Some(Fault::new(field, format!("{thing}: {key} is {}; it must be above 0", tidy(value.shown()))))
 }
 
 fn bad_share(field: Field, thing: &str, key: &str, share: Option<crate::units::Share>) -> Option<Fault> {
-    let percent = share?.as_percent();
+    let percent = tidy(share?.as_percent());
     if percent > 0.0 && percent <= 100.0 {
         return None;
     }
