@@ -129,7 +129,7 @@ rate = 45
 accel = 360
 torque = { holding = 50, peak = 80, grounds = "guess" }
 brake = 60
-link = { mass = 2, com = [10, 0, -20], inertia = [1, 2, 3, 0.1, 0.2, 0.3], grounds = "weighed" }
+link = { mass = 2, com = [10, 0, -20], inertia = [2, 2, 3, 0.1, 0.2, 0.3], grounds = "weighed" }
 
 [[joint]]
 name = "slide"

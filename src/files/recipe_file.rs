@@ -127,8 +127,8 @@ mod tests {
     use crate::program::{Acceptance, Arrive, PushAxes, Taught};
     use crate::units::Share;
 
-    use super::super::{open, read_arm};
     use super::*;
+    use crate::files::{open, read_arm};
 
     #[test]
     fn what_a_recipe_leaves_out_is_usual() {

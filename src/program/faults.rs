@@ -39,8 +39,11 @@ impl Recipe {
                 format!("the recipe has {} waypoints; there must be at least 2 to move between", self.waypoints.len()),
             ));
         }
+        // Looked up once: in a recipe of a hundred thousand waypoints each may name another.
+        let mut before: HashSet<&str> = HashSet::new();
         for (index, waypoint) in self.waypoints.iter().enumerate() {
-            faults.extend(self.waypoint_faults(arm, index, waypoint));
+            faults.extend(self.waypoint_faults(arm, index, waypoint, &before));
+            before.insert(&waypoint.name);
         }
         faults
     }
@@ -118,7 +121,7 @@ impl Recipe {
         faults
     }
 
-    fn waypoint_faults(&self, arm: &Arm, index: usize, waypoint: &Waypoint) -> Vec<Fault> {
+    fn waypoint_faults(&self, arm: &Arm, index: usize, waypoint: &Waypoint, before: &HashSet<&str>) -> Vec<Fault> {
         let field = Field::top().key("waypoint").item(index);
         let thing = format!("waypoint {} \"{}\"", index + 1, waypoint.name);
         let mut faults = Vec::new();
@@ -132,7 +135,9 @@ impl Recipe {
                         format!("{thing}: pose gives no orientation (rpy or quaternion), which this arm's task needs"),
                     ));
                 }
-                if let Some(name) = near {
+                if let Some(name) = near
+                    && !before.contains(name.as_str())
+                {
                     let known = self.waypoints[..index].iter().map(|w| w.name.as_str());
                     faults.extend(unknown(field.key("near"), &thing, "waypoint before it", name, known));
                 }

@@ -188,7 +188,7 @@ pub const RECIPES: &[Case] = &[
     (
         "fly-by = 20",
         "fly-by = 20\nthen = { release = true }\ndwell = 1",
-        "waypoint 2 \"above\": a load can't be taken or released on a fly-by; make it a stop point (recipe.toml:40:10)\nwaypoint 2 \"above\": a fly-by point has no dwell; make it a stop point (recipe.toml:40:10)",
+        "waypoint 2 \"above\": a fly-by point has no dwell; make it a stop point (recipe.toml:40:10)\nwaypoint 2 \"above\": a load can't be taken or released on a fly-by; make it a stop point (recipe.toml:40:10)",
     ),
     (
         r#"take = "part""#,
