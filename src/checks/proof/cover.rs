@@ -306,7 +306,9 @@ impl Run<'_> {
         let (Some(first), Some(last)) = (joined.first(), joined.last()) else { return false };
         let nodes = &self.segment.track.nodes;
         let end = Enclosure::point(&nodes.last().expect("followed").q);
-        if !first.meets(&first.start, &Enclosure::point(&self.segment.start)) || !last.meets(&last.end, &end) {
+        let at_start = first.enclosure(first.middle - first.half);
+        let at_end = last.enclosure(last.middle + last.half);
+        if !first.meets(&at_start, &Enclosure::point(&self.segment.start)) || !last.meets(&at_end, &end) {
             return false;
         }
         joined.windows(2).all(|pair| {
@@ -316,19 +318,45 @@ impl Run<'_> {
                 // Another definition of the motion begins here; both hold at the node itself.
                 Some(node) => {
                     let point = Enclosure::point(&node.q);
-                    left.meets(&left.end, &point) && right.meets(&right.start, &point)
+                    left.meets(&left.enclosure(border), &point) && right.meets(&right.enclosure(border), &point)
                 }
-                None => {
-                    let (one, other) = (&left.end, &right.start);
-                    left.meets(one, other) || right.meets(one, other) || self.closer_look(border, one, other)
-                }
+                None => self.join(left, right, border, MOST_BETWEEN),
             }
         })
     }
 
-    fn closer_look(&mut self, border: f64, one: &Enclosure, other: &Enclosure) -> bool {
+    /// Whether two leaves that share the fraction `u` are of one branch. Where both are too wide there to tell, a leaf is proved
+    /// around `u` and joined to each of them nearer to its middle, where they are narrower.
+    fn join(&mut self, left: &Joined, right: &Joined, u: f64, more: usize) -> bool {
+        let (one, other) = (left.enclosure(u), right.enclosure(u));
+        if left.meets(&one, &other) || right.meets(&one, &other) {
+            return true;
+        }
         self.out.tally.postures += 1;
-        let Some(instant) = self.follower.at(border) else { return false };
-        self.middle(&instant).is_some_and(|middle| meet_at(&middle, one, other))
+        let Some(instant) = self.follower.at(u) else { return false };
+        let Some(middle) = self.middle(&instant) else { return false };
+        if meet_at(&middle, &one, &other) {
+            return true;
+        }
+        let mut half = 0.6 * left.half.min(right.half);
+        let mut trials = 0;
+        let leaf = loop {
+            trials += 1;
+            match middle.prove(half) {
+                Some(leaf) => break Some(leaf),
+                None if more == 0 || trials > self.effort.trials => break None,
+                None => half *= 0.6,
+            }
+        };
+        let between = leaf.map(|leaf| Joined::of(&middle, &leaf));
+        self.out.tally.trials += trials;
+        between.is_some_and(|between| {
+            more > 0
+                && self.join(left, &between, u - between.half, more - 1)
+                && self.join(&between, right, u + between.half, more - 1)
+        })
     }
 }
+
+/// How often a leaf may be put between two others to join them.
+const MOST_BETWEEN: usize = 3;
