@@ -306,9 +306,9 @@ impl Run<'_> {
         let (Some(first), Some(last)) = (joined.first(), joined.last()) else { return false };
         let nodes = &self.segment.track.nodes;
         let end = Enclosure::point(&nodes.last().expect("followed").q);
-        let at_start = first.enclosure(first.middle - first.half);
-        let at_end = last.enclosure(last.middle + last.half);
-        if !first.meets(&at_start, &Enclosure::point(&self.segment.start)) || !last.meets(&at_end, &end) {
+        if !self.holds(first, first.middle - first.half, &Enclosure::point(&self.segment.start))
+            || !self.holds(last, last.middle + last.half, &end)
+        {
             return false;
         }
         joined.windows(2).all(|pair| {
@@ -318,11 +318,28 @@ impl Run<'_> {
                 // Another definition of the motion begins here; both hold at the node itself.
                 Some(node) => {
                     let point = Enclosure::point(&node.q);
-                    left.meets(&left.enclosure(border), &point) && right.meets(&right.enclosure(border), &point)
+                    self.holds(left, border, &point) && self.holds(right, border, &point)
                 }
                 None => self.join(left, right, border, MOST_BETWEEN),
             }
         })
+    }
+
+    /// Whether a leaf's path goes through a known posture at fraction `u`.
+    fn holds(&mut self, leaf: &Joined, u: f64, posture: &Enclosure) -> bool {
+        let there = leaf.enclosure(u);
+        if leaf.meets(&there, posture) {
+            return true;
+        }
+        let Some(instant) = self.look_at_border(u) else { return false };
+        let Some(middle) = self.middle(&instant) else { return false };
+        if meet_at(&middle, &there, posture) {
+            return true;
+        }
+        let Some((between, trials)) = self.between(&middle, leaf.half) else { return false };
+        self.out.tally.trials += trials;
+        let inwards = if u < leaf.middle { between.half } else { -between.half };
+        between.meets(&between.enclosure(u), posture) && self.join(&between, leaf, u + inwards, MOST_BETWEEN)
     }
 
     /// Whether two leaves that share the fraction `u` are of one branch. Where both are too wide there to tell, a leaf is proved
@@ -332,28 +349,30 @@ impl Run<'_> {
         if left.meets(&one, &other) || right.meets(&one, &other) {
             return true;
         }
-        self.out.tally.postures += 1;
-        let Some(instant) = self.follower.at(u) else { return false };
+        let Some(instant) = self.look_at_border(u) else { return false };
         let Some(middle) = self.middle(&instant) else { return false };
         if meet_at(&middle, &one, &other) {
             return true;
         }
-        let mut half = 0.6 * left.half.min(right.half);
-        let mut trials = 0;
-        let leaf = loop {
-            trials += 1;
-            match middle.prove(half) {
-                Some(leaf) => break Some(leaf),
-                None if more == 0 || trials > self.effort.trials => break None,
-                None => half *= 0.6,
-            }
-        };
-        let between = leaf.map(|leaf| Joined::of(&middle, &leaf));
+        if more == 0 {
+            return false;
+        }
+        let Some((between, trials)) = self.between(&middle, left.half.min(right.half)) else { return false };
         self.out.tally.trials += trials;
-        between.is_some_and(|between| {
-            more > 0
-                && self.join(left, &between, u - between.half, more - 1)
-                && self.join(&between, right, u + between.half, more - 1)
+        let towards_left = if left.middle < right.middle { -between.half } else { between.half };
+        self.join(left, &between, u + towards_left, more - 1) && self.join(&between, right, u - towards_left, more - 1)
+    }
+
+    fn look_at_border(&mut self, u: f64) -> Option<Instant> {
+        self.out.tally.postures += 1;
+        self.follower.at(u)
+    }
+
+    /// A leaf around the middle, narrower than `half`, and how many trials it took.
+    fn between(&self, middle: &Middle, half: f64) -> Option<(Joined, usize)> {
+        (1..=self.effort.trials).find_map(|trial| {
+            let leaf = middle.prove(half * 0.6f64.powi(trial as i32))?;
+            Some((Joined::of(middle, &leaf), trial))
         })
     }
 }
