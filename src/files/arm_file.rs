@@ -104,9 +104,5 @@ fn wrist_limit(table: &Table<'_>, joints: &[Joint], nameless: bool) -> WristLimi
         let names = if known.is_empty() { "no joints".to_owned() } else { known.join(", ") };
         table.complain("joint", format_args!("there is no joint \"{name}\"; there are {names}"));
     }
-    WristLimit {
-        joint: joint.unwrap_or(0),
-        moment: table.number("moment", "N·m"),
-        inertia: table.maybe_number("inertia"),
-    }
+    WristLimit { joint: joint.unwrap_or(0), moment: table.number("moment", "N·m"), inertia: table.maybe_number("inertia") }
 }
