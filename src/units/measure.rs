@@ -97,6 +97,11 @@ impl Measure {
         join(plain(self.shown(), digits), self.of.sign())
     }
 
+    /// The bare number in people's unit, for columns whose heading names the unit; empty where it is not finite.
+    pub fn number(self, digits: usize) -> String {
+        if self.si.is_finite() { plain(self.shown(), digits) } else { String::new() }
+    }
+
     /// Text that always carries a sign, such as `+509 °/s`; nothing is plain `0`.
     pub fn signed(self) -> String {
         let text = self.to_string();

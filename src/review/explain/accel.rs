@@ -76,10 +76,10 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
     } else {
         "but the ramp alone asks for more than there is".to_owned()
     };
+    let adds = if of(ramp) == of(0.0) { String::new() } else { format!("; the ramp of the speed adds {}", of(ramp)) };
     format!(
-        "{moves} Even at constant speed {} has to change its rate by {}, for its way bends here; the ramp of the speed adds {}. {near} The bend's part grows with the square of the speed: {estimate}.",
+        "{moves} Even at constant speed {} has to change its rate by {}, for its way bends here{adds}. {near} The bend's part grows with the square of the speed: {estimate}.",
         data.name,
-        of(bend),
-        of(ramp)
+        of(bend)
     )
 }

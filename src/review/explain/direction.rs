@@ -25,6 +25,11 @@ pub(super) fn line(recipe: &Recipe, vector: &V3) -> String {
     told(recipe, &turned, |axis, _| WAYS[axis], true)
 }
 
+/// The axis of a turn in base axes, the right hand's way round: `base +z 0.84, +x 0.54`.
+pub(super) fn axis(vector: &V3) -> String {
+    format!("base {}", named(vector, false))
+}
+
 /// The same vector in the axes of the tool: `tool -y`.
 pub(super) fn in_tool(axes: &M3, vector: &V3) -> String {
     format!("tool {}", named(&(axes.transpose() * vector), false))

@@ -1,7 +1,7 @@
 use crate::kinematics::SingularKind;
 use crate::units::{Angle, Dimension, Measure, TurnRate};
 
-use super::direction::heading;
+use super::direction::axis;
 use super::listing::all_of;
 use super::scene::Scene;
 
@@ -9,6 +9,9 @@ use super::scene::Scene;
 const TAKES_PART: f64 = 0.3;
 /// The lost direction explains a joint's rate when it makes up at least this share of it.
 const EXPLAINS: f64 = 0.5;
+
+/// Turning rates below this count as none, rad/s.
+const NO_TURN: f64 = 1e-4;
 
 /// What the nearness of a singular posture does to a joint's rate, in a few sentences; `None` where it does not explain it.
 pub(super) fn amplified(scene: &Scene, joint: usize) -> Option<String> {
@@ -71,15 +74,23 @@ fn wrist(scene: &Scene, joint: usize) -> String {
     let apart = first.cross(&last).norm().min(1.0).asin();
     let gain = rates[joint].abs() / asked.abs();
     let names = [3, 4, 5].map(|j| scene.joint(j).name.as_str());
+    let cause = if scene.turning().norm() < NO_TURN {
+        format!(
+            "The tool keeps its orientation, so the wrist must turn back what {} turn: ",
+            all_of(&[0, 1, 2].map(|j| scene.joint(j).name.clone()))
+        )
+    } else {
+        "For the tool's turn and against that of the joints before it the wrist must turn: ".to_owned()
+    };
     format!(
-        "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. To keep the tool on its path the wrist must turn it at {} about the axis {}, across both; \
-         with {} square to that, {} would need no more than that. Here it needs {} times as much.",
+        "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across both, about {}. \
+         With {} at a right angle no wrist joint would need more than that; here {} needs {} times as much.",
         names[1],
         Angle::rad(apart).measure().text(1),
         names[0],
         names[2],
         TurnRate::rad_per_s(asked.abs()),
-        heading(&scene.judged.recipe, &(across * asked)),
+        axis(&(across * asked)),
         names[1],
         scene.joint(joint).name,
         Measure::si(gain, Dimension::Ratio).text(usize::from(gain < 10.0)),

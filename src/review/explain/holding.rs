@@ -140,8 +140,8 @@ fn push(scene: &Scene, joint: usize) -> String {
 
 fn rests_on(scene: &Scene, joint: usize) -> String {
     let data = scene.joint(joint);
-    let rating = data.torque.map_or("no rating".to_owned(), |torque| {
-        format!("the continuous rating of {}, {} ({})", data.name, data.effort_of(torque.holding), grounds(torque.grounds))
+    let rating = data.torque.map_or("No rating".to_owned(), |torque| {
+        format!("The continuous rating of {}, {} ({})", data.name, data.effort_of(torque.holding), grounds(torque.grounds))
     });
     let links = scene.arm().joints().iter().filter_map(|joint| joint.link);
     let found: Vec<String> = [Grounds::Sheet, Grounds::Weighed, Grounds::Guess]
@@ -150,7 +150,7 @@ fn rests_on(scene: &Scene, joint: usize) -> String {
         .map(|wanted| grounds(wanted).to_owned())
         .collect();
     let links = if found.is_empty() { "no link masses".to_owned() } else { format!("the link masses ({})", all_of(&found)) };
-    format!("It rests on {rating}, {links}, and the masses and centres of tool and load as typed. Friction is not credited.")
+    format!("{rating}, {links}, and the masses and centres of tool and load as typed. Friction is not credited.")
 }
 
 /// Where a datum comes from, in words.

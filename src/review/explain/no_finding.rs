@@ -21,11 +21,9 @@ pub fn no_finding(judged: &Judged, segment: usize) -> Explanation {
         place::on_cycle(judged, segment, peak.at)
     );
     let rests = proof_text(survey, result);
-    let mut paragraphs = vec![Paragraph::says(Label::What, what), Paragraph::says(Label::Where, at)];
-    if let Some(others) = others(judged, survey, result.check) {
-        paragraphs.push(Paragraph::says(Label::Why, others));
-    }
-    paragraphs.push(Paragraph::says(Label::RestsOn, rests));
+    let what = others(judged, survey, result.check).map_or(what.clone(), |others| format!("{what} {others}"));
+    let paragraphs =
+        vec![Paragraph::says(Label::What, what), Paragraph::says(Label::Where, at), Paragraph::says(Label::RestsOn, rests)];
     Explanation { title, paragraphs }
 }
 
@@ -53,8 +51,9 @@ fn figure(judged: &Judged, result: &CheckResult, peak: &Peak) -> String {
         (Check::Singular, _) => format!("{name}, smallest singular value {} where {} is allowed", peak.demand, peak.limit),
         (Check::SpeedLeft, _) => format!("{name}, {} where {} are asked for", peak.demand.text_down(0), peak.limit),
         _ => {
+            let demand = if joint.is_some() { peak.demand.signed() } else { peak.demand.to_string() };
             let reserve = if peak.reserve.as_fraction() > 0.0 { format!(", reserve {}", peak.reserve) } else { String::new() };
-            format!("{name}{of}, {} of {}: asks {}{reserve}", peak.demand.signed(), peak.limit, peak.room.asks())
+            format!("{name}{of}, {} of {}: asks {}{reserve}", demand, peak.limit, peak.room.asks())
         }
     }
 }

@@ -2,7 +2,7 @@ use crate::arm::JointKind;
 use crate::checks::{Check, Excess};
 use crate::units::{Length, Measure, Room, Speed, TurnRate};
 
-use super::direction::{heading, in_tool};
+use super::direction::{axis, heading, in_tool};
 use super::fight::amplified;
 use super::scene::Scene;
 use super::{Label, Paragraph, proof_text};
@@ -53,8 +53,8 @@ pub(super) fn tool_moves(scene: &Scene) -> String {
         let speed = Speed::m_per_s(velocity.norm());
         format!("moves at {speed} {}, in its own axes {}", heading(recipe, &velocity), in_tool(&scene.instant.tcp.axes, &velocity))
     });
-    let turns = (turning.norm() > NO_TURN)
-        .then(|| format!("turns at {} about the axis {}", TurnRate::rad_per_s(turning.norm()), heading(recipe, &turning)));
+    let turns =
+        (turning.norm() > NO_TURN).then(|| format!("turns at {} about {}", TurnRate::rad_per_s(turning.norm()), axis(&turning)));
     match (moves, turns) {
         (Some(moves), Some(turns)) => format!("The tool {moves}, and {turns}."),
         (Some(only), None) | (None, Some(only)) => format!("The tool {only}."),

@@ -2,7 +2,7 @@ use crate::checks::{Check, Excess};
 use crate::kinematics::{Closeness, SingularKind, condition};
 use crate::units::{Angle, Dimension, Length, Measure, Speed, TurnRate};
 
-use super::direction::line;
+use super::direction::{axis, line};
 use super::listing::all_of;
 use super::scene::Scene;
 use super::{Label, Paragraph, proof_text};
@@ -29,9 +29,9 @@ pub(super) fn paragraphs(scene: &Scene, check: Check, excess: &Excess) -> [Parag
     let length = scene.arm().characteristic_length();
     let stated = if length.stated { "stated in the arm file" } else { "computed from the arm, since its file states none" };
     let rests = match check {
-        Check::SpeedLeft => "It rests on the joints' rates and the arm's geometry, and on no characteristic length.".to_owned(),
+        Check::SpeedLeft => "The joints' rates and the arm's geometry, and on no characteristic length.".to_owned(),
         _ => format!(
-            "It rests on the arm's geometry, the TCP, and the characteristic length of {}, {stated}; with another length the figure is another.",
+            "The arm's geometry, the TCP, and the characteristic length of {}, {stated}; with another length the figure is another.",
             Length::m(length.m).measure().text(0)
         ),
     };
@@ -100,9 +100,9 @@ fn speed(scene: &Scene) -> String {
     }
     if left.turning.is_finite() {
         told.push(format!(
-            "With the TCP held, it can turn at {} about the axis {}.",
+            "With the TCP held, it can turn at {} about {}.",
             TurnRate::rad_per_s(left.turning).measure().text_down(1),
-            line(recipe, &left.axis)
+            axis(&left.axis)
         ));
     }
     told.push(format!("The program asks for {} here.", Speed::m_per_s(scene.velocity().norm())));
