@@ -1,5 +1,4 @@
 use crate::checks::{Check, Excess};
-use crate::units::Measure;
 
 use super::fight::amplified;
 use super::rate::{allowed, asked_for, at_most, tool_moves};
@@ -46,9 +45,10 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
     let moves = tool_moves(scene);
     if bend.abs() < LEADS * ramp.abs() {
         let share = allowed(excess).si / excess.demand.si.abs();
+        let moves = if scene.rate > 0.0 { moves + " " } else { String::new() };
         let ramps = if scene.accel >= 0.0 { "speeds up" } else { "slows down" };
         let both = if ramp.abs() > LEADS * bend.abs() {
-            format!("It comes from the ramp: the segment {ramps} here, which asks {} of {}.", of(ramp), data.name)
+            format!("The demand comes from the ramp: the segment {ramps} here, which asks {} of {}.", of(ramp), data.name)
         } else {
             format!(
                 "{} comes from the ramp, for the segment {ramps} here, and {} from the bend of the joint's way.",
@@ -56,9 +56,9 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
                 of(bend)
             )
         };
-        let by = Measure::si((share * 100.0).floor(), crate::units::Dimension::Ratio).text(0);
         return format!(
-            "{moves} {both} The ramp's part shrinks in step with the acceleration asked for: {by} % of that would meet it here, an estimate for this one instant."
+            "{moves}{both} The ramp's part shrinks in step with the acceleration given: by that rule {} would meet it here, an estimate for this one instant.",
+            scene.asking_accel(scene.accel.abs() * share)
         );
     }
     let near = amplified(scene, joint)

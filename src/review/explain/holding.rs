@@ -122,12 +122,18 @@ fn push(scene: &Scene, joint: usize) -> String {
         "asks nothing of this joint".to_owned()
     } else {
         let without = scene.joint(joint).effort_of(total - share);
-        let adds = if share * (total - share) < 0.0 { "relieves this joint" } else { "comes on top" };
+        let adds = if total.abs() < (total - share).abs() {
+            "relieves this joint"
+        } else if total * (total - share) < 0.0 {
+            "turns the demand round"
+        } else {
+            "comes on top"
+        };
         format!("{adds}: without it the motor would supply {}", without.signed())
     };
     let force = if push.force.norm() > 0.0 {
         format!(
-            "{} {} ({})",
+            "{} {}, in its own axes {}",
             Force::n(push.force.norm()),
             heading(recipe, &push.force),
             in_tool(&scene.instant.tcp.axes, &push.force)
@@ -135,7 +141,7 @@ fn push(scene: &Scene, joint: usize) -> String {
     } else {
         Measure::si(push.torque.norm(), Dimension::Torque).to_string()
     };
-    format!(" The recipe says that the tool pushes the work with {force}; the work pushes back the other way, and that {effect}.")
+    format!(" The recipe says that the tool pushes the work with {force}. The work pushes back the other way, and that {effect}.")
 }
 
 fn rests_on(scene: &Scene, joint: usize) -> String {

@@ -48,7 +48,8 @@ fn title(judged: &Judged, finding: &Finding) -> String {
     let figure = match &finding.kind {
         Kind::Excess(excess) => match finding.check {
             Check::Range => format!(", {}", range::to_end_text(&judged.arm.joints()[finding.joint.unwrap_or(0)], excess)),
-            Check::Singular | Check::SpeedLeft => format!(", {} left", excess.demand),
+            Check::Singular => format!(", smallest singular value {}", excess.demand),
+            Check::SpeedLeft => format!(", {}", excess.demand.text_down(0)),
             _ => format!(", asks {}", excess.room.asks()),
         },
         Kind::NoPath(trouble) => format!(", {}", reach::in_brief(trouble)),

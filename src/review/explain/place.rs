@@ -76,24 +76,26 @@ pub(super) fn paragraph(judged: &Judged, finding: &Finding) -> Paragraph {
 }
 
 fn stretch(segment: &Segment, finding: &Finding, excess: &Excess) -> String {
-    let flagged = between(segment, finding.from, finding.to);
     let short_of = if finding.check.is_tight_at_worst() { "Below what is asked for" } else { "Short of the reserve" };
     match excess.over {
         Some([from, to]) if excess.reserve.as_fraction() > 0.0 && (from, to) != (finding.from, finding.to) => {
-            format!("Over the limit {} and short of the reserve {flagged}, of {}", between(segment, from, to), whole(segment))
+            let flagged = between(segment, finding.from, finding.to);
+            format!("Over the limit {}, and short of the reserve {flagged}", between(segment, from, to))
         }
-        Some([from, to]) => format!("Over the limit {} of {}", between(segment, from, to), whole(segment)),
-        None => format!("{short_of} {flagged} of {}", whole(segment)),
+        Some([from, to]) => format!("Over the limit {}", between(segment, from, to)),
+        None => format!("{short_of} {}", between(segment, finding.from, finding.to)),
     }
 }
 
 fn between(segment: &Segment, from: Place, to: Place) -> String {
     let [first, last] = [from.u, to.u].map(|u| along(segment, u));
+    let whole = whole(segment);
     match (from.u <= 0.0, to.u >= 1.0) {
-        (true, true) => "over the whole".to_owned(),
-        _ if first == last => format!("at {first}"),
-        (true, false) => format!("from its start to {last}"),
-        (false, true) => format!("from {first} to its end, the last {} ", along(segment, 1.0 - from.u)).trim_end().to_owned(),
-        (false, false) => format!("from {first} to {last}"),
+        (true, true) if segment.follows_path() => format!("all along its {whole}"),
+        (true, true) => "all along".to_owned(),
+        _ if first == last => format!("at {first} of {whole}"),
+        (true, false) => format!("from its start to {last} of {whole}"),
+        (false, true) => format!("from {first} to its end, the last {} of {whole}", along(segment, 1.0 - from.u)),
+        (false, false) => format!("from {first} to {last} of {whole}"),
     }
 }

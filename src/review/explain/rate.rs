@@ -1,6 +1,7 @@
 use crate::arm::JointKind;
 use crate::checks::{Check, Excess};
-use crate::units::{Length, Measure, Room, Speed, TurnRate};
+use crate::geometry::V3;
+use crate::units::{Angle, Length, Measure, Room, Speed, TurnRate};
 
 use super::direction::{axis, heading, in_tool};
 use super::fight::amplified;
@@ -11,6 +12,8 @@ use super::{Label, Paragraph, proof_text};
 const STILL: f64 = 1e-6;
 /// Turning rates below this count as none, rad/s.
 const NO_TURN: f64 = 1e-4;
+/// Two rates that differ by less than this share are told as one another's reason.
+const LIKE: f64 = 0.25;
 
 /// What, why, left alone and rests on of a joint's rate.
 pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Paragraph; 4] {
@@ -77,32 +80,44 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
 /// Why a joint is fast where no singular posture explains it.
 fn plain_cause(scene: &Scene, joint: usize) -> String {
     let data = scene.joint(joint);
-    let posture = &scene.instant.posture;
-    let lever = posture.axis(joint).cross(&(scene.instant.tcp.at - posture.origin(joint))).norm();
-    match (data.kind, scene.closeness()) {
-        (JointKind::Prismatic, _) => {
-            format!("No singular posture is behind it: {} slides that fast because the tool does.", data.name)
-        }
-        (JointKind::Revolute, None) => format!(
-            "No singular posture is near. The TCP is {} from the axis of {}, and the way asked of it takes that rate.",
-            Length::m(lever).measure().text(0),
+    let opening = match scene.closeness() {
+        None => "No singular posture is near.".to_owned(),
+        Some(close) => format!(
+            "A singular posture is {} of joint motion away, but it is not what makes {} fast.",
+            Angle::rad(close.distance).measure().text(0),
             data.name
         ),
-        (JointKind::Revolute, Some(close)) => format!(
-            "A singular posture is {} of joint motion away, but it is not what makes {} fast. The TCP is {} from its axis, and the way asked of it takes that rate.",
-            crate::units::Angle::rad(close.distance).measure().text(0),
-            data.name,
-            Length::m(lever).measure().text(0)
-        ),
+    };
+    if data.kind == JointKind::Prismatic {
+        return format!("{opening} {} slides that fast because the tool moves that way.", data.name);
     }
+    let column = scene.instant.jacobian.columns()[joint];
+    let push = V3::new(column[0], column[1], column[2]);
+    let lever = push.norm();
+    let around = push.dot(&scene.velocity()) / lever;
+    let (alone, rate) = (around / lever, scene.rates()[joint]);
+    if (alone - rate).abs() < LIKE * rate.abs() {
+        return format!(
+            "{opening} The axis of {} stands {} from the TCP, and moving that at {} around its axis takes {} by itself.",
+            data.name,
+            Length::m(lever),
+            Speed::m_per_s(around.abs()),
+            data.rate_of(alone.abs())
+        );
+    }
+    format!(
+        "{opening} The axis of {} stands {} from the TCP; its rate follows from the tool's motion together with that of the other joints.",
+        data.name,
+        Length::m(lever)
+    )
 }
 
 fn left_alone(scene: &Scene, joint: usize, excess: &Excess) -> String {
     let name = &scene.joint(joint).name;
     if excess.room.as_fraction() < 0.0 {
         return format!(
-            "{name} can't keep up. Depending on its controller the arm slows down along the path, falls behind and leaves it, or stops with a fault of the drive; \
-             the place would then be here, and only at speed."
+            "{name} can't keep up. Depending on its controller the arm slows down along the path, falls behind and leaves it, or stops with a fault of the drive. \
+             It shows only at speed, never when the points are stepped through by hand."
         );
     }
     format!(

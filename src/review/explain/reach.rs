@@ -1,7 +1,7 @@
 use crate::arm::Joints;
 use crate::checks::Finding;
 use crate::geometry::V3;
-use crate::kinematics::{Posture, pose_error};
+use crate::kinematics::{Posture, SingularKind, pose_error, singular_posture, spherical_wrist};
 use crate::motion::NoPath;
 use crate::units::{Angle, Dimension, Length, Measure};
 
@@ -40,10 +40,16 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, trouble: &NoPath) -
                 .to_owned(),
         ],
     };
-    let alone = if trouble.is_certain() {
-        "The controller refuses the move, or stops on the way there with a fault."
-    } else {
-        "Nothing is known about this segment, neither good nor bad, and nothing after the loss is judged."
+    let alone = match trouble {
+        NoPath::OutOfReach { .. } | NoPath::StraightArc => {
+            "The controller refuses the move, or stops on the way there with a fault."
+        }
+        NoPath::OtherPosture { .. } => {
+            "The controller refuses the move, or the arm arrives in the other posture. If it then goes on, the next joint move sweeps a way that nobody taught."
+        }
+        NoPath::Orientation { .. } => "The controller refuses the move, or the tool arrives turned by as much as it misses.",
+        NoPath::Lost { .. } => "Nothing is known about what follows, neither good nor bad, and none of it is judged.",
+        NoPath::StartUnknown => "Nothing is known about this segment, neither good nor bad, and none of it is judged.",
     };
     vec![
         Paragraph::says(Label::What, what),
@@ -70,8 +76,15 @@ fn out_of_reach(judged: &Judged, finding: &Finding, u: f64, q: &Joints, sigma: f
     let posture = Posture::at(judged.arm.chain(), q);
     let tcp = posture.tcp(&segment.carried.tcp).at;
     let length = |v: V3| Length::m(v.norm()).measure().text(0);
+    let wrist = spherical_wrist(judged.arm.chain());
+    let kind = match singular_posture(&judged.arm, wrist, q).and_then(|close| close.kind) {
+        Some(SingularKind::Wrist) => ", the wrist straight",
+        Some(SingularKind::Elbow) => ", stretched out or folded",
+        Some(SingularKind::Shoulder) => ", the wrist centre on the first axis",
+        None => "",
+    };
     let why = format!(
-        "There the arm stands in a limiting posture, in which one direction is lost: the smallest singular value is {}. The TCP is then {} from the origin of the base; the joints stand at {}.",
+        "There the arm stands in a limiting posture{kind}, in which one direction is lost: the smallest singular value is {}. The TCP is then {} from the origin of the base; the joints stand at {}.",
         Measure::si(sigma, Dimension::Ratio).text(4),
         length(tcp),
         values(judged, q)

@@ -7,7 +7,7 @@ use crate::kinematics::{
 };
 use crate::motion::{Follower, Instant, Segment, Side};
 use crate::program::Carried;
-use crate::units::{Share, Speed, TurnRate};
+use crate::units::{Acceleration, Share, Speed, TurnAcceleration, TurnRate};
 
 use super::Judged;
 
@@ -127,8 +127,32 @@ impl<'a> Scene<'a> {
                 TurnRate::rad_per_s(rate * turn).measure().text_down(0)
             };
         }
-        let way = self.segment.end.zip(&self.segment.start, |a, b| (a - b).abs());
-        let share = way.iter().zip(self.arm().joints()).map(|(way, joint)| rate * way / joint.rate).fold(0.0, f64::max);
-        format!("a share of {}", Share::percent((share * 100.0 + 1e-6).floor()))
+        let share = self.ways().zip(self.arm().joints()).map(|(way, joint)| rate * way / joint.rate).fold(0.0, f64::max);
+        format!("a share of {}", percent_down(share))
     }
+
+    /// The same for the acceleration of the fraction, 1/s².
+    pub fn asking_accel(&self, accel: f64) -> String {
+        let (length, turn) = (self.segment.path.length(), self.segment.path.turn());
+        if self.segment.follows_path() {
+            return if length > NOTHING {
+                Acceleration::m_per_s2(accel * length).measure().text_down(0)
+            } else {
+                TurnAcceleration::rad_per_s2(accel * turn).measure().text_down(0)
+            };
+        }
+        let share = self.ways().zip(self.arm().joints()).map(|(way, joint)| accel * way / joint.accel).fold(0.0, f64::max);
+        format!("an acceleration share of {}", percent_down(share))
+    }
+
+    /// How far each joint goes on a joint move, SI.
+    fn ways(&self) -> impl Iterator<Item = f64> {
+        let (start, end) = (self.segment.start, self.segment.end);
+        (0..start.len()).map(move |j| (end[j] - start[j]).abs())
+    }
+}
+
+/// A share in whole percent, rounded to the safe side.
+fn percent_down(share: f64) -> Share {
+    Share::percent((share * 100.0 + 1e-6).floor())
 }

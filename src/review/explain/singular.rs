@@ -105,6 +105,9 @@ fn speed(scene: &Scene) -> String {
             axis(&left.axis)
         ));
     }
-    told.push(format!("The program asks for {} here.", Speed::m_per_s(scene.velocity().norm())));
+    let top = scene.segment.law.top_rate() * scene.segment.path.length();
+    if top > 0.0 {
+        told.push(format!("The program runs the segment at {}.", Speed::m_per_s(top)));
+    }
     told.join(" ")
 }

@@ -1,5 +1,5 @@
 use crate::arm::{Grounds, Joint};
-use crate::checks::{Finding, Unproved};
+use crate::checks::{Check, Finding, Unproved};
 
 use super::listing::all_of;
 use super::{Judged, Label, Paragraph, check_words, place};
@@ -21,11 +21,15 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> V
     let survey = &judged.survey.segments[finding.segment];
     let what = match survey.check(finding.check).worst() {
         Some(peak) => format!(
-            "By {} nothing bad was seen: the most that is asked is {}. But it is not known to hold everywhere.",
+            "For {} nothing bad was seen: the most that is asked is {}. But it is not known to hold everywhere.",
             check_words(finding.check),
             peak.room.asks()
         ),
-        None => format!("By {} nothing can be said.", check_words(finding.check)),
+        None if finding.check == Check::Reach => {
+            "The path was followed to its end without a break. But that the arm keeps to one posture all along it is not known."
+                .to_owned()
+        }
+        None => format!("For {} nothing can be said.", check_words(finding.check)),
     };
     let (reason, alone) = match why {
         Unproved::NoRating => (

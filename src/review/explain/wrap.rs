@@ -45,7 +45,8 @@ mod tests {
 
     #[test]
     fn a_figure_keeps_its_unit() {
-        assert_eq!(wrap("asked for 509 °/s of 330 °/s, much", 17), ["asked for", "509 °/s of", "330 °/s, much"]);
+        assert_eq!(wrap("it is asked for 509 °/s", 19), ["it is asked for", "509 °/s"]);
+        assert_eq!(wrap("asked for 509 °/s of 330 °/s, much", 17), ["asked for 509 °/s", "of 330 °/s, much"]);
     }
 
     #[test]
