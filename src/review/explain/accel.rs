@@ -65,7 +65,7 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
         .or_else(|| {
             scene.closeness().map(|_| "A singular posture is near, and joints change their rates quickly around it.".to_owned())
         })
-        .unwrap_or_else(|| "No singular posture is near; the path itself bends.".to_owned());
+        .unwrap_or_else(|| "No singular posture was found near; the path itself bends the joint's way.".to_owned());
     // With the ramp's part as it is, the bend's part may be no more than this; it grows with the square of the speed.
     let spare = allowed(excess).si - ramp * excess.demand.si.signum();
     let estimate = if spare > 0.0 {

@@ -81,7 +81,7 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
 fn plain_cause(scene: &Scene, joint: usize) -> String {
     let data = scene.joint(joint);
     let opening = match scene.closeness() {
-        None => "No singular posture is near.".to_owned(),
+        None => "No singular posture was found near.".to_owned(),
         Some(close) => format!(
             "A singular posture is {} of joint motion away, but it is not what makes {} fast.",
             Angle::rad(close.distance).measure().text(0),

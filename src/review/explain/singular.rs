@@ -61,7 +61,7 @@ fn posture(scene: &Scene) -> String {
         return if scene.arm().is_redundant() {
             "The arm has more joints than the path needs; how far it is from a singular posture is not estimated.".to_owned()
         } else {
-            "Every singular posture is far, more than 30° of joint motion away.".to_owned()
+            "Singular postures are far: none was found within 30° of joint motion.".to_owned()
         };
     };
     let name = |j: usize| scene.joint(j).name.as_str();
