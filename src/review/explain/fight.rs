@@ -46,7 +46,8 @@ pub(super) fn amplified(scene: &Scene, joint: usize) -> Option<String> {
     };
     let of = |si: f64| scene.joint(joint).rate_of(si);
     Some(format!(
-        "{opening}, and one direction of motion is nearly lost. Of the {} that {} turns, {} go into that direction alone; all other motion asks for {}.{against}",
+        "{opening}, and one direction of motion is nearly lost. Of the {} that {} turns, {} go into that direction alone; all \
+         other motion asks for {}.{against}",
         of(rates[joint].abs()),
         name(joint),
         of(lost.abs()),
@@ -83,7 +84,8 @@ fn wrist(scene: &Scene, joint: usize) -> String {
         "For the tool's turn and against that of the joints before it the wrist must turn: ".to_owned()
     };
     format!(
-        "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across both, about {}. \
+        "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across \
+         both, about {}. \
          With {} at a right angle no wrist joint would need more than that; here {} needs {} times as much.",
         names[1],
         Angle::rad(apart).measure().text(1),

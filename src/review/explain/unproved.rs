@@ -37,7 +37,8 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> V
                 "The arm file gives no holding torque for {}, so what they must hold has no limit to stand against.",
                 missing(judged, |joint| joint.torque.is_none())
             ),
-            "Whether the motors can hold arm, tool and load stays open. The first trial would tell, at the cost of a fault or a sinking arm.",
+            "Whether the motors can hold arm, tool and load stays open. The first trial would tell, at the cost of a fault or a \
+             sinking arm.",
         ),
         Unproved::NoMasses => (
             format!(
@@ -55,7 +56,8 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> V
         ),
         Unproved::BudgetSpent => (
             format!(
-                "{} instants were looked at and all were good, but the proof for those between did not close within its budget, mostly because something changes very quickly there.",
+                "{} instants were looked at and all were good, but the proof for those between did not close within its budget, \
+                 mostly because something changes very quickly there.",
                 survey.looked_at
             ),
             "Most likely nothing. A narrow peak between two instants is possible all the same.",
