@@ -5,7 +5,7 @@ use crate::geometry::V3;
 use crate::kinematics::{SphericalWrist, spherical_wrist};
 use crate::motion::{Follower, Instant, Segment};
 
-use super::border::{Enclosure, Joined};
+use super::border::{Enclosure, Joined, meet_at};
 use super::bounds::{Asked, Pace, on_joint_move, on_path};
 use super::leaf::{Middle, Row};
 use super::view::{Reference, View};
@@ -234,12 +234,14 @@ impl Run<'_> {
         Some(half)
     }
 
-    fn try_path(&mut self, at: &Instant, whole: f64, pace: Pace) -> Option<f64> {
+    fn middle<'b>(&'b self, at: &'b Instant) -> Option<Middle<'b>> {
         let target = self.segment.path.target(at.u)?;
-        let null: Vec<Row> = self.follower.null_rows(at.u);
         let viewer = if self.arm.task().is_whole() { self.arm.len().saturating_sub(3) } else { 0 };
-        let view = self.view(at, viewer);
-        let middle = Middle::of(self.arm, view, at, target, &null)?;
+        Middle::of(self.arm, self.view(at, viewer), at, target, &self.follower.null_rows(at.u))
+    }
+
+    fn try_path(&mut self, at: &Instant, whole: f64, pace: Pace) -> Option<f64> {
+        let middle = self.middle(at)?;
         let mut half = whole.min(self.hint * 1.6).min(0.6 * middle.hope());
         let mut trials = 0;
         let (mut best, mut failed_at) = (None, f64::INFINITY);
@@ -299,23 +301,34 @@ impl Run<'_> {
 
     /// Whether all leaves belong to one branch, which holds the segment's first and last posture.
     fn is_one_branch(&mut self) -> bool {
-        self.joined.sort_by(|a, b| a.middle.total_cmp(&b.middle));
-        let (Some(first), Some(last)) = (self.joined.first(), self.joined.last()) else { return false };
+        let mut joined = std::mem::take(&mut self.joined);
+        joined.sort_by(|a, b| a.middle.total_cmp(&b.middle));
+        let (Some(first), Some(last)) = (joined.first(), joined.last()) else { return false };
         let nodes = &self.segment.track.nodes;
-        let taught = first.meets(&first.start, &Enclosure::point(&self.segment.start))
-            && last.meets(&last.end, &Enclosure::point(&nodes.last().expect("followed").q));
-        taught
-            && self.joined.windows(2).all(|pair| {
-                let [left, right] = pair else { return false };
-                let border = left.middle + left.half;
-                match nodes.iter().find(|node| self.arm.is_redundant() && (node.u - border).abs() < 1e-9) {
-                    // Another definition of the motion begins here; both hold at the node itself.
-                    Some(node) => {
-                        let point = Enclosure::point(&node.q);
-                        left.meets(&left.end, &point) && right.meets(&right.start, &point)
-                    }
-                    None => left.meets(&left.end, &right.start),
+        let end = Enclosure::point(&nodes.last().expect("followed").q);
+        if !first.meets(&first.start, &Enclosure::point(&self.segment.start)) || !last.meets(&last.end, &end) {
+            return false;
+        }
+        joined.windows(2).all(|pair| {
+            let [left, right] = pair else { return false };
+            let border = left.middle + left.half;
+            match nodes.iter().find(|node| self.arm.is_redundant() && (node.u - border).abs() < 1e-9) {
+                // Another definition of the motion begins here; both hold at the node itself.
+                Some(node) => {
+                    let point = Enclosure::point(&node.q);
+                    left.meets(&left.end, &point) && right.meets(&right.start, &point)
                 }
-            })
+                None => {
+                    let (one, other) = (&left.end, &right.start);
+                    left.meets(one, other) || right.meets(one, other) || self.closer_look(border, one, other)
+                }
+            }
+        })
+    }
+
+    fn closer_look(&mut self, border: f64, one: &Enclosure, other: &Enclosure) -> bool {
+        self.out.tally.postures += 1;
+        let Some(instant) = self.follower.at(border) else { return false };
+        self.middle(&instant).is_some_and(|middle| meet_at(&middle, one, other))
     }
 }

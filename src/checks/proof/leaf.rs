@@ -24,7 +24,7 @@ pub(super) struct Middle<'a> {
     /// Norms of both.
     pub norms: [[f64; 2]; MAX_JOINTS],
     /// `|I - Y J|`.
-    defect: [Row; MAX_JOINTS],
+    pub defect: [Row; MAX_JOINTS],
     /// Slopes `Y x'`.
     pub slope: Row,
     /// `Y J'`: the first-order part of how `Y J` leaves the identity.
