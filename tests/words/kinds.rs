@@ -14,6 +14,34 @@ fn a_rate_past_a_straight_wrist_is_told_by_its_mechanics() {
 }
 
 #[test]
+fn a_rate_near_other_singular_postures_names_them() {
+    let line = |from: &str, to: &str, speed: u32| {
+        format!(
+            r#"{READY}
+            [[waypoint]]
+            name = "from"
+            pose = {{ {from}, rpy = [180, 0, 0] }}
+            arrive = "joint"
+            share = 40
+            [[waypoint]]
+            name = "to"
+            pose = {{ {to}, rpy = [180, 0, 0] }}
+            arrive = "line"
+            speed = {speed}
+            accel = 40000
+            "#
+        )
+    };
+    let stretched = line("xyz = [1100, 0, 600]", "xyz = [1328, 0, 600]", 700);
+    snapshot("rate_elbow", &judged(SIX, "", &stretched), Check::Rate);
+    let over_the_base = line("xyz = [70, 250, 1000]", "xyz = [70, -250, 1000]", 600);
+    snapshot("rate_shoulder", &judged(SIX, "", &over_the_base), Check::Rate);
+    let four = line("xyz = [450, 0, 60]", "xyz = [599, 0, 60]", 1300)
+        .replace(READY, "[[waypoint]]\nname = \"rest\"\njoints = [-30, 70, 40, 0]\n");
+    snapshot("rate_without_wrist", &judged(FOUR, "", &four), Check::Rate);
+}
+
+#[test]
 fn a_rate_without_a_singular_posture_is_told_by_lever_and_speed() {
     let line = r#"
     [[waypoint]]
