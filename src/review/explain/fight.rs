@@ -94,7 +94,7 @@ fn wrist(scene: &Scene, joint: usize) -> String {
     format!(
         "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across \
          both, about {}. \
-         With {} at a right angle no wrist joint would need more than that; here {} needs {} times as much.",
+         With {} at a right angle that would ask no more than the same rate of any wrist joint; here it asks {} times as much of {}.",
         names[1],
         Angle::rad(apart).measure().text(1),
         names[0],
@@ -102,7 +102,7 @@ fn wrist(scene: &Scene, joint: usize) -> String {
         TurnRate::rad_per_s(asked.abs()),
         axis(&(across * asked)),
         names[1],
-        scene.joint(joint).name,
         Measure::si(gain, Dimension::Ratio).text(usize::from(gain < 10.0)),
+        scene.joint(joint).name,
     )
 }
