@@ -127,6 +127,45 @@ fn the_tcp_speed_of_a_joint_move_is_told_by_its_joints() {
 }
 
 #[test]
+fn a_sliding_joint_is_told_in_millimetres_and_newtons() {
+    let down = r#"
+    [[waypoint]]
+    name = "rest"
+    joints = [-30, 70, 10, 0]
+    [[waypoint]]
+    name = "down"
+    joints = [-30, 70, 196, 0]
+    arrive = "line"
+    speed = 1400
+    accel = 20000
+    push = { force = [0, 0, -160], frame = "base" }
+    "#;
+    let judged = judged(FOUR, "", down);
+    for check in [Check::Rate, Check::Accel, Check::Holding, Check::Range] {
+        snapshot(&format!("sliding_{}", check.key()), &judged, check);
+    }
+}
+
+#[test]
+fn a_turn_on_the_spot_is_told_in_degrees() {
+    let turn = r#"
+    [[waypoint]]
+    name = "here"
+    pose = { xyz = [760, -60, 520], rpy = [180, 0, 0] }
+    arrive = "joint"
+    share = 40
+    [[waypoint]]
+    name = "turned"
+    pose = { xyz = [760, -60, 520], rpy = [180, 0, 150] }
+    arrive = "line"
+    speed = 200
+    turn-speed = 500
+    turn-accel = 2000
+    "#;
+    snapshot("rate_turning", &judged(SIX, "", &format!("{READY}{turn}")), Check::Rate);
+}
+
+#[test]
 fn words_of_direction_are_left_out_where_the_mount_makes_them_false() {
     let turn = "[[waypoint]]\nname = \"aside\"\njoints = [90, -20, -20, 0, 60, 0]\narrive = \"joint\"\nshare = 80\n";
     let hung = "[mount]\nxyz = [0, 0, 2400]\nrpy = [180, 0, 0]\n[acceptance]\ntcp-speed = 1000";
@@ -212,7 +251,14 @@ fn what_was_not_checked_follows_the_recipe() {
 
 #[test]
 fn doubts_name_what_is_probably_wrong() {
-    let same = "[[waypoint]]\nname = \"again\"\njoints = [0, -20, -20, 0, 60, 0]\narrive = \"joint\"\nshare = 40\nthen = { release = true }\n";
+    let same = r#"
+    [[waypoint]]
+    name = "again"
+    joints = [0, -20, -20, 0, 60, 0]
+    arrive = "joint"
+    share = 40
+    then = { release = true }
+    "#;
     let judged = judged(SIX, "", &format!("{READY}{same}"));
     let told: Vec<String> = judged.survey.doubts.iter().map(|doubt| doubt_text(&judged, doubt)).collect();
     insta::assert_snapshot!("doubts", told.join("\n"));

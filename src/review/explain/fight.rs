@@ -54,8 +54,8 @@ pub(super) fn amplified(scene: &Scene, joint: usize) -> Option<String> {
     };
     let of = |si: f64| scene.joint(joint).rate_of(si).signed();
     Some(format!(
-        "{opening}, and one direction of motion is nearly lost; the tool feels it most {}. That direction alone asks {} of {}, all other \
-         motion together {}.{against}",
+        "{opening}, and one direction of motion is nearly lost; the tool feels it most {}. That direction alone asks \
+         {} of {}, all other motion together {}.{against}",
         line(&scene.judged.recipe, &scene.speed_left().direction),
         of(lost),
         name(joint),
@@ -93,8 +93,8 @@ fn wrist(scene: &Scene, joint: usize) -> String {
     };
     format!(
         "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across \
-         both, about {}. \
-         With {} at a right angle that would ask no more than the same rate of any wrist joint; here it asks {} times as much of {}.",
+         both, about {}. With {} at a right angle that would ask no more than the same rate of any wrist joint; here it asks {} times \
+         as much of {}.",
         names[1],
         Angle::rad(apart).measure().text(1),
         names[0],

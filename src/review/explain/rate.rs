@@ -106,6 +106,11 @@ fn plain_cause(scene: &Scene, joint: usize) -> String {
             data.rate_of(alone.abs())
         );
     }
+    let about = scene.instant.posture.axis(joint).dot(&scene.turning());
+    if (about - rate).abs() < LIKE * rate.abs() {
+        let turn = TurnRate::rad_per_s(about.abs());
+        return format!("{opening} The tool turns at {turn} about the axis of {}, which takes that rate by itself.", data.name);
+    }
     format!(
         "{opening} The axis of {} stands {} from the TCP; its rate follows from the tool's motion together with that of the \
          other joints.",

@@ -34,8 +34,8 @@ pub(super) fn paragraphs(scene: &Scene, excess: &Excess) -> [Paragraph; 4] {
             joints(scene)
         )
     };
-    let alone = "No limit of the arm is broken by this alone. But whatever the cell's limit stands for, such as the part's hold in the grip or \
-        the distances that the safeguards were laid out for, no longer fits.";
+    let alone = "No limit of the arm is broken by this alone. But whatever the cell's limit stands for, such as the part's hold in the \
+                 grip or the distances that the safeguards were laid out for, no longer fits.";
     let rests = format!(
         "The limit in the recipe, the tool's TCP and the speed or share given. It is the speed of the TCP alone; elbow, tool \
          corners and part may be faster. {}",
