@@ -6,7 +6,7 @@ use crate::kinematics::{SphericalWrist, spherical_wrist};
 use crate::motion::{Follower, Instant, Segment};
 
 use super::border::{Enclosure, Joined, meet_at};
-use super::bounds::{Asked, Pace, on_joint_move, on_path};
+use super::bounds::{Asked, Even, Pace, on_joint_move, on_path};
 use super::leaf::{Middle, Row};
 use super::view::{Reference, View};
 
@@ -219,7 +219,8 @@ impl Run<'_> {
         let found = loop {
             trials += 1;
             let motion = view.motion(&slope, &none, half + SEAM, 1e-15);
-            let asked = on_joint_move(self.arm, self.meter, &self.needs, &view, &motion, &slope, half + SEAM, pace);
+            let even = Even { view: &view, motion: &motion, slope: &slope, half: half + SEAM };
+            let asked = on_joint_move(self.arm, self.meter, &self.needs, &even, pace);
             match self.narrower(&asked, trials) {
                 None => break Some((half, asked)),
                 Some(share) => half *= share,
