@@ -102,8 +102,7 @@ pub fn manipulability(arm: &Arm, q: &[f64], rows: std::ops::Range<usize>) -> f64
     (&j * j.transpose()).determinant().sqrt()
 }
 
-/// The six-axis research arm: classical parameters, masses and centres as Corke & Armstrong-Helouvry, "A search for consensus
-/// among model parameters reported for the PUMA 560 robot", ICRA 1994, give them.
+/// The six-axis research arm: classical parameters, masses and centres as Corke & Armstrong-Helouvry, ICRA 1994, give them.
 pub fn research_arm() -> Arm {
     let table = [
         (0.0, 90.0, 0.0, 0.0, [0.0; 3]),

@@ -4,17 +4,25 @@ use elbowroom::arm::{Arm, JointKind, Joints, Placement, TaskRow};
 use elbowroom::geometry::{M3, Pose, V3};
 use elbowroom::kinematics::{Jacobian, Posture};
 
+/// One screw: its joint, how much that moves for a unit of the screw's value (the length of the screw's turning part), and the
+/// sliding joint of its pitch, with that pitch in m/rad.
+struct Slot {
+    joint: usize,
+    scale: f64,
+    pitch: Option<(usize, f64)>,
+}
+
 /// An arm from screw axes (turning part before moving part, base axes, at joint values 0), and where its end is on the flange.
 ///
 /// All axis systems stand parallel to the base at joint values 0, each with its origin on its axis. A screw with a pitch, which
-/// no joint of ours has, becomes a turning joint and a sliding one along the same axis that moves with it.
+/// no joint of ours has, becomes a turning joint and a sliding one along the same axis that moves with it; one whose direction is
+/// not of unit length becomes a joint that moves so many times as far.
 pub struct ScrewArm {
     /// The arm.
     pub arm: Arm,
     /// Its end on the flange.
     pub tcp: Pose,
-    /// For each screw its joint and the joint of its pitch, with that pitch in m/rad.
-    joints: Vec<(usize, Option<(usize, f64)>)>,
+    slots: Vec<Slot>,
 }
 
 impl ScrewArm {
@@ -31,14 +39,17 @@ impl ScrewArm {
         };
         for screw in screws {
             let (w, v) = (V3::new(screw[0], screw[1], screw[2]), V3::new(screw[3], screw[4], screw[5]));
-            if w.norm() == 0.0 {
-                slots.push((add(JointKind::Prismatic, v, V3::zeros()), None));
+            let scale = w.norm();
+            if scale == 0.0 {
+                slots.push(Slot { joint: add(JointKind::Prismatic, v, V3::zeros()), scale: 1.0, pitch: None });
                 continue;
             }
+            let (w, v) = (w / scale, v / scale);
             let pitch = w.dot(&v);
             // v = -w x p + pitch w, so the point of the axis nearest to the origin is w x v.
-            let turn = add(JointKind::Revolute, w, w.cross(&v));
-            slots.push((turn, (pitch != 0.0).then(|| (add(JointKind::Prismatic, w, w.cross(&v)), pitch))));
+            let joint = add(JointKind::Revolute, w, w.cross(&v));
+            let pitch = (pitch != 0.0).then(|| (add(JointKind::Prismatic, w, w.cross(&v)), pitch));
+            slots.push(Slot { joint, scale, pitch });
         }
         let mut at = V3::zeros();
         let origins: Vec<V3> = joints
@@ -49,42 +60,54 @@ impl ScrewArm {
                 at
             })
             .collect();
-        for ((turn, pitch), (mass, com)) in slots.iter().zip(masses) {
-            let last = pitch.map_or(*turn, |(slide, _)| slide);
+        for (slot, (mass, com)) in slots.iter().zip(masses) {
+            let last = slot.pitch.map_or(slot.joint, |(slide, _)| slide);
             joints[last] = super::weighing(joints[last].clone(), *mass, (com - origins[last]).into());
         }
         let tcp = Pose { axes: end.axes, at: end.at - at };
-        Self { arm: super::arm(joints, rows), tcp, joints: slots }
+        Self { arm: super::arm(joints, rows), tcp, slots }
     }
 
     /// Joint values of the arm for one value a screw.
     pub fn q(&self, screw_values: &[f64]) -> Joints {
         let mut q = Joints::zeros(self.arm.len());
-        for ((turn, pitch), value) in self.joints.iter().zip(screw_values) {
-            q[*turn] = *value;
-            if let Some((slide, pitch)) = pitch {
-                q[*slide] = pitch * value;
+        for (slot, value) in self.slots.iter().zip(screw_values) {
+            q[slot.joint] = slot.scale * value;
+            if let Some((slide, pitch)) = slot.pitch {
+                q[slide] = pitch * slot.scale * value;
             }
         }
         q
     }
 
+    /// The whole arm.
+    pub fn posture(&self, screw_values: &[f64]) -> Posture {
+        Posture::at(self.arm.chain(), &self.q(screw_values))
+    }
+
     /// Where the end stands.
     pub fn end(&self, screw_values: &[f64]) -> Pose {
-        Posture::at(self.arm.chain(), &self.q(screw_values)).tcp(&self.tcp)
+        self.posture(screw_values).tcp(&self.tcp)
     }
 
     /// The Jacobian of `point` (base) by the screws' values, in the package's order: turning before moving; one column a screw.
     pub fn jacobian(&self, screw_values: &[f64], point: &V3) -> Vec<[f64; 6]> {
-        let posture = Posture::at(self.arm.chain(), &self.q(screw_values));
-        let jacobian = Jacobian::at(self.arm.chain(), &posture, point);
-        let column = |(turn, pitch): &(usize, Option<(usize, f64)>)| {
-            let mut sum = jacobian.columns()[*turn];
-            if let Some((slide, pitch)) = pitch {
-                sum.iter_mut().zip(jacobian.columns()[*slide]).for_each(|(s, c)| *s += pitch * c);
+        let jacobian = Jacobian::at(self.arm.chain(), &self.posture(screw_values), point);
+        let column = |slot: &Slot| {
+            let mut sum = jacobian.columns()[slot.joint];
+            if let Some((slide, pitch)) = slot.pitch {
+                sum.iter_mut().zip(jacobian.columns()[slide]).for_each(|(s, c)| *s += pitch * c);
             }
-            [sum[3], sum[4], sum[5], sum[0], sum[1], sum[2]]
+            let [x, y, z, a, b, c] = sum.map(|s| s * slot.scale);
+            [a, b, c, x, y, z]
         };
-        self.joints.iter().map(column).collect()
+        self.slots.iter().map(column).collect()
+    }
+
+    /// What the screws ask by virtual work, from what the arm's joints ask.
+    pub fn efforts(&self, joints: &Joints) -> Vec<f64> {
+        let effort =
+            |slot: &Slot| slot.scale * (joints[slot.joint] + slot.pitch.map_or(0.0, |(slide, pitch)| pitch * joints[slide]));
+        self.slots.iter().map(effort).collect()
     }
 }
