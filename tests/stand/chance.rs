@@ -56,6 +56,19 @@ pub fn arm(count: impl Strategy<Value = usize>, sliding_share: f64) -> impl Stra
         .prop_map(|(joints, rows, length)| super::arm_with_length(joints.clone(), &rows[..joints.len().min(6)], length))
 }
 
+/// An arm whose task is moving in all or some directions, or all six, so that what the task leaves out does not bear on the way: an
+/// arm that follows only some turns while it misses others goes neither here nor there.
+pub fn following_arm(count: impl Strategy<Value = usize>, sliding_share: f64) -> impl Strategy<Value = Arm> {
+    let rows = Just(TaskRow::ALL[..3].to_vec()).prop_shuffle();
+    (count.prop_flat_map(move |n| vec(joint(sliding_share), n)), rows, prop::bool::weighted(0.7), 0.3..1.5f64).prop_map(
+        |(joints, rows, whole, length)| {
+            let n = joints.len();
+            let rows = if n >= 6 && whole { &TaskRow::ALL[..] } else { &rows[..n.min(3)] };
+            super::arm_with_length(joints, rows, length)
+        },
+    )
+}
+
 /// An arm of 1 to 9 joints of both kinds with joint values.
 pub fn any_arm() -> impl Strategy<Value = (Arm, Joints)> {
     with_posture(arm(1..=9usize, 0.25))
