@@ -2,14 +2,18 @@
 //! real tool and part, why something fails, and which change makes it right.
 //!
 //! The modules stand in layers; each may name only those above it in this list:
-//! [`units`], [`geometry`], [`arm`], [`program`].
+//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`program`], [`dynamics`], [`motion`], [`checks`], [`review`], [`files`],
+//! [`report`], [`cli`].
 
 pub mod arm;
 pub mod checks;
+pub mod cli;
 pub mod dynamics;
+pub mod files;
 pub mod geometry;
 pub mod kinematics;
 pub mod motion;
 pub mod program;
+pub mod report;
 pub mod review;
 pub mod units;

@@ -1,3 +1,7 @@
 //! The program that people start.
 
-fn main() {}
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    elbowroom::cli::run()
+}

@@ -195,6 +195,7 @@ fn spread(joints: &[Joint], index: usize) -> Joints {
 }
 
 /// Levenberg-Marquardt from one seed: the joint values reached, or where it got stuck.
+#[expect(clippy::result_large_err, reason = "on the stack either way, and called in the innermost search")]
 fn descend(arm: &Arm, tcp: &Pose, target: &Pose, seed: Joints) -> Result<Joints, (Joints, [f64; 6], f64)> {
     let (chain, task, n) = (arm.chain(), arm.task(), arm.len());
     let length = arm.characteristic_length().m;

@@ -5,6 +5,6 @@ mod explain;
 mod judged;
 mod not_checked;
 
-pub use explain::{Bar, Explanation, Label, Paragraph, doubt_text, explain, headline, no_finding};
+pub use explain::{Bar, Explanation, Label, Paragraph, check_words, doubt_text, explain, headline, no_finding, proof_text, wrap};
 pub use judged::Judged;
 pub use not_checked::not_checked;
