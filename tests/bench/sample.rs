@@ -102,7 +102,9 @@ fn yardstick(bencher: Bencher) {
             nalgebra::Matrix6::from_fn(|i, j| jacobian.columns()[j][i])
         })
         .collect();
-    bencher.counter(ItemsCount::new(POSTURES)).bench(|| matrices.iter().fold(0.0, |sum, m| sum + black_box(m).singular_values()[5]));
+    bencher
+        .counter(ItemsCount::new(POSTURES))
+        .bench(|| matrices.iter().fold(0.0, |sum, m| sum + black_box(m).singular_values()[5]));
 }
 
 /// The demo planned and surveyed with proof.
