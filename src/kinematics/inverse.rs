@@ -2,6 +2,7 @@ use crate::arm::{Arm, Joint, JointKind, Joints, MAX_JOINTS, Task};
 use crate::geometry::Pose;
 
 use super::error::{pose_error, within};
+use super::pieper::wrist_branches;
 use super::{Jacobian, Lu, Posture, smallest_singular_value};
 
 /// How exactly a pose must be reached, m. Far below what any arm repeats to.
@@ -13,9 +14,8 @@ const SAME_BRANCH: f64 = 1e-5;
 /// The search for branches ends when this many seeds in a row brought nothing new. Of 1,234 branches of 300 random six-joint arms
 /// none was missed so, and 2 with 80; a fixed number of 96 seeds missed 1 of 420.
 const QUIET: usize = 96;
-/// The same for arms with a spherical wrist, whose branches come in pairs, and for arms of three joints, which have at most four: of
-/// 2,064 branches of the former none was missed, nor with 24.
-const QUIET_PAIRS: usize = 32;
+/// The same for arms of three joints, which have at most four branches.
+const QUIET_FEW: usize = 32;
 /// Seeds tried where none reaches the pose.
 const SEEDS: usize = 96;
 /// Seeds tried at most.
@@ -83,23 +83,43 @@ pub fn reach(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Reached {
     }
 }
 
-/// Every branch that Levenberg-Marquardt finds from `near` and from postures spread evenly over the ranges (a fixed sequence, so
-/// the same input yields the same output), until a long row of postures has brought nothing new.
+/// Every branch, turned to the values nearest to `near`.
+///
+/// Arms with a spherical wrist: by Pieper's method, finished by Newton. Others: by Levenberg-Marquardt from `near` and from
+/// postures spread evenly over the ranges (a fixed sequence, so the same input yields the same output), until a long row of
+/// postures has brought nothing new.
 pub fn every_branch(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Branches {
     let mut branches = Branches { found: Vec::new(), miss: None };
-    let wrist = super::spherical_wrist(arm.chain()).is_some();
-    let keep = |branches: &mut Branches, q: Joints| {
-        let mut q = q;
+    if let Some(wrist) = super::spherical_wrist(arm.chain()) {
+        let last = target.then(&tcp.inverse()).then(&arm.chain().flange.inverse());
+        let closed = wrist_branches(arm.chain(), wrist, &last, near).unwrap_or_default();
+        for q in closed.into_iter().filter_map(|seed| descend(arm, tcp, target, seed).ok()) {
+            branches.keep(arm, near, q);
+        }
+        if !branches.found.is_empty() {
+            return branches;
+        }
+    }
+    search(arm, tcp, target, near, &mut branches);
+    branches
+}
+
+impl Branches {
+    /// Keeps a branch if it is new.
+    fn keep(&mut self, arm: &Arm, near: &Joints, mut q: Joints) -> bool {
         for ((value, joint), near) in q.iter_mut().zip(arm.joints()).zip(near.iter()) {
             *value = nearest_turn(joint, *value, *near);
         }
-        let known = branches.found.iter().any(|other| same_branch(arm, other, &q));
+        let known = self.found.iter().any(|other| same_branch(arm, other, &q));
         if !known {
-            branches.found.push(q);
+            self.found.push(q);
         }
         !known
-    };
-    let quiet = if wrist || arm.len() <= 3 { QUIET_PAIRS } else { QUIET };
+    }
+}
+
+fn search(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints, branches: &mut Branches) {
+    let quiet = if arm.len() <= 3 { QUIET_FEW } else { QUIET };
     let mut last_new = 0;
     for index in 0..=MOST_SEEDS {
         let endless = branches.found.len() > MOST_WAYS && index > SEEDS;
@@ -109,23 +129,12 @@ pub fn every_branch(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Bran
         let seed = if index == 0 { *near } else { spread(arm.joints(), index) };
         match descend(arm, tcp, target, seed) {
             Ok(q) => {
-                let new = keep(&mut branches, q);
-                if new {
+                if branches.keep(arm, near, q) {
                     last_new = index;
-                }
-                if new && wrist {
-                    // The same pose with the wrist turned over; polished, since the formula is exact only for an exact wrist.
-                    let mut over = q;
-                    over[3] += std::f64::consts::PI;
-                    over[4] = flipped(arm, &q);
-                    over[5] += std::f64::consts::PI;
-                    if let Ok(over) = descend(arm, tcp, target, over) {
-                        keep(&mut branches, over);
-                    }
                 }
                 // A redundant arm has endless branches: the nearest few are enough.
                 if arm.is_redundant() && branches.found.len() >= 8 {
-                    return branches;
+                    return;
                 }
             }
             Err(miss) => {
@@ -136,17 +145,6 @@ pub fn every_branch(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Bran
             }
         }
     }
-    branches
-}
-
-/// The value of the middle wrist joint that, with both others half a turn on, yields the same orientation: mirrored at the value
-/// where the outer axes are in line.
-fn flipped(arm: &Arm, q: &Joints) -> f64 {
-    let posture = Posture::at(arm.chain(), q);
-    let (a, b, c) = (posture.axis(3), posture.axis(4), posture.axis(5));
-    // Angle from the first to the last wrist axis about the middle one, as it stands.
-    let bend = b.dot(&a.cross(&c)).atan2(a.dot(&c));
-    q[4] - 2.0 * bend
 }
 
 fn same_branch(arm: &Arm, a: &Joints, b: &Joints) -> bool {
@@ -265,4 +263,69 @@ fn normal_equations(
             scaled.entries[..scaled.rows].iter().zip(task.rows()).map(|(row, &axis)| row[i] * weigh(axis, length, gap[axis])).sum();
     }
     (normal, pull)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::arm::{ArmData, Convention, Flange, Placement, Range};
+
+    fn arm_with_wrist(measures: [[f64; 3]; 3]) -> Arm {
+        let wrist = [[0.0, 90.0, 0.6], [0.0, -90.0, 0.0], [0.0, 0.0, 0.1]];
+        let joints = measures.iter().chain(&wrist).enumerate().map(|(j, &[a, alpha_deg, d])| Joint {
+            name: format!("J{j}"),
+            kind: JointKind::Revolute,
+            placement: Placement::Dh { convention: Convention::Classical, a, alpha_deg, d, theta_deg: 0.0 },
+            range: Range { low: -3.2, high: 3.2 },
+            rate: 3.0,
+            accel: 9.0,
+            torque: None,
+            brake: None,
+            link: None,
+        });
+        let data = ArmData {
+            name: "wrist".to_owned(),
+            joints: joints.collect(),
+            flange: Flange::default(),
+            characteristic_length: None,
+            task: None,
+        };
+        Arm::build(data).expect("sound")
+    }
+
+    /// Second route: the search from many seeds, which knows nothing of the closed form.
+    #[test]
+    fn the_closed_form_finds_what_the_search_finds() {
+        let shapes = [
+            [[0.15, -90.0, 0.4], [0.6, 0.0, 0.0], [0.12, -90.0, 0.0]],
+            [[0.0, -90.0, 0.4], [0.6, 0.0, 0.0], [0.0, -90.0, 0.0]],
+            [[0.0, -90.0, 0.4], [0.6, 0.0, 0.13], [0.02, -90.0, 0.05]],
+            [[0.2, 60.0, 0.1], [0.5, 35.0, 0.1], [0.1, -70.0, 0.2]],
+            [[0.4, 0.0, 0.3], [0.3, 90.0, 0.1], [0.1, -90.0, 0.2]],
+        ];
+        for (s, shape) in shapes.into_iter().enumerate() {
+            let arm = arm_with_wrist(shape);
+            for k in 0..12 {
+                let q = Joints::from_fn(6, |j| ((k * 7 + j * 5) as f64 * 1.3).sin() * 2.5);
+                let tcp = Pose { at: crate::geometry::V3::new(0.02, -0.01, 0.2), ..Pose::identity() };
+                let target = Posture::at(arm.chain(), &q).tcp(&tcp);
+                let closed = every_branch(&arm, &tcp, &target, &q);
+                let mut searched = Branches { found: Vec::new(), miss: None };
+                search(&arm, &tcp, &target, &q, &mut searched);
+                let missed = searched.found.iter().filter(|a| !closed.found.iter().any(|b| same_branch(&arm, a, b))).count();
+                assert_eq!(missed, 0, "shape {s}, posture {k}: {} of {}", closed.found.len(), searched.found.len());
+                assert!(closed.found.iter().any(|found| same_branch(&arm, found, &q)), "shape {s}, posture {k}");
+                assert!(closed.found.len() <= 8 && closed.found.len() >= searched.found.len());
+            }
+        }
+    }
+
+    #[test]
+    fn a_pose_beyond_reach_is_told_with_its_limit() {
+        let arm = arm_with_wrist([[0.15, -90.0, 0.4], [0.6, 0.0, 0.0], [0.12, -90.0, 0.0]]);
+        let target = Pose { at: crate::geometry::V3::new(3.0, 0.0, 0.5), ..Pose::identity() };
+        let Reached::No { sigma, gap, .. } = reach(&arm, &Pose::identity(), &target, &Joints::zeros(6)) else { panic!("beyond") };
+        assert!(Reached::at_limit(sigma), "{sigma}");
+        assert!(gap[0] > 1.0);
+    }
 }

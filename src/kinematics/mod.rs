@@ -7,6 +7,7 @@ mod forward;
 mod inverse;
 mod jacobian;
 mod linear;
+mod pieper;
 mod rates;
 mod singular;
 mod svd;
