@@ -63,7 +63,7 @@ fn chain_in_k(arm: &Arm, tcp: &Pose) -> SerialChain<f64> {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 200, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(chance::config(200))]
 
     #[test]
     fn forward_kinematics_and_jacobian_are_those_of_another_library((arm, q) in chance::any_arm(), tcp in chance::pose()) {
