@@ -58,7 +58,7 @@ fn potential(arm: &Arm, carried: &Carried, gravity: &V3, q: &Joints) -> f64 {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 200, max_global_rejects: 20_000, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(chance::config(200))]
 
     #[test]
     fn the_flange_stands_where_plain_matrix_products_put_it((arm, q) in chance::any_arm()) {

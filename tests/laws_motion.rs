@@ -5,9 +5,11 @@ mod stand;
 use std::cell::Cell;
 
 use elbowroom::arm::{Arm, Joints, TaskRow};
-use elbowroom::geometry::{Pose, V3, turn_about};
-use elbowroom::kinematics::{Posture, SingularKind, pose_error, singular_posture, smallest_singular_value, spherical_wrist};
-use elbowroom::motion::{Follower, Law, Path, Segment, Track};
+use elbowroom::geometry::{M3, Pose, V3, turn_about};
+use elbowroom::kinematics::{
+    Posture, Reached, SingularKind, pose_error, reach, singular_posture, smallest_singular_value, spherical_wrist,
+};
+use elbowroom::motion::{Follower, Instant, Law, Path, Segment, Track};
 use elbowroom::program::Carried;
 use proptest::prelude::*;
 use proptest::test_runner::TestRunner;
@@ -57,7 +59,7 @@ fn path_from(start: &Pose, (by, turn, arc): (V3, V3, bool)) -> Path {
 fn on_followed_paths(law: impl Fn(&Arm, &Segment, f64) -> Result<(), TestCaseError>) {
     let (all, followed) = (Cell::new(0), Cell::new(0));
     let case = (chance::with_posture(chance::following_arm(2..=9usize, 0.2)), chance::pose(), course(), 0.0..1.0f64);
-    let config = ProptestConfig { cases: 150, max_global_rejects: 20_000, failure_persistence: None, ..ProptestConfig::default() };
+    let config = chance::config(150);
     TestRunner::new(config)
         .run(&case, |((arm, q), tcp, course, at)| {
             prop_assume!(sigma(&arm, &tcp, &q) > 0.05);
@@ -96,8 +98,8 @@ fn the_arm_stands_where_the_path_says_all_along() {
 
 #[test]
 fn slope_and_bend_are_the_derivatives_of_the_joint_values() {
-    // Step of the fraction for differences of the joint values, which are exact to 1e-15, of fourth order (Abramowitz & Stegun, 25.3).
-    const H: f64 = 1e-3;
+    // Step of the fraction for differences of the joint values, which are exact to 1e-13, of fourth order (Abramowitz & Stegun, 25.3).
+    const H: f64 = 4e-3;
     on_followed_paths(|arm, segment, at| {
         // Within one cell, since a redundant arm's path is defined cell by cell.
         let nodes = &segment.track.nodes;
@@ -107,6 +109,8 @@ fn slope_and_bend_are_the_derivatives_of_the_joint_values() {
         let follower = Follower::of(arm, segment);
         let q = |by: f64| follower.at(u + by).expect("followed to its end").q;
         let m = follower.at(u).expect("followed to its end");
+        // Near a singular posture the path bends within a few steps, and differences say little.
+        prop_assume!(sigma(arm, &segment.carried.tcp, &m.q) > 0.1);
         let [a, b, c, d] = [q(-2.0 * H), q(-H), q(H), q(2.0 * H)];
         let size = 1.0 + m.slope.largest() + m.bend.largest();
         for j in 0..arm.len() {
@@ -114,28 +118,38 @@ fn slope_and_bend_are_the_derivatives_of_the_joint_values() {
             let bend = (-a[j] + 16.0 * b[j] - 30.0 * m.q[j] + 16.0 * c[j] - d[j]) / (12.0 * H * H);
             // The instant's derivatives are from before Newton's last step, of at most 1e-8; beyond that H⁴ times higher derivatives.
             prop_assert!(near(slope, m.slope[j], 1e-7 * size * size), "joint {}: {slope} {}", j + 1, m.slope[j]);
-            prop_assert!(near(bend, m.bend[j], 1e-6 * size * size), "joint {}: {bend} {}", j + 1, m.bend[j]);
+            prop_assert!(near(bend, m.bend[j], 2e-6 * size * size * size), "joint {}: {bend} {}", j + 1, m.bend[j]);
         }
         Ok(())
     });
 }
 
+/// Where the joint values jump between two instants, if they do: a steep stretch gets flatter when it is halved, a jump stays.
+fn jump(follower: &Follower, a: &Instant, b: &Instant) -> Option<f64> {
+    let du = b.u - a.u;
+    let moved = b.q.zip(&a.q, |b, a| b - a);
+    let even = a.slope.zip(&b.slope, |a, b| 0.5 * du * (a + b));
+    if moved.zip(&even, |moved, even| moved - even).largest() <= 0.01 {
+        return None;
+    }
+    if du < 1e-7 {
+        return (moved.largest() > 2e-3).then_some(a.u);
+    }
+    let middle = follower.at(0.5 * (a.u + b.u)).expect("followed to its end");
+    jump(follower, a, &middle).or_else(|| jump(follower, &middle, b))
+}
+
 #[test]
 fn the_joint_values_never_jump_along_a_path() {
-    const PARTS: usize = 200;
+    const PARTS: usize = 100;
     on_followed_paths(|arm, segment, _| {
         let follower = Follower::of(arm, segment);
         let mut before = follower.at(0.0).expect("followed");
         prop_assert!(all_near(&before.q, &segment.start, 1e-9));
         for part in 1..=PARTS {
-            let du = 1.0 / PARTS as f64;
-            let now = follower.at(part as f64 / PARTS as f64).expect("followed");
-            for j in 0..arm.len() {
-                let even = 0.5 * du * (before.slope[j] + now.slope[j]);
-                let kink = if arm.is_redundant() { du * (1.0 + before.slope.largest()) } else { 0.0 };
-                let slack = 1e-3 + du * du * before.bend[j].abs().max(now.bend[j].abs()) + kink;
-                prop_assert!(near(now.q[j] - before.q[j], even, slack), "part {part}, joint {}: {before:?} {now:?}", j + 1);
-            }
+            let Some(now) = follower.at(part as f64 / PARTS as f64) else { panic!("lost at part {part} of a followed path") };
+            let jump = jump(&follower, &before, &now);
+            prop_assert!(jump.is_none(), "at {jump:?}: {:?} {:?}", before.q, now.q);
             before = now;
         }
         prop_assert!(all_near(&before.q, &segment.end, 1e-9));
@@ -144,7 +158,7 @@ fn the_joint_values_never_jump_along_a_path() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig { cases: 300, max_global_rejects: 20_000, failure_persistence: None, ..ProptestConfig::default() })]
+    #![proptest_config(chance::config(300))]
 
     #[test]
     fn the_singular_posture_that_is_told_is_singular_and_as_far_as_told((arm, q) in chance::with_posture(chance::arm(2..=6usize, 0.2))) {
@@ -196,5 +210,77 @@ fn each_kind_of_singular_posture_is_called_by_its_name() {
         assert_eq!(close.kind, Some(kind), "{q:?}: {close:?}");
         assert!(close.distance < 0.12, "{close:?}");
         assert!(near(sigma(&six, &Pose::identity(), &close.posture), 0.0, 1e-6), "{close:?}");
+    }
+}
+
+/// Law: along a branch the sign of q5 stays, however near the wrist comes to its straight posture; only the branch beyond has the other.
+#[test]
+fn a_line_past_the_straight_wrist_does_not_change_to_the_branch_beyond() {
+    let six = stand::six_axes();
+    let straight = Posture::at(six.chain(), &degrees(&[0.0, 20.0, -40.0, 0.0, 0.0, 0.0]));
+    for off in [4.0, 2.0, 1.0, 0.5, 0.2, 0.1, 0.08, 0.06, -0.07, -0.3, -3.0f64] {
+        for way in [1.0, -1.0] {
+            // The tool keeps its direction, turned by `off` degrees upwards from the forearm's, while the forearm sweeps past it.
+            let axes = turn_about(&V3::y(), off.to_radians()) * straight.flange().axes;
+            let at = |y: f64| Pose { axes, at: straight.flange().at + V3::y() * y };
+            let near_by = degrees(&[0.0, 20.0, -40.0, 80.0, 15.0, -80.0]);
+            let Reached::Yes { q, .. } = reach(&six, &Pose::identity(), &at(-0.3 * way), &near_by) else { panic!("in reach") };
+            let segment = segment(&six, Path::line(at(-0.3 * way), &at(0.3 * way)), Pose::identity(), q);
+            assert!(segment.track.lost.is_none(), "{off}: {:?}", segment.track.lost);
+            let follower = Follower::of(&six, &segment);
+            let mut before = follower.at(0.0).expect("followed");
+            let mut least = f64::INFINITY;
+            for part in 1..=400 {
+                let now = follower.at(f64::from(part) / 400.0).expect("followed");
+                assert!(now.q[4].signum() == q[4].signum(), "{off} degrees past, part {part}: {:?}", now.q);
+                assert!(jump(&follower, &before, &now).is_none(), "{off} degrees past, part {part}");
+                least = least.min(now.q[4].abs());
+                before = now;
+            }
+            assert!((0.8..1.3).contains(&(least.to_degrees() / off.abs())), "{off}: {}", least.to_degrees());
+        }
+    }
+}
+
+/// Closed form: an arm that moves in one plane may pass the straight wrist, with q4 and q6 at rest and q5 through 0.
+#[test]
+fn a_line_in_the_arms_plane_passes_through_the_straight_wrist() {
+    let six = stand::six_axes();
+    let straight = Posture::at(six.chain(), &degrees(&[0.0, 20.0, -40.0, 0.0, 0.0, 0.0]));
+    let at = |z: f64| Pose { axes: straight.flange().axes, at: straight.flange().at + V3::z() * z };
+    // Not even halves, so that no node stands exactly on the singular posture.
+    let near_by = degrees(&[0.0, 25.0, -45.0, 0.0, 8.0, 0.0]);
+    let Reached::Yes { q, .. } = reach(&six, &Pose::identity(), &at(-0.1), &near_by) else { panic!("in reach") };
+    let segment = segment(&six, Path::line(at(-0.1), &at(0.137)), Pose::identity(), q);
+    assert!(segment.track.lost.is_none(), "{:?}", segment.track.lost);
+    let end = segment.end;
+    assert!(q[4] * end[4] < 0.0, "{q:?} {end:?}");
+    assert!(near(end[3], q[3], 1e-6) && near(end[5], q[5], 1e-6), "{q:?} {end:?}");
+    let follower = Follower::of(&six, &segment);
+    let passes = |part: u32| follower.at(f64::from(part) / 401.0).is_some();
+    assert!((0..=401).all(passes));
+}
+
+/// Law: two links of nearly one length that reach past their own base must fold and swing round by almost half a turn; they may not
+/// slip through to the posture with the elbow on the other side, which looks like going straight on.
+#[test]
+fn a_line_past_the_base_does_not_change_to_the_other_elbow() {
+    let two = arm(vec![turning(0.5, 0.0, 0.0), turning(0.499, 0.0, 0.0)], &[TaskRow::X, TaskRow::Y]);
+    for off in [0.0011, 0.0015, 0.002, 0.003, 0.005, 0.01, 0.03, 0.1] {
+        for end in [0.31, 0.4, 0.52, 0.7] {
+            let at = |x: f64| Pose { axes: M3::identity(), at: V3::new(x, off, 0.0) };
+            let Reached::Yes { q, .. } = reach(&two, &Pose::identity(), &at(-0.4), &degrees(&[90.0, 130.0])) else {
+                panic!("in reach")
+            };
+            let segment = segment(&two, Path::line(at(-0.4), &at(end)), Pose::identity(), q);
+            assert!(segment.track.lost.is_none(), "{off}: {:?}", segment.track.lost);
+            let sine = |q: &Joints| q[1].sin();
+            assert!(sine(&q) * sine(&segment.end) > 0.0, "{off} {end}: {q:?} {:?}", segment.end);
+            let follower = Follower::of(&two, &segment);
+            for part in 0..=997 {
+                let now = follower.at(f64::from(part) / 997.0).expect("followed");
+                assert!(sine(&q) * sine(&now.q) > 0.0, "{off} {end}, part {part}: {:?}", now.q);
+            }
+        }
     }
 }

@@ -8,8 +8,8 @@ use elbowroom::geometry::{M3, Pose, V3};
 use elbowroom::kinematics::{Lu, Reached, condition, invert, reach, singular_values, speed_left, stacked};
 use stand::screws::ScrewArm;
 use stand::{
-    all_near, arm, arm_with_length, degrees, determinant, jacobian, manipulability, near, poses_near, research_arm, sliding,
-    turning,
+    all_near, arm, arm_with_length, degrees, determinant, jacobian, manipulability, near, poses_near, research_arm, six_axes,
+    sliding, turning,
 };
 
 /// The package prints eight digits behind the point.
@@ -188,21 +188,6 @@ fn three_planar_links_are_isotropic_with_their_own_characteristic_length() {
     assert!(near(condition(&own, 3), 1.0, 1e-13), "{own:?}");
     // With any other length it is not, so the length is really used.
     assert!(condition(&singular(&arm_with_length(links, &rows, a), &q), 3) > 2.0);
-}
-
-/// The demo arm's axes (classical parameters of `recipes/arms/six-axis-12kg.toml`), an arm of our own.
-fn six_axes() -> elbowroom::arm::Arm {
-    arm(
-        vec![
-            turning(0.155, -90.0, 0.43),
-            turning(0.595, 0.0, 0.0),
-            turning(0.115, -90.0, 0.0),
-            turning(0.0, 90.0, 0.645),
-            turning(0.0, -90.0, 0.0),
-            turning(0.0, 0.0, 0.095),
-        ],
-        &[],
-    )
 }
 
 /// The closed form of a spherical wrist: a turn w across the lost direction asks q4' = w / tan q5, q6' = -w / sin q5.

@@ -2,6 +2,7 @@ use crate::arm::{Arm, Joints, MAX_JOINTS};
 use crate::geometry::Pose;
 use crate::kinematics::{Jacobian, Lu, Posture, drift, small_error, stacked};
 
+use super::track::CROSSING;
 use super::{Instant, Node, Path, Segment, Target};
 
 /// A follower walks a segment's path and says what the joints do at any fraction of it.
@@ -39,7 +40,21 @@ impl<'a> Follower<'a> {
         let node = self.nearest(u)?;
         let step = u - node.u;
         let guess = Joints::from_fn(node.q.len(), |j| node.q[j] + step * (node.slope[j] + 0.5 * step * node.bend[j]));
-        self.settle(&target, u, node, guess).or_else(|| self.settle(&target, u, node, node.q)).map(|(instant, _)| instant)
+        let narrow = self.cell_is_narrow(u);
+        [guess, node.q]
+            .into_iter()
+            .filter_map(|guess| self.settle(&target, u, node, guess))
+            .map(|(instant, _)| instant)
+            .find(|instant| narrow || instant.lu.is_some_and(|lu| lu.determinant().signum() == node.sense()))
+    }
+
+    /// Whether the joints move so little in the cell of `u` that the determinant may change its sign there.
+    fn cell_is_narrow(&self, u: f64) -> bool {
+        let next = self.nodes.partition_point(|node| node.u < u).clamp(1, self.nodes.len().max(2) - 1);
+        match (self.nodes.get(next - 1), self.nodes.get(next)) {
+            (Some(a), Some(b)) => a.q.zip(&b.q, |a, b| a - b).largest() <= CROSSING,
+            _ => true,
+        }
     }
 
     /// The rows that, besides the task's, make the motion definite at `u`: none unless the arm is redundant.

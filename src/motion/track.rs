@@ -1,6 +1,6 @@
 use crate::arm::{Arm, Joints, MAX_JOINTS};
 use crate::geometry::Pose;
-use crate::kinematics::{Jacobian, Posture, null_rows, smallest_singular_value};
+use crate::kinematics::{Jacobian, Lu, Posture, null_rows, smallest_singular_value, stacked};
 
 use super::{Follower, Path};
 
@@ -17,11 +17,17 @@ pub struct Node {
     pub bend: Joints,
     /// For a redundant arm the rows that make its motion definite in the cell from this node to the next.
     null: Vec<[f64; MAX_JOINTS]>,
+    /// Sign of the determinant of the stacked Jacobian with those rows.
+    sense: f64,
 }
 
 impl Node {
     pub(super) fn null_rows(&self) -> &[[f64; MAX_JOINTS]] {
         &self.null
+    }
+
+    pub(super) fn sense(&self) -> f64 {
+        self.sense
     }
 }
 
@@ -55,6 +61,10 @@ const SHORTEST: f64 = 1e-7;
 const MISS: f64 = 0.03;
 /// ... and by this share of the step made, so that a branch that turns sharply is taken in small steps.
 const MISS_SHARE: f64 = 0.2;
+/// The determinant keeps its sign along a branch. Where it changes between nodes the track either has jumped to the branch beyond a
+/// singular posture that the path only comes near to, or passes straight through one, as an arm does that moves in one plane. A step of
+/// the joints below this, rad or m, is too short to have jumped anything that matters.
+pub(super) const CROSSING: f64 = 1e-3;
 /// Cells of a redundant arm are at least this fine, since the path depends on them: a 32nd of it.
 const REDUNDANT_CELL: f64 = 1.0 / 32.0;
 /// Nodes of one track, at most.
@@ -99,8 +109,9 @@ fn lost(arm: &Arm, tcp: &Pose, u: f64, q: &Joints) -> Lost {
 
 fn first_node(arm: &Arm, path: &Path, tcp: &Pose, start: &Joints) -> Option<Node> {
     let zeros = Joints::zeros(start.len());
-    let bare = Node { u: 0.0, q: *start, slope: zeros, bend: zeros, null: rows(arm, tcp, start) };
-    node_at(arm, path, tcp, &bare, 0.0, *start).map(|(node, _)| node)
+    let (null, sense) = rows(arm, tcp, start);
+    let bare = Node { u: 0.0, q: *start, slope: zeros, bend: zeros, null, sense };
+    node_at(arm, path, tcp, &bare, 0.0, *start).map(|(node, ..)| node)
 }
 
 /// The node at `u` and how much of the allowed miss the prediction used; `None` if the step was too bold.
@@ -109,23 +120,26 @@ fn next_node(arm: &Arm, path: &Path, tcp: &Pose, node: &Node, u: f64) -> Option<
     let guess = Joints::from_fn(node.q.len(), |j| node.q[j] + step * (node.slope[j] + 0.5 * step * node.bend[j]));
     let moved = guess.zip(&node.q, |a, b| a - b).largest();
     let allowed = MISS.min(MISS_SHARE * moved + 1e-6);
-    let (next, miss) = node_at(arm, path, tcp, node, u, guess)?;
-    (miss <= allowed).then_some((next, miss / allowed))
+    let (next, miss, sense) = node_at(arm, path, tcp, node, u, guess)?;
+    let kept = sense == node.sense || next.q.zip(&node.q, |a, b| a - b).largest() <= CROSSING;
+    (kept && miss <= allowed).then_some((next, miss / allowed))
 }
 
-fn node_at(arm: &Arm, path: &Path, tcp: &Pose, cell: &Node, u: f64, guess: Joints) -> Option<(Node, f64)> {
+/// The node at `u`, how far the guess missed it, rad or m, and the determinant's sign there with the rows of `cell`.
+fn node_at(arm: &Arm, path: &Path, tcp: &Pose, cell: &Node, u: f64, guess: Joints) -> Option<(Node, f64, f64)> {
     let target = path.target(u)?;
     let (instant, miss) = Follower::on(arm, path, tcp, &[]).settle(&target, u, cell, guess)?;
-    let null = rows(arm, tcp, &instant.q);
-    Some((Node { u, q: instant.q, slope: instant.slope, bend: instant.bend, null }, miss))
+    let arrived = instant.lu?.determinant().signum();
+    let (null, sense) = if arm.is_redundant() { rows(arm, tcp, &instant.q) } else { (Vec::new(), arrived) };
+    Some((Node { u, q: instant.q, slope: instant.slope, bend: instant.bend, null, sense }, miss, arrived))
 }
 
-fn rows(arm: &Arm, tcp: &Pose, q: &Joints) -> Vec<[f64; MAX_JOINTS]> {
-    if !arm.is_redundant() {
-        return Vec::new();
-    }
+/// The null rows at `q`, none unless the arm is redundant, and the sign of the determinant of the Jacobian with them below.
+fn rows(arm: &Arm, tcp: &Pose, q: &Joints) -> (Vec<[f64; MAX_JOINTS]>, f64) {
     let posture = Posture::at(arm.chain(), q);
     let jacobian = Jacobian::at(arm.chain(), &posture, &posture.tcp(tcp).at);
     let count = arm.len() - arm.task().rows().len();
-    null_rows(&jacobian, arm.task(), arm.joints())[..count].to_vec()
+    let null = if count == 0 { Vec::new() } else { null_rows(&jacobian, arm.task(), arm.joints())[..count].to_vec() };
+    let sense = Lu::of(stacked(&jacobian, arm.task(), &null), arm.len()).determinant().signum();
+    (null, sense)
 }

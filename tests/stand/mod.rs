@@ -115,6 +115,21 @@ pub fn research_arm() -> Arm {
     arm(table.iter().map(|(a, alpha, d, mass, com)| weighing(turning(*a, *alpha, *d), *mass, *com)).collect(), &[])
 }
 
+/// The demo arm's axes (classical parameters of `recipes/arms/six-axis-12kg.toml`), an arm of our own.
+pub fn six_axes() -> Arm {
+    arm(
+        vec![
+            turning(0.155, -90.0, 0.43),
+            turning(0.595, 0.0, 0.0),
+            turning(0.115, -90.0, 0.0),
+            turning(0.0, 90.0, 0.645),
+            turning(0.0, -90.0, 0.0),
+            turning(0.0, 0.0, 0.095),
+        ],
+        &[],
+    )
+}
+
 /// The frames of all links and the flange's, by plain 4 x 4 products in the textbooks' order.
 pub fn plain_frames(joints: &[Joint], q: &[f64]) -> Vec<Matrix4<f64>> {
     let mut frame = Matrix4::identity();
