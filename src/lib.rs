@@ -2,11 +2,12 @@
 //! real tool and part, why something fails, and which change makes it right.
 //!
 //! The modules stand in layers; each may name only those above it in this list:
-//! [`units`], [`geometry`], [`arm`], [`program`].
+//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`dynamics`], [`program`], [`motion`], [`checks`], [`review`], [`files`].
 
 pub mod arm;
 pub mod checks;
 pub mod dynamics;
+pub mod files;
 pub mod geometry;
 pub mod kinematics;
 pub mod motion;

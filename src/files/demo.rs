@@ -1,0 +1,17 @@
+use super::{Opened, Source, read_arm, read_recipe};
+
+/// The demonstration cell that is built into the program, the same as `recipes/housing-transfer.toml`.
+pub fn demo() -> Opened {
+    let recipe_source = Source {
+        path: "housing-transfer.toml (built in)".to_owned(),
+        text: include_str!("../../recipes/housing-transfer.toml").to_owned(),
+    };
+    let arm_source = Source {
+        path: "six-axis-12kg.toml (built in)".to_owned(),
+        text: include_str!("../../recipes/arms/six-axis-12kg.toml").to_owned(),
+    };
+    // Both texts are part of the program; a test reads them.
+    let arm = read_arm(&arm_source.text, &arm_source.path).expect("the built-in arm file holds together");
+    let recipe = read_recipe(&recipe_source.text, &recipe_source.path, &arm).expect("the built-in recipe holds together");
+    Opened { recipe, arm, recipe_source, arm_source }
+}

@@ -1,0 +1,31 @@
+//! Reading arm files and recipes from TOML: everything that is wrong with a file is told at once, with line and column.
+//!
+//! A file is walked table by table. What can't be taken as it stands is complained about and replaced by a harmless stand-in, so
+//! that the walk goes on and the checks of [`Arm::build`](crate::arm::Arm::build) and
+//! [`Recipe::faults`](crate::program::Recipe::faults) can add what they find without repeating it.
+
+mod arm_file;
+mod body;
+mod cell;
+mod complaint;
+mod demo;
+mod heading;
+mod joint;
+mod opened;
+mod page;
+mod placed;
+mod position;
+mod raw;
+mod recipe_file;
+mod source;
+mod stand_in;
+mod table;
+mod value;
+mod waypoint;
+
+pub use arm_file::read_arm;
+pub use complaint::{Complaint, Rejected};
+pub use demo::demo;
+pub use opened::{Opened, open};
+pub use recipe_file::read_recipe;
+pub use source::Source;
