@@ -2,7 +2,7 @@
 //! real tool and part, why something fails, and which change makes it right.
 //!
 //! The modules stand in layers; each may name only those above it in this list:
-//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`dynamics`], [`program`], [`motion`], [`checks`], [`review`], [`files`].
+//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`dynamics`], [`program`], [`motion`], [`checks`], [`review`], [`files`], [`tui`].
 
 pub mod arm;
 pub mod checks;
@@ -13,4 +13,5 @@ pub mod kinematics;
 pub mod motion;
 pub mod program;
 pub mod review;
+pub mod tui;
 pub mod units;

@@ -4,7 +4,11 @@
 mod explain;
 mod judged;
 mod not_checked;
+mod recheck;
+mod session;
 
 pub use explain::{Bar, Explanation, Label, Paragraph, doubt_text, explain, headline, no_finding};
 pub use judged::Judged;
 pub use not_checked::not_checked;
+pub use recheck::{Progress, Recheck, Reply, Ticket};
+pub use session::Session;

@@ -1,0 +1,210 @@
+use crate::checks::Check;
+use crate::review::Session;
+
+use super::action::Action;
+use super::app::{App, Asking, Menu, Mode, Page, Pane, Question, Wish};
+use super::ask;
+use super::keys::BINDINGS;
+use super::layout::Layout;
+use super::phrases::check_word;
+use super::scene::refresh;
+use super::{click, page};
+
+/// Changes the app by an action. The only place where it changes.
+pub fn update(app: &mut App, action: Action) {
+    match action {
+        Action::Resize(width, height) => {
+            app.area.width = width;
+            app.area.height = height;
+        }
+        Action::Checking(progress) => app.progress = Some(progress),
+        Action::Judged(judged) => {
+            app.progress = None;
+            match &mut app.session {
+                Some(session) => session.renew(*judged),
+                None => {
+                    app.session = Some(Session::open(*judged));
+                    follow_finding(app);
+                }
+            }
+        }
+        asked => {
+            app.message = None;
+            by_mode(app, asked);
+        }
+    }
+    refresh(app);
+    page::hold_scroll(app);
+}
+
+fn by_mode(app: &mut App, action: Action) {
+    match (&mut app.mode, action) {
+        (_, Action::Quit) => app.wish = Wish::Quit,
+        (_, Action::Suspend) => app.wish = Wish::Suspend,
+        (Mode::Asking(_), action) => ask::answer(app, action),
+        (Mode::Menu(menu), Action::Up) => menu.chosen = menu.chosen.checked_sub(1).unwrap_or(menu.items.len() - 1),
+        (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
+        (Mode::Menu(menu), Action::Enter) => {
+            let action = menu.items.get(menu.chosen).map(|(_, action)| action.clone());
+            app.mode = Mode::Panes;
+            if let Some(action) = action {
+                in_panes(app, action);
+            }
+        }
+        (Mode::Page(_, scroll), Action::Up) => *scroll = scroll.saturating_sub(1),
+        (Mode::Page(_, scroll), Action::Down) => *scroll += 1,
+        (Mode::Page(_, scroll), Action::LeapBack) => *scroll = scroll.saturating_sub(10),
+        (Mode::Page(_, scroll), Action::LeapOn) => *scroll += 10,
+        (Mode::Page(_, scroll), Action::ToStart) => *scroll = 0,
+        (Mode::Page(_, scroll), Action::ToEnd) => *scroll = usize::MAX / 2,
+        (Mode::Page(..) | Mode::Menu(_), Action::Back) => app.mode = Mode::Panes,
+        (Mode::Page(Page::Why, _), Action::ReadWhy)
+        | (Mode::Page(Page::Help, _), Action::Help)
+        | (Mode::Page(Page::NotChecked, _), Action::NotChecked)
+        | (Mode::Page(..), Action::Enter) => app.mode = Mode::Panes,
+        // The explanation follows from finding to finding.
+        (Mode::Page(Page::Why, _), action @ (Action::Worst | Action::NextFinding | Action::PreviousFinding)) => {
+            in_panes(app, action);
+            app.mode = Mode::Page(Page::Why, 0);
+        }
+        (Mode::Page(..) | Mode::Menu(_), Action::Left | Action::Right | Action::Click(..)) => {}
+        (_, action) => {
+            app.mode = Mode::Panes;
+            in_panes(app, action);
+        }
+    }
+}
+
+fn in_panes(app: &mut App, action: Action) {
+    match action {
+        Action::Up => by_rows(app, -1),
+        Action::Down => by_rows(app, 1),
+        Action::Left => step(app, -1),
+        Action::Right => step(app, 1),
+        Action::LeapBack => step(app, -10),
+        Action::LeapOn => step(app, 10),
+        Action::ToStart => to_end(app, false),
+        Action::ToEnd => to_end(app, true),
+        Action::NextPane => app.pane = app.pane.next(),
+        Action::Back => app.pane = Pane::List,
+        Action::Enter => app.mode = Mode::Menu(actions(app)),
+        Action::Worst => find(app, Session::to_worst),
+        Action::NextFinding => find(app, Session::to_next_finding),
+        Action::PreviousFinding => find(app, Session::to_previous_finding),
+        Action::ReadWhy => app.mode = Mode::Page(Page::Why, 0),
+        Action::NotChecked => app.mode = Mode::Page(Page::NotChecked, 0),
+        Action::Help => app.mode = Mode::Page(Page::Help, 0),
+        Action::GoTo => app.mode = Mode::Asking(Asking { question: Question::GoTo, typed: String::new() }),
+        Action::Find => app.mode = Mode::Asking(Asking { question: Question::Find, typed: String::new() }),
+        Action::Span => app.chart.cycle = !app.chart.cycle,
+        Action::EveryJoint => app.chart.every_joint = !app.chart.every_joint,
+        Action::Show(check) => app.chart.check = check,
+        Action::NextQuantity => turn_quantity(app, 1),
+        Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
+        Action::Click(column, row) => click::click(app, column, row),
+        _ => {}
+    }
+}
+
+fn step(app: &mut App, steps: isize) {
+    if let Some(session) = &mut app.session {
+        session.step(steps);
+    }
+}
+
+fn to_end(app: &mut App, last: bool) {
+    let cycle = app.chart.cycle;
+    if let Some(session) = &mut app.session {
+        let time = if last { f64::INFINITY } else { 0.0 };
+        if cycle { session.to_time(time) } else { session.to_time_in_segment(time) }
+    }
+}
+
+fn by_rows(app: &mut App, rows: isize) {
+    match app.pane {
+        Pane::List => {
+            if let Some(session) = &mut app.session {
+                session.by_segments(rows);
+            }
+            follow_finding(app);
+        }
+        Pane::Why => app.why_scroll = app.why_scroll.saturating_add_signed(rows),
+        Pane::Joints => app.joint = app.joint.saturating_add_signed(rows).min(app.arm.len() - 1),
+        Pane::Chart => turn_quantity(app, rows),
+    }
+}
+
+fn turn_quantity(app: &mut App, by: isize) {
+    // Reach has no quantity.
+    let shown = &Check::ALL[1..];
+    let now = shown.iter().position(|check| *check == app.chart.check).unwrap_or(0) as isize;
+    app.chart.check = shown[(now + by).rem_euclid(shown.len() as isize) as usize];
+}
+
+fn find(app: &mut App, go: impl Fn(&mut Session) -> bool) {
+    let Some(session) = &mut app.session else { return };
+    if go(session) {
+        follow_finding(app);
+    } else {
+        app.message = Some("no findings".to_owned());
+    }
+}
+
+/// The joint and the chart show what the finding is about; without one, what is nearest to its reserve.
+pub(super) fn follow_finding(app: &mut App) {
+    let Some(session) = &app.session else { return };
+    let nearest = session.judged().survey.segments.get(session.cursor().segment).and_then(|survey| survey.nearest());
+    let (check, joint) = match session.finding() {
+        Some(finding) => (finding.check, finding.joint),
+        None => nearest.map_or((app.chart.check, None), |(result, peak)| (result.check, peak.joint)),
+    };
+    if check != Check::Reach {
+        app.chart.check = check;
+    }
+    app.joint = joint.unwrap_or(app.joint);
+}
+
+/// The actions for what is selected: those of the pane first.
+fn actions(app: &App) -> Menu {
+    let mut first = match app.pane {
+        Pane::Chart | Pane::Joints => vec![("choose what the chart shows".to_owned(), Action::ChooseQuantity)],
+        Pane::List | Pane::Why => vec![("read why, on the whole screen".to_owned(), Action::ReadWhy)],
+    };
+    let mut rest = Vec::new();
+    for binding in BINDINGS {
+        let moves = matches!(
+            binding.action,
+            Action::Left | Action::Right | Action::Up | Action::Down | Action::Enter | Action::Back | Action::NextQuantity
+        );
+        let leaps = matches!(binding.action, Action::LeapBack | Action::LeapOn | Action::ToStart | Action::ToEnd);
+        if moves || leaps || first.iter().any(|(hint, _)| hint == binding.hint) {
+            continue;
+        }
+        rest.push((binding.hint.to_owned(), binding.action.clone()));
+    }
+    if !matches!(app.pane, Pane::Chart | Pane::Joints) {
+        let before = rest.iter().position(|(_, action)| matches!(action, Action::Span)).unwrap_or(rest.len());
+        rest.insert(before, ("choose what the chart shows".to_owned(), Action::ChooseQuantity));
+    }
+    rest.push(("start of the segment or cycle".to_owned(), Action::ToStart));
+    // Quitting stands last, away from what is asked for often.
+    rest.sort_by_key(|(_, action)| matches!(action, Action::Quit));
+    first.append(&mut rest);
+    let number = app.judged().and_then(|judged| judged.plan.segments.get(app.segment())).map(|segment| segment.number());
+    let title = number.map_or_else(|| "Actions".to_owned(), |number| format!("Segment {number}"));
+    Menu { title, items: first, chosen: 0 }
+}
+
+fn quantities(app: &App) -> Menu {
+    let checks = &Check::ALL[1..];
+    Menu {
+        title: "The chart shows".to_owned(),
+        items: checks.iter().map(|check| (check_word(*check).to_owned(), Action::Show(*check))).collect(),
+        chosen: checks.iter().position(|check| *check == app.chart.check).unwrap_or(0),
+    }
+}
+
+/// The layout of the screen as it is now.
+pub(super) fn layout(app: &App) -> Layout {
+    Layout::of(app.area, app.pane, app.arm.len(), app.scene.bands.rows.len())
+}
