@@ -1,7 +1,7 @@
 use std::collections::HashSet;
 
 use crate::geometry::V3;
-use crate::units::{Dimension, Fault, Field, Measure};
+use crate::units::{Dimension, Fault, Field, Measure, tidy};
 
 use super::{Chain, Flange, Joint, JointKind, MAX_JOINTS, Placement, Task};
 
@@ -129,7 +129,7 @@ fn faults_of(data: &ArmData) -> Vec<Fault> {
     {
         faults.push(Fault::new(
             top.key("characteristic-length"),
-            format!("characteristic-length is {} mm; it must be at least {} mm", m * 1000.0, LEAST_LENGTH * 1000.0),
+            format!("characteristic-length is {} mm; it must be at least {} mm", tidy(m * 1000.0), LEAST_LENGTH * 1000.0),
         ));
     }
     match &data.task {
@@ -165,8 +165,12 @@ fn joint_faults(joint: &Joint, field: &Field) -> Vec<Fault> {
     let mut faults = Vec::new();
     let mut above_zero = |field: Field, what: &str, value: f64, of: Dimension| {
         if !(value.is_finite() && value > 0.0) {
-            let shown = Measure::si(value, of).shown();
-            let unit = of.ascii().replace("_s2", "/s²").replace("_s", "/s").replace("nm", "N·m");
+            let shown = tidy(Measure::si(value, of).shown());
+            let unit = match of {
+                Dimension::TurnRate => "deg/s",
+                Dimension::TurnAcceleration => "deg/s²",
+                other => other.sign(),
+            };
             faults.push(Fault::new(field, format!("{thing}: {what} is {shown} {unit}; it must be above 0")));
         }
     };
@@ -192,7 +196,7 @@ fn joint_faults(joint: &Joint, field: &Field) -> Vec<Fault> {
     }
     let range = joint.range;
     if !(range.low.is_finite() && range.high.is_finite() && range.low < range.high) {
-        let (low, high) = (joint.value(range.low).shown(), joint.value(range.high).shown());
+        let (low, high) = (tidy(joint.value(range.low).shown()), tidy(joint.value(range.high).shown()));
         faults
             .push(Fault::new(field.key("range"), format!("{thing}: range is [{low}, {high}]; the first must be below the second")));
     }

@@ -4,30 +4,137 @@ use crate::motion::Segment;
 use crate::program::Acceptance;
 use crate::units::{Measure, Room};
 
+use super::proof::{Covered, Effort, cover};
 use super::stretch::{finding, stretches, worst_of};
 use super::sweep::{Look, Sweep};
 use super::{
-    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Unproved, Verdict, holding, reach,
+    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, Unproved, Verdict, holding, reach,
 };
+
+/// One segment while it is judged.
+struct Case<'a> {
+    arm: &'a Arm,
+    index: usize,
+    segment: &'a Segment,
+    meter: &'a Meter<'a>,
+    gravity: V3,
+    sweep: Sweep<'a>,
+    after: Option<Look>,
+}
+
+/// How often a witness that the proof found sends the sweep back to look closer.
+const SECOND_LOOKS: usize = 3;
 
 /// Judges one segment by every check.
 pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Acceptance, gravity: V3) -> SegmentSurvey {
     let meter = Meter::of(arm, segment, criteria, gravity);
     let sweep = Sweep::of(arm, &meter, segment);
     let after = look_after_stop(&sweep, &meter, segment);
-    let mut findings = Vec::new();
-    let mut checks = Vec::new();
-    for check in Check::ALL {
-        let result = match check {
-            Check::Reach => judge_reach(index, segment, &mut findings),
-            _ => judge_channels(check, arm, index, segment, &meter, &sweep, after.as_ref(), &mut findings),
-        };
-        checks.push(result);
+    let mut case = Case { arm, index, segment, meter: &meter, gravity, sweep, after };
+    let (mut checks, mut findings) = case.look();
+    let mut tally = Tally::default();
+    for _ in 0..=SECOND_LOOKS {
+        let covered = case.prove(&checks);
+        tally.postures += covered.tally.postures;
+        tally.trials += covered.tally.trials;
+        if case.sweep.add(&covered.witnesses) {
+            // The proof came upon an instant that the sweep had missed.
+            (checks, findings) = case.look();
+            continue;
+        }
+        case.settle(&covered, &mut checks, &mut findings);
+        break;
     }
     findings.sort_by(Finding::order);
     let verdict = checks.iter().map(|result| result.verdict).max().unwrap_or(Verdict::Unproven);
-    let profile = profile(&meter, &sweep);
-    SegmentSurvey { segment: index, verdict, checks, findings, profile, looked_at: sweep.looks.len() }
+    let profile = profile(&meter, &case.sweep);
+    SegmentSurvey { segment: index, verdict, checks, findings, profile, looked_at: case.sweep.looks.len(), tally }
+}
+
+impl Case<'_> {
+    /// What samples show: results in which nothing bad is not yet proved.
+    fn look(&self) -> (Vec<CheckResult>, Vec<Finding>) {
+        let mut findings = Vec::new();
+        let checks = Check::ALL
+            .into_iter()
+            .map(|check| match check {
+                Check::Reach => judge_reach(self.index, self.segment, &mut findings),
+                _ => self.look_at(check, &mut findings),
+            })
+            .collect();
+        (checks, findings)
+    }
+
+    /// Proves every channel that samples show to be clear.
+    fn prove(&self, checks: &[CheckResult]) -> Covered {
+        if self.segment.trouble.is_some() {
+            return Covered::nothing();
+        }
+        let open = checks.iter().filter(|result| result.judged && result.proof == Proof::Open(Unproved::SamplesOnly));
+        let needs: Vec<usize> =
+            open.flat_map(|result| self.meter.slots(result.check)).filter(|&slot| self.meter.channel(slot).judged).collect();
+        cover(self.arm, self.segment, self.meter, self.gravity, &needs, Effort::default())
+    }
+
+    /// Writes what was proved into the results.
+    fn settle(&self, covered: &Covered, checks: &mut [CheckResult], findings: &mut Vec<Finding>) {
+        for result in checks.iter_mut().filter(|result| result.judged && result.proof == Proof::Open(Unproved::SamplesOnly)) {
+            let slots = self.meter.slots(result.check).filter(|&slot| self.meter.channel(slot).judged);
+            let stop = self.after.as_ref().filter(|_| result.check == Check::Holding);
+            let asked = slots
+                .map(|slot| Some(stop.map_or(0.0, |look| look.asked[slot]).max(covered.asked[slot]?)))
+                .try_fold(0.0f64, |most, asked| Some(most.max(asked?)));
+            let proved = if result.check == Check::Reach { covered.path.then_some(0.0) } else { asked };
+            match proved {
+                Some(asked) => result.proof = Proof::Proved(Room::fraction(1.0 - asked)),
+                None => {
+                    result.verdict = Verdict::Unproven;
+                    result.proof = Proof::Open(Unproved::BudgetSpent);
+                    findings.push(self.unproved(result.check, Unproved::BudgetSpent));
+                }
+            }
+        }
+    }
+
+    fn unproved(&self, check: Check, why: Unproved) -> Finding {
+        let [from, to] = [(0.0, 0.0), (self.segment.duration(), 1.0)].map(|(time, u)| Place { time, u });
+        Finding { segment: self.index, check, joint: None, verdict: Verdict::Unproven, from, to, kind: Kind::Unproved(why) }
+    }
+
+    fn look_at(&self, check: Check, findings: &mut Vec<Finding>) -> CheckResult {
+        let slots = self.meter.slots(check);
+        let judged = slots.clone().any(|slot| self.meter.channel(slot).judged) || check == Check::Holding;
+        let proof = Proof::Open(Unproved::SamplesOnly);
+        let mut result = CheckResult { check, judged, verdict: Verdict::Clear, proof, peaks: Vec::new() };
+        let after = self.after.as_ref().filter(|_| check == Check::Holding);
+        for slot in slots {
+            let channel = self.meter.channel(slot);
+            let mut found = stretches(&self.sweep, self.meter, slot, self.index);
+            if let Some(look) = after
+                && channel.judged
+                && channel.verdict(look.asked[slot]) != Verdict::Clear
+            {
+                let mut at_stop = finding(channel, self.index, look, slot, [look.place; 2], None);
+                if let Kind::Excess(excess) = &mut at_stop.kind {
+                    excess.after_stop = true;
+                }
+                found.push(at_stop);
+            }
+            result.verdict = found.iter().map(|finding| finding.verdict).fold(result.verdict, Verdict::max);
+            findings.extend(found);
+            result.peaks.extend(peak(self.meter, &self.sweep, after, slot));
+        }
+        if result.verdict != Verdict::Clear {
+            result.proof = Proof::Witness;
+        } else if judged && let Some(why) = why_unproven(check, self.arm, self.segment) {
+            result.verdict = Verdict::Unproven;
+            result.proof = Proof::Open(why);
+            if why != Unproved::NotFollowed {
+                findings.push(self.unproved(check, why));
+            }
+        }
+        result
+    }
 }
 
 fn judge_reach(index: usize, segment: &Segment, findings: &mut Vec<Finding>) -> CheckResult {
@@ -57,53 +164,6 @@ fn look_after_stop(sweep: &Sweep, meter: &Meter, segment: &Segment) -> Option<Lo
     let instant = sweep.instant(1.0).filter(|_| segment.followed_to() >= 1.0)?;
     let place = Place { time: segment.duration() + segment.dwell, u: 1.0 };
     Some(sweep.look_of(place, meter.read_with(&instant, 0.0, 0.0, carried)))
-}
-
-#[expect(clippy::too_many_arguments, reason = "the parts of one judgement, each of its own kind")]
-fn judge_channels(
-    check: Check,
-    arm: &Arm,
-    index: usize,
-    segment: &Segment,
-    meter: &Meter,
-    sweep: &Sweep,
-    after: Option<&Look>,
-    findings: &mut Vec<Finding>,
-) -> CheckResult {
-    let slots = meter.slots(check);
-    let judged = slots.clone().any(|slot| meter.channel(slot).judged) || check == Check::Holding;
-    let mut result =
-        CheckResult { check, judged, verdict: Verdict::Clear, proof: Proof::Open(Unproved::SamplesOnly), peaks: Vec::new() };
-    let after = after.filter(|_| check == Check::Holding);
-    for slot in slots {
-        let mut found = stretches(sweep, meter, slot, index);
-        if let Some(look) = after
-            && meter.channel(slot).verdict(look.asked[slot]) != Verdict::Clear
-        {
-            let mut at_stop = finding(meter.channel(slot), index, look, slot, [look.place; 2], None);
-            if let Kind::Excess(excess) = &mut at_stop.kind {
-                excess.after_stop = true;
-            }
-            found.push(at_stop);
-        }
-        result.verdict = found.iter().map(|finding| finding.verdict).fold(result.verdict, Verdict::max);
-        findings.extend(found);
-        result.peaks.extend(peak(meter, sweep, after, slot));
-    }
-    if result.verdict != Verdict::Clear {
-        result.proof = Proof::Witness;
-    } else if !judged {
-        return result;
-    } else if let Some(why) = why_unproven(check, arm, segment) {
-        result.verdict = Verdict::Unproven;
-        result.proof = Proof::Open(why);
-        if why != Unproved::NotFollowed {
-            let [from, to] = [(0.0, 0.0), (segment.duration(), 1.0)].map(|(time, u)| Place { time, u });
-            let kind = Kind::Unproved(why);
-            findings.push(Finding { segment: index, check, joint: None, verdict: Verdict::Unproven, from, to, kind });
-        }
-    }
-    result
 }
 
 fn why_unproven(check: Check, arm: &Arm, segment: &Segment) -> Option<Unproved> {

@@ -1,6 +1,6 @@
 use crate::units::{Measure, Room};
 
-use super::{Check, Finding, Verdict};
+use super::{Check, Finding, Tally, Verdict};
 
 /// A place is one instant of a segment.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -103,6 +103,8 @@ pub struct SegmentSurvey {
     pub profile: Profile,
     /// How many instants were looked at.
     pub looked_at: usize,
+    /// How the proof went.
+    pub tally: Tally,
 }
 
 impl SegmentSurvey {

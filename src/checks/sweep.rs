@@ -77,6 +77,22 @@ impl<'a> Sweep<'a> {
         self.follower.at(u)
     }
 
+    /// Adds looks at witnesses (fraction and time) and looks closer around them; false if there are none.
+    pub fn add(&mut self, witnesses: &[(f64, f64)]) -> bool {
+        let mut added = false;
+        for &(_, time) in witnesses {
+            let piece = self.segment.law.pieces().iter().position(|piece| time <= piece.start + piece.duration);
+            let look = piece.and_then(|piece| self.look(piece, time - self.piece_start(piece)));
+            self.looks.extend(look);
+            added |= look.is_some();
+        }
+        if added {
+            self.looks.sort_by(|a, b| a.place.time.total_cmp(&b.place.time));
+            self.look_closer();
+        }
+        added
+    }
+
     fn look_evenly(&mut self) {
         for (index, piece) in self.segment.law.pieces().iter().enumerate() {
             let count = (EVEN_LOOKS * (piece.end() - piece.u)).max(LEAST_LOOKS).ceil() as usize;

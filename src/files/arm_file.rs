@@ -104,9 +104,77 @@ fn wrist_limit(table: &Table<'_>, joints: &[Joint], nameless: bool) -> WristLimi
         let names = if known.is_empty() { "no joints".to_owned() } else { known.join(", ") };
         table.complain("joint", format_args!("there is no joint \"{name}\"; there are {names}"));
     }
-    WristLimit {
-        joint: joint.unwrap_or(0),
-        moment: table.number("moment", "N·m"),
-        inertia: table.maybe_number("inertia"),
+    WristLimit { joint: joint.unwrap_or(0), moment: table.number("moment", "N·m"), inertia: table.maybe_number("inertia") }
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::arm::Placement;
+    use crate::geometry::{Rotation, V3};
+
+    use super::*;
+
+    const SLIDE: &str = r#"
+elbowroom-arm = 1
+name = "Turn and slide"
+task = "x y"
+
+[[joint]]
+name = "turn"
+kind = "revolute"
+place = { xyz = [0, 0, 250], rpy = [0, 90, 0] }
+axis = [0, 0.707, 0.707]
+range = [-90, 180]
+rate = 45
+accel = 360
+torque = { holding = 50, peak = 80, grounds = "guess" }
+brake = 60
+link = { mass = 2, com = [10, 0, -20], inertia = [2, 2, 3, 0.1, 0.2, 0.3], grounds = "weighed" }
+
+[[joint]]
+name = "slide"
+kind = "prismatic"
+place = { xyz = [500, 0, 0] }
+axis = [1, 0, 0]
+range = [0, 400]
+rate = 900
+accel = 4000
+
+[flange]
+rated-load = 3
+wrist = [{ joint = "turn", moment = 9 }]
+"#;
+
+    #[test]
+    fn numbers_become_si_by_the_kind_of_joint() {
+        let arm = read_arm(SLIDE, "slide.toml").expect("it reads");
+        let [turn, slide] = arm.joints() else { panic!("two joints") };
+        let half_turn = std::f64::consts::PI;
+        assert!((turn.range.high - half_turn).abs() < 1e-15 && (turn.rate - half_turn / 4.0).abs() < 1e-15);
+        assert!((turn.accel - 2.0 * half_turn).abs() < 1e-14);
+        assert_eq!((slide.range.high, slide.rate, slide.accel), (0.4, 0.9, 4.0));
+        let body = turn.link.expect("a link");
+        assert_eq!((body.mass, body.com), (2.0, V3::new(0.01, 0.0, -0.02)));
+        let tensor = body.inertia.expect("a tensor");
+        assert_eq!((tensor[(0, 1)], tensor[(2, 0)], tensor[(1, 2)], tensor[(2, 2)]), (0.1, 0.2, 0.3, 3.0));
+        assert_eq!(turn.torque.map(|torque| (torque.holding, torque.peak)), Some((50.0, Some(80.0))));
+        assert_eq!((slide.torque, slide.link), (None, None));
+        assert_eq!(arm.flange().wrist[0].joint, 0);
+        assert_eq!(arm.task().words(), "x y");
+    }
+
+    #[test]
+    fn an_axis_typed_with_three_digits_becomes_a_unit_vector() {
+        let arm = read_arm(SLIDE, "slide.toml").expect("it reads");
+        let Placement::Axis { place, axis } = arm.joints()[0].placement else { panic!("placed by its axis") };
+        assert!((axis.norm() - 1.0).abs() < 1e-15);
+        assert!((place.axes - Rotation::from_rpy_deg([0.0, 90.0, 0.0]).matrix()).norm() < 1e-15);
+    }
+
+    #[test]
+    fn dh_parameters_keep_their_custom_and_their_degrees() {
+        let arm = read_arm(include_str!("../../recipes/arms/four-axis-rrpr.toml"), "four").expect("it reads");
+        let Placement::Dh { convention, a, alpha_deg, d, .. } = arm.joints()[2].placement else { panic!("placed by dh") };
+        assert_eq!((convention, a, alpha_deg, d), (Convention::Modified, 0.275, 180.0, 0.0));
     }
 }

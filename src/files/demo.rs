@@ -15,3 +15,21 @@ pub fn demo() -> Opened {
     let recipe = read_recipe(&recipe_source.text, &recipe_source.path, &arm).expect("the built-in recipe holds together");
     Opened { recipe, arm, recipe_source, arm_source }
 }
+
+#[cfg(test)]
+mod tests {
+    use crate::program::Arrive;
+
+    use super::*;
+
+    #[test]
+    fn the_built_in_demo_reads() {
+        let opened = demo();
+        assert_eq!(opened.recipe.waypoints.len(), 14);
+        assert_eq!(opened.arm.len(), 6);
+        assert!(opened.arm.has_masses());
+        assert_eq!(opened.recipe.load_before(3).map(|load| load.name.as_str()), Some("housing"));
+        assert_eq!(opened.recipe.load_after(11), None);
+        assert!(matches!(opened.recipe.waypoints[9].arrive, Some(Arrive::Line(_))));
+    }
+}

@@ -15,10 +15,9 @@ pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Conventi
         JointKind::Prismatic => ["mm", "mm/s", "mm/s²", "N"],
     };
     let si = |number: f64| number / kind.value().per_si();
-    let range = table.numbers("range", value_unit).map_or(Range { low: 0.0, high: 1.0 }, |[low, high]| Range {
-        low: si(low),
-        high: si(high),
-    });
+    let range = table
+        .numbers("range", value_unit)
+        .map_or(Range { low: 0.0, high: 1.0 }, |[low, high]| Range { low: si(low), high: si(high) });
     Joint {
         name,
         kind,
@@ -44,9 +43,7 @@ fn kind(table: &Table<'_>) -> JointKind {
     if !table.has("kind") {
         table.missing("kind", "it must be \"revolute\" or \"prismatic\"");
     }
-    table
-        .word("kind", &[("revolute", JointKind::Revolute), ("prismatic", JointKind::Prismatic)])
-        .unwrap_or(JointKind::Revolute)
+    table.word("kind", &[("revolute", JointKind::Revolute), ("prismatic", JointKind::Prismatic)]).unwrap_or(JointKind::Revolute)
 }
 
 fn placement(table: &Table<'_>, convention: Option<Convention>) -> Placement {

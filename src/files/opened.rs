@@ -34,7 +34,11 @@ pub fn open(path: &Path) -> Result<Opened, Rejected> {
     match (arm, arm_source) {
         (Some(arm), Some(arm_source)) => Ok(Opened { recipe, arm, recipe_source, arm_source }),
         // A recipe that names no arm file has been rejected above, unless its text is only blanks.
-        _ => Err(complaint_at_arm(&recipe_source.text, &recipe_source.path, "recipe: arm is empty; it must be the path of an arm file")),
+        _ => Err(complaint_at_arm(
+            &recipe_source.text,
+            &recipe_source.path,
+            "recipe: arm is empty; it must be the path of an arm file",
+        )),
     }
 }
 

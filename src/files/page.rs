@@ -1,4 +1,5 @@
 use std::cell::RefCell;
+use std::collections::HashSet;
 
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
@@ -14,10 +15,12 @@ pub(super) struct Page<'a> {
     source: &'a str,
     lines: Lines<'a>,
     root: &'a DeTable<'a>,
-    /// Byte offset and text of each complaint so far.
-    complaints: RefCell<Vec<(usize, String)>>,
+    /// Byte offset and text of each complaint so far. A set, since a file of a hundred thousand waypoints can have as many faults.
+    complaints: RefCell<HashSet<(usize, String)>>,
     /// What has been complained about: later checks have a stand-in there, and nothing to say about it.
-    bad: RefCell<Vec<Field>>,
+    bad: RefCell<HashSet<Field>>,
+    /// The arrays of tables of which not every name is known.
+    nameless: RefCell<HashSet<String>>,
 }
 
 /// The text without a byte order mark, which some editors put at its start.
@@ -36,7 +39,14 @@ pub(super) fn parse<'a>(text: &'a str, source: &str) -> Result<Spanned<DeTable<'
 
 impl<'a> Page<'a> {
     pub(super) fn new(text: &'a str, source: &'a str, root: &'a DeTable<'a>) -> Self {
-        Self { source, lines: Lines::of(text), root, complaints: RefCell::default(), bad: RefCell::default() }
+        Self {
+            source,
+            lines: Lines::of(text),
+            root,
+            complaints: RefCell::default(),
+            bad: RefCell::default(),
+            nameless: RefCell::default(),
+        }
     }
 
     /// The whole file as a table, called `thing` in complaints.
@@ -46,30 +56,31 @@ impl<'a> Page<'a> {
 
     /// Notes a complaint at a byte offset.
     pub(super) fn complain(&self, offset: usize, says: String) {
-        let complaint = (offset, says);
-        let mut complaints = self.complaints.borrow_mut();
-        if !complaints.contains(&complaint) {
-            complaints.push(complaint);
-        }
+        self.complaints.borrow_mut().insert((offset, says));
     }
 
     /// Notes that a stand-in is used for this field.
     pub(super) fn mark_bad(&self, field: Field) {
-        self.bad.borrow_mut().push(field);
+        let section = match field.0.as_slice() {
+            [Step::Key(section)] | [Step::Key(section), Step::Item(_)] => Some(section),
+            [Step::Key(section), Step::Item(_), Step::Key(name)] if name == "name" => Some(section),
+            _ => None,
+        };
+        if let Some(section) = section {
+            self.nameless.borrow_mut().insert(section.clone());
+        }
+        self.bad.borrow_mut().insert(field);
     }
 
     /// Whether a field, or something that it is a part of, has been complained about.
     pub(super) fn is_bad(&self, field: &Field) -> bool {
-        self.bad.borrow().iter().any(|bad| field.0.starts_with(&bad.0))
+        let bad = self.bad.borrow();
+        !bad.is_empty() && (0..=field.0.len()).any(|steps| bad.contains(&Field(field.0[..steps].to_vec())))
     }
 
     /// Whether any name in the tables under `key` is unknown, so that a reference to one can't be judged.
     pub(super) fn lacks_names(&self, key: &str) -> bool {
-        self.bad.borrow().iter().any(|bad| match bad.0.as_slice() {
-            [Step::Key(section)] | [Step::Key(section), Step::Item(_)] => section == key,
-            [Step::Key(section), Step::Item(_), Step::Key(name)] => section == key && name == "name",
-            _ => false,
-        })
+        self.nameless.borrow().contains(key)
     }
 
     /// Adds a fault that a check found in the data, unless it speaks of a stand-in.
@@ -100,8 +111,8 @@ impl<'a> Page<'a> {
 
     /// The complaints in the order in which they stand in the file, if there are any.
     pub(super) fn rejection(&self) -> Option<Rejected> {
-        let mut complaints = self.complaints.borrow().clone();
-        complaints.sort_by_key(|(offset, _)| *offset);
+        let mut complaints: Vec<_> = self.complaints.borrow().iter().cloned().collect();
+        complaints.sort();
         let complaints: Vec<_> = complaints
             .into_iter()
             .map(|(offset, says)| {

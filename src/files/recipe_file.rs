@@ -119,3 +119,50 @@ fn follows(page: &Page<'_>, fault: &Fault) -> bool {
 fn ends_with(fault: &Fault, key: &str) -> bool {
     matches!(fault.field.0.last(), Some(Step::Key(last)) if last == key)
 }
+
+#[cfg(test)]
+mod tests {
+    use crate::arm::Joints;
+    use crate::geometry::V3;
+    use crate::program::{Acceptance, Arrive, PushAxes, Taught};
+    use crate::units::Share;
+
+    use super::*;
+    use crate::files::{open, read_arm};
+
+    #[test]
+    fn what_a_recipe_leaves_out_is_usual() {
+        let arm = read_arm(include_str!("../../recipes/arms/three-axis-rrp.toml"), "arm").expect("it reads");
+        let text = "elbowroom-recipe = 1\nname = \"n\"\narm = \"a\"\n[acceptance]\nholding-reserve = 25\n\
+                    [[waypoint]]\nname = \"a\"\njoints = [90, 0, 500]\n\
+                    [[waypoint]]\nname = \"b\"\npose = { xyz = [700, 0, 700] }\narrive = \"joint\"\nshare = 50\n";
+        let recipe = read_recipe(text, "r", &arm).expect("it reads");
+        assert_eq!(recipe.acceptance, Acceptance { holding_reserve: Share::percent(25.0), ..Acceptance::default() });
+        assert_eq!(recipe.usual, crate::program::Usual::default());
+        assert_eq!(recipe.mount, crate::geometry::Pose::identity());
+        assert!(recipe.tools.is_empty() && recipe.carrying.is_none());
+        let right_angle = std::f64::consts::FRAC_PI_2;
+        assert_eq!(recipe.waypoints[0].taught, Taught::Joints(Joints::from_slice(&[right_angle, 0.0, 0.5])));
+        assert_eq!(recipe.waypoints[1].arrive, Some(Arrive::Joint { share: Some(Share::percent(50.0)), accel_share: None }));
+    }
+
+    #[test]
+    fn a_push_and_a_shown_pose_come_through() {
+        let recipe = open(std::path::Path::new("recipes/housing-transfer.toml")).expect("it opens").recipe;
+        let pass = &recipe.waypoints[6];
+        let push = pass.push.as_ref().expect("it pushes");
+        assert_eq!((push.force, push.torque, &push.axes), (V3::new(0.0, 0.0, 40.0), V3::zeros(), &PushAxes::Tool));
+        let (Some(shown), Taught::Pose { pose, .. }) = (&pass.shown, &pass.taught) else { panic!("both are given") };
+        assert!(((shown.at - pose.at).norm() - 0.012).abs() < 1e-12);
+    }
+
+    #[test]
+    fn an_orientation_reads_the_same_as_triple_and_as_quaternion() {
+        let recipe = open(std::path::Path::new("recipes/lid-placing.toml")).expect("it opens").recipe;
+        let turned = |index: usize| match &recipe.waypoints[index].taught {
+            Taught::Pose { pose, .. } => pose.rotation.expect("turned").matrix(),
+            Taught::Joints(_) => panic!("a pose"),
+        };
+        assert!((turned(2) - turned(5)).norm() < 1e-12);
+    }
+}

@@ -61,18 +61,27 @@ impl<'a> Table<'a> {
             if known.contains(&given) {
                 continue;
             }
-            let near = (given.chars().count() <= LONGEST_SLIP).then(|| nearest_word(given, known.iter().copied())).flatten();
-            let hint = match near {
+            let hint = match self.meant(given, known) {
                 Some(near) => {
-                    if !self.has(near) {
-                        self.page.mark_bad(self.field.key(near));
-                    }
+                    // Where tables of that key are there too, only their names are in doubt.
+                    let meant = self.field.key(near);
+                    self.page.mark_bad(if self.has(near) { meant.item(usize::MAX) } else { meant });
                     format!("did you mean \"{near}\"?")
                 }
                 None => format!("the keys here are {}", listed(known, "and", |key| (*key).to_owned())),
             };
             self.page.complain(key.span().start, format!("{}: unknown key {}; {hint}", self.thing, quoted(given)));
         }
+    }
+
+    /// The known key that was meant by `given`: one that is not there yet, or one that there may be several tables of.
+    fn meant(&self, given: &str, known: &[&'static str]) -> Option<&'static str> {
+        if given.chars().count() > LONGEST_SLIP {
+            return None;
+        }
+        let several = |key: &str| self.get(key).is_some_and(|value| value.get_ref().is_array());
+        let nearest = |wanted: &dyn Fn(&str) -> bool| nearest_word(given, known.iter().copied().filter(|key| wanted(key)));
+        nearest(&|key| !self.has(key)).or_else(|| nearest(&several))
     }
 
     /// Whether the key is there.
@@ -156,12 +165,17 @@ impl<'a> Table<'a> {
         (list.len() == items.len()).then_some(list)
     }
 
-    /// Text that must be there; `what` says what it must be.
+    /// Text that must be there and not empty; `what` says what it must be.
     pub(super) fn text(&self, key: &str, what: &str) -> Option<&'a str> {
         if !self.has(key) {
             self.missing(key, &format!("it must be {what}"));
         }
-        self.maybe_text(key)
+        let text = self.maybe_text(key)?;
+        if text.trim().is_empty() {
+            self.complain(key, format_args!("{key} is empty; it must be {what}"));
+            return None;
+        }
+        Some(text)
     }
 
     /// Text of a seemly length, without characters that can't be seen, that may be there; `None` also where it can't be taken.

@@ -56,6 +56,5 @@ fn shortened(text: &str) -> String {
 
 /// Whether a character steers a terminal, or reorders or hides what stands beside it.
 pub(super) fn is_unseen(c: char) -> bool {
-    c.is_control()
-        || matches!(c, '\u{200b}'..='\u{200f}' | '\u{2028}'..='\u{202e}' | '\u{2060}'..='\u{206f}' | '\u{feff}')
+    c.is_control() || matches!(c, '\u{200b}'..='\u{200f}' | '\u{2028}'..='\u{202e}' | '\u{2060}'..='\u{206f}' | '\u{feff}')
 }

@@ -15,8 +15,11 @@ pub struct Follower<'a> {
 
 /// Newton steps allowed from the nearest node.
 const STEPS: usize = 12;
-/// A Newton step below this (rad or m) leaves an error of its square: nothing in double precision.
-const LAST_STEP: f64 = 1e-8;
+/// A Newton step below this (rad or m) is not worth making.
+const LAST_STEP: f64 = 1e-11;
+/// Near a singular posture steps stop shrinking before that; after `PATIENCE` of them this is as good as it gets.
+const LAST_STEP_THERE: f64 = 1e-8;
+const PATIENCE: usize = 6;
 /// Newton must not leave its start by more than this, rad or m, or it may have changed branches.
 const FARTHEST: f64 = 0.5;
 
@@ -37,6 +40,11 @@ impl<'a> Follower<'a> {
         let step = u - node.u;
         let guess = Joints::from_fn(node.q.len(), |j| node.q[j] + step * (node.slope[j] + 0.5 * step * node.bend[j]));
         self.settle(&target, u, node, guess).or_else(|| self.settle(&target, u, node, node.q)).map(|(instant, _)| instant)
+    }
+
+    /// The rows that, besides the task's, make the motion definite at `u`: none unless the arm is redundant.
+    pub fn null_rows(&self, u: f64) -> Vec<[f64; MAX_JOINTS]> {
+        self.nearest(u).map_or_else(Vec::new, |node| node.null_rows().to_vec())
     }
 
     fn nearest(&self, u: f64) -> Option<&'a Node> {
@@ -90,8 +98,7 @@ impl<'a> Follower<'a> {
             if !size.is_finite() || size > FARTHEST {
                 return None;
             }
-            if size < LAST_STEP {
-                q.iter_mut().zip(&step).for_each(|(v, s)| *v += s);
+            if size < LAST_STEP || (count >= PATIENCE && size < LAST_STEP_THERE) {
                 return self.finish(target, u, q, posture, tcp, jacobian, lu).map(|instant| (instant, first));
             }
             q.iter_mut().zip(&step).for_each(|(v, s)| *v += s);
@@ -99,7 +106,7 @@ impl<'a> Follower<'a> {
         None
     }
 
-    /// Slopes and bends at joint values that are at most a last step away from `posture`.
+    /// Slopes and bends at the joint values that were found.
     #[expect(clippy::too_many_arguments, reason = "one evaluation's parts, handed over without copying them into a struct first")]
     fn finish(
         &self,

@@ -1,7 +1,7 @@
 use std::collections::HashSet;
 
 use crate::arm::{Arm, Joints};
-use crate::units::{Dimension, Fault, Field, Length, Measure, nearest_word};
+use crate::units::{Dimension, Fault, Field, Length, Measure, nearest_word, tidy};
 
 use super::{Arrive, BASE, Given, PushAxes, Recipe, Taught, Then, WORLD, Waypoint, frame_in_base};
 
@@ -39,8 +39,11 @@ impl Recipe {
                 format!("the recipe has {} waypoints; there must be at least 2 to move between", self.waypoints.len()),
             ));
         }
+        // Looked up once: in a recipe of a hundred thousand waypoints each may name another.
+        let mut before: HashSet<&str> = HashSet::new();
         for (index, waypoint) in self.waypoints.iter().enumerate() {
-            faults.extend(self.waypoint_faults(arm, index, waypoint));
+            faults.extend(self.waypoint_faults(arm, index, waypoint, &before));
+            before.insert(&waypoint.name);
         }
         faults
     }
@@ -75,7 +78,7 @@ impl Recipe {
         for (key, reserve) in
             [("rate-reserve", a.rate_reserve), ("accel-reserve", a.accel_reserve), ("holding-reserve", a.holding_reserve)]
         {
-            let percent = reserve.as_percent();
+            let percent = tidy(reserve.as_percent());
             if !(0.0..100.0).contains(&percent) {
                 faults.push(Fault::new(
                     field.key(key),
@@ -85,7 +88,10 @@ impl Recipe {
         }
         let mut not_negative = |key: &str, value: Measure| {
             if !(value.si.is_finite() && value.si >= 0.0) {
-                faults.push(Fault::new(field.key(key), format!("acceptance: {key} is {}; it must be 0 or more", value.shown())));
+                faults.push(Fault::new(
+                    field.key(key),
+                    format!("acceptance: {key} is {}; it must be 0 or more", tidy(value.shown())),
+                ));
             }
         };
         not_negative("range-least", a.range_least.measure());
@@ -115,7 +121,7 @@ impl Recipe {
         faults
     }
 
-    fn waypoint_faults(&self, arm: &Arm, index: usize, waypoint: &Waypoint) -> Vec<Fault> {
+    fn waypoint_faults(&self, arm: &Arm, index: usize, waypoint: &Waypoint, before: &HashSet<&str>) -> Vec<Fault> {
         let field = Field::top().key("waypoint").item(index);
         let thing = format!("waypoint {} \"{}\"", index + 1, waypoint.name);
         let mut faults = Vec::new();
@@ -129,7 +135,9 @@ impl Recipe {
                         format!("{thing}: pose gives no orientation (rpy or quaternion), which this arm's task needs"),
                     ));
                 }
-                if let Some(name) = near {
+                if let Some(name) = near
+                    && !before.contains(name.as_str())
+                {
                     let known = self.waypoints[..index].iter().map(|w| w.name.as_str());
                     faults.extend(unknown(field.key("near"), &thing, "waypoint before it", name, known));
                 }
@@ -294,11 +302,11 @@ fn not_above_zero(field: Field, thing: &str, key: &str, value: Measure) -> Optio
     if value.si.is_finite() && value.si > 0.0 {
         return None;
     }
-    Some(Fault::new(field, format!("{thing}: {key} is {}; it must be above 0", value.shown())))
+    Some(Fault::new(field, format!("{thing}: {key} is {}; it must be above 0", tidy(value.shown()))))
 }
 
 fn bad_share(field: Field, thing: &str, key: &str, share: Option<crate::units::Share>) -> Option<Fault> {
-    let percent = share?.as_percent();
+    let percent = tidy(share?.as_percent());
     if percent > 0.0 && percent <= 100.0 {
         return None;
     }

@@ -110,6 +110,14 @@ impl Measure {
     }
 }
 
+/// A number without the dust that converting units leaves (110.00000000000001), for text that quotes what a person wrote.
+pub fn tidy(value: f64) -> f64 {
+    format!("{value:.TIDY_DIGITS$e}").parse().unwrap_or(value)
+}
+
+/// Digits behind the first one that [`tidy`] keeps: far more than anyone writes, and three fewer than a double holds.
+const TIDY_DIGITS: usize = 12;
+
 /// Slack in the last shown digit, so that 66.0 computed as 65.999999999 still reads 66.
 const ROUNDING_SLACK: f64 = 1e-6;
 
@@ -159,6 +167,15 @@ mod tests {
         assert_eq!(speed.text_up(0), "233 mm/s");
         assert_eq!(Measure::si(0.066, Dimension::Length).text_down(0), "66 mm");
         assert_eq!(Measure::si(0.066, Dimension::Length).text_up(0), "66 mm");
+    }
+
+    #[test]
+    fn what_a_person_wrote_comes_back_without_dust() {
+        for written in [15.0, 0.1, -115.0, 1001.0, 1e-7, 123_456.789] {
+            let there_and_back = Measure::si(written / Dimension::Angle.per_si(), Dimension::Angle).shown();
+            assert_eq!(tidy(there_and_back), written);
+        }
+        assert!(tidy(f64::NAN).is_nan() && tidy(f64::INFINITY).is_infinite());
     }
 
     #[test]

@@ -10,7 +10,7 @@ mod near;
 mod room;
 
 pub use fault::{Fault, Field, Step};
-pub use measure::{Dimension, Measure};
+pub use measure::{Dimension, Measure, tidy};
 pub use named::{Acceleration, Angle, Force, Length, Mass, Seconds, Share, Speed, Torque, TurnAcceleration, TurnRate};
 pub use near::nearest_word;
 pub use room::Room;

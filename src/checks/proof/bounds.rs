@@ -1,0 +1,161 @@
+use crate::arm::{Arm, MAX_JOINTS};
+use crate::checks::channel::{CHANNELS, Channel, Scale};
+use crate::checks::{Check, Meter};
+use crate::geometry::V3;
+
+use super::ball::{Ball, Moving, Slope};
+use super::leaf::{Leaf, Middle, Row};
+use super::view::{Motion, View};
+
+/// How the fraction runs with time over a stretch: on one piece of the law, where its acceleration is constant and its squared
+/// rate runs evenly.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Pace {
+    /// Squared rate in the middle, 1/s².
+    pub rate_squared: f64,
+    /// Acceleration, 1/s².
+    pub accel: f64,
+}
+
+impl Pace {
+    /// The greatest squared rate over a stretch of half-width `half`.
+    fn most_squared(self, half: f64) -> f64 {
+        (self.rate_squared + 2.0 * self.accel.abs() * half).max(0.0)
+    }
+}
+
+/// What every needed channel asks at most over a stretch.
+pub(super) type Asked = [f64; CHANNELS];
+
+/// Outward margin of a bound as a share of the limit: more than the middle's own rounding and slack can amount to.
+const MARGIN: f64 = 1e-10;
+
+/// What a largest size asks of a ceiling; an open channel asks nothing.
+fn asked_of(channel: &Channel, most: f64) -> f64 {
+    match channel.scale {
+        Scale::Ceiling(limit) => most / limit + MARGIN,
+        Scale::Within { half, .. } => most / half + MARGIN,
+        Scale::Floor(_) | Scale::Open => 0.0,
+    }
+}
+
+/// Bounds over a stretch of a line or arc. Slots not in `needs` stay 0.
+pub(super) fn on_path(meter: &Meter, needs: &[usize], middle: &Middle, leaf: &Leaf, pace: Pace) -> Asked {
+    let h = leaf.half;
+    let fastest_squared = pace.most_squared(h);
+    let fastest = fastest_squared.sqrt();
+    let mut asked = [0.0; CHANNELS];
+    let wants = |check: Check| meter.slots(check).any(|slot| needs.contains(&slot));
+    let torque = wants(Check::Holding).then(|| middle.view.holding(&leaf.motion, &middle.slope, &leaf.slope_spread));
+    for &slot in needs {
+        let channel = meter.channel(slot);
+        let j = channel.joint.unwrap_or(0);
+        let (u, a, d) = (middle.slope[j], middle.bend[j], leaf.spread[j]);
+        asked[slot] = match channel.check {
+            Check::Range => {
+                let Scale::Within { middle: centre, .. } = channel.scale else { continue };
+                let off = middle.at.q[j] - centre;
+                let ends = (off + u * h + 0.5 * a * h * h).abs().max((off - u * h + 0.5 * a * h * h).abs());
+                // Between the ends a parabola may rise by what it bends; the rest is spread and slack.
+                asked_of(channel, ends + 0.5 * h * h * (a.abs() + d) + middle.slack[j])
+            }
+            Check::Rate => {
+                let most = (u + a * h).abs().max((u - a * h).abs()) + h * d + (leaf.slope_spread[j] - h * (a.abs() + d)).max(0.0);
+                asked_of(channel, most * fastest)
+            }
+            Check::Accel => {
+                let value = u * pace.accel + a * pace.rate_squared;
+                let change = 3.0 * a * pace.accel;
+                let most = (value + h * change).abs().max((value - h * change).abs());
+                asked_of(channel, most + d * (h * pace.accel.abs() + fastest_squared))
+            }
+            Check::Holding => asked_of(channel, torque.as_ref().expect("wanted")[j].most(h)),
+            Check::SpeedLeft => speed_left(channel, middle, leaf),
+            Check::TcpSpeed => asked_of(channel, middle.tcp_speed(leaf) * fastest),
+            Check::Singular | Check::Reach => 0.0,
+        };
+    }
+    if let Some(slot) = meter.slots(Check::Singular).find(|slot| needs.contains(slot)) {
+        let channel = meter.channel(slot);
+        let Scale::Floor(least) = channel.scale else { return asked };
+        // A yes or no: the least singular value allowed is kept throughout, or nothing is known.
+        asked[slot] =
+            if super::closeness::keeps(middle, leaf, least / (1.0 - channel.reserve)) { 1.0 - channel.reserve } else { 2.0 };
+    }
+    asked
+}
+
+/// The tool speed left: translation rows of the inverse Jacobian over the stretch, by their first-order part and a bound of the
+/// rest: `J⁻¹ = Y - F Y + F² J⁻¹` with `|F| <= h |Y J'| + rest`.
+fn speed_left(channel: &Channel, middle: &Middle, leaf: &Leaf) -> f64 {
+    let Scale::Floor(least) = channel.scale else { return 0.0 };
+    let n = middle.arm.len();
+    let h = leaf.half;
+    let error = |i: usize, j: usize| h * middle.first[i][j].abs() + leaf.rest[i][j];
+    // A bound b of the rows of J⁻¹: b >= yt + E b, found by iteration from below; E has spectral radius below 1.
+    let mut b: Row = std::array::from_fn(|i| middle.norms[i][0]);
+    for _ in 0..60 {
+        let next: Row = std::array::from_fn(|i| middle.norms[i][0] + (0..n).map(|j| error(i, j) * b[j]).sum::<f64>());
+        let settled = (0..n).all(|i| next[i] <= b[i] * (1.0 + 1e-6) + 1e-12);
+        b = next.map(|value| value * (1.0 + 1e-6) + 1e-12);
+        if settled {
+            break;
+        }
+        if !b[..n].iter().all(|value| value.is_finite()) {
+            return 2.0;
+        }
+    }
+    let closed = (0..n).all(|i| middle.norms[i][0] + (0..n).map(|j| error(i, j) * b[j]).sum::<f64>() <= b[i]);
+    if !closed {
+        return 2.0;
+    }
+    let eb: Row = std::array::from_fn(|i| (0..n).map(|j| error(i, j) * b[j]).sum::<f64>());
+    (0..n)
+        .map(|i| {
+            let change: V3 = (0..n).fold(V3::zeros(), |sum, j| sum + middle.y_moving[j] * middle.first[i][j]);
+            let row = middle.y_moving[i];
+            let ends = (row - change * h).norm().max((row + change * h).norm());
+            let rest: f64 = (0..n).map(|j| leaf.rest[i][j] * middle.norms[j][0] + error(i, j) * eb[j]).sum();
+            least * (ends + rest) / middle.arm.joints()[i].rate
+        })
+        .fold(0.0, f64::max)
+        + MARGIN
+}
+
+/// Bounds over a stretch of a joint move: only holding and TCP speed need any; the rest is exact by its ends.
+pub(super) fn on_joint_move(
+    arm: &Arm,
+    meter: &Meter,
+    needs: &[usize],
+    view: &View,
+    motion: &Motion,
+    slope: &Row,
+    half: f64,
+    pace: Pace,
+) -> Asked {
+    let mut asked = [0.0; CHANNELS];
+    let wants = |check: Check| meter.slots(check).any(|slot| needs.contains(&slot));
+    let torque = wants(Check::Holding).then(|| view.holding(motion, slope, &[0.0; MAX_JOINTS]));
+    for &slot in needs {
+        let channel = meter.channel(slot);
+        asked[slot] = match channel.check {
+            Check::Holding => {
+                let torque: &[Slope; MAX_JOINTS] = torque.as_ref().expect("wanted");
+                asked_of(channel, torque[channel.joint.unwrap_or(0)].most(half))
+            }
+            Check::TcpSpeed => {
+                let offset = view.tcp_offset(motion);
+                let twist = (0..arm.len()).fold(Moving::zero(), |sum, j| {
+                    let column = view.tcp_column(motion, &offset, j);
+                    let scaled = |ball: &Ball| ball.times(slope[j], 0.0);
+                    sum.plus(&Moving { at: scaled(&column.at), change: scaled(&column.change) })
+                });
+                let (v, c) = (twist.at.centre, twist.change.centre * half);
+                let most = (v + c).norm().max((v - c).norm()) + half * twist.change.radius;
+                asked_of(channel, most * pace.most_squared(half).sqrt())
+            }
+            _ => 0.0,
+        };
+    }
+    asked
+}

@@ -1,0 +1,334 @@
+use crate::arm::{Arm, MAX_JOINTS};
+use crate::checks::channel::CHANNELS;
+use crate::checks::{Check, Meter};
+use crate::geometry::V3;
+use crate::kinematics::{SphericalWrist, spherical_wrist};
+use crate::motion::{Follower, Instant, Segment};
+
+use super::border::{Enclosure, Joined, meet_at};
+use super::bounds::{Asked, Pace, on_joint_move, on_path};
+use super::leaf::{Middle, Row};
+use super::view::{Reference, View};
+
+/// How hard a proof may try.
+#[derive(Debug, Clone, Copy)]
+pub struct Effort {
+    /// Postures evaluated on one segment, at most.
+    pub postures: usize,
+    /// Bound trials at one posture, at most.
+    pub trials: usize,
+}
+
+impl Default for Effort {
+    fn default() -> Self {
+        Self { postures: 600, trials: 8 }
+    }
+}
+
+/// How a proof went.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub struct Tally {
+    /// Postures evaluated.
+    pub postures: usize,
+    /// Bound trials made.
+    pub trials: usize,
+}
+
+/// What a cover proved of a segment.
+#[derive(Debug, Clone)]
+pub(crate) struct Covered {
+    /// For each needed channel the most that it asks anywhere, if that is proved.
+    pub asked: [Option<f64>; CHANNELS],
+    /// Whether the joint path is proved to exist and to stay on one branch from the first posture to the last.
+    pub path: bool,
+    /// Instants (fraction and time) at which a needed channel is flagged: the sweep missed them.
+    pub witnesses: Vec<(f64, f64)>,
+    /// How it went.
+    pub tally: Tally,
+}
+
+impl Covered {
+    /// Nothing was tried.
+    pub fn nothing() -> Self {
+        Self { asked: [None; CHANNELS], path: false, witnesses: Vec::new(), tally: Tally::default() }
+    }
+}
+
+/// A stretch narrower than this is given up, in fractions of the path.
+const NARROWEST: f64 = 1e-7;
+
+/// Leaves reach this much farther than they are told, in fractions of the path, so that no seam of rounding stays between them.
+const SEAM: f64 = 1e-12;
+
+/// One stretch still to be covered, on one piece of the law and in one cell of the track.
+#[derive(Debug, Clone, Copy)]
+struct Gap {
+    from: f64,
+    to: f64,
+    piece: usize,
+}
+
+/// Proves what the channels in `needs` ask at most along a whole segment, which must have been followed to its end.
+pub(crate) fn cover(arm: &Arm, segment: &Segment, meter: &Meter, gravity: V3, needs: &[usize], effort: Effort) -> Covered {
+    let mut run = Run {
+        arm,
+        segment,
+        meter,
+        gravity,
+        follower: Follower::of(arm, segment),
+        wrist: spherical_wrist(arm.chain()),
+        needs: needs.to_vec(),
+        out: Covered::nothing(),
+        most: [0.0; CHANNELS],
+        joined: Vec::new(),
+        hint: 0.25,
+        effort,
+    };
+    run.take_exact();
+    if run.segment.duration() == 0.0 || (run.needs.is_empty() && !segment.follows_path()) {
+        run.out.path = true;
+    } else {
+        run.cover_all();
+    }
+    for slot in run.needs {
+        run.out.asked[slot] = Some(run.most[slot]);
+    }
+    run.out
+}
+
+struct Run<'a> {
+    arm: &'a Arm,
+    segment: &'a Segment,
+    meter: &'a Meter<'a>,
+    gravity: V3,
+    follower: Follower<'a>,
+    wrist: Option<SphericalWrist>,
+    needs: Vec<usize>,
+    out: Covered,
+    most: Asked,
+    joined: Vec<Joined>,
+    hint: f64,
+    effort: Effort,
+}
+
+impl Run<'_> {
+    /// On a joint move each joint runs one way, so range, rate and acceleration are exact by ends and corners; without motion
+    /// everything is.
+    fn take_exact(&mut self) {
+        let still = self.segment.duration() == 0.0;
+        if !still && self.segment.follows_path() {
+            return;
+        }
+        let Some([start, end]) = self.ends() else { return };
+        let corners: Vec<[f64; 2]> =
+            self.segment.law.pieces().iter().flat_map(|p| [[p.rate, p.accel], [p.at(p.duration)[1], p.accel]]).collect();
+        let exact = |slot: &usize| still || matches!(self.meter.channel(*slot).check, Check::Range | Check::Rate | Check::Accel);
+        let (taken, left): (Vec<usize>, Vec<usize>) = self.needs.iter().copied().partition(exact);
+        for at in [&start, &end] {
+            for &[rate, accel] in if still { &[[0.0, 0.0]][..] } else { &corners[..] } {
+                let reading = self.meter.read(at, rate.max(0.0), accel);
+                for &slot in &taken {
+                    let asked = self.meter.channel(slot).asked(reading[slot]);
+                    let most = self.out.asked[slot].get_or_insert(0.0);
+                    *most = most.max(asked);
+                }
+            }
+        }
+        self.needs = left;
+    }
+
+    fn ends(&self) -> Option<[Instant; 2]> {
+        Some([self.follower.at(0.0)?, self.follower.at(1.0)?])
+    }
+
+    fn cover_all(&mut self) {
+        let mut gaps = self.gaps();
+        while let Some(gap) = gaps.pop() {
+            let (half, middle) = (0.5 * (gap.to - gap.from), 0.5 * (gap.from + gap.to));
+            let half = if self.out.tally.postures < self.effort.postures { self.try_at(middle, half, gap.piece) } else { None };
+            let Some(half) = half else {
+                // Nothing is proved any more for what is still needed.
+                self.needs.clear();
+                return;
+            };
+            for rest in [Gap { to: middle - half, ..gap }, Gap { from: middle + half, ..gap }] {
+                if rest.to - rest.from > SEAM {
+                    gaps.push(rest);
+                }
+            }
+        }
+        self.out.path = !self.segment.follows_path() || self.is_one_branch();
+        if !self.out.path {
+            self.needs.clear();
+        }
+    }
+
+    /// The segment cut at the corners of its law and, for a redundant arm, at the nodes of its track.
+    fn gaps(&self) -> Vec<Gap> {
+        let mut gaps = Vec::new();
+        for (index, piece) in self.segment.law.pieces().iter().enumerate() {
+            let (from, to) = (piece.u.clamp(0.0, 1.0), piece.end().clamp(0.0, 1.0));
+            let mut cuts = vec![from];
+            if self.arm.is_redundant() {
+                cuts.extend(self.segment.track.nodes.iter().map(|node| node.u).filter(|u| *u > from && *u < to));
+            }
+            cuts.push(to);
+            gaps.extend(cuts.windows(2).filter(|w| w[1] > w[0]).map(|w| Gap { from: w[0], to: w[1], piece: index }));
+        }
+        gaps.reverse();
+        gaps
+    }
+
+    /// The largest half-width proved at `u`, at most `whole`; `None` if even the narrowest stretch can't be.
+    fn try_at(&mut self, u: f64, whole: f64, piece: usize) -> Option<f64> {
+        self.out.tally.postures += 1;
+        let piece = self.segment.law.pieces()[piece];
+        let instant = self.follower.at(u)?;
+        let [_, rate, accel] = piece.at(piece.time_of(u));
+        let pace = Pace { rate_squared: rate * rate, accel };
+        let reading = self.meter.read(&instant, rate.max(0.0), accel);
+        let mut flagged = false;
+        self.needs.retain(|&slot| {
+            let channel = self.meter.channel(slot);
+            let clear = channel.asked(reading[slot]) <= channel.flagged_above();
+            flagged |= !clear;
+            clear
+        });
+        if flagged {
+            self.out.witnesses.push((u, piece.start + piece.time_of(u)));
+        }
+        if self.segment.follows_path() { self.try_path(&instant, whole, pace) } else { self.try_joint(&instant, whole, pace) }
+    }
+
+    fn view(&self, at: &Instant, viewer: usize) -> View<'_> {
+        let reference = match (self.wrist, self.arm.task().is_whole() && self.arm.len() >= 6) {
+            (Some(wrist), _) => Reference::InLastLink(wrist.centre),
+            (None, true) => Reference::NearLastAxes,
+            (None, false) => Reference::Tcp,
+        };
+        View::of(self.arm.chain(), at, &self.segment.carried, self.segment.push, self.gravity, reference, viewer)
+    }
+
+    fn try_joint(&mut self, at: &Instant, whole: f64, pace: Pace) -> Option<f64> {
+        let mut slope: Row = [0.0; MAX_JOINTS];
+        slope[..at.slope.len()].copy_from_slice(&at.slope);
+        let none = [0.0; MAX_JOINTS];
+        let mut half = whole;
+        let view = self.view(at, 0);
+        let mut trials = 0;
+        let found = loop {
+            trials += 1;
+            let motion = view.motion(&slope, &none, half + SEAM, 1e-15);
+            let asked = on_joint_move(self.arm, self.meter, &self.needs, &view, &motion, &slope, half + SEAM, pace);
+            match self.narrower(&asked, trials) {
+                None => break Some((half, asked)),
+                Some(share) => half *= share,
+            }
+            if half < NARROWEST || trials > 3 * self.effort.trials {
+                break None;
+            }
+        };
+        self.out.tally.trials += trials;
+        let (half, asked) = found?;
+        self.keep(&asked);
+        Some(half)
+    }
+
+    fn middle<'b>(&'b self, at: &'b Instant) -> Option<Middle<'b>> {
+        let target = self.segment.path.target(at.u)?;
+        let viewer = if self.arm.task().is_whole() { self.arm.len().saturating_sub(3) } else { 0 };
+        Middle::of(self.arm, self.view(at, viewer), at, target, &self.follower.null_rows(at.u))
+    }
+
+    fn try_path(&mut self, at: &Instant, whole: f64, pace: Pace) -> Option<f64> {
+        let middle = self.middle(at)?;
+        let mut half = whole.min(self.hint * 1.6).min(0.6 * middle.hope());
+        let mut trials = 0;
+        let (mut best, mut failed_at) = (None, f64::INFINITY);
+        while trials < 3 * self.effort.trials && half >= NARROWEST {
+            trials += 1;
+            let Some(leaf) = middle.prove(half + SEAM) else {
+                failed_at = half;
+                half = if best.is_some() { break } else { half * 0.6 };
+                continue;
+            };
+            let asked = on_path(self.meter, &self.needs, &middle, &leaf, pace);
+            if let Some(share) = self.narrower(&asked, trials) {
+                failed_at = half;
+                if best.is_some() {
+                    break;
+                }
+                half *= share;
+                continue;
+            }
+            best = Some((leaf, asked));
+            let wider = (half * 1.5).min(whole);
+            if half >= whole || wider >= failed_at || trials + 2 > self.effort.trials {
+                break;
+            }
+            half = wider;
+        }
+        let kept = best.map(|(leaf, asked)| (leaf.half - SEAM, asked, Joined::of(&middle, &leaf)));
+        self.out.tally.trials += trials;
+        let (half, asked, joined) = kept?;
+        self.hint = half;
+        self.joined.push(joined);
+        self.keep(&asked);
+        Some(half)
+    }
+
+    /// By which share a stretch should be narrowed if some needed channel is not clear over it.
+    fn narrower(&self, asked: &Asked, trials: usize) -> Option<f64> {
+        let worst = self
+            .needs
+            .iter()
+            .map(|&slot| {
+                let bound = self.meter.channel(slot).flagged_above();
+                if asked[slot] <= bound { 0.0 } else { asked[slot] - bound }
+            })
+            .fold(0.0f64, |most, excess| if excess <= most { most } else { excess });
+        if worst == 0.0 {
+            return None;
+        }
+        Some(if worst > 0.3 || trials > 3 { 0.45 } else { 0.65 })
+    }
+
+    fn keep(&mut self, asked: &Asked) {
+        for &slot in &self.needs {
+            self.most[slot] = self.most[slot].max(asked[slot]);
+        }
+    }
+
+    /// Whether all leaves belong to one branch, which holds the segment's first and last posture.
+    fn is_one_branch(&mut self) -> bool {
+        let mut joined = std::mem::take(&mut self.joined);
+        joined.sort_by(|a, b| a.middle.total_cmp(&b.middle));
+        let (Some(first), Some(last)) = (joined.first(), joined.last()) else { return false };
+        let nodes = &self.segment.track.nodes;
+        let end = Enclosure::point(&nodes.last().expect("followed").q);
+        if !first.meets(&first.start, &Enclosure::point(&self.segment.start)) || !last.meets(&last.end, &end) {
+            return false;
+        }
+        joined.windows(2).all(|pair| {
+            let [left, right] = pair else { return false };
+            let border = left.middle + left.half;
+            match nodes.iter().find(|node| self.arm.is_redundant() && (node.u - border).abs() < 1e-9) {
+                // Another definition of the motion begins here; both hold at the node itself.
+                Some(node) => {
+                    let point = Enclosure::point(&node.q);
+                    left.meets(&left.end, &point) && right.meets(&right.start, &point)
+                }
+                None => {
+                    let (one, other) = (&left.end, &right.start);
+                    left.meets(one, other) || right.meets(one, other) || self.closer_look(border, one, other)
+                }
+            }
+        })
+    }
+
+    fn closer_look(&mut self, border: f64, one: &Enclosure, other: &Enclosure) -> bool {
+        self.out.tally.postures += 1;
+        let Some(instant) = self.follower.at(border) else { return false };
+        self.middle(&instant).is_some_and(|middle| meet_at(&middle, one, other))
+    }
+}

@@ -1,0 +1,265 @@
+use crate::arm::{Arm, MAX_JOINTS};
+use crate::geometry::V3;
+use crate::kinematics::{invert, small_error};
+use crate::motion::{Instant, Target};
+
+use super::ball::{Ball, Moving};
+use super::view::{Motion, View};
+
+/// A column or row of numbers, one a joint.
+pub(super) type Row = [f64; MAX_JOINTS];
+
+/// Everything about the middle of a stretch of a line or arc that does not depend on the stretch's width.
+#[derive(Debug, Clone)]
+pub(super) struct Middle<'a> {
+    pub arm: &'a Arm,
+    pub view: View<'a>,
+    pub at: &'a Instant,
+    /// An inverse of the stacked Jacobian at the reference point, rows by joint, columns by task row and null row.
+    pub y: [Row; MAX_JOINTS],
+    /// Its translation parts, base axes.
+    pub y_moving: [V3; MAX_JOINTS],
+    /// Its rotation parts, base axes.
+    pub y_turning: [V3; MAX_JOINTS],
+    /// Norms of both.
+    pub norms: [[f64; 2]; MAX_JOINTS],
+    /// `|I - Y J|`.
+    pub defect: [Row; MAX_JOINTS],
+    /// Slopes `Y x'`.
+    pub slope: Row,
+    /// `Y J'`: the first-order part of how `Y J` leaves the identity.
+    pub first: [Row; MAX_JOINTS],
+    /// Second derivatives `Y (x'' - J' slope)`.
+    pub bend: Row,
+    target: Target,
+    /// How unsure the joint values in the middle are, rad or m, each joint.
+    pub slack: Row,
+    slack_sum: f64,
+}
+
+/// A stretch on which the joint path is proved to exist, to be the only one near, and to bend by no more than told.
+#[derive(Debug, Clone)]
+pub(super) struct Leaf {
+    /// Half its width, in fractions of the path.
+    pub half: f64,
+    /// The second derivative is within this of the middle's throughout.
+    pub spread: Row,
+    /// The first derivative is within this of the middle's throughout.
+    pub slope_spread: Row,
+    /// How far `Y J` may be from the identity throughout, entry by entry, without its first-order part.
+    pub rest: [Row; MAX_JOINTS],
+    /// The arm's motion over it.
+    pub motion: Motion,
+}
+
+/// All radii are taken larger by this share, for what rounding may do.
+const OUTWARD: f64 = 1.0 + 1e-10;
+/// The least spread of a second derivative that is tried, rad or m by the path's fraction squared.
+const LEAST_SPREAD: f64 = 1e-9;
+/// How often the spread is widened before the stretch is given up.
+const WIDENINGS: usize = 5;
+
+impl<'a> Middle<'a> {
+    /// The middle of a stretch at an instant of a line or arc; `None` where the Jacobian can't be inverted.
+    pub fn of(arm: &'a Arm, view: View<'a>, at: &'a Instant, target: Target, null: &[Row]) -> Option<Self> {
+        let n = arm.len();
+        let task = arm.task();
+        let y = invert(at.lu.as_ref()?);
+        let mut middle = Self {
+            arm,
+            view,
+            at,
+            y,
+            y_moving: [V3::zeros(); MAX_JOINTS],
+            y_turning: [V3::zeros(); MAX_JOINTS],
+            norms: [[0.0; 2]; MAX_JOINTS],
+            defect: [[0.0; MAX_JOINTS]; MAX_JOINTS],
+            slope: [0.0; MAX_JOINTS],
+            first: [[0.0; MAX_JOINTS]; MAX_JOINTS],
+            bend: [0.0; MAX_JOINTS],
+            target,
+            slack: [0.0; MAX_JOINTS],
+            slack_sum: 0.0,
+        };
+        // From the TCP to the reference point: the same motion, told of another point of the last link.
+        let offset = middle.view.to_tcp;
+        let error = small_error(&at.tcp, &target.pose);
+        let moving = target.velocity - target.turning.cross(&offset);
+        let motion = middle.view.motion(&[0.0; MAX_JOINTS], &[0.0; MAX_JOINTS], 0.0, 0.0);
+        for i in 0..n {
+            let (mut along, mut about) = (V3::zeros(), V3::zeros());
+            let mut residual = 0.0;
+            for (slot, &row) in task.rows().iter().enumerate() {
+                if row < 3 {
+                    along[row] = y[i][slot];
+                } else {
+                    about[row - 3] = y[i][slot];
+                }
+                residual += y[i][slot] * error[row];
+            }
+            let about = if task.is_whole() { about + offset.cross(&along) } else { about };
+            middle.y_moving[i] = along;
+            middle.y_turning[i] = about;
+            middle.norms[i] = [along.norm(), about.norm()];
+            let size = middle.norms[i][0] + middle.norms[i][1];
+            middle.slope[i] = along.dot(&moving) + about.dot(&target.turning);
+            middle.slack[i] = 2.0 * residual.abs() + 1e-14 * (1.0 + size);
+            middle.slack_sum += middle.slack[i];
+        }
+        middle.measure_defect(&motion, null);
+        middle.measure_change();
+        middle.is_sound().then_some(middle)
+    }
+
+    /// `|I - Y J|` with the Jacobian at the reference point.
+    fn measure_defect(&mut self, motion: &Motion, null: &[Row]) {
+        let n = self.arm.len();
+        let m = self.arm.task().rows().len();
+        for i in 0..n {
+            for j in 0..n {
+                let column = self.view.column(motion, j).at.centre;
+                let axis = if self.arm.chain().turns[j] { self.view.z[j] } else { V3::zeros() };
+                let mut entry = self.y_moving[i].dot(&column) + self.y_turning[i].dot(&axis);
+                for (slot, row) in null.iter().enumerate() {
+                    entry += self.y[i][m + slot] * row[j];
+                }
+                self.defect[i][j] = (entry - if i == j { 1.0 } else { 0.0 }).abs();
+            }
+        }
+    }
+
+    /// The Jacobian's change in the middle and the bend that follows.
+    fn measure_change(&mut self) {
+        let n = self.arm.len();
+        let motion = self.view.motion(&self.slope, &[0.0; MAX_JOINTS], 0.0, 0.0);
+        let [moved, turned] = self.target_change(&motion, 0.0);
+        for i in 0..n {
+            self.bend[i] = self.y_moving[i].dot(&moved.centre) + self.y_turning[i].dot(&turned.centre);
+            for j in 0..n {
+                let column = self.view.column(&motion, j).change.centre;
+                let axis = if self.arm.chain().turns[j] { motion.z[j].change.centre } else { V3::zeros() };
+                self.first[i][j] = self.y_moving[i].dot(&column) + self.y_turning[i].dot(&axis);
+                self.bend[i] -= self.first[i][j] * self.slope[j];
+            }
+        }
+    }
+
+    /// Whether figures are finite, `Y` is an inverse indeed, and a solution lies within the slack of the computed joint values:
+    /// `|Y e| + E slack < slack`, E being how far `Y J` may be from the identity that near.
+    fn is_sound(&self) -> bool {
+        let n = self.arm.len();
+        let reach: f64 = 2.0 * (self.view.reach() + 1.0);
+        (0..n).all(|i| {
+            let near = self.slack_sum * (self.norms[i][0] * reach + self.norms[i][1]);
+            let pull: f64 = (0..n).map(|j| (self.defect[i][j] + near) * self.slack[j]).sum();
+            self.slope[i].is_finite()
+                && self.bend[i].is_finite()
+                && self.defect[i][..n].iter().all(|d| *d < 1e-3)
+                && 0.5 * self.slack[i] + pull < self.slack[i]
+        })
+    }
+
+    /// Tries to prove the stretch of half-width `half` around the middle (see the module's text for the theorem). `None` if it
+    /// does not close at this width.
+    pub fn prove(&self, half: f64) -> Option<Leaf> {
+        let n = self.arm.len();
+        let mut spread = [LEAST_SPREAD; MAX_JOINTS];
+        for _ in 0..=WIDENINGS {
+            let (leaf, reached) = self.bound(half, &spread);
+            if !reached[..n].iter().all(|value| value.is_finite()) {
+                return None;
+            }
+            if (0..n).all(|j| reached[j] < spread[j]) {
+                return Some(leaf);
+            }
+            for j in 0..n {
+                spread[j] = spread[j].max(1.15 * reached[j]);
+            }
+        }
+        None
+    }
+
+    /// The leaf for an assumed `spread` of the second derivative, and the spread that would follow from it.
+    fn bound(&self, half: f64, spread: &Row) -> (Leaf, Row) {
+        let n = self.arm.len();
+        let mut slope_spread = [0.0; MAX_JOINTS];
+        for j in 0..n {
+            // Besides the bend: the slope itself is `Y x'` only to within the defect and the slack.
+            let unsure = (0..n).map(|k| self.defect[j][k] * self.slope[k].abs()).sum::<f64>() * 2.0
+                + self.slack_sum * (self.bend[j].abs() + self.slope[j].abs());
+            slope_spread[j] = (half * (self.bend[j].abs() + spread[j]) + unsure) * OUTWARD;
+        }
+        let motion = self.view.motion(&self.slope, &slope_spread, half, self.slack_sum);
+        let [moved, turned] = self.target_change(&motion, half);
+        let mut rest = self.defect;
+        let mut reached = [0.0; MAX_JOINTS];
+        for i in 0..n {
+            reached[i] = self.norms[i][0] * moved.radius + self.norms[i][1] * turned.radius;
+        }
+        for j in 0..n {
+            let column = self.view.column(&motion, j);
+            let axis = if self.arm.chain().turns[j] { motion.z[j].change.radius } else { 0.0 };
+            let length = column.at.centre.norm();
+            let most_slope = self.slope[j].abs() + slope_spread[j];
+            for i in 0..n {
+                let [moving, turning] = self.norms[i];
+                let radius = moving * column.change.radius + turning * axis;
+                rest[i][j] = (rest[i][j] + half * radius + self.slack_sum * (moving * length + turning)) * OUTWARD;
+                reached[i] += radius * most_slope + self.first[i][j].abs() * slope_spread[j];
+            }
+        }
+        for i in 0..n {
+            for j in 0..n {
+                reached[i] += (half * self.first[i][j].abs() + rest[i][j]) * (self.bend[j].abs() + spread[j]);
+            }
+            reached[i] *= OUTWARD;
+        }
+        (Leaf { half, spread: *spread, slope_spread, rest, motion }, reached)
+    }
+
+    /// What the path asks of the twist's derivative, seen from the viewing link: translation and rotation.
+    fn target_change(&self, motion: &Motion, half: f64) -> [Ball; 2] {
+        let Target { velocity, bend, turning, .. } = self.target;
+        let base = &motion.turning[0];
+        let rho = -self.view.to_tcp;
+        let whole = self.arm.task().is_whole();
+        let spin = |v: V3| if whole { turning.cross(&v) } else { V3::zeros() };
+        // In the base: y = velocity + turning x rho, and its derivatives.
+        let y = velocity + spin(rho);
+        let y1 = bend + spin(spin(rho));
+        let turn = if whole { turning.norm() } else { 0.0 };
+        // A circle's third derivative is its second times its angle by the fraction.
+        let third = if velocity.norm() > 0.0 { bend.norm_squared() / velocity.norm() } else { 0.0 };
+        let y2 = third + turn.powi(3) * rho.norm();
+        let most_y1 = y1.norm() + half * y2;
+        let y1_seen = Ball { centre: y1, radius: half * (y2 + base.most() * most_y1) };
+        let y_seen = Ball { centre: y, radius: half * (most_y1 + base.most() * (y.norm() + half * most_y1)) };
+        let moved = y1_seen.plus(&base.cross(&y_seen));
+        let turned = Moving::fixed(turning, base, half, self.slack_sum).change;
+        [moved, turned]
+    }
+
+    /// How wide a stretch may hope to be: where the first-order part alone would make the theorem fail.
+    pub fn hope(&self) -> f64 {
+        let n = self.arm.len();
+        let size = |j: usize| self.slope[j].abs() + 1e-3;
+        let most = (0..n).map(|i| (0..n).map(|j| self.first[i][j].abs() * size(j)).sum::<f64>() / size(i)).fold(0.0f64, f64::max);
+        if most > 0.0 { 1.0 / most } else { f64::INFINITY }
+    }
+}
+
+impl Middle<'_> {
+    /// The greatest speed of the TCP by the fraction over a leaf, m.
+    pub fn tcp_speed(&self, leaf: &Leaf) -> f64 {
+        if self.arm.task().rows().iter().filter(|row| **row < 3).count() == 3 {
+            // The path gives it: constant on a line, and on a circle too.
+            return self.target.velocity.norm();
+        }
+        let offset = self.view.tcp_offset(&leaf.motion);
+        let velocity = (0..self.arm.len()).fold(Ball::zero(), |sum, j| {
+            let column = self.view.tcp_column(&leaf.motion, &offset, j).at;
+            sum.plus(&column.times(self.slope[j], leaf.slope_spread[j]))
+        });
+        velocity.most()
+    }
+}
