@@ -2,11 +2,14 @@ use super::theme::Theme;
 
 /// Options say how the screen looks and what it listens to.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+#[expect(clippy::struct_excessive_bools, reason = "each is a switch of its own on the command line")]
 pub struct Options {
     /// No signs beyond ASCII.
     pub ascii: bool,
     /// No colours.
     pub mono: bool,
+    /// Colours for a light background.
+    pub light: bool,
     /// Clicks select. Off by default, so that the terminal's own selecting of text works.
     pub mouse: bool,
 }
@@ -22,13 +25,14 @@ impl Options {
             // Windows has no such variables; its terminals show what is needed.
             ascii: cfg!(unix) && !(locale.contains("utf-8") || locale.contains("utf8")),
             mono: set("NO_COLOR").is_some() || few,
+            light: false,
             mouse: false,
         }
     }
 
     /// The theme that follows.
     pub fn theme(self) -> Theme {
-        Theme { mono: self.mono, ascii: self.ascii }
+        Theme { mono: self.mono, light: self.light, ascii: self.ascii }
     }
 }
 

@@ -9,6 +9,8 @@ use crate::checks::Verdict;
 pub struct Theme {
     /// No colours at all: bold, underline and reverse only.
     pub mono: bool,
+    /// Colours that read well on a light background.
+    pub light: bool,
     /// No signs beyond ASCII.
     pub ascii: bool,
 }
@@ -63,7 +65,11 @@ impl Theme {
 
     /// The arm in its drawings.
     pub fn arm(self) -> Style {
-        if self.mono { self.strong() } else { self.strong().fg(Color::Blue) }
+        match self {
+            Self { mono: true, .. } => self.strong(),
+            Self { light: true, .. } => self.strong().fg(Color::Blue),
+            _ => self.strong().fg(Color::Cyan),
+        }
     }
 
     /// The horizontal line of a title.
@@ -135,7 +141,7 @@ mod tests {
 
     #[test]
     fn a_theme_without_colours_has_none() {
-        let theme = Theme { mono: true, ascii: false };
+        let theme = Theme { mono: true, ..Theme::default() };
         for verdict in Verdict::ALL {
             for style in [theme.verdict(verdict), theme.stroke(verdict), theme.title(true), theme.selected(), theme.arm()] {
                 assert_eq!((style.fg, style.bg), (None, None));
@@ -146,7 +152,7 @@ mod tests {
     #[test]
     fn every_verdict_looks_its_own_in_both_themes() {
         for mono in [false, true] {
-            let theme = Theme { mono, ascii: false };
+            let theme = Theme { mono, ..Theme::default() };
             let looks: Vec<_> = Verdict::ALL.iter().map(|v| (theme.verdict(*v), v.letter())).collect();
             for (i, look) in looks.iter().enumerate() {
                 assert!(looks[..i].iter().all(|other| other.1 != look.1));
@@ -156,7 +162,7 @@ mod tests {
 
     #[test]
     fn ascii_text_keeps_its_meaning() {
-        let theme = Theme { mono: false, ascii: true };
+        let theme = Theme { ascii: true, ..Theme::default() };
         assert_eq!(theme.text("508 °/s² of 3.5 N·m"), "508 deg/s2 of 3.5 N.m");
     }
 }

@@ -97,6 +97,18 @@ impl Measure {
         join(plain(self.shown(), digits), self.of.sign())
     }
 
+    /// The bare number in people's unit, for columns whose heading names the unit; empty where it is not finite.
+    pub fn number(self, digits: usize) -> String {
+        if self.si.is_finite() { plain(self.shown(), digits) } else { String::new() }
+    }
+
+    /// Text that always carries a sign, such as `+509 °/s`; nothing is plain `0`.
+    pub fn signed(self) -> String {
+        let text = self.to_string();
+        let nothing = !text.chars().any(|c| c.is_ascii_digit() && c != '0');
+        if self.si > 0.0 && !nothing { format!("+{text}") } else { text }
+    }
+
     /// Text whose last digit is rounded up (away from what is safe when it names a demand).
     pub fn text_up(self, digits: usize) -> String {
         let scale = 10f64.powi(digits as i32);

@@ -1,0 +1,47 @@
+//! The command line: arguments in, results to standard output, complaints to standard error, a code by meaning. One subcommand a
+//! file.
+
+mod args;
+mod check;
+mod chosen;
+mod code;
+mod explain;
+mod findings_text;
+mod not_checked_text;
+mod out;
+mod screen;
+mod step;
+mod table;
+mod trace;
+
+use std::process::ExitCode;
+
+use clap::Parser;
+
+use args::{Args, Command};
+use code::Code;
+
+/// Runs what the arguments of the process ask for.
+pub fn run() -> ExitCode {
+    let args = match Args::try_parse() {
+        Ok(args) => args,
+        Err(asked) => {
+            // Help and version go to standard output and are no failure. A closed pipe is none either.
+            let _ = asked.print();
+            return if asked.use_stderr() { Code::NotJudged.into() } else { ExitCode::SUCCESS };
+        }
+    };
+    let done = match args.command {
+        None => screen::run(args.recipe.as_deref(), args.screen),
+        Some(Command::Check(check)) => check::run(&check),
+        Some(Command::Explain(explain)) => explain::run(&explain),
+        Some(Command::Trace(trace)) => trace::run(&trace),
+    };
+    match done {
+        Ok(code) => code.into(),
+        Err(error) => {
+            out::complain(&format!("{error:#}"));
+            Code::NotJudged.into()
+        }
+    }
+}

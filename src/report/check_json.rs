@@ -1,0 +1,84 @@
+use serde::Serialize;
+
+use crate::motion::Segment;
+use crate::review::{Judged, not_checked};
+use crate::units::Seconds;
+
+use super::finding_json::{DoubtJson, FindingJson};
+use super::judged_json::{CheckJson, Checks, figure, percent, shown};
+
+/// The name and version of the format that [`check_json`] writes.
+pub const FORMAT: &str = "elbowroom-check/1";
+
+#[derive(Debug, Serialize)]
+struct Report {
+    format: &'static str,
+    version: &'static str,
+    recipe: String,
+    recipe_file: String,
+    arm: String,
+    arm_file: String,
+    verdict: &'static str,
+    duration_s: Option<f64>,
+    segments: Vec<SegmentJson>,
+    findings: Vec<FindingJson>,
+    doubts: Vec<DoubtJson>,
+    not_checked: Vec<String>,
+}
+
+/// One segment. `index` is its number as people read it: that of the waypoint it arrives at, counted from 1.
+#[derive(Debug, Serialize)]
+struct SegmentJson {
+    index: usize,
+    from: String,
+    to: String,
+    arrive: &'static str,
+    start_s: Option<f64>,
+    duration_s: Option<f64>,
+    dwell_s: Option<f64>,
+    verdict: &'static str,
+    room: Option<f64>,
+    nearest: Option<&'static str>,
+    checks: Checks,
+}
+
+/// A judged recipe as one JSON object on one line, without a line end: the same bytes for the same recipe and arm. `recipe_file`
+/// and `arm_file` say where both came from. Rooms are in percent, all else in the files' units, each named by a `unit` beside it;
+/// what has no finite figure is null.
+pub fn check_json(judged: &Judged, recipe_file: &str, arm_file: &str) -> String {
+    let segments = judged.plan.segments.iter().enumerate().map(|(index, segment)| segment_json(judged, index, segment)).collect();
+    let report = Report {
+        format: FORMAT,
+        version: env!("CARGO_PKG_VERSION"),
+        recipe: judged.recipe.name.clone(),
+        recipe_file: recipe_file.to_owned(),
+        arm: judged.arm.name().to_owned(),
+        arm_file: arm_file.to_owned(),
+        verdict: judged.survey.verdict().word(),
+        duration_s: figure(judged.plan.duration()),
+        segments,
+        findings: judged.survey.findings.iter().map(|finding| FindingJson::of(judged, finding)).collect(),
+        doubts: judged.survey.doubts.iter().map(|doubt| DoubtJson::of(judged, doubt)).collect(),
+        not_checked: not_checked(judged),
+    };
+    serde_json::to_string(&report).expect("names are text, and figures are finite or null")
+}
+
+fn segment_json(judged: &Judged, index: usize, segment: &Segment) -> SegmentJson {
+    let survey = &judged.survey.segments[index];
+    let waypoints = &judged.recipe.waypoints;
+    let nearest = survey.nearest();
+    SegmentJson {
+        index: segment.number(),
+        from: waypoints[segment.to - 1].name.clone(),
+        to: waypoints[segment.to].name.clone(),
+        arrive: waypoints[segment.to].arrive.as_ref().map_or("joint", |arrive| arrive.word()),
+        start_s: shown(Seconds::s(judged.plan.starts[index]).measure()),
+        duration_s: figure(segment.duration()),
+        dwell_s: figure(segment.dwell),
+        verdict: survey.verdict.word(),
+        room: nearest.and_then(|(_, peak)| percent(peak.room)),
+        nearest: nearest.map(|(result, _)| result.check.key()),
+        checks: Checks(survey.checks.iter().map(|result| (result.check, CheckJson::of(judged, segment, result))).collect()),
+    }
+}

@@ -1,0 +1,13 @@
+//! What goes out: the result of a check as JSON, the motion over the cycle as CSV. One format a file.
+
+mod check_json;
+mod finding_json;
+mod grid;
+mod judged_json;
+mod save;
+mod trace_csv;
+
+pub use check_json::{FORMAT, check_json};
+pub use grid::{MOST_ROWS, TooManyRows};
+pub use save::save;
+pub use trace_csv::{TraceError, trace_csv};

@@ -1,0 +1,30 @@
+use crate::checks::{Check, Verdict};
+
+use super::Judged;
+
+/// One sentence on the whole recipe: "Housing transfer: NOT READY: 1 over, 1 tight, 11 clear".
+pub fn headline(judged: &Judged) -> String {
+    let survey = &judged.survey;
+    let ready = if survey.verdict() == Verdict::Clear { "READY TO SIGN" } else { "NOT READY" };
+    let counts: Vec<String> = Verdict::ALL
+        .into_iter()
+        .map(|verdict| (survey.count(verdict), verdict))
+        .filter(|(count, _)| *count > 0)
+        .map(|(count, verdict)| format!("{count} {}", verdict.word()))
+        .collect();
+    format!("{}: {ready}: {}", judged.recipe.name, counts.join(", "))
+}
+
+/// The words for a check, as they stand in titles and tables.
+pub fn check_words(check: Check) -> &'static str {
+    match check {
+        Check::Reach => "reach",
+        Check::Range => "range",
+        Check::Rate => "rate",
+        Check::Accel => "acceleration",
+        Check::Holding => "holding",
+        Check::Singular => "singularity",
+        Check::SpeedLeft => "tool speed left",
+        Check::TcpSpeed => "TCP speed",
+    }
+}

@@ -1,0 +1,48 @@
+use crate::units::Measure;
+
+/// Words in a row, read aloud: `J1`, `J1 and J2`, `J1, J2 and J3`.
+pub(super) fn all_of(words: &[String]) -> String {
+    match words {
+        [] => String::new(),
+        [one] => one.clone(),
+        [most @ .., last] => format!("{} and {last}", most.join(", ")),
+    }
+}
+
+/// Shares of one sum as figures that add up to the sum as it is shown: each is rounded down, and what is then missing goes to
+/// those that lost most.
+pub(super) fn adding_up(shares: &[Measure], digits: usize) -> Vec<f64> {
+    let scale = 10f64.powi(digits as i32);
+    let exact: Vec<f64> = shares.iter().map(|share| share.shown() * scale).collect();
+    let mut steps: Vec<f64> = exact.iter().map(|value| value.floor()).collect();
+    let missing = exact.iter().sum::<f64>().round() - steps.iter().sum::<f64>();
+    let mut order: Vec<usize> = (0..shares.len()).collect();
+    order.sort_by(|&a, &b| (exact[b] - steps[b]).total_cmp(&(exact[a] - steps[a])).then(a.cmp(&b)));
+    for &index in order.iter().take(missing.max(0.0) as usize) {
+        steps[index] += 1.0;
+    }
+    steps.into_iter().map(|step| step / scale).collect()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::units::Dimension;
+
+    #[test]
+    fn figures_add_up_to_the_sum_that_is_shown() {
+        let shares = [-100.4, -200.4, -50.4, 12.6].map(|nm| Measure::si(nm, Dimension::Torque));
+        let figures = adding_up(&shares, 0);
+        assert_eq!(figures.iter().sum::<f64>(), -339.0);
+        for (figure, share) in figures.iter().zip(&shares) {
+            assert!((figure - share.shown()).abs() < 1.0);
+        }
+    }
+
+    #[test]
+    fn rows_of_words_read_aloud() {
+        let words = |n: usize| (1..=n).map(|j| format!("J{j}")).collect::<Vec<_>>();
+        assert_eq!(all_of(&words(1)), "J1");
+        assert_eq!(all_of(&words(3)), "J1, J2 and J3");
+    }
+}

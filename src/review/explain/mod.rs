@@ -1,0 +1,74 @@
+//! The words in which findings, doubts and whole recipes are told. Screen, command line and reports share them.
+
+mod accel;
+mod direction;
+mod doubt;
+mod explanation;
+mod fight;
+mod headline;
+mod holding;
+mod listing;
+mod no_finding;
+mod place;
+mod proof;
+mod range;
+mod rate;
+mod reach;
+mod scene;
+mod singular;
+mod tcp_speed;
+mod unproved;
+mod wrap;
+
+pub use doubt::doubt_text;
+pub use explanation::{Bar, Explanation, Label, Paragraph};
+pub use headline::{check_words, headline};
+pub use no_finding::no_finding;
+pub use proof::proof_text;
+pub use wrap::wrap;
+
+use crate::checks::{Check, Excess, Finding, Kind};
+
+use super::Judged;
+use scene::Scene;
+
+/// Tells a finding of a judged recipe.
+pub fn explain(judged: &Judged, finding: &Finding) -> Explanation {
+    let paragraphs = match &finding.kind {
+        Kind::Excess(excess) => excess_paragraphs(judged, finding, excess),
+        Kind::NoPath(trouble) => reach::paragraphs(judged, finding, trouble),
+        Kind::Unproved(why) => unproved::paragraphs(judged, finding, *why),
+    };
+    Explanation { title: title(judged, finding), paragraphs }
+}
+
+/// Verdict, joint, check and figure of a finding in one line: `over: J4 rate, asks 154 %`.
+fn title(judged: &Judged, finding: &Finding) -> String {
+    let joint = finding.joint.map_or(String::new(), |j| format!("{} ", judged.arm.joints()[j].name));
+    let figure = match &finding.kind {
+        Kind::Excess(excess) => match finding.check {
+            Check::Range => format!(", {}", range::to_end_text(&judged.arm.joints()[finding.joint.unwrap_or(0)], excess)),
+            Check::Singular => format!(", smallest singular value {}", excess.demand),
+            Check::SpeedLeft => format!(", {}", excess.demand.text_down(0)),
+            _ => format!(", asks {}", excess.room.asks()),
+        },
+        Kind::NoPath(trouble) => format!(", {}", reach::in_brief(trouble)),
+        Kind::Unproved(why) => format!(", {}", unproved::in_brief(*why)),
+    };
+    format!("{}: {joint}{}{figure}", finding.verdict.word(), check_words(finding.check))
+}
+
+fn excess_paragraphs(judged: &Judged, finding: &Finding, excess: &Excess) -> Vec<Paragraph> {
+    let Some(scene) = Scene::of(judged, finding, excess) else {
+        return vec![place::paragraph(judged, finding)];
+    };
+    let [what, why, alone, rests] = match (finding.check, finding.joint) {
+        (Check::Range, Some(joint)) => range::paragraphs(&scene, joint, excess),
+        (Check::Rate, Some(joint)) => rate::paragraphs(&scene, joint, excess),
+        (Check::Accel, Some(joint)) => accel::paragraphs(&scene, joint, excess),
+        (Check::Holding, Some(joint)) => holding::paragraphs(&scene, joint, excess),
+        (Check::TcpSpeed, _) => tcp_speed::paragraphs(&scene, excess),
+        _ => singular::paragraphs(&scene, finding.check, excess),
+    };
+    vec![what, place::paragraph(judged, finding), why, alone, rests]
+}

@@ -1,0 +1,5 @@
+//! The words in which findings are told: what they say for every kind of finding, and that their figures are true.
+
+mod cases;
+mod figures;
+mod kinds;
