@@ -9,6 +9,7 @@ use crate::review::{Judged, Progress, Session};
 
 use super::action::Action;
 use super::curve::Subject;
+use super::keys::{Binding, name};
 use super::scene::Scene;
 use super::theme::Theme;
 
@@ -77,13 +78,32 @@ pub struct Asking {
     pub typed: String,
 }
 
+/// An item is one action of a menu.
+#[derive(Debug, Clone)]
+pub struct Item {
+    /// What it does.
+    pub name: String,
+    /// The key that does the same, if there is one.
+    pub key: String,
+    /// The action.
+    pub action: Action,
+}
+
+impl Item {
+    /// The item of a key.
+    pub fn of(binding: &Binding, theme: Theme) -> Self {
+        let key = name(binding.keys[0], theme.ascii);
+        Self { name: binding.hint.to_owned(), key, action: binding.action.clone() }
+    }
+}
+
 /// A menu of named actions, of which one is chosen.
 #[derive(Debug, Clone)]
 pub struct Menu {
     /// What it is about.
     pub title: String,
-    /// Names and actions.
-    pub items: Vec<(String, Action)>,
+    /// What can be chosen.
+    pub items: Vec<Item>,
     /// Which one is chosen.
     pub chosen: usize,
 }

@@ -25,8 +25,8 @@ impl View {
 
     fn words(self) -> &'static str {
         match self {
-            Self::Side => "from the side: x across, z up",
-            Self::Above => "from above: x across, y up",
+            Self::Side => "from the side (x, z)",
+            Self::Above => "from above (x, y)",
         }
     }
 
@@ -105,7 +105,7 @@ fn draw_view(sheet: &mut Sheet, app: &App, gauges: &Gauges, view: View) {
     marks(&mut drawing, app, &paper);
     if gauges.load > 0.0 && width >= 20 {
         let (x, y) = (tcp.0 / 2.0 + 2.0, tcp.1 / 4.0);
-        if x >= 0.0 && y >= 0.0 && drawing.sign(x as usize, y as usize) == " " {
+        if x >= 0.0 && y >= 0.0 && x as usize + 4 <= width && drawing.sign(x as usize, y as usize) == " " {
             drawing.put(x as usize, y as usize, "load", Style::new());
         }
     }

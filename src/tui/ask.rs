@@ -78,7 +78,8 @@ fn find(app: &mut App, text: &str) -> Result<(), String> {
     let wanted = text.to_lowercase();
     let names = &app.recipe.waypoints;
     let now = session.cursor().segment + 1;
-    let found = (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));
+    let found =
+        (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));
     app.found = text.to_owned();
     match found {
         Some(0) => session.to_time(0.0),

@@ -1,15 +1,16 @@
 use crate::checks::{Check, Finding, Kind, Verdict};
 use crate::review::Judged;
 
+use super::phrases::check_word;
+
 /// Bands are the ribbon's cells: for every check the worst verdict inside each cell's span of time.
 #[derive(Debug, Clone, Default)]
 pub struct Bands {
     /// One row a check that is judged somewhere, in the order of the checks.
     pub rows: Vec<Band>,
-    /// The worst of all rows.
-    pub all: Vec<Option<Verdict>>,
     /// Where segments begin and end, in cells, in order: first cell, and the one behind the last.
     pub segments: Vec<[usize; 2]>,
+    width: usize,
 }
 
 /// A band is one row of the ribbon.
@@ -27,7 +28,7 @@ impl Bands {
     /// The bands of a judged recipe in `width` cells.
     pub fn of(judged: &Judged, width: usize) -> Self {
         let scale = Scale { width, per_second: width as f64 / judged.plan.duration().max(1e-9) };
-        let mut bands = Self { rows: Vec::new(), all: vec![None; width], segments: Vec::new() };
+        let mut bands = Self { rows: Vec::new(), width, segments: Vec::new() };
         if width == 0 {
             return bands;
         }
@@ -51,7 +52,6 @@ impl Bands {
             }
             // That a motion exists goes without saying as long as it does.
             if check != Check::Reach || band.worst != Verdict::Clear {
-                bands.all.iter_mut().zip(&band.cells).for_each(|(all, cell)| *all = (*all).max(*cell));
                 bands.rows.push(band);
             }
         }
@@ -59,13 +59,30 @@ impl Bands {
         bands
     }
 
-    /// At most `count` rows: the worst ones, in the order of the checks.
-    pub fn worst_rows(&self, count: usize) -> Vec<&Band> {
+    /// The rows for a ribbon of `count` rows, with their words: all if they fit, else the worst ones, in the order of the checks,
+    /// and one for all the others together.
+    pub fn in_rows(&self, count: usize) -> Vec<(&'static str, Vec<Option<Verdict>>)> {
+        let whole = |row: &usize| (check_word(self.rows[*row].check), self.rows[*row].cells.clone());
         let mut order: Vec<usize> = (0..self.rows.len()).collect();
+        if count >= order.len() {
+            return order.iter().map(whole).collect();
+        }
         order.sort_by_key(|row| std::cmp::Reverse(self.rows[*row].worst));
-        order.truncate(count);
+        let others = order.split_off(count.saturating_sub(1));
         order.sort_unstable();
-        order.into_iter().map(|row| &self.rows[row]).collect()
+        let mut rows: Vec<_> = order.iter().map(whole).collect();
+        let mut rest = vec![None; self.width];
+        for row in others {
+            rest.iter_mut().zip(&self.rows[row].cells).for_each(|(all, cell): (&mut Option<Verdict>, _)| *all = (*all).max(*cell));
+        }
+        rows.push((if rows.is_empty() { "all checks" } else { "all others" }, rest));
+        rows.truncate(count);
+        rows
+    }
+
+    /// How many rows have something to tell.
+    pub fn flagged(&self) -> usize {
+        self.rows.iter().filter(|band| band.worst != Verdict::Clear).count()
     }
 }
 

@@ -113,11 +113,7 @@ impl Scale {
     fn of(curve: &Curve, width: usize, height: usize) -> Self {
         let [from, to] = curve.span;
         let most = curve.most();
-        let top = if curve.unlimited.is_some() {
-            (1.1 * most).max(1e-9)
-        } else {
-            (1.08 * most).clamp(LOWEST_TOP, HIGHEST)
-        };
+        let top = if curve.unlimited.is_some() { (1.1 * most).max(1e-9) } else { (1.08 * most).clamp(LOWEST_TOP, HIGHEST) };
         let per_second = if to > from { (2.0 * width as f64 - 1.0) / (to - from) } else { 0.0 };
         Self { from, per_second, top, down: 4.0 * height as f64 }
     }
@@ -172,7 +168,8 @@ fn labels(sheet: &mut Sheet, curve: &Curve, scale: &Scale, width: usize, height:
         label(sheet, height, unit.sign());
     } else {
         label(sheet, row(1.0), "100 %");
-        let allowed = curve.points.iter().map(|point| point.allowed).filter(|allowed| *allowed < 1.0 - 1e-6).fold(f64::NAN, f64::min);
+        let allowed =
+            curve.points.iter().map(|point| point.allowed).filter(|allowed| *allowed < 1.0 - 1e-6).fold(f64::NAN, f64::min);
         if allowed.is_finite() {
             label(sheet, row(allowed), &format!("{:.0} %", 100.0 * allowed));
         }

@@ -19,8 +19,7 @@ pub(super) fn click(app: &mut App, column: u16, row: u16) {
         }
         return;
     }
-    let panes =
-        [(layout.list, Pane::List), (layout.why, Pane::Why), (layout.joints, Pane::Joints), (layout.chart, Pane::Chart)];
+    let panes = [(layout.list, Pane::List), (layout.why, Pane::Why), (layout.joints, Pane::Joints), (layout.chart, Pane::Chart)];
     let Some((area, pane)) = panes.into_iter().find(|(area, _)| area.contains(at)) else { return };
     app.pane = pane;
     let Some(line) = (at.y - area.y).checked_sub(1).map(usize::from) else { return };

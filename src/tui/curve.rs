@@ -108,8 +108,7 @@ impl Curve {
 
     fn point(&self, time: f64, gauge: Option<&Gauge>) -> Point {
         let Some(gauge) = gauge else { return Point { time, asked: f64::NAN, allowed: f64::NAN, verdict: Verdict::Clear } };
-        let asked =
-            if gauge.limit.is_finite() { 1.0 - gauge.room.as_fraction() } else { gauge.value.shown().abs() };
+        let asked = if gauge.limit.is_finite() { 1.0 - gauge.room.as_fraction() } else { gauge.value.shown().abs() };
         Point { time, asked, allowed: 1.0 - gauge.reserve, verdict: gauge.verdict }
     }
 

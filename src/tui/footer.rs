@@ -32,7 +32,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     }
 }
 
-/// The keys that fit, with their words; those for help and quitting always.
+/// The keys that fit, with their words; those that lead to all others always.
 fn hints(app: &App, width: usize) -> Vec<(String, String)> {
     let ascii = app.theme.ascii;
     let told = |binding: &Binding| {
@@ -53,7 +53,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
     let mut hints: Vec<(bool, (String, String))> = BINDINGS
         .iter()
         .filter(|binding| !binding.short.is_empty() && wanted(&binding.action))
-        .map(|binding| (matches!(binding.action, Action::Help | Action::Quit), told(binding)))
+        .map(|binding| (matches!(binding.action, Action::Enter | Action::Help | Action::Quit), told(binding)))
         .collect();
     if !matches!(app.mode, Mode::Panes) {
         for (_, (key, word)) in &mut hints {

@@ -123,14 +123,7 @@ impl Gauges {
         let load = gone.unwrap_or(&segment.carried).load_mass;
         if let Some((instant, reading)) = probe.read(cursor.time) {
             let all = Check::ALL.into_iter().flat_map(|check| probe.gauges(&reading, check).collect::<Vec<_>>()).collect();
-            return Some(Self {
-                fraction: instant.u,
-                q: instant.q,
-                posture: instant.posture,
-                tcp: instant.tcp,
-                load,
-                all,
-            });
+            return Some(Self { fraction: instant.u, q: instant.q, posture: instant.posture, tcp: instant.tcp, load, all });
         }
         let q = segment.track.lost.map_or(segment.start, |lost| lost.q);
         let posture = Posture::at(judged.arm.chain(), &q);

@@ -4,7 +4,7 @@ use crate::checks::Verdict;
 use crate::review::headline;
 
 use super::app::App;
-use super::sheet::{Sheet, fit};
+use super::sheet::{Sheet, fit, wrap};
 
 /// Stands wherever a verdict stands: the program moves nothing.
 const NO_ARM: &str = "no arm connected";
@@ -20,17 +20,24 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         (None, Some(progress)) => format!("{}: checking {} of {}", app.recipe.name, progress.done, progress.of),
         (None, None) => app.recipe.name.clone(),
     };
-    if let Some(judged) = app.judged() {
-        sentence += &match judged.survey.doubts.len() {
-            0 => String::new(),
-            1 => ", 1 doubt".to_owned(),
-            count => format!(", {count} doubts"),
-        };
-    }
     let two_rows = sheet.height() > 1;
     let told_beside = !two_rows && sheet.width() > NO_ARM.width() + 24;
-    let left = if told_beside { sheet.width() - NO_ARM.width() - 2 } else { sheet.width() };
-    let sentence = fit(&sentence, left, theme);
+    let left = if told_beside { sheet.width() - NO_ARM.width() - 1 } else { sheet.width() };
+    // The doubts stand in the list too, so the verdicts go before them where both don't fit.
+    let doubts = match app.judged().map_or(0, |judged| judged.survey.doubts.len()) {
+        0 => String::new(),
+        1 => "; 1 doubt".to_owned(),
+        count => format!("; {count} doubts"),
+    };
+    if two_rows || sentence.width() + doubts.width() <= left {
+        sentence += &doubts;
+    }
+    let (sentence, more) = if two_rows {
+        let mut lines = wrap(&sentence, left).into_iter();
+        (lines.next().unwrap_or_default(), lines.collect::<Vec<_>>().join(" "))
+    } else {
+        (fit(&sentence, left, theme), String::new())
+    };
     sheet.put(0, 0, &sentence, theme.strong());
     // The mark in the sentence: reversed, never coloured alone, and green for nothing.
     if let Some(at) = sentence.find("NOT READY") {
@@ -40,6 +47,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     if told_beside {
         sheet.put_before(sheet.width(), 0, NO_ARM, theme.strong());
     } else {
-        sheet.put(0, 1, NO_ARM, theme.strong());
+        sheet.put(0, 1, &fit(&more, sheet.width().saturating_sub(NO_ARM.width() + 1), theme), theme.strong());
+        sheet.put_before(sheet.width(), 1, NO_ARM, theme.strong());
     }
 }

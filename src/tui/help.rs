@@ -43,8 +43,8 @@ pub fn lines(theme: Theme, width: usize) -> Vec<Line> {
         lines.push(vec![sign, (word, theme.strong()), (meaning(verdict).to_owned(), Style::new())]);
     }
     lines.push(Vec::new());
-    let words = "Room is what is left of a limit. \"Asks 154 %\" means 54 % more than there is. The reserve is the room that the \
-                 recipe wants kept. Enter offers all of this by name; arrows, Enter and Backspace are enough.";
+    let words = "Room is what is left of a limit; what asks 154 % asks 54 % more than there is. The reserve is the room that \
+                 must be left.";
     lines.extend(paragraph(words, width, 0, Style::new()));
     lines
 }

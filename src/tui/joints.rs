@@ -7,6 +7,7 @@ use super::app::{App, Pane};
 use super::gauges::{Gauge, Gauges};
 use super::phrases::how;
 use super::sheet::{Sheet, fit};
+use super::theme::Theme;
 
 /// Columns of the numbers: value, to the range's end, rate, acceleration, holding.
 #[derive(Debug, Clone, Copy)]
@@ -22,18 +23,20 @@ struct Columns {
 
 /// A share such as "1103 %O" with its letter.
 const SHARE: usize = 8;
-/// A value such as "-1234.5 mm".
+/// A value such as "-1234.5 mm"; in ASCII a degree takes more.
 const VALUE: usize = 9;
+const VALUE_ASCII: usize = 11;
 
 impl Columns {
     /// Each number's column is named by where it ends.
-    fn of(width: usize, name: usize) -> Self {
+    fn of(width: usize, name: usize, theme: Theme) -> Self {
+        let wide = if theme.ascii { VALUE_ASCII } else { VALUE };
         let with_accel = width >= 54;
         let shares = if with_accel { 3 } else { 2 };
-        let fixed = 1 + name + VALUE + 1 + VALUE + shares * SHARE;
+        let fixed = 1 + name + wide + 1 + wide + shares * SHARE;
         let ruler_width = width.saturating_sub(fixed + 1).min(41);
-        let value = 1 + name + VALUE;
-        let to_end = value + 1 + ruler_width + VALUE;
+        let value = 1 + name + wide;
+        let to_end = value + 1 + ruler_width + wide;
         Self {
             value,
             ruler: value + 1,
@@ -55,14 +58,14 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     };
     let joints = app.arm.joints();
     let name = joints.iter().map(|joint| joint.name.chars().count()).max().unwrap_or(2).min(8);
-    let columns = Columns::of(sheet.width(), name);
+    let columns = Columns::of(sheet.width(), name, theme);
     let title_end = sheet.rule(0, Pane::Joints.name(), focused);
     let mut word = |end: usize, word: &str| {
-        if end >= word.len() + 2 && end - word.len() - 1 > title_end {
-            sheet.put(end - word.len() - 1, 0, &format!(" {word}"), Style::new());
+        if end > word.len() + title_end + 1 {
+            sheet.put(end - word.len() - 1, 0, &format!(" {word} "), Style::new());
         }
     };
-    word(columns.to_end, "to end");
+    word(columns.to_end - 1, "to end");
     word(columns.rate - 1, "rate");
     columns.accel.into_iter().for_each(|end| word(end - 1, "accel"));
     word(columns.holding - 1, "holding");
@@ -72,11 +75,8 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     for (row, index) in (first..joints.len()).take(rows).enumerate() {
         draw_joint(sheet, app, gauges, index, row + 1, columns);
     }
-    let told = if gauges.all.is_empty() {
-        format!("no motion from {:.0} % on", 100.0 * gauges.fraction)
-    } else {
-        closeness(gauges)
-    };
+    let told =
+        if gauges.all.is_empty() { format!("no motion from {:.0} % on", 100.0 * gauges.fraction) } else { closeness(gauges) };
     let y = rows + 1;
     let x = sheet.put(1, y, &fit(&told, sheet.width().saturating_sub(1), theme), Style::new());
     let waypoint = judged.plan.segments.get(app.segment()).map_or(0, |segment| segment.to);
@@ -161,10 +161,7 @@ fn closeness(gauges: &Gauges) -> String {
             format!("{word} {value}{letter}")
         })
     };
-    let parts = [
-        told(Check::Singular, "singular", None),
-        told(Check::SpeedLeft, "left", Some(0)),
-        told(Check::TcpSpeed, "TCP", Some(0)),
-    ];
+    let parts =
+        [told(Check::Singular, "singular", None), told(Check::SpeedLeft, "left", Some(0)), told(Check::TcpSpeed, "TCP", Some(0))];
     parts.into_iter().flatten().collect::<Vec<_>>().join("  ")
 }

@@ -23,7 +23,7 @@ struct Columns {
 /// "J4 rate asks 154 %" and the like fit into this.
 const NEAREST: usize = 21;
 /// The same without "asks".
-const NEAREST_BRIEF: usize = 15;
+const NEAREST_BRIEF: usize = 13;
 /// The longest word for a kind of segment.
 const KIND: usize = 5;
 
@@ -41,11 +41,16 @@ impl Columns {
         if name + how_wide + NEAREST_BRIEF > left {
             brief_how = true;
         }
-        let how = if brief_how { KIND } else { how_wide };
+        // The narrowest list leaves out how a waypoint is arrived at.
+        let how = match brief_how {
+            true if name + KIND + NEAREST_BRIEF > left + 2 => 0,
+            true => KIND,
+            false => how_wide,
+        };
         name = name.min(left.saturating_sub(how + NEAREST_BRIEF)).max(8);
         let at_name = 2 + digits + 1;
         let at_how = at_name + name + 1;
-        let at_verdict = at_how + how + 1;
+        let at_verdict = at_how + how + usize::from(how > 0);
         Self {
             number: 2 + digits,
             name: at_name,
@@ -65,8 +70,13 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     let columns = Columns::of(app, sheet.width());
     let focused = app.pane == Pane::List;
     let title_end = sheet.rule(0, Pane::List.name(), focused);
-    for (x, word) in [(columns.how, "how"), (columns.verdict, "is"), (columns.nearest, "nearest to its limit")] {
-        if x > title_end && x + word.len() < sheet.width() {
+    for (x, word) in [
+        (columns.how, "how"),
+        (columns.verdict, "is"),
+        (columns.nearest, if columns.brief_nearest { "nearest" } else { "nearest to its limit" }),
+    ] {
+        let shown = x != columns.how || columns.how < columns.verdict;
+        if shown && x > title_end && x + word.len() < sheet.width() {
             sheet.put(x - 1, 0, &format!(" {word} "), Style::new());
         }
     }
@@ -79,7 +89,9 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
                 sheet.put_before(columns.number, y, "1", Style::new());
                 let name = fit(&app.recipe.waypoints[0].name, columns.how - columns.name - 1, theme);
                 sheet.put(columns.name, y, &name, Style::new());
-                sheet.put(columns.how, y, "start", Style::new());
+                if columns.how < columns.verdict {
+                    sheet.put(columns.how, y, "start", Style::new());
+                }
             }
             Row::Segment(segment) => draw_segment(sheet, app, *segment, y, columns),
             Row::Events(waypoint) => {
@@ -111,11 +123,13 @@ fn draw_segment(sheet: &mut Sheet, app: &App, segment: usize, y: usize, columns:
     sheet.put(columns.name, y, &name, plain);
     let asked = how(&app.recipe, waypoint);
     let asked = if columns.brief_how { asked.split(' ').next().unwrap_or("").to_owned() } else { asked };
-    sheet.put(columns.how, y, &asked, plain);
+    if columns.how < columns.verdict {
+        sheet.put(columns.how, y, &asked, plain);
+    }
     if selected {
         sheet.put(0, y, theme.here(), theme.strong());
         let style = if app.pane == Pane::List { theme.selected() } else { theme.strong() };
-        sheet.tint(1, y, columns.verdict - 2, style);
+        sheet.tint(1, y, columns.verdict.saturating_sub(2), style);
     }
     if let Some(judged) = app.judged() {
         draw_verdict(sheet, judged, segment, y, columns, plain);

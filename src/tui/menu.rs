@@ -7,7 +7,8 @@ use super::sheet::{Sheet, fit};
 /// Draws a menu over what is there, in the middle of the sheet.
 pub fn draw(sheet: &mut Sheet, menu: &Menu) {
     let theme = sheet.theme();
-    let widest = menu.items.iter().map(|(name, _)| name.width()).chain([menu.title.width() + 2]).max().unwrap_or(0);
+    let widest =
+        menu.items.iter().map(|item| item.name.width() + 2 + item.key.width()).chain([menu.title.width() + 2]).max().unwrap_or(0);
     let (width, height) = ((widest + 6).min(sheet.width()), (menu.items.len() + 2).min(sheet.height()));
     let (x, y) = ((sheet.width() - width) / 2, (sheet.height() - height) / 2);
     let mut sheet = sheet.part(x, y, width, height);
@@ -28,9 +29,10 @@ pub fn draw(sheet: &mut Sheet, menu: &Menu) {
     }
     let rows = height.saturating_sub(2);
     let first = (menu.chosen + 1).saturating_sub(rows);
-    for (row, (name, _)) in menu.items.iter().enumerate().skip(first).take(rows) {
+    for (row, item) in menu.items.iter().enumerate().skip(first).take(rows) {
         let y = row - first + 1;
-        sheet.put(3, y, &fit(name, width.saturating_sub(5), theme), Style::new());
+        sheet.put(3, y, &fit(&item.name, width.saturating_sub(5), theme), Style::new());
+        sheet.put_before(width.saturating_sub(3), y, &item.key, Style::new());
         if row == menu.chosen {
             sheet.put(1, y, theme.here(), theme.strong());
             sheet.tint(1, y, width.saturating_sub(2), theme.selected());

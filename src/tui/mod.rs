@@ -39,7 +39,7 @@ use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
 pub use action::Action;
-pub use app::{App, Asking, Menu, Mode, Page, Pane, Question, Wish};
+pub use app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use run::{Started, run};
@@ -47,13 +47,12 @@ pub use screen::{Screen, restore};
 pub use theme::Theme;
 pub use update::update;
 
-use layout::Layout;
 use sheet::Sheet;
 
 /// Draws the app into an area of a buffer. Nothing is computed here that could be known before.
 pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
     let theme = app.theme;
-    let layout = Layout::of(area, app.pane, app.arm.len(), app.scene.bands.rows.len());
+    let layout = update::layout_in(app, area);
     headline::draw(&mut Sheet::new(buffer, layout.headline, theme), app);
     footer::draw(&mut Sheet::new(buffer, layout.footer, theme), app);
     if let Mode::Page(page, scroll) = app.mode {

@@ -13,13 +13,13 @@ pub fn lines(app: &App, width: usize) -> Vec<Line> {
         if doubts > 0 {
             lines.push(vec![("Doubts: data that is probably a mistake. They change no verdict.".to_owned(), theme.strong())]);
             for doubt in 0..doubts {
-                lines.extend(item(&doubt_words(judged, doubt), width));
+                lines.extend(item(&theme.text(&doubt_words(judged, doubt)), width));
             }
             lines.push(Vec::new());
         }
         lines.extend(paragraph("Not judged by this program, whatever the verdicts say:", width, 0, theme.strong()));
         for sentence in &app.scene.not_checked {
-            lines.extend(item(sentence, width));
+            lines.extend(item(&theme.text(sentence), width));
         }
         lines.push(Vec::new());
     }

@@ -4,6 +4,7 @@ use super::app::{App, Mode, Page};
 use super::layout::Layout;
 use super::sheet::{Sheet, wrap};
 use super::update::layout;
+use super::why::Spacing;
 use super::{help, not_checked, why};
 
 /// A line of a text: pieces, each with its style.
@@ -19,19 +20,19 @@ pub fn paragraph(text: &str, width: usize, indent: usize, style: Style) -> Vec<L
 }
 
 /// A page's title and lines.
-fn text(app: &App, page: Page, width: usize) -> (&'static str, Vec<Line>) {
+fn text(app: &App, page: Page, width: usize) -> (String, Vec<Line>) {
     let width = width.saturating_sub(2).clamp(1, WIDEST);
     match page {
-        Page::Why => ("Why", why::lines(app, width)),
-        Page::NotChecked => ("Not checked", not_checked::lines(app, width)),
-        Page::Help => ("Help", help::lines(app.theme, width)),
+        Page::Why => (why::title(app, width), why::lines(app, width, Spacing::Airy)),
+        Page::NotChecked => ("Not checked".to_owned(), not_checked::lines(app, width)),
+        Page::Help => ("Help".to_owned(), help::lines(app.theme, width)),
     }
 }
 
 /// Draws a page between headline and footer.
 pub fn draw(sheet: &mut Sheet, app: &App, page: Page, scroll: usize) {
     let (title, lines) = text(app, page, sheet.width());
-    draw_lines(sheet, title, &lines, scroll, true);
+    draw_lines(sheet, &title, &lines, scroll, true);
 }
 
 /// Draws a titled text that may be longer than its sheet.
@@ -56,7 +57,7 @@ pub(super) fn hold_scroll(app: &mut App) {
     let Layout { why: pane, .. } = layout(app);
     let (width, height) = (usize::from(pane.width), usize::from(pane.height));
     if height > 0 {
-        let count = why::lines(app, width.saturating_sub(2).max(1)).len();
+        let count = why::lines(app, width.saturating_sub(2).max(1), Spacing::Tight).len();
         app.why_scroll = app.why_scroll.min(count.saturating_sub(height - 1));
     }
     if let Mode::Page(page, scroll) = app.mode {

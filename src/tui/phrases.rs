@@ -59,9 +59,9 @@ pub fn events(recipe: &Recipe, waypoint: usize) -> Vec<String> {
     }
     match &point.then {
         Some(Then::Take(load)) => told.push(format!("takes {load}")),
-        Some(Then::Release) => told.push(
-            recipe.load_before(waypoint).map_or_else(|| "releases".to_owned(), |load| format!("releases {}", load.name)),
-        ),
+        Some(Then::Release) => {
+            told.push(recipe.load_before(waypoint).map_or_else(|| "releases".to_owned(), |load| format!("releases {}", load.name)))
+        }
         None => {}
     }
     told
@@ -84,7 +84,8 @@ pub fn nearest(judged: &Judged, survey: &SegmentSurvey, brief: bool) -> String {
 }
 
 fn peak(judged: &Judged, result: &CheckResult, peak: &Peak, brief: bool) -> String {
-    let what = [joint_word(judged, peak.joint), check_word(result.check)].join(" ");
+    let word = if brief && result.check == Check::Holding { "hold" } else { check_word(result.check) };
+    let what = [joint_word(judged, peak.joint), word].join(" ");
     let what = what.trim_start();
     match result.check {
         Check::Range => {

@@ -1,12 +1,10 @@
 use ratatui::style::Style;
 
-use crate::checks::Verdict;
 use crate::units::{Dimension, Measure};
 
 use super::app::App;
 use super::bands::cell_of;
 use super::layout::label_width;
-use super::phrases::check_word;
 use super::sheet::Sheet;
 
 /// Draws the verdicts along the cycle: a row a check, the segments' numbers above, the cursor's column marked.
@@ -22,12 +20,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     }
     numbers(&mut sheet.part(label, 0, cells, 1), app, cursor);
     let height = sheet.height().saturating_sub(1);
-    let all = (height < bands.rows.len() && height < 2).then_some(("all checks", &bands.all));
-    let rows: Vec<(&str, &Vec<Option<Verdict>>)> = match all {
-        Some(all) => vec![all],
-        None => bands.worst_rows(height).into_iter().map(|band| (check_word(band.check), &band.cells)).collect(),
-    };
-    for (y, (word, cells_of_row)) in rows.into_iter().enumerate() {
+    for (y, (word, cells_of_row)) in bands.in_rows(height).into_iter().enumerate() {
         if label > 0 {
             sheet.put_before(label - 1, y + 1, word, Style::new());
         }

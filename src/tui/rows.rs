@@ -58,8 +58,7 @@ impl Rows {
             list.how = list.how.max(how(recipe, index).width());
         }
         if let Some(judged) = judged {
-            list.verdict =
-                judged.survey.segments.iter().map(|survey| survey.verdict.word().len()).fold(list.verdict, usize::max);
+            list.verdict = judged.survey.segments.iter().map(|survey| survey.verdict.word().len()).fold(list.verdict, usize::max);
         }
         list
     }

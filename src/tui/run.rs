@@ -2,7 +2,7 @@ use std::sync::Arc;
 use std::time::Duration;
 
 use anyhow::Context;
-use crossbeam_channel::{Receiver, select, never};
+use crossbeam_channel::{Receiver, never, select};
 use ratatui::crossterm::event::{Event, KeyEventKind, MouseButton, MouseEventKind};
 use ratatui::layout::Rect;
 
@@ -49,7 +49,6 @@ pub fn run(started: Started, options: Options) -> anyhow::Result<()> {
 /// Runs the screen; tells the signal that ended it, if one did. The terminal is given back when this returns.
 fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
     let mut screen = Screen::take(options.mouse)?;
-    restore_on_panic();
     let news = listen().context("can't listen to the terminal")?;
     let (width, height) = screen.size()?;
     let mut app = App::new(started.arm, started.recipe, options.theme(), Rect::new(0, 0, width, height));
@@ -137,15 +136,6 @@ fn hear(app: &mut App, news: News) -> anyhow::Result<Turn> {
         Wish::Quit => Turn::Quit,
         Wish::Suspend => Turn::Suspend,
     })
-}
-
-/// Before the message of a panic is written the terminal is given back, so that it can be read.
-fn restore_on_panic() {
-    let before = std::panic::take_hook();
-    std::panic::set_hook(Box::new(move |panic| {
-        restore();
-        before(panic);
-    }));
 }
 
 /// Lets the shell have the terminal until it sends this program on.

@@ -1,4 +1,5 @@
 use std::io::{self, BufWriter, IsTerminal, Stdout, Write};
+use std::sync::Once;
 
 use ratatui::Terminal;
 use ratatui::backend::CrosstermBackend;
@@ -25,7 +26,7 @@ pub struct Screen {
 }
 
 impl Screen {
-    /// Takes the terminal.
+    /// Takes the terminal. From here on a panic gives it back before its message is written.
     ///
     /// # Errors
     /// Where input or output is no terminal, or the terminal refuses.
@@ -34,6 +35,7 @@ impl Screen {
             let says = "the review screen needs a terminal; `elbowroom check` prints the same without one";
             return Err(io::Error::new(io::ErrorKind::Unsupported, says));
         }
+        restore_on_panic();
         // The theme knows whether colours are wanted; otherwise bold and reverse would be lost with them.
         force_color_output(true);
         let backend = CrosstermBackend::new(BufWriter::with_capacity(BUFFER, io::stdout()));
@@ -81,6 +83,17 @@ impl Screen {
         queue!(self.terminal.backend_mut(), EndSynchronizedUpdate)?;
         io::Write::flush(self.terminal.backend_mut())
     }
+}
+
+fn restore_on_panic() {
+    static ONCE: Once = Once::new();
+    ONCE.call_once(|| {
+        let before = std::panic::take_hook();
+        std::panic::set_hook(Box::new(move |panic| {
+            restore();
+            before(panic);
+        }));
+    });
 }
 
 impl Drop for Screen {

@@ -121,9 +121,7 @@ pub fn fit(text: &str, width: usize, theme: Theme) -> String {
         }
         kept.push(sign);
     }
-    if let Some(space) = kept.rfind(' ')
-        && 2 * space >= kept.len()
-    {
+    if let Some(space) = kept.rfind(' ').filter(|space| *space > 0) {
         kept.truncate(space);
     }
     if width >= mark.width() { kept.trim_end().to_owned() + mark } else { String::new() }

@@ -97,9 +97,9 @@ impl Theme {
         self.pick("▸", ">")
     }
 
-    /// The part of a ruler or bar that is filled.
-    pub fn full(self) -> &'static str {
-        self.pick("█", "#")
+    /// A piece of a bar.
+    pub fn bar(self) -> &'static str {
+        self.pick("━", "=")
     }
 
     /// One of two texts: the first where the terminal shows more than ASCII.

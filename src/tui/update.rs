@@ -1,11 +1,13 @@
+use ratatui::layout::Rect;
+
 use crate::checks::Check;
 use crate::review::Session;
 
 use super::action::Action;
-use super::app::{App, Asking, Menu, Mode, Page, Pane, Question, Wish};
+use super::app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
 use super::ask;
 use super::keys::BINDINGS;
-use super::layout::Layout;
+use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
 use super::{click, page};
@@ -45,10 +47,10 @@ fn by_mode(app: &mut App, action: Action) {
         (Mode::Menu(menu), Action::Up) => menu.chosen = menu.chosen.checked_sub(1).unwrap_or(menu.items.len() - 1),
         (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
         (Mode::Menu(menu), Action::Enter) => {
-            let action = menu.items.get(menu.chosen).map(|(_, action)| action.clone());
+            let action = menu.items.get(menu.chosen).map(|item| item.action.clone());
             app.mode = Mode::Panes;
             if let Some(action) = action {
-                in_panes(app, action);
+                by_mode(app, action);
             }
         }
         (Mode::Page(_, scroll), Action::Up) => *scroll = scroll.saturating_sub(1),
@@ -164,47 +166,68 @@ pub(super) fn follow_finding(app: &mut App) {
     app.joint = joint.unwrap_or(app.joint);
 }
 
-/// The actions for what is selected: those of the pane first.
+/// The actions for what is selected: those of the pane first, quitting last.
 fn actions(app: &App) -> Menu {
-    let mut first = match app.pane {
-        Pane::Chart | Pane::Joints => vec![("choose what the chart shows".to_owned(), Action::ChooseQuantity)],
-        Pane::List | Pane::Why => vec![("read why, on the whole screen".to_owned(), Action::ReadWhy)],
-    };
-    let mut rest = Vec::new();
-    for binding in BINDINGS {
-        let moves = matches!(
-            binding.action,
-            Action::Left | Action::Right | Action::Up | Action::Down | Action::Enter | Action::Back | Action::NextQuantity
-        );
-        let leaps = matches!(binding.action, Action::LeapBack | Action::LeapOn | Action::ToStart | Action::ToEnd);
-        if moves || leaps || first.iter().any(|(hint, _)| hint == binding.hint) {
-            continue;
+    let choose = Item { name: "chart: choose quantity".to_owned(), key: String::new(), action: Action::ChooseQuantity };
+    let mut items: Vec<Item> =
+        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, app.theme)).collect();
+    items.push(choose);
+    let charting = matches!(app.pane, Pane::Chart | Pane::Joints);
+    items.sort_by_key(|item| match item.action {
+        Action::ReadWhy => 1,
+        Action::ChooseQuantity | Action::Span | Action::EveryJoint => {
+            if charting {
+                0
+            } else {
+                3
+            }
         }
-        rest.push((binding.hint.to_owned(), binding.action.clone()));
-    }
-    if !matches!(app.pane, Pane::Chart | Pane::Joints) {
-        let before = rest.iter().position(|(_, action)| matches!(action, Action::Span)).unwrap_or(rest.len());
-        rest.insert(before, ("choose what the chart shows".to_owned(), Action::ChooseQuantity));
-    }
-    rest.push(("start of the segment or cycle".to_owned(), Action::ToStart));
-    // Quitting stands last, away from what is asked for often.
-    rest.sort_by_key(|(_, action)| matches!(action, Action::Quit));
-    first.append(&mut rest);
+        Action::Help => 4,
+        Action::Quit => 5,
+        _ => 2,
+    });
     let number = app.judged().and_then(|judged| judged.plan.segments.get(app.segment())).map(|segment| segment.number());
     let title = number.map_or_else(|| "Actions".to_owned(), |number| format!("Segment {number}"));
-    Menu { title, items: first, chosen: 0 }
+    Menu { title, items, chosen: 0 }
+}
+
+/// Whether an action stands in the menu; the others are what arrows, Enter and Backspace do anyway.
+fn is_named(action: &Action) -> bool {
+    matches!(
+        action,
+        Action::NextPane
+            | Action::Worst
+            | Action::NextFinding
+            | Action::PreviousFinding
+            | Action::ReadWhy
+            | Action::NotChecked
+            | Action::GoTo
+            | Action::Find
+            | Action::Span
+            | Action::EveryJoint
+            | Action::Help
+            | Action::Quit
+    )
 }
 
 fn quantities(app: &App) -> Menu {
     let checks = &Check::ALL[1..];
+    let item = |check: &Check| Item { name: check_word(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
     Menu {
         title: "The chart shows".to_owned(),
-        items: checks.iter().map(|check| (check_word(*check).to_owned(), Action::Show(*check))).collect(),
+        items: checks.iter().map(item).collect(),
         chosen: checks.iter().position(|check| *check == app.chart.check).unwrap_or(0),
     }
 }
 
 /// The layout of the screen as it is now.
 pub(super) fn layout(app: &App) -> Layout {
-    Layout::of(app.area, app.pane, app.arm.len(), app.scene.bands.rows.len())
+    layout_in(app, app.area)
+}
+
+/// The layout that the app has in an area.
+pub(super) fn layout_in(app: &App, area: Rect) -> Layout {
+    let bands = &app.scene.bands;
+    let wants = Wants { joints: app.arm.len(), bands: bands.rows.len(), flagged: bands.flagged(), rows: app.scene.rows.len() };
+    Layout::of(area, app.pane, wants)
 }
