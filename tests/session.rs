@@ -37,30 +37,30 @@ fn findings_come_one_after_the_other_and_around() {
     let mut session = Session::open(judged());
     let count = session.judged().survey.findings.len();
     for number in (2..=count).chain([1]) {
-        assert!(session.to_next_finding());
+        assert!(session.go_to_next_finding());
         assert_eq!(session.finding_number(), Some(number));
     }
-    assert!(session.to_previous_finding());
+    assert!(session.go_to_previous_finding());
     assert_eq!(session.finding_number(), Some(count));
 }
 
 #[test]
 fn a_segment_without_findings_shows_where_it_is_nearest_to_its_reserve() {
     let mut session = Session::open(judged());
-    session.to_segment(3);
+    session.go_to_segment(3);
     assert_eq!((session.finding(), session.cursor().segment), (None, 3));
     let nearest = session.judged().survey.segments[3].nearest().expect("it moves").1.at.time;
     assert_eq!(session.cursor().time, nearest);
-    session.by_segments(-99);
+    session.go_by_segments(-99);
     assert_eq!(session.cursor().segment, 0);
-    session.by_segments(99);
+    session.go_by_segments(99);
     assert_eq!(session.cursor().segment, session.segments() - 1);
 }
 
 #[test]
 fn steps_stop_at_each_end_of_a_segment_before_they_go_on() {
     let mut session = Session::open(judged());
-    session.to_time(0.0);
+    session.go_to_time(0.0);
     let mut ends = Vec::new();
     for _ in 0..2000 {
         let cursor = session.cursor();
@@ -79,10 +79,10 @@ fn steps_stop_at_each_end_of_a_segment_before_they_go_on() {
 #[test]
 fn going_on_to_another_segment_selects_its_worst_finding() {
     let mut session = Session::open(judged());
-    session.to_time(0.0);
+    session.go_to_time(0.0);
     assert_eq!(session.finding(), None);
     let over = session.judged().plan.starts[8] + 0.1;
-    session.to_time(over);
+    session.go_to_time(over);
     assert_eq!(session.finding_number(), Some(1));
 }
 

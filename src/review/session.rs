@@ -22,8 +22,8 @@ impl Session {
     /// Opens a judged recipe on its worst finding; without findings on its first segment, where that is nearest to its reserve.
     pub fn open(judged: Judged) -> Self {
         let mut session = Self { judged, cursor: Cursor { segment: 0, time: 0.0 }, finding: None };
-        if !session.to_worst() {
-            session.to_segment(0);
+        if !session.go_to_worst() {
+            session.go_to_segment(0);
         }
         session
     }
@@ -81,23 +81,23 @@ impl Session {
     }
 
     /// Goes to the worst instant of the worst finding; `false` if there is none.
-    pub fn to_worst(&mut self) -> bool {
-        self.to_finding(0)
+    pub fn go_to_worst(&mut self) -> bool {
+        self.go_to_finding(0)
     }
 
     /// Goes to the next finding, from the last on to the worst; `false` if there is none.
-    pub fn to_next_finding(&mut self) -> bool {
+    pub fn go_to_next_finding(&mut self) -> bool {
         let count = self.judged.survey.findings.len();
-        count > 0 && self.to_finding(self.finding.map_or(0, |index| (index + 1) % count))
+        count > 0 && self.go_to_finding(self.finding.map_or(0, |index| (index + 1) % count))
     }
 
     /// Goes to the finding before, from the worst on to the last; `false` if there is none.
-    pub fn to_previous_finding(&mut self) -> bool {
+    pub fn go_to_previous_finding(&mut self) -> bool {
         let count = self.judged.survey.findings.len();
-        count > 0 && self.to_finding(self.finding.map_or(0, |index| (index + count - 1) % count))
+        count > 0 && self.go_to_finding(self.finding.map_or(0, |index| (index + count - 1) % count))
     }
 
-    fn to_finding(&mut self, index: usize) -> bool {
+    fn go_to_finding(&mut self, index: usize) -> bool {
         let Some(finding) = self.judged.survey.findings.get(index) else { return false };
         self.cursor = Cursor { segment: finding.segment, time: finding.worst().time };
         self.finding = Some(index);
@@ -106,10 +106,10 @@ impl Session {
 
     /// Goes to a segment (counted from 0; one past the last means the last): to its worst finding, else where it is nearest to its
     /// reserve.
-    pub fn to_segment(&mut self, segment: usize) {
+    pub fn go_to_segment(&mut self, segment: usize) {
         let segment = segment.min(self.segments().saturating_sub(1));
         if let Some(index) = self.worst_of(segment) {
-            self.to_finding(index);
+            self.go_to_finding(index);
             return;
         }
         let nearest = self.judged.survey.segments.get(segment).and_then(|survey| survey.nearest());
@@ -118,18 +118,18 @@ impl Session {
     }
 
     /// Goes some segments on (or back).
-    pub fn by_segments(&mut self, count: isize) {
+    pub fn go_by_segments(&mut self, count: isize) {
         let to = self.cursor.segment.saturating_add_signed(count);
-        self.to_segment(to);
+        self.go_to_segment(to);
     }
 
     /// Goes to a time on the cycle, s; times outside are brought to its ends.
-    pub fn to_time(&mut self, time: f64) {
+    pub fn go_to_time(&mut self, time: f64) {
         self.place(self.judged.plan.cursor(time));
     }
 
     /// Goes to a time of the cursor's own segment, s; times outside are brought to its ends.
-    pub fn to_time_in_segment(&mut self, time: f64) {
+    pub fn go_to_time_in_segment(&mut self, time: f64) {
         let segment = self.cursor.segment;
         self.place(Cursor { segment, time: time.clamp(0.0, self.lasts(segment)) });
     }
@@ -144,7 +144,7 @@ impl Session {
         } else if steps < 0 && time <= 0.0 && segment > 0 {
             self.place(Cursor { segment: segment - 1, time: self.lasts(segment - 1) });
         } else {
-            self.to_time_in_segment(time + length);
+            self.go_to_time_in_segment(time + length);
         }
     }
 

@@ -11,16 +11,13 @@ pub fn prompt(question: Question) -> &'static str {
 }
 
 /// Handles a key while text is asked for.
-pub(super) fn answer(app: &mut App, action: Action) {
+pub(super) fn answer(app: &mut App, action: &Action) {
     let Mode::Asking(asking) = &mut app.mode else { return };
     match action {
-        Action::Type(sign) if !sign.is_control() => asking.typed.push(sign),
+        Action::Type(sign) if !sign.is_control() => asking.typed.push(*sign),
         Action::Back => app.mode = Mode::Panes,
-        Action::Erase => {
-            if asking.typed.pop().is_none() {
-                app.mode = Mode::Panes;
-            }
-        }
+        Action::Erase if asking.typed.is_empty() => app.mode = Mode::Panes,
+        Action::Erase => asking.typed.truncate(asking.typed.len() - asking.typed.chars().next_back().map_or(0, char::len_utf8)),
         Action::Enter => {
             let asking = asking.clone();
             app.mode = Mode::Panes;
@@ -53,14 +50,14 @@ fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
         if !time.is_finite() {
             return Err(format!("\"{typed}\" is not a time"));
         }
-        session.to_time(time);
+        session.go_to_time(time);
         return Ok(());
     }
     let count = session.segments() + 1;
     match typed.parse::<usize>() {
-        Ok(1) => session.to_time(0.0),
+        Ok(1) => session.go_to_time(0.0),
         Ok(number) if (2..=count).contains(&number) => {
-            session.to_segment(number - 2);
+            session.go_to_segment(number - 2);
             follow_finding(app);
         }
         Ok(number) => return Err(format!("there is no waypoint {number}; there are {count}")),
@@ -82,9 +79,9 @@ fn find(app: &mut App, text: &str) -> Result<(), String> {
         (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));
     app.found = text.to_owned();
     match found {
-        Some(0) => session.to_time(0.0),
+        Some(0) => session.go_to_time(0.0),
         Some(index) => {
-            session.to_segment(index - 1);
+            session.go_to_segment(index - 1);
             follow_finding(app);
         }
         None => return Err(format!("no waypoint has \"{text}\" in its name")),

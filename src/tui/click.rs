@@ -15,7 +15,7 @@ pub(super) fn click(app: &mut App, column: u16, row: u16) {
             && let Some(session) = &mut app.session
         {
             let share = (f64::from(at.x - cells.x) + 0.5) / f64::from(cells.width);
-            session.to_time(share * session.judged().plan.duration());
+            session.go_to_time(share * session.judged().plan.duration());
         }
         return;
     }
@@ -32,7 +32,7 @@ pub(super) fn click(app: &mut App, column: u16, row: u16) {
                 _ => None,
             };
             if let (Some(segment), Some(session)) = (segment, &mut app.session) {
-                session.to_segment(segment);
+                session.go_to_segment(segment);
                 follow_finding(app);
             }
         }

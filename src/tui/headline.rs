@@ -1,10 +1,8 @@
 use unicode_width::UnicodeWidthStr;
 
-use crate::checks::Verdict;
-use crate::review::headline;
-
 use super::app::App;
 use super::sheet::{Sheet, fit, wrap};
+use crate::checks::Verdict;
 
 /// Stands wherever a verdict stands: the program moves nothing.
 const NO_ARM: &str = "no arm connected";
@@ -12,11 +10,9 @@ const NO_ARM: &str = "no arm connected";
 /// Draws the sentence on the whole recipe, and that no arm is connected.
 pub fn draw(sheet: &mut Sheet, app: &App) {
     let theme = app.theme;
-    let mut sentence = match (app.judged(), app.progress) {
-        (Some(judged), None) => headline(judged),
-        (Some(judged), Some(progress)) => {
-            format!("{} - OLD, checking {} of {}", headline(judged), progress.done, progress.of)
-        }
+    let mut sentence = match (&app.scene.headline, app.progress) {
+        (Some((told, _)), None) => told.clone(),
+        (Some((told, _)), Some(progress)) => format!("OLD, checking {} of {}: {told}", progress.done, progress.of),
         (None, Some(progress)) => format!("{}: checking {} of {}", app.recipe.name, progress.done, progress.of),
         (None, None) => app.recipe.name.clone(),
     };
@@ -41,7 +37,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     sheet.put(0, 0, &sentence, theme.strong());
     // The mark in the sentence: reversed, never coloured alone, and green for nothing.
     if let Some(at) = sentence.find("NOT READY") {
-        let worst = app.judged().map_or(Verdict::Unproven, |judged| judged.survey.verdict());
+        let worst = app.scene.headline.as_ref().map_or(Verdict::Unproven, |(_, worst)| *worst);
         sheet.tint(sentence[..at].width(), 0, "NOT READY".width(), theme.verdict(worst));
     }
     if told_beside {

@@ -60,7 +60,8 @@ pub fn events(recipe: &Recipe, waypoint: usize) -> Vec<String> {
     match &point.then {
         Some(Then::Take(load)) => told.push(format!("takes {load}")),
         Some(Then::Release) => {
-            told.push(recipe.load_before(waypoint).map_or_else(|| "releases".to_owned(), |load| format!("releases {}", load.name)))
+            let load = recipe.load_before(waypoint).map_or("", |load| load.name.as_str());
+            told.push(format!("releases {load}").trim_end().to_owned());
         }
         None => {}
     }

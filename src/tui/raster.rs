@@ -154,7 +154,7 @@ mod tests {
         let area = Rect::new(0, 0, raster.width as u16, raster.height as u16);
         let mut buffer = Buffer::empty(area);
         raster.draw(&mut Sheet::new(&mut buffer, area, Theme { mono: true, ascii, ..Theme::default() }), |_| Style::new());
-        buffer.content().iter().map(|cell| cell.symbol()).collect()
+        buffer.content().iter().map(ratatui::buffer::Cell::symbol).collect()
     }
 
     #[test]

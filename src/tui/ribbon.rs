@@ -42,8 +42,11 @@ fn numbers(sheet: &mut Sheet, app: &App, cursor: usize) {
     let (theme, bands) = (app.theme, &app.scene.bands);
     let Some(judged) = app.judged() else { return };
     for (index, [first, end]) in bands.segments.iter().enumerate() {
+        if end == first {
+            continue;
+        }
         let selected = index == app.segment();
-        if *first > 0 && end > first {
+        if *first > 0 {
             sheet.put(*first, 0, theme.pick("╷", "|"), Style::new());
         }
         let number = judged.plan.segments[index].number().to_string();

@@ -90,7 +90,7 @@ fn wait(app: &mut App, recheck: &mut Recheck, news: &Receiver<News>) -> anyhow::
         recv(news) -> told => {
             let mut told = Some(told.context("the terminal can't be listened to any more")?);
             while let Some(one) = told {
-                let turn = hear(app, one)?;
+                let turn = hear(app, &one)?;
                 if turn != Turn::Draw {
                     return Ok(turn);
                 }
@@ -113,13 +113,13 @@ fn accept(app: &mut App, recheck: &mut Recheck, reply: Reply) {
     }
 }
 
-fn hear(app: &mut App, news: News) -> anyhow::Result<Turn> {
+fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
     let action = match news {
-        News::End(signal) => return Ok(Turn::End(signal)),
+        News::End(signal) => return Ok(Turn::End(*signal)),
         News::Suspend => return Ok(Turn::Suspend),
         News::Gone => anyhow::bail!("the terminal is gone"),
-        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(key, &app.mode),
-        News::Terminal(Event::Resize(width, height)) => Some(Action::Resize(width, height)),
+        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(*key, &app.mode),
+        News::Terminal(Event::Resize(width, height)) => Some(Action::Resize(*width, *height)),
         News::Terminal(Event::Mouse(mouse)) => match mouse.kind {
             MouseEventKind::Down(MouseButton::Left) => Some(Action::Click(mouse.column, mouse.row)),
             MouseEventKind::ScrollUp => Some(Action::Up),

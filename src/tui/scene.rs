@@ -1,8 +1,8 @@
 use std::sync::Arc;
 
-use crate::checks::Survey;
+use crate::checks::{Survey, Verdict};
 use crate::motion::Cursor;
-use crate::review::{Explanation, explain, no_finding, not_checked};
+use crate::review::{Explanation, explain, headline, no_finding, not_checked};
 
 use super::app::App;
 use super::bands::Bands;
@@ -15,6 +15,8 @@ use super::sketch::Sketch;
 /// A scene is what the panes draw, kept until what it was computed from changes. Drawing itself computes nothing.
 #[derive(Debug, Default)]
 pub struct Scene {
+    /// One sentence on the whole, and the worst verdict.
+    pub headline: Option<(String, Verdict)>,
     /// Rows of the list.
     pub rows: Rows,
     /// Cells of the ribbon.
@@ -47,6 +49,7 @@ pub fn refresh(app: &mut App) {
     let scene = &mut app.scene;
     if scene.survey.as_ref().is_none_or(|known| !Arc::ptr_eq(known, &judged.survey)) {
         *scene = Scene {
+            headline: Some((headline(judged), judged.survey.verdict())),
             rows: Rows::of(&app.recipe, Some(judged)),
             sketch: Sketch::of(judged),
             not_checked: not_checked(judged),

@@ -1,3 +1,5 @@
+use std::collections::HashSet;
+
 use crate::checks::{Finding, Kind, Verdict};
 use crate::geometry::V3;
 use crate::kinematics::Posture;
@@ -26,6 +28,8 @@ pub struct Stroke {
     pub verdict: Verdict,
 }
 
+/// Two places count as alike within this part of the drawing.
+const CELLS: f64 = 300.0;
 /// Places of all segments together that the path is drawn through.
 const PLACES: usize = 4000;
 
@@ -43,6 +47,7 @@ impl Sketch {
             let arm = Posture::at(judged.arm.chain(), &segment.start).stick();
             arm.iter().for_each(|point| sketch.reach(&mount.point(point)));
         }
+        sketch.thin();
         sketch.marks.sort_by_key(|(_, verdict)| *verdict);
         sketch.strokes.sort_by_key(|stroke| stroke.verdict);
         sketch
@@ -70,6 +75,22 @@ impl Sketch {
             let verdict = verdict_at(findings, 0.5 * (u[0] + u[1]));
             self.strokes.push(Stroke { ends: [ends[0], ends[1]], verdict });
         }
+    }
+
+    /// Leaves out what would be drawn over something alike: long programs go the same ways many times.
+    fn thin(&mut self) {
+        let size = (self.high - self.low).max().max(1e-6);
+        let cell = |point: &V3| (point * (CELLS / size)).map(|v| v.round() as i32);
+        let mut seen = HashSet::new();
+        self.strokes.retain(|stroke| {
+            let [a, b] = [cell(&stroke.ends[0]), cell(&stroke.ends[1])];
+            seen.insert((a.x, a.y, a.z, b.x, b.y, b.z, stroke.verdict))
+        });
+        let mut marked = HashSet::new();
+        self.marks.retain(|(at, verdict)| {
+            let at = cell(at);
+            marked.insert((at.x, at.y, at.z, *verdict))
+        });
     }
 
     fn reach(&mut self, point: &V3) {

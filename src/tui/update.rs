@@ -43,7 +43,7 @@ fn by_mode(app: &mut App, action: Action) {
     match (&mut app.mode, action) {
         (_, Action::Quit) => app.wish = Wish::Quit,
         (_, Action::Suspend) => app.wish = Wish::Suspend,
-        (Mode::Asking(_), action) => ask::answer(app, action),
+        (Mode::Asking(_), action) => ask::answer(app, &action),
         (Mode::Menu(menu), Action::Up) => menu.chosen = menu.chosen.checked_sub(1).unwrap_or(menu.items.len() - 1),
         (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
         (Mode::Menu(menu), Action::Enter) => {
@@ -66,18 +66,18 @@ fn by_mode(app: &mut App, action: Action) {
         | (Mode::Page(..), Action::Enter) => app.mode = Mode::Panes,
         // The explanation follows from finding to finding.
         (Mode::Page(Page::Why, _), action @ (Action::Worst | Action::NextFinding | Action::PreviousFinding)) => {
-            in_panes(app, action);
+            in_panes(app, &action);
             app.mode = Mode::Page(Page::Why, 0);
         }
         (Mode::Page(..) | Mode::Menu(_), Action::Left | Action::Right | Action::Click(..)) => {}
         (_, action) => {
             app.mode = Mode::Panes;
-            in_panes(app, action);
+            in_panes(app, &action);
         }
     }
 }
 
-fn in_panes(app: &mut App, action: Action) {
+fn in_panes(app: &mut App, action: &Action) {
     match action {
         Action::Up => by_rows(app, -1),
         Action::Down => by_rows(app, 1),
@@ -90,9 +90,9 @@ fn in_panes(app: &mut App, action: Action) {
         Action::NextPane => app.pane = app.pane.next(),
         Action::Back => app.pane = Pane::List,
         Action::Enter => app.mode = Mode::Menu(actions(app)),
-        Action::Worst => find(app, Session::to_worst),
-        Action::NextFinding => find(app, Session::to_next_finding),
-        Action::PreviousFinding => find(app, Session::to_previous_finding),
+        Action::Worst => find(app, Session::go_to_worst),
+        Action::NextFinding => find(app, Session::go_to_next_finding),
+        Action::PreviousFinding => find(app, Session::go_to_previous_finding),
         Action::ReadWhy => app.mode = Mode::Page(Page::Why, 0),
         Action::NotChecked => app.mode = Mode::Page(Page::NotChecked, 0),
         Action::Help => app.mode = Mode::Page(Page::Help, 0),
@@ -100,10 +100,10 @@ fn in_panes(app: &mut App, action: Action) {
         Action::Find => app.mode = Mode::Asking(Asking { question: Question::Find, typed: String::new() }),
         Action::Span => app.chart.cycle = !app.chart.cycle,
         Action::EveryJoint => app.chart.every_joint = !app.chart.every_joint,
-        Action::Show(check) => app.chart.check = check,
+        Action::Show(check) => app.chart.check = *check,
         Action::NextQuantity => turn_quantity(app, 1),
         Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
-        Action::Click(column, row) => click::click(app, column, row),
+        Action::Click(column, row) => click::click(app, *column, *row),
         _ => {}
     }
 }
@@ -118,7 +118,7 @@ fn to_end(app: &mut App, last: bool) {
     let cycle = app.chart.cycle;
     if let Some(session) = &mut app.session {
         let time = if last { f64::INFINITY } else { 0.0 };
-        if cycle { session.to_time(time) } else { session.to_time_in_segment(time) }
+        if cycle { session.go_to_time(time) } else { session.go_to_time_in_segment(time) }
     }
 }
 
@@ -126,7 +126,7 @@ fn by_rows(app: &mut App, rows: isize) {
     match app.pane {
         Pane::List => {
             if let Some(session) = &mut app.session {
-                session.by_segments(rows);
+                session.go_by_segments(rows);
             }
             follow_finding(app);
         }

@@ -1,7 +1,7 @@
 use ratatui::style::Style;
 use unicode_width::UnicodeWidthStr;
 
-use crate::review::{Bar, Explanation};
+use crate::review::{Bar, Explanation, Session};
 
 use super::app::{App, Pane};
 use super::page::{Line, draw_lines, paragraph};
@@ -17,7 +17,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
 
 /// Which finding is told.
 pub fn title(app: &App, width: usize) -> String {
-    let number = app.session.as_ref().and_then(|session| session.finding_number());
+    let number = app.session.as_ref().and_then(Session::finding_number);
     let count = app.judged().map_or(0, |judged| judged.survey.findings.len());
     match number {
         Some(number) if width >= 50 => format!("Why: finding {number} of {count}, the worst first"),
