@@ -2,8 +2,11 @@
 
 use std::sync::Arc;
 
+use elbowroom::arm::Arm;
 use elbowroom::checks::Watch;
 use elbowroom::files::{Opened, demo};
+use elbowroom::geometry::{Pose, Rotation, V3};
+use elbowroom::program::Taught;
 use elbowroom::review::{Judged, Progress};
 use elbowroom::tui::{Action, App, BINDINGS, Mode, Pane, Theme, Wish, draw, update};
 use ratatui::buffer::Buffer;
@@ -87,6 +90,40 @@ fn a_menu_offers_all_by_name() {
     let mut app = opened(80, 24);
     update(&mut app, Action::Enter);
     insta::assert_snapshot!("menu_80x24", shown(&app));
+}
+
+/// A hanging arm without ratings, whose program has a waypoint out of reach.
+fn hanging(width: u16, height: u16) -> App {
+    let Opened { arm, mut recipe, .. } = demo();
+    let mut data = arm.data().clone();
+    data.joints.iter_mut().for_each(|joint| joint.torque = None);
+    recipe.mount = Pose::new(V3::new(0.0, 0.0, 2.5), Rotation::from_rpy(std::f64::consts::PI, 0.0, 0.0));
+    if let Taught::Pose { pose, .. } = &mut recipe.waypoints[11].taught {
+        pose.at.x += 0.3;
+    }
+    let (arm, recipe) = (Arc::new(Arm::build(data).expect("still an arm")), Arc::new(recipe));
+    let judged = Judged::of(&arm, &recipe, None, &Watch::default()).expect("nobody stops it");
+    let mut app = App::new(arm, recipe, Theme::default(), Rect::new(0, 0, width, height));
+    update(&mut app, Action::Judged(Box::new(judged)));
+    app
+}
+
+#[test]
+fn what_cannot_run_or_is_not_known_is_shown_too() {
+    let mut app = hanging(120, 40);
+    insta::assert_snapshot!("hanging_120x40", shown(&app));
+    for _ in 0..60 {
+        keys(&mut app, [Action::NextFinding, Action::Right, Action::NextQuantity]);
+        shown(&app);
+    }
+    for _ in 0..13 {
+        update(&mut app, Action::Down);
+        let session = app.session.as_ref().expect("judged");
+        assert!(session.time().is_finite());
+        shown(&app);
+    }
+    keys(&mut app, [Action::Span, Action::Resize(80, 24)]);
+    shown(&app);
 }
 
 #[test]

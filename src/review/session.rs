@@ -99,7 +99,9 @@ impl Session {
 
     fn go_to_finding(&mut self, index: usize) -> bool {
         let Some(finding) = self.judged.survey.findings.get(index) else { return false };
-        self.cursor = Cursor { segment: finding.segment, time: finding.worst().time };
+        // A segment without motion has no times to speak of.
+        let time = Some(finding.worst().time).filter(|time| time.is_finite()).unwrap_or(0.0);
+        self.cursor = Cursor { segment: finding.segment, time };
         self.finding = Some(index);
         true
     }

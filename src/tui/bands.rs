@@ -130,7 +130,7 @@ fn paint(cells: &mut [Option<Verdict>], scale: &Scale, judged: &Judged, finding:
             fill(excess.worst.time, excess.worst.time, finding.verdict);
         }
         // From where it could not be followed on there is no motion.
-        Kind::NoPath(_) => fill(finding.to.time, lasts, finding.verdict),
+        Kind::NoPath(_) => fill(Some(finding.to.time).filter(|time| time.is_finite()).unwrap_or(0.0), lasts, finding.verdict),
         Kind::Unproved(_) => fill(finding.from.time, finding.to.time, finding.verdict),
     }
 }

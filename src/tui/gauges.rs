@@ -27,6 +27,9 @@ pub struct Gauge {
     pub judged: bool,
 }
 
+/// A fraction that comes back from its time may differ by this much.
+const ROUNDING: f64 = 1e-9;
+
 /// A probe reads gauges along one segment.
 #[derive(Debug)]
 pub struct Probe<'a> {
@@ -50,10 +53,10 @@ impl<'a> Probe<'a> {
     pub fn read(&self, time: f64) -> Option<(Instant, Reading)> {
         let (segment, lasts) = (self.segment, self.segment.duration());
         let fraction = segment.law.at(time, Side::Before)[0];
-        if fraction > segment.followed_to() {
+        if fraction > segment.followed_to() + ROUNDING {
             return None;
         }
-        let instant = self.follower.at(fraction)?;
+        let instant = self.follower.at(fraction.min(segment.followed_to()))?;
         if time >= lasts + segment.dwell
             && let Some(after) = &segment.carried_after
         {

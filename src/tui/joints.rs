@@ -1,5 +1,6 @@
 use ratatui::style::Style;
 
+use crate::arm::{Arm, JointKind};
 use crate::checks::{Check, Verdict};
 use crate::units::Measure;
 
@@ -9,9 +10,10 @@ use super::phrases::how;
 use super::sheet::{Sheet, fit};
 use super::theme::Theme;
 
-/// Columns of the numbers: value, to the range's end, rate, acceleration, holding.
+/// Columns of the numbers: value, to the range's end, rate, acceleration, holding. Each is named by where it ends.
 #[derive(Debug, Clone, Copy)]
 struct Columns {
+    name: usize,
     value: usize,
     ruler: usize,
     ruler_width: usize,
@@ -19,32 +21,44 @@ struct Columns {
     rate: usize,
     accel: Option<usize>,
     holding: usize,
+    share: usize,
 }
 
-/// A share such as "1103 %O" with its letter.
-const SHARE: usize = 8;
-/// A value such as "-1234.5 mm"; in ASCII a degree takes more.
-const VALUE: usize = 9;
-const VALUE_ASCII: usize = 11;
+/// From this width on accelerations are shown, and everything stands less close.
+const WIDE: usize = 57;
+/// A ruler with fewer columns says nothing.
+const LEAST_RULER: usize = 5;
 
 impl Columns {
-    /// Each number's column is named by where it ends.
-    fn of(width: usize, name: usize, theme: Theme) -> Self {
-        let wide = if theme.ascii { VALUE_ASCII } else { VALUE };
-        let with_accel = width >= 54;
-        let shares = if with_accel { 3 } else { 2 };
-        let fixed = 1 + name + wide + 1 + wide + shares * SHARE;
+    fn of(width: usize, arm: &Arm, theme: Theme) -> Self {
+        let spread = Self::spread(width, arm, theme, true);
+        // Long names take the room of the accelerations rather than that of the rulers.
+        if width >= WIDE && spread.ruler_width >= LEAST_RULER { spread } else { Self::spread(width, arm, theme, false) }
+    }
+
+    fn spread(width: usize, arm: &Arm, theme: Theme, wide: bool) -> Self {
+        let longest = arm.joints().iter().map(|joint| joint.name.chars().count()).max().unwrap_or(2);
+        let name = longest.min(if width >= WIDE { 10 } else { 8 });
+        let slides = arm.joints().iter().any(|joint| joint.kind == JointKind::Prismatic);
+        // Room for "-123.4°" or "1234.5 mm", and a letter behind; a degree takes more in ASCII.
+        let number = if theme.ascii { 11 } else { 9 + usize::from(slides) };
+        // Room for "1099 %O" or "595 N·m".
+        let share = if wide { 9 } else { 8 };
+        let shares = if wide { 3 } else { 2 };
+        let fixed = 1 + name + number + 1 + number + shares * share;
         let ruler_width = width.saturating_sub(fixed + 1).min(41);
-        let value = 1 + name + wide;
-        let to_end = value + 1 + ruler_width + wide;
+        let value = 1 + name + number;
+        let to_end = value + 1 + ruler_width + number;
         Self {
+            name,
             value,
             ruler: value + 1,
             ruler_width,
             to_end,
-            rate: to_end + SHARE,
-            accel: with_accel.then_some(to_end + 2 * SHARE),
-            holding: to_end + shares * SHARE,
+            rate: to_end + share,
+            accel: wide.then_some(to_end + 2 * share),
+            holding: to_end + shares * share,
+            share,
         }
     }
 }
@@ -57,8 +71,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         return;
     };
     let joints = app.arm.joints();
-    let name = joints.iter().map(|joint| joint.name.chars().count()).max().unwrap_or(2).min(8);
-    let columns = Columns::of(sheet.width(), name, theme);
+    let columns = Columns::of(sheet.width(), &app.arm, theme);
     let title_end = sheet.rule(0, Pane::Joints.name(), focused);
     let mut word = |end: usize, word: &str| {
         if end > word.len() + title_end + 1 {
@@ -93,7 +106,7 @@ fn draw_joint(sheet: &mut Sheet, app: &App, gauges: &Gauges, index: usize, y: us
     if selected {
         sheet.put(0, y, theme.here(), plain);
     }
-    sheet.put(1, y, &fit(&joint.name, 8, theme), plain);
+    sheet.put(1, y, &fit(&joint.name, columns.name, theme), plain);
     if selected && app.pane == Pane::Joints {
         sheet.tint(1, y, joint.name.chars().count(), theme.selected());
     }
@@ -105,16 +118,20 @@ fn draw_joint(sheet: &mut Sheet, app: &App, gauges: &Gauges, index: usize, y: us
     mark(sheet, columns.to_end, y, &to_end.text(1), range, plain);
     let mut share = |end: usize, check: Check| {
         let Some(gauge) = gauges.get(check, Some(index)) else { return };
-        mark(sheet, end, y, &asks(gauge), gauge.verdict, plain);
+        mark(sheet, end, y, &asks(gauge, columns.share - 2), gauge.verdict, plain);
     };
     share(columns.rate, Check::Rate);
     columns.accel.into_iter().for_each(|end| share(end, Check::Accel));
     share(columns.holding, Check::Holding);
 }
 
-/// What a gauge asks of its limit; the value itself where there is none.
-fn asks(gauge: &Gauge) -> String {
-    if gauge.limit.is_finite() { format!("{:.0} %", gauge.room.asked_percent()) } else { gauge.value.text(0) }
+/// What a gauge asks of its limit; the value itself where there is none, without its unit where that does not fit.
+fn asks(gauge: &Gauge, width: usize) -> String {
+    if gauge.limit.is_finite() {
+        return format!("{:.0} %", gauge.room.asked_percent());
+    }
+    let told = gauge.value.text(0);
+    if told.chars().count() > width { told.split(' ').next().unwrap_or("").to_owned() } else { told }
 }
 
 /// A number that ends one column before `end`, and the letter of a verdict that is not clear in that column.
@@ -130,7 +147,7 @@ fn mark(sheet: &mut Sheet, end: usize, y: usize, text: &str, verdict: Verdict, p
 fn ruler(sheet: &mut Sheet, columns: Columns, y: usize, share: f64) {
     let theme = sheet.theme();
     let width = columns.ruler_width;
-    if width < 5 {
+    if width < LEAST_RULER {
         return;
     }
     for x in 0..width {

@@ -20,10 +20,10 @@ struct Columns {
     brief_nearest: bool,
 }
 
-/// "J4 rate asks 154 %" and the like fit into this.
-const NEAREST: usize = 21;
+/// "J4 holding asks 154 %" and the like fit into this, beside the joint's name.
+const NEAREST: usize = 19;
 /// The same without "asks".
-const NEAREST_BRIEF: usize = 13;
+const NEAREST_BRIEF: usize = 11;
 /// The longest word for a kind of segment.
 const KIND: usize = 5;
 
@@ -33,21 +33,23 @@ impl Columns {
         let digits = app.recipe.waypoints.len().to_string().len();
         let fixed = 2 + digits + 1 + 1 + 1 + rows.verdict + 2;
         let left = width.saturating_sub(fixed);
+        let joint = app.arm.joints().iter().map(|joint| joint.name.chars().count()).max().unwrap_or(0);
+        let (long, short) = (joint + NEAREST, joint + NEAREST_BRIEF);
         let (mut brief_how, mut brief_nearest, mut name) = (false, false, rows.name.clamp(8, 28));
         let how_wide = rows.how.max(KIND);
-        if name + how_wide + NEAREST > left {
+        if name + how_wide + long > left {
             brief_nearest = true;
         }
-        if name + how_wide + NEAREST_BRIEF > left {
+        if name + how_wide + short > left {
             brief_how = true;
         }
         // The narrowest list leaves out how a waypoint is arrived at.
         let how = match brief_how {
-            true if name + KIND + NEAREST_BRIEF > left + 2 => 0,
+            true if name + KIND + short > left + 2 => 0,
             true => KIND,
             false => how_wide,
         };
-        name = name.min(left.saturating_sub(how + NEAREST_BRIEF)).max(8);
+        name = name.min(left.saturating_sub(how + short)).max(8);
         let at_name = 2 + digits + 1;
         let at_how = at_name + name + 1;
         let at_verdict = at_how + how + usize::from(how > 0);

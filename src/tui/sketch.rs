@@ -66,8 +66,11 @@ impl Sketch {
         us.sort_by(f64::total_cmp);
         us.dedup();
         for finding in findings {
-            let at = judged.recipe.mount.point(&tcp_at(judged, segment, finding.worst().u));
-            self.marks.push((at, finding.verdict));
+            // What is not known is often not known anywhere; marks would hide the path.
+            if finding.verdict != Verdict::Unproven {
+                let at = judged.recipe.mount.point(&tcp_at(judged, segment, finding.worst().u));
+                self.marks.push((at, finding.verdict));
+            }
         }
         let points: Vec<V3> = us.iter().map(|u| judged.recipe.mount.point(&tcp_at(judged, segment, *u))).collect();
         points.iter().for_each(|point| self.reach(point));
@@ -121,8 +124,7 @@ fn verdict_at(findings: &[Finding], u: f64) -> Verdict {
                 finding.verdict.min(Verdict::Tight)
             }
             Kind::Excess(_) => finding.verdict,
-            Kind::NoPath(_) => Verdict::Clear,
-            Kind::Unproved(_) => finding.verdict,
+            Kind::NoPath(_) | Kind::Unproved(_) => Verdict::Clear,
         })
         .max()
         .unwrap_or(Verdict::Clear)

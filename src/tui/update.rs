@@ -160,9 +160,8 @@ pub(super) fn follow_finding(app: &mut App) {
         Some(finding) => (finding.check, finding.joint),
         None => nearest.map_or((app.chart.check, None), |(result, peak)| (result.check, peak.joint)),
     };
-    if check != Check::Reach {
-        app.chart.check = check;
-    }
+    // Reach has no quantity; what loses a path is closeness.
+    app.chart.check = if check == Check::Reach { Check::Singular } else { check };
     app.joint = joint.unwrap_or(app.joint);
 }
 

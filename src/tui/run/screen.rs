@@ -12,8 +12,7 @@ use ratatui::crossterm::terminal::{
 use ratatui::crossterm::{cursor, execute, queue};
 use ratatui::layout::Rect;
 
-use super::app::App;
-use super::draw;
+use crate::tui::{App, draw};
 
 /// One frame fits in here, so that it leaves in one piece.
 const BUFFER: usize = 64 * 1024;

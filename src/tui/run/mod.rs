@@ -1,3 +1,8 @@
+//! The only place that knows threads, the terminal and its signals.
+
+mod news;
+mod screen;
+
 use std::sync::Arc;
 use std::time::Duration;
 
@@ -10,13 +15,15 @@ use crate::arm::Arm;
 use crate::program::Recipe;
 use crate::review::{Recheck, Reply};
 
-use super::action::Action;
-use super::app::{App, Wish};
-use super::keys::action_of;
-use super::news::{News, listen};
-use super::options::Options;
-use super::screen::{Screen, restore};
-use super::update::update;
+use crate::tui::action::Action;
+use crate::tui::app::{App, Wish};
+use crate::tui::keys::action_of;
+use crate::tui::options::Options;
+use crate::tui::update::update;
+
+use news::{News, listen};
+
+pub use screen::{Screen, restore};
 
 /// What the screen is started with.
 #[derive(Debug, Clone)]
