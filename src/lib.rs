@@ -2,7 +2,7 @@
 //! real tool and part, why something fails, and which change makes it right.
 //!
 //! The modules stand in layers; each may name only those above it in this list:
-//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`dynamics`], [`program`], [`motion`], [`checks`], [`review`], [`files`],
+//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`program`], [`dynamics`], [`motion`], [`checks`], [`review`], [`files`],
 //! [`report`], [`tui`], [`cli`].
 
 pub mod arm;

@@ -167,6 +167,40 @@ fn steps_that_cannot_be_are_told_and_files_are_written_whole() {
 }
 
 #[test]
+fn a_trace_begins_with_the_wait_at_the_first_waypoint() {
+    let folder = tempfile::tempdir().expect("a folder");
+    std::fs::write(folder.path().join("arm.toml"), include_str!("../recipes/arms/four-axis-rrpr.toml")).expect("written");
+    let recipe = r#"
+elbowroom-recipe = 1
+name = "Waits"
+arm = "arm.toml"
+[[waypoint]]
+name = "rest"
+joints = [-30, 70, 40, 0]
+dwell = 0.105
+[[waypoint]]
+name = "same"
+joints = [-30, 70, 40, 0]
+arrive = "joint"
+share = 50
+[[waypoint]]
+name = "aside"
+joints = [30, 70, 40, 0]
+arrive = "joint"
+share = 50
+"#;
+    let path = folder.path().join("waits.toml");
+    std::fs::write(&path, recipe).expect("written");
+    let table = Table::of(&trace(&[path.to_str().expect("UTF-8"), "--every", "20 ms"]).stdout);
+    let (times, segments, fractions) = (table.column("time_s"), table.column("segment"), table.column("fraction"));
+    assert_eq!(times[..7], [0.0, 0.02, 0.04, 0.06, 0.08, 0.1, 0.105]);
+    assert!(segments[..7].iter().all(|&number| number == 1.0) && fractions[..7].iter().all(|&u| u == 0.0));
+    // The segment without motion has its one row, where it starts and ends.
+    assert_eq!((times[7], segments[7], fractions[7]), (0.105, 2.0, 1.0));
+    assert_eq!((times[8], segments[8], fractions[8]), (0.105, 3.0, 0.0));
+}
+
+#[test]
 fn sliding_joints_and_awkward_names_and_lost_paths_are_written_as_they_should() {
     let folder = tempfile::tempdir().expect("a folder");
     let arm = include_str!("../recipes/arms/four-axis-rrpr.toml").replacen("\"J3\"", "'slide, \"long\"'", 1);

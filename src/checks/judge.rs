@@ -48,7 +48,16 @@ pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Accep
     findings.sort_by(Finding::order);
     let verdict = checks.iter().map(|result| result.verdict).max().unwrap_or(Verdict::Unproven);
     let profile = profile(&meter, &case.sweep);
-    SegmentSurvey { segment: index, verdict, checks, findings, profile, looked_at: case.sweep.looks.len(), tally }
+    SegmentSurvey {
+        segment: index,
+        joint_move: !segment.follows_path(),
+        verdict,
+        checks,
+        findings,
+        profile,
+        looked_at: case.sweep.looks.len(),
+        tally,
+    }
 }
 
 impl Case<'_> {

@@ -93,6 +93,8 @@ pub struct Profile {
 pub struct SegmentSurvey {
     /// Which segment of the plan, counted from 0.
     pub segment: usize,
+    /// Whether it is a joint move, whose rates and accelerations are the shares it was given.
+    pub joint_move: bool,
     /// The worst verdict of all checks.
     pub verdict: Verdict,
     /// One result a check, in the order of [`Check::ALL`].
@@ -113,13 +115,15 @@ impl SegmentSurvey {
         self.checks.iter().find(|result| result.check == check).expect("every check has a result")
     }
 
-    /// The judged check that is nearest to its reserve, with its worst peak: cell criteria only where no arm limit is worse.
+    /// The judged check that is nearest to its reserve, with its worst peak: the worse verdict first. Rate and acceleration of a
+    /// clear joint move are what its shares make them, so they come last.
     pub fn nearest(&self) -> Option<(&CheckResult, &Peak)> {
+        let by_share = |result: &CheckResult| {
+            self.joint_move && result.verdict == Verdict::Clear && matches!(result.check, Check::Rate | Check::Accel)
+        };
+        let spare = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
         self.checks.iter().filter(|result| result.judged).filter_map(|result| Some((result, result.worst()?))).min_by(
-            |(a, p), (b, q)| {
-                let spare = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
-                b.verdict.cmp(&a.verdict).then(spare(p).total_cmp(&spare(q)))
-            },
+            |(a, p), (b, q)| b.verdict.cmp(&a.verdict).then(by_share(a).cmp(&by_share(b))).then(spare(p).total_cmp(&spare(q))),
         )
     }
 }

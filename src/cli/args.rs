@@ -11,7 +11,8 @@ use super::step::step;
 #[command(
     name = "elbowroom",
     version,
-    about = "Reviews a taught robot-arm program before its first run: what happens between the taught points, at speed, with the real \
+    about = "Reviews a taught robot-arm program before its first run: what happens between the taught points, at speed, with the \
+        real \
              tool and part.",
     after_help = "Without a command the review opens on the screen; without a recipe, on the built-in demonstration cell.\n\
                   It computes from data that people typed. It moves nothing and replaces no risk assessment, no safeguard and no \

@@ -15,16 +15,21 @@ pub(super) struct Chosen {
     pub arm_file: String,
 }
 
+/// Opens a recipe; the built-in demonstration cell for none.
+///
+/// # Errors
+/// All that is wrong with the file or its arm file.
+pub(super) fn opened(recipe: Option<&Path>) -> Result<Opened, Rejected> {
+    recipe.map_or_else(|| Ok(demo()), open)
+}
+
 /// Opens and judges a recipe; the built-in demonstration cell for none.
 ///
 /// # Errors
 /// All that is wrong with the file or its arm file.
 pub(super) fn chosen(recipe: Option<&Path>) -> Result<Chosen, Rejected> {
-    Ok(judge(recipe.map_or_else(|| Ok(demo()), open)?))
-}
-
-fn judge(opened: Opened) -> Chosen {
+    let opened = opened(recipe)?;
     let (arm, recipe) = (Arc::new(opened.arm), Arc::new(opened.recipe));
     let judged = Judged::of(&arm, &recipe, None, &Watch::default()).expect("nobody stops this watch");
-    Chosen { judged, recipe_file: opened.recipe_source.path, arm_file: opened.arm_source.path }
+    Ok(Chosen { judged, recipe_file: opened.recipe_source.path, arm_file: opened.arm_source.path })
 }

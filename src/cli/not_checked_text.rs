@@ -1,7 +1,8 @@
 use crate::review::{Judged, doubt_text, not_checked, wrap};
 
 /// What stands under every result.
-pub(super) const CAUTION: &str = "Elbowroom computes from data that people typed. It replaces no risk assessment, no safeguard and no \
+pub(super) const CAUTION: &str = "Elbowroom computes from data that people typed. It replaces no risk assessment, no safeguard \
+    and no \
                                   reduced-speed trial.";
 
 /// The doubts about a recipe, a paragraph each; empty for none.

@@ -1,16 +1,16 @@
 use std::path::Path;
 use std::sync::Arc;
 
-use crate::files::{demo, open};
 use crate::tui::{Options, Started};
 
 use super::args::ScreenArgs;
+use super::chosen::opened;
 use super::code::Code;
 
 /// Opens the review of a recipe on the screen; of the built-in demonstration cell for none. The one place where the command line
 /// meets the screen.
 pub(super) fn run(recipe: Option<&Path>, asked: ScreenArgs) -> anyhow::Result<Code> {
-    let opened = recipe.map_or_else(|| Ok(demo()), open)?;
+    let opened = opened(recipe)?;
     let mut options = Options::of_environment(|name| std::env::var(name).ok());
     options.ascii |= asked.ascii;
     options.mono |= asked.mono;

@@ -22,8 +22,9 @@ impl Pose {
 
     /// The pose `next`, given in this one's system, in the system that this one is given in.
     #[must_use]
+    #[inline]
     pub fn then(&self, next: &Self) -> Self {
-        Self { axes: self.axes * next.axes, at: self.axes * next.at + self.at }
+        Self { axes: product(&self.axes, &next.axes), at: self.point(&next.at) }
     }
 
     /// Where the outer system stands in this one.
@@ -34,14 +35,34 @@ impl Pose {
     }
 
     /// A point given in this system, in the outer one, m.
+    #[inline]
     pub fn point(&self, p: &V3) -> V3 {
-        self.axes * p + self.at
+        let a = &self.axes;
+        V3::new(
+            a.m11 * p.x + a.m12 * p.y + a.m13 * p.z + self.at.x,
+            a.m21 * p.x + a.m22 * p.y + a.m23 * p.z + self.at.y,
+            a.m31 * p.x + a.m32 * p.y + a.m33 * p.z + self.at.z,
+        )
     }
 
     /// The rotation of this pose.
     pub fn rotation(&self) -> Rotation {
         Rotation::from_matrix(&self.axes)
     }
+}
+
+/// The product of two matrices, written out: it stands in the innermost loops, where the library's general product costs thrice
+/// as much.
+#[inline]
+fn product(a: &M3, b: &M3) -> M3 {
+    let (a, b): (&[[f64; 3]; 3], &[[f64; 3]; 3]) = (&a.data.0, &b.data.0);
+    let mut columns = [[0.0; 3]; 3];
+    for (column, b) in columns.iter_mut().zip(b) {
+        for k in 0..3 {
+            column[k] = a[0][k] * b[0] + a[1][k] * b[1] + a[2][k] * b[2];
+        }
+    }
+    M3::from_array_storage(nalgebra::ArrayStorage(columns))
 }
 
 #[cfg(test)]
@@ -51,6 +72,8 @@ mod tests {
     #[test]
     fn a_pose_and_its_inverse_cancel() {
         let pose = Pose::new(V3::new(0.1, -2.0, 3.0), Rotation::from_rpy(0.3, -0.8, 2.0));
+        let other = Pose::new(V3::new(-1.0, 0.4, 0.2), Rotation::from_rpy(-2.0, 0.1, 0.7));
+        assert!((pose.then(&other).axes - pose.axes * other.axes).norm() < 1e-15);
         let both = pose.then(&pose.inverse());
         assert!((both.axes - M3::identity()).norm() < 1e-15);
         assert!(both.at.norm() < 1e-15);

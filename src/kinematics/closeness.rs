@@ -51,7 +51,7 @@ pub enum SingularKind {
     Wrist,
     /// The arm stretched or folded.
     Elbow,
-    /// The wrist centre on the first axis.
+    /// The wrist centre on the first axis, or beside it by no more than the shoulder's offset.
     Shoulder,
 }
 
@@ -69,38 +69,40 @@ pub struct Closeness {
 /// Beyond this joint motion a singular posture is just "far", rad (30 degrees).
 const FAR: f64 = std::f64::consts::PI / 6.0;
 
-/// How many Newton steps are made towards the singular posture.
-const STEPS: usize = 8;
+/// How many Newton steps are made towards the singular posture at most. Mostly four or five arrive; where two singular values vanish at
+/// once each step only halves the way.
+const STEPS: usize = 32;
+
+/// Closer than this to the singular posture, rad, as Newton's next step would be long, it counts as reached.
+const ARRIVED: f64 = 1e-7;
 
 /// The singular posture nearest to `q`, as Newton steps along the gradient of the determinant find it; `None` if it is farther
-/// than 30 degrees of joint motion, or the arm has more joints than its task rows.
+/// than 30 degrees of joint motion, if they find none, or if the arm has more joints than its task rows.
 pub fn singular_posture(arm: &Arm, wrist: Option<SphericalWrist>, q: &Joints) -> Option<Closeness> {
     if arm.is_redundant() {
         return None;
     }
     let length = arm.characteristic_length().m;
     let mut at = *q;
+    let mut arrived = false;
     for _ in 0..STEPS {
-        let gradient = log_determinant_gradient(arm, &at)?;
+        // Where there is no finite gradient, the posture is singular to the last digit: it is what was sought.
+        let gradient = log_determinant_gradient(arm, &at);
         // In scaled joint values (sliding joints divided by the length) the gradient of log|det| is multiplied by it.
         let scale = |j: usize| if arm.chain().turns[j] { 1.0 } else { length };
-        let square: f64 = (0..arm.len()).map(|j| (gradient[j] * scale(j)).powi(2)).sum();
-        if !square.is_finite() {
-            break;
-        }
+        let square = gradient.map_or(f64::INFINITY, |g| (0..arm.len()).map(|j| (g[j] * scale(j)).powi(2)).sum());
+        arrived = 1.0 / square.sqrt() < ARRIVED;
+        let Some(gradient) = gradient.filter(|_| square.is_finite()) else { break };
         for j in 0..arm.len() {
             at[j] -= gradient[j] * scale(j).powi(2) / square;
         }
         let so_far = distance(arm, length, q, &at);
-        if so_far.is_nan() || so_far > 2.0 * FAR {
-            return None;
-        }
-        if 1.0 / square.sqrt() < 1e-9 {
+        if arrived || so_far.is_nan() || so_far > 2.0 * FAR {
             break;
         }
     }
     let distance = distance(arm, length, q, &at);
-    (distance <= FAR).then(|| Closeness { posture: at, distance, kind: wrist.map(|wrist| kind(arm, wrist, &at)) })
+    (arrived && distance <= FAR).then(|| Closeness { posture: at, distance, kind: wrist.map(|wrist| kind(arm, wrist, &at)) })
 }
 
 fn distance(arm: &Arm, length: f64, a: &Joints, b: &Joints) -> f64 {
@@ -150,15 +152,19 @@ fn jacobian_change(chain: &crate::arm::Chain, jacobian: &Jacobian, j: usize, k: 
 
 /// Sine between the outer wrist axes below which a singular posture is the wrist's own.
 const WRIST_IN_LINE: f64 = 0.02;
-/// Distance of the wrist centre from the first axis, in characteristic lengths, below which it counts as on it.
-const ON_FIRST_AXIS: f64 = 0.02;
+/// Sine between what joints 2 and 3 do to the wrist centre below which the arm is stretched or folded.
+const ARM_IN_LINE: f64 = 0.02;
 
 fn kind(arm: &Arm, wrist: SphericalWrist, q: &Joints) -> SingularKind {
     let posture = Posture::at(arm.chain(), q);
     if posture.axis(3).cross(&posture.axis(5)).norm() < WRIST_IN_LINE {
         return SingularKind::Wrist;
     }
+    // The wrist centre loses a direction where the three joints before it move it in one plane: because two of them move it along
+    // one line, or else because the first has no part of its own.
     let centre = posture.frame(5).point(&wrist.centre);
-    let off = posture.axis(0).cross(&(centre - posture.origin(0))).norm();
-    if off < ON_FIRST_AXIS * arm.characteristic_length().m { SingularKind::Shoulder } else { SingularKind::Elbow }
+    let moved = |j: usize| posture.axis(j).cross(&(centre - posture.origin(j)));
+    let (second, third) = (moved(1), moved(2));
+    let in_line = second.cross(&third).norm() <= ARM_IN_LINE * second.norm() * third.norm();
+    if in_line { SingularKind::Elbow } else { SingularKind::Shoulder }
 }

@@ -15,19 +15,17 @@ impl Posture {
     /// The posture at joint values `q` (rad or m, one a joint).
     #[inline]
     pub fn at(chain: &Chain, q: &[f64]) -> Self {
-        let mut posture = Self { len: chain.len, frames: chain.fixed, flange: Pose::identity() };
+        let mut posture = Self { len: chain.len, frames: [Pose::identity(); MAX_JOINTS], flange: Pose::identity() };
         let mut before = Pose::identity();
         for (j, &value) in q[..chain.len].iter().enumerate() {
             let frame = &mut posture.frames[j];
-            if j > 0 {
-                *frame = before.then(frame);
-            }
+            *frame = if j > 0 { before.then(&chain.fixed[j]) } else { chain.fixed[j] };
             if chain.turns[j] {
                 let (s, c) = value.sin_cos();
-                let x: V3 = frame.axes.column(0).into_owned();
-                let y: V3 = frame.axes.column(1).into_owned();
-                frame.axes.set_column(0, &(x * c + y * s));
-                frame.axes.set_column(1, &(y * c - x * s));
+                let a = &mut frame.axes;
+                (a.m11, a.m12) = (a.m11 * c + a.m12 * s, a.m12 * c - a.m11 * s);
+                (a.m21, a.m22) = (a.m21 * c + a.m22 * s, a.m22 * c - a.m21 * s);
+                (a.m31, a.m32) = (a.m31 * c + a.m32 * s, a.m32 * c - a.m31 * s);
             } else {
                 let z: V3 = frame.axes.column(2).into_owned();
                 frame.at += z * value;

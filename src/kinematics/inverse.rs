@@ -10,8 +10,22 @@ pub(crate) const REACHED_M: f64 = 1e-10;
 pub(crate) const REACHED_RAD: f64 = 1e-10;
 /// Two sets of joint values count as one branch when no joint differs by more, rad or m.
 const SAME_BRANCH: f64 = 1e-5;
-/// Postures tried at a waypoint.
+/// The search for branches ends when this many seeds in a row brought nothing new. Of 1,234 branches of 300 random six-joint arms
+/// none was missed so, and 2 with 80; a fixed number of 96 seeds missed 1 of 420.
+const QUIET: usize = 96;
+/// The same for arms with a spherical wrist, whose branches come in pairs, and for arms of three joints, which have at most four: of
+/// 2,064 branches of the former none was missed, nor with 24.
+const QUIET_PAIRS: usize = 32;
+/// Seeds tried where none reaches the pose.
 const SEEDS: usize = 96;
+/// Seeds tried at most.
+const MOST_SEEDS: usize = 768;
+/// Six joints reach a pose in at most 16 ways, or in endlessly many (a straight wrist), of which [`SEEDS`] are enough (Manocha & Canny,
+/// IEEE T-RA 10(5), 1994).
+const MOST_WAYS: usize = 16;
+/// A value this far beyond its range's end, rad or m, is at the end but for rounding: a joint taught at 180 degrees must not be sent
+/// a whole turn back to -180.
+const ROUNDING: f64 = 1e-9;
 /// Steps of Levenberg-Marquardt for one seed.
 const STEPS: usize = 60;
 /// Smallest singular value below which the place where the search stopped counts as a limit of the arm's reach.
@@ -58,7 +72,7 @@ pub struct Branches {
 /// joints' ranges go before those outside.
 pub fn reach(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Reached {
     let branches = every_branch(arm, tcp, target, near);
-    let in_range = |q: &Joints| q.iter().zip(arm.joints()).all(|(v, joint)| joint.range.to_end(*v) >= 0.0);
+    let in_range = |q: &Joints| q.iter().zip(arm.joints()).all(|(v, joint)| joint.range.to_end(*v) >= -ROUNDING);
     let far =
         |q: &Joints| q.iter().zip(near.iter()).zip(arm.joints()).map(|((a, b), joint)| ((a - b) / joint.rate).powi(2)).sum::<f64>();
     let best = branches.found.iter().min_by(|a, b| (!in_range(a), far(a)).partial_cmp(&(!in_range(b), far(b))).expect("finite"));
@@ -70,12 +84,8 @@ pub fn reach(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Reached {
 }
 
 /// Every branch that Levenberg-Marquardt finds from `near` and from postures spread evenly over the ranges (a fixed sequence, so
-/// the same input yields the same output).
+/// the same input yields the same output), until a long row of postures has brought nothing new.
 pub fn every_branch(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Branches {
-    branches_from(arm, tcp, target, near, SEEDS)
-}
-
-fn branches_from(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints, seeds: usize) -> Branches {
     let mut branches = Branches { found: Vec::new(), miss: None };
     let wrist = super::spherical_wrist(arm.chain()).is_some();
     let keep = |branches: &mut Branches, q: Joints| {
@@ -89,11 +99,21 @@ fn branches_from(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints, seeds: usi
         }
         !known
     };
-    for index in 0..=seeds {
+    let quiet = if wrist || arm.len() <= 3 { QUIET_PAIRS } else { QUIET };
+    let mut last_new = 0;
+    for index in 0..=MOST_SEEDS {
+        let endless = branches.found.len() > MOST_WAYS && index > SEEDS;
+        if endless || index - last_new > if branches.found.is_empty() { SEEDS } else { quiet } {
+            break;
+        }
         let seed = if index == 0 { *near } else { spread(arm.joints(), index) };
         match descend(arm, tcp, target, seed) {
             Ok(q) => {
-                if keep(&mut branches, q) && wrist {
+                let new = keep(&mut branches, q);
+                if new {
+                    last_new = index;
+                }
+                if new && wrist {
                     // The same pose with the wrist turned over; polished, since the formula is exact only for an exact wrist.
                     let mut over = q;
                     over[3] += std::f64::consts::PI;
@@ -152,7 +172,7 @@ pub fn nearest_turn(joint: &Joint, value: f64, near: f64) -> f64 {
     (-3..=3)
         .map(|k| nearest + f64::from(k) * turn)
         .min_by(|a, b| {
-            let rank = |v: f64| ((-joint.range.to_end(v)).max(0.0), (v - near).abs());
+            let rank = |v: f64| ((-joint.range.to_end(v) - ROUNDING).max(0.0), (v - near).abs());
             rank(*a).partial_cmp(&rank(*b)).expect("finite")
         })
         .expect("not empty")
@@ -175,6 +195,7 @@ fn spread(joints: &[Joint], index: usize) -> Joints {
 }
 
 /// Levenberg-Marquardt from one seed: the joint values reached, or where it got stuck.
+#[expect(clippy::result_large_err, reason = "on the stack either way, and called in the innermost search")]
 fn descend(arm: &Arm, tcp: &Pose, target: &Pose, seed: Joints) -> Result<Joints, (Joints, [f64; 6], f64)> {
     let (chain, task, n) = (arm.chain(), arm.task(), arm.len());
     let length = arm.characteristic_length().m;

@@ -5,6 +5,7 @@ use crate::arm::MAX_JOINTS;
 pub struct Lu {
     n: usize,
     rows: [[f64; MAX_JOINTS]; MAX_JOINTS],
+    inverse: [f64; MAX_JOINTS],
     from: [usize; MAX_JOINTS],
     sign: f64,
 }
@@ -13,7 +14,7 @@ impl Lu {
     /// Splits the leading `n` rows and columns of `rows`. A singular matrix is split too; solving then yields what is not finite.
     #[inline]
     pub fn of(rows: [[f64; MAX_JOINTS]; MAX_JOINTS], n: usize) -> Self {
-        let mut lu = Self { n, rows, from: [0, 1, 2, 3, 4, 5, 6, 7, 8], sign: 1.0 };
+        let mut lu = Self { n, rows, inverse: [0.0; MAX_JOINTS], from: [0, 1, 2, 3, 4, 5, 6, 7, 8], sign: 1.0 };
         match n {
             1 => lu.split::<1>(),
             2 => lu.split::<2>(),
@@ -43,6 +44,7 @@ impl Lu {
                 self.sign = -self.sign;
             }
             let inverse = 1.0 / self.rows[k][k];
+            self.inverse[k] = inverse;
             let top = self.rows[k];
             for row in &mut self.rows[k + 1..N] {
                 let factor = row[k] * inverse;
@@ -57,21 +59,35 @@ impl Lu {
     /// The solution x of `A x = b`, in the leading entries.
     #[inline]
     pub fn solve(&self, b: &[f64; MAX_JOINTS]) -> [f64; MAX_JOINTS] {
-        let n = self.n;
+        match self.n {
+            1 => self.solved::<1>(b),
+            2 => self.solved::<2>(b),
+            3 => self.solved::<3>(b),
+            4 => self.solved::<4>(b),
+            5 => self.solved::<5>(b),
+            6 => self.solved::<6>(b),
+            7 => self.solved::<7>(b),
+            8 => self.solved::<8>(b),
+            _ => self.solved::<9>(b),
+        }
+    }
+
+    #[inline]
+    fn solved<const N: usize>(&self, b: &[f64; MAX_JOINTS]) -> [f64; MAX_JOINTS] {
         let mut x = [0.0; MAX_JOINTS];
-        for i in 0..n {
+        for i in 0..N {
             let mut sum = b[self.from[i]];
             for j in 0..i {
                 sum -= self.rows[i][j] * x[j];
             }
             x[i] = sum;
         }
-        for i in (0..n).rev() {
+        for i in (0..N).rev() {
             let mut sum = x[i];
-            for j in i + 1..n {
+            for j in i + 1..N {
                 sum -= self.rows[i][j] * x[j];
             }
-            x[i] = sum / self.rows[i][i];
+            x[i] = sum * self.inverse[i];
         }
         x
     }

@@ -5,6 +5,7 @@ use crate::dynamics::gravity_in_base;
 use crate::geometry::{Pose, V3};
 use crate::kinematics::Posture;
 use crate::program::{Arrive, Carried, PathSpeed, PushAxes, Recipe, Taught, Usual, frame_in_base};
+use crate::units::{Share, Speed};
 
 use super::resolve::{Place, misses_left_out, point_in_base, resolve, wanted_pose};
 use super::{Law, NoPath, Path, Push, Segment, Track};
@@ -121,7 +122,7 @@ fn plan_segment(arm: &Arm, recipe: &Recipe, to: usize, places: &[Place]) -> Segm
     match arrive {
         Arrive::Joint { share, accel_share } => {
             let place = resolve(arm, recipe, to, &carried, &near.unwrap_or(start));
-            let share = share.or(recipe.usual.share).map_or(1.0, |s| s.as_fraction());
+            let share = share.or(recipe.usual.share).map_or(1.0, Share::as_fraction);
             let accel_share = accel_share.unwrap_or(recipe.usual.accel_share).as_fraction();
             segment.end = place.q;
             segment.trouble = place.trouble;
@@ -210,7 +211,7 @@ fn path_law(path: &Path, speed: &PathSpeed, usual: &Usual) -> Law {
     if length <= NO_LENGTH && turn <= NO_LENGTH {
         return Law::none();
     }
-    let moving = speed.speed.or(usual.speed).map_or(f64::INFINITY, |v| v.as_m_per_s());
+    let moving = speed.speed.or(usual.speed).map_or(f64::INFINITY, Speed::as_m_per_s);
     let moving_accel = speed.accel.unwrap_or(usual.accel).as_m_per_s2();
     let turning = speed.turn_speed.unwrap_or(usual.turn_speed).as_rad_per_s();
     let turning_accel = speed.turn_accel.unwrap_or(usual.turn_accel).as_rad_per_s2();

@@ -1,7 +1,7 @@
 use std::collections::HashSet;
 
 use crate::arm::{Arm, Joints};
-use crate::units::{Dimension, Fault, Field, Length, Measure, nearest_word, tidy};
+use crate::units::{Acceleration, Dimension, Fault, Field, Length, Measure, Speed, TurnAcceleration, TurnRate, nearest_word, tidy};
 
 use super::{Arrive, BASE, Given, PushAxes, Recipe, Taught, Then, WORLD, Waypoint, frame_in_base};
 
@@ -109,7 +109,7 @@ impl Recipe {
         let field = Field::top().key("usual");
         let mut faults = Vec::new();
         for (key, value) in [
-            ("speed", u.speed.map(|v| v.measure())),
+            ("speed", u.speed.map(Speed::measure)),
             ("accel", Some(u.accel.measure())),
             ("turn-speed", Some(u.turn_speed.measure())),
             ("turn-accel", Some(u.turn_accel.measure())),
@@ -213,10 +213,10 @@ impl Recipe {
                     ));
                 }
                 for (key, value) in [
-                    ("speed", speed.speed.map(|v| v.measure())),
-                    ("accel", speed.accel.map(|v| v.measure())),
-                    ("turn-speed", speed.turn_speed.map(|v| v.measure())),
-                    ("turn-accel", speed.turn_accel.map(|v| v.measure())),
+                    ("speed", speed.speed.map(Speed::measure)),
+                    ("accel", speed.accel.map(Acceleration::measure)),
+                    ("turn-speed", speed.turn_speed.map(TurnRate::measure)),
+                    ("turn-accel", speed.turn_accel.map(TurnAcceleration::measure)),
                 ] {
                     faults.extend(value.and_then(|value| not_above_zero(field.key(key), thing, key, value)));
                 }

@@ -10,7 +10,8 @@ const SAME: f64 = 1e-9;
 /// A trace would have more rows than [`MOST_ROWS`].
 #[derive(Debug, Clone, PartialEq, thiserror::Error)]
 #[error(
-    "a row every {every} s over a cycle of {cycle} makes {rows:.0} rows; at most {most:.0} are written, so every must be at least {least}",
+    "a row every {every} s over a cycle of {cycle} makes {rows:.0} rows; at most {most:.0} are written, so every must be at \
+     least {least}",
     every = .every.as_s(), most = MOST_ROWS, least = Seconds::s(.cycle.as_s() / MOST_ROWS).measure().text_up(6)
 )]
 pub struct TooManyRows {

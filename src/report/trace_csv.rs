@@ -28,9 +28,10 @@ const COARSE: usize = 4;
 /// Digits behind the point of times and fractions.
 const FINEST: usize = 9;
 
-/// Writes the motion over the whole cycle as CSV (quoted as RFC 4180 has it): a row at every multiple of `every` from the start of the cycle, and
-/// at every waypoint and corner of a speed law, one for each side where values differ. Poses are those of the TCP in the base,
-/// angles roll, pitch, yaw about the fixed x, then y, then z axis. Beyond the place where a path is lost cells are empty.
+/// Writes the motion over the whole cycle as CSV, quoted as RFC 4180 has it: a row at every multiple of `every` from the start
+/// of the cycle, and at every waypoint and corner of a speed law, one for each side where values differ. Poses are those of the
+/// TCP in the base, angles roll, pitch, yaw about the fixed x, then y, then z axis. Beyond the place where a path is lost cells
+/// are empty.
 ///
 /// # Errors
 /// Where it would be too long, or `out` fails.

@@ -4,8 +4,8 @@ use elbowroom::checks::{Check, Finding, Watch};
 use elbowroom::files::{read_arm, read_recipe};
 use elbowroom::review::{Explanation, Judged, Label, explain, wrap};
 
-/// The six-axis arm of the demonstration cell.
-pub const SIX: &str = include_str!("../../recipes/arms/six-axis-12kg.toml");
+/// A six-axis arm with a spherical wrist.
+pub const SIX: &str = include_str!("six-axis.toml");
 /// An arm of four joints, the third of which slides.
 pub const FOUR: &str = include_str!("../../recipes/arms/four-axis-rrpr.toml");
 
@@ -98,7 +98,7 @@ pub fn shown(told: &Explanation) -> String {
         let mut lines = wrap(&told.title, width);
         for paragraph in &told.paragraphs {
             lines.push(paragraph.label.words().to_uppercase());
-            lines.extend(wrap(&paragraph.text, width));
+            lines.extend(wrap(&without_count(&paragraph.text), width));
             lines.extend(paragraph.bars.iter().map(|bar| format!("{}: {} ({:+.3})", bar.name, bar.figure, bar.share)));
         }
         for line in lines {
@@ -107,6 +107,16 @@ pub fn shown(told: &Explanation) -> String {
         }
     }
     text
+}
+
+/// The text without the number of instants looked at, which is the sweep's business.
+fn without_count(text: &str) -> String {
+    let words: Vec<&str> = text.split(' ').collect();
+    let count = |k: usize| words.get(k + 1).is_some_and(|next| next.starts_with("instants"));
+    (0..words.len())
+        .map(|k| if count(k) && words[k].parse::<usize>().is_ok() { "so many" } else { words[k] })
+        .collect::<Vec<_>>()
+        .join(" ")
 }
 
 /// The figure that stands before `unit` behind the words `after`.

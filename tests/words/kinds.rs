@@ -14,6 +14,34 @@ fn a_rate_past_a_straight_wrist_is_told_by_its_mechanics() {
 }
 
 #[test]
+fn a_rate_near_other_singular_postures_names_them() {
+    let line = |from: &str, to: &str, speed: u32| {
+        format!(
+            r#"{READY}
+            [[waypoint]]
+            name = "from"
+            pose = {{ {from}, rpy = [180, 0, 0] }}
+            arrive = "joint"
+            share = 40
+            [[waypoint]]
+            name = "to"
+            pose = {{ {to}, rpy = [180, 0, 0] }}
+            arrive = "line"
+            speed = {speed}
+            accel = 40000
+            "#
+        )
+    };
+    let stretched = line("xyz = [1100, 0, 600]", "xyz = [1328, 0, 600]", 700);
+    snapshot("rate_elbow", &judged(SIX, "", &stretched), Check::Rate);
+    let over_the_base = line("xyz = [70, 250, 1000]", "xyz = [70, -250, 1000]", 600);
+    snapshot("rate_shoulder", &judged(SIX, "", &over_the_base), Check::Rate);
+    let four = line("xyz = [450, 0, 60]", "xyz = [599, 0, 60]", 1300)
+        .replace(READY, "[[waypoint]]\nname = \"rest\"\njoints = [-30, 70, 40, 0]\n");
+    snapshot("rate_without_wrist", &judged(FOUR, "", &four), Check::Rate);
+}
+
+#[test]
 fn a_rate_without_a_singular_posture_is_told_by_lever_and_speed() {
     let line = r#"
     [[waypoint]]
@@ -96,6 +124,45 @@ fn a_range_is_told_in_degrees_to_its_end() {
 fn the_tcp_speed_of_a_joint_move_is_told_by_its_joints() {
     let turn = "[[waypoint]]\nname = \"aside\"\njoints = [90, -20, -20, 0, 60, 0]\narrive = \"joint\"\nshare = 80\n";
     snapshot("tcp_speed", &judged(SIX, "[acceptance]\ntcp-speed = 1000", &format!("{READY}{turn}")), Check::TcpSpeed);
+}
+
+#[test]
+fn a_sliding_joint_is_told_in_millimetres_and_newtons() {
+    let down = r#"
+    [[waypoint]]
+    name = "rest"
+    joints = [-30, 70, 10, 0]
+    [[waypoint]]
+    name = "down"
+    joints = [-30, 70, 196, 0]
+    arrive = "line"
+    speed = 1400
+    accel = 20000
+    push = { force = [0, 0, -160], frame = "base" }
+    "#;
+    let judged = judged(FOUR, "", down);
+    for check in [Check::Rate, Check::Accel, Check::Holding, Check::Range] {
+        snapshot(&format!("sliding_{}", check.key()), &judged, check);
+    }
+}
+
+#[test]
+fn a_turn_on_the_spot_is_told_in_degrees() {
+    let turn = r#"
+    [[waypoint]]
+    name = "here"
+    pose = { xyz = [760, -60, 520], rpy = [180, 0, 0] }
+    arrive = "joint"
+    share = 40
+    [[waypoint]]
+    name = "turned"
+    pose = { xyz = [760, -60, 520], rpy = [180, 0, 150] }
+    arrive = "line"
+    speed = 200
+    turn-speed = 500
+    turn-accel = 2000
+    "#;
+    snapshot("rate_turning", &judged(SIX, "", &format!("{READY}{turn}")), Check::Rate);
 }
 
 #[test]
@@ -184,7 +251,14 @@ fn what_was_not_checked_follows_the_recipe() {
 
 #[test]
 fn doubts_name_what_is_probably_wrong() {
-    let same = "[[waypoint]]\nname = \"again\"\njoints = [0, -20, -20, 0, 60, 0]\narrive = \"joint\"\nshare = 40\nthen = { release = true }\n";
+    let same = r#"
+    [[waypoint]]
+    name = "again"
+    joints = [0, -20, -20, 0, 60, 0]
+    arrive = "joint"
+    share = 40
+    then = { release = true }
+    "#;
     let judged = judged(SIX, "", &format!("{READY}{same}"));
     let told: Vec<String> = judged.survey.doubts.iter().map(|doubt| doubt_text(&judged, doubt)).collect();
     insta::assert_snapshot!("doubts", told.join("\n"));

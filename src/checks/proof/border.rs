@@ -26,9 +26,12 @@ const POINT: f64 = 1e-9;
 pub(super) struct Joined {
     pub middle: f64,
     pub half: f64,
-    pub start: Enclosure,
-    pub end: Enclosure,
     n: usize,
+    q: Row,
+    slope: Row,
+    bend: Row,
+    unsure: Row,
+    slack: Row,
     turns: [bool; MAX_JOINTS],
     error: [Row; MAX_JOINTS],
     norms: [[f64; 2]; MAX_JOINTS],
@@ -41,32 +44,39 @@ impl Joined {
         let n = middle.arm.len();
         let h = leaf.half;
         let mut error = leaf.rest;
-        let (mut start, mut end) =
-            (Enclosure { centre: [0.0; MAX_JOINTS], width: [0.0; MAX_JOINTS] }, Enclosure::point(&middle.at.q));
         for i in 0..n {
             for j in 0..n {
                 error[i][j] += h * middle.first[i][j].abs();
             }
-            let bent = middle.at.q[i] + 0.5 * h * h * middle.bend[i];
-            start.centre[i] = bent - h * middle.slope[i];
-            end.centre[i] = bent + h * middle.slope[i];
-            // The slope in the middle is as unsure as what its spread holds besides the bend.
-            let unsure = (leaf.slope_spread[i] - h * (middle.bend[i].abs() + leaf.spread[i])).max(0.0);
-            start.width[i] = 0.5 * h * h * leaf.spread[i] + h * unsure + middle.slack[i];
-            end.width[i] = start.width[i];
         }
+        let mut q = [0.0; MAX_JOINTS];
+        q[..n].copy_from_slice(&middle.at.q);
         Self {
             middle: middle.at.u,
             half: h,
-            start,
-            end,
             n,
+            q,
+            slope: middle.slope,
+            bend: middle.bend,
+            unsure: middle.unsure(),
+            slack: middle.slack,
             turns: middle.arm.chain().turns,
             error,
             norms: middle.norms,
             spread: leaf.spread,
             reach: middle.view.reach(),
         }
+    }
+
+    /// Where this leaf's path is at fraction `u`, which must lie on it.
+    pub fn enclosure(&self, u: f64) -> Enclosure {
+        let s = u - self.middle;
+        let mut enclosure = Enclosure { centre: [0.0; MAX_JOINTS], width: [0.0; MAX_JOINTS] };
+        for i in 0..self.n {
+            enclosure.centre[i] = self.q[i] + s * (self.slope[i] + 0.5 * s * self.bend[i]);
+            enclosure.width[i] = 0.5 * s * s * self.spread[i] + s.abs() * self.unsure[i] + self.slack[i];
+        }
+        enclosure
     }
 
     /// Whether the solutions in two enclosures, both for the pose at a border of this leaf, must be the same posture.

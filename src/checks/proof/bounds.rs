@@ -122,18 +122,18 @@ fn speed_left(channel: &Channel, middle: &Middle, leaf: &Leaf) -> f64 {
         + MARGIN
 }
 
+/// A stretch of a joint move: the arm's motion over it, its half-width, and the joints' slopes, which are exact.
+pub(super) struct Even<'a> {
+    pub view: &'a View<'a>,
+    pub motion: &'a Motion,
+    pub slope: &'a Row,
+    pub half: f64,
+}
+
 /// Bounds over a stretch of a joint move: only holding and TCP speed need any; the rest is exact by its ends.
-pub(super) fn on_joint_move(
-    arm: &Arm,
-    meter: &Meter,
-    needs: &[usize],
-    view: &View,
-    motion: &Motion,
-    slope: &Row,
-    half: f64,
-    pace: Pace,
-) -> Asked {
+pub(super) fn on_joint_move(arm: &Arm, meter: &Meter, needs: &[usize], even: &Even, pace: Pace) -> Asked {
     let mut asked = [0.0; CHANNELS];
+    let Even { view, motion, slope, half } = *even;
     let wants = |check: Check| meter.slots(check).any(|slot| needs.contains(&slot));
     let torque = wants(Check::Holding).then(|| view.holding(motion, slope, &[0.0; MAX_JOINTS]));
     for &slot in needs {

@@ -6,7 +6,7 @@ use crate::kinematics::{SphericalWrist, spherical_wrist};
 use crate::motion::{Follower, Instant, Segment};
 
 use super::border::{Enclosure, Joined, meet_at};
-use super::bounds::{Asked, Pace, on_joint_move, on_path};
+use super::bounds::{Asked, Even, Pace, on_joint_move, on_path};
 use super::leaf::{Middle, Row};
 use super::view::{Reference, View};
 
@@ -219,7 +219,8 @@ impl Run<'_> {
         let found = loop {
             trials += 1;
             let motion = view.motion(&slope, &none, half + SEAM, 1e-15);
-            let asked = on_joint_move(self.arm, self.meter, &self.needs, &view, &motion, &slope, half + SEAM, pace);
+            let even = Even { view: &view, motion: &motion, slope: &slope, half: half + SEAM };
+            let asked = on_joint_move(self.arm, self.meter, &self.needs, &even, pace);
             match self.narrower(&asked, trials) {
                 None => break Some((half, asked)),
                 Some(share) => half *= share,
@@ -306,7 +307,9 @@ impl Run<'_> {
         let (Some(first), Some(last)) = (joined.first(), joined.last()) else { return false };
         let nodes = &self.segment.track.nodes;
         let end = Enclosure::point(&nodes.last().expect("followed").q);
-        if !first.meets(&first.start, &Enclosure::point(&self.segment.start)) || !last.meets(&last.end, &end) {
+        if !self.holds(first, first.middle - first.half, &Enclosure::point(&self.segment.start))
+            || !self.holds(last, last.middle + last.half, &end)
+        {
             return false;
         }
         joined.windows(2).all(|pair| {
@@ -316,19 +319,64 @@ impl Run<'_> {
                 // Another definition of the motion begins here; both hold at the node itself.
                 Some(node) => {
                     let point = Enclosure::point(&node.q);
-                    left.meets(&left.end, &point) && right.meets(&right.start, &point)
+                    self.holds(left, border, &point) && self.holds(right, border, &point)
                 }
-                None => {
-                    let (one, other) = (&left.end, &right.start);
-                    left.meets(one, other) || right.meets(one, other) || self.closer_look(border, one, other)
-                }
+                None => self.join(left, right, border, MOST_BETWEEN),
             }
         })
     }
 
-    fn closer_look(&mut self, border: f64, one: &Enclosure, other: &Enclosure) -> bool {
+    /// Whether a leaf's path goes through a known posture at fraction `u`.
+    fn holds(&mut self, leaf: &Joined, u: f64, posture: &Enclosure) -> bool {
+        let there = leaf.enclosure(u);
+        if leaf.meets(&there, posture) {
+            return true;
+        }
+        let Some(instant) = self.look_at_border(u) else { return false };
+        let Some(middle) = self.middle(&instant) else { return false };
+        if meet_at(&middle, &there, posture) {
+            return true;
+        }
+        let Some((between, trials)) = self.between(&middle, leaf.half) else { return false };
+        self.out.tally.trials += trials;
+        let inwards = if u < leaf.middle { between.half } else { -between.half };
+        between.meets(&between.enclosure(u), posture) && self.join(&between, leaf, u + inwards, MOST_BETWEEN)
+    }
+
+    /// Whether two leaves that share the fraction `u` are of one branch. Where both are too wide there to tell, a leaf is proved
+    /// around `u` and joined to each of them nearer to its middle, where they are narrower.
+    fn join(&mut self, left: &Joined, right: &Joined, u: f64, more: usize) -> bool {
+        let (one, other) = (left.enclosure(u), right.enclosure(u));
+        if left.meets(&one, &other) || right.meets(&one, &other) {
+            return true;
+        }
+        let Some(instant) = self.look_at_border(u) else { return false };
+        let Some(middle) = self.middle(&instant) else { return false };
+        if meet_at(&middle, &one, &other) {
+            return true;
+        }
+        if more == 0 {
+            return false;
+        }
+        let Some((between, trials)) = self.between(&middle, left.half.min(right.half)) else { return false };
+        self.out.tally.trials += trials;
+        let towards_left = if left.middle < right.middle { -between.half } else { between.half };
+        self.join(left, &between, u + towards_left, more - 1) && self.join(&between, right, u - towards_left, more - 1)
+    }
+
+    fn look_at_border(&mut self, u: f64) -> Option<Instant> {
         self.out.tally.postures += 1;
-        let Some(instant) = self.follower.at(border) else { return false };
-        self.middle(&instant).is_some_and(|middle| meet_at(&middle, one, other))
+        self.follower.at(u)
+    }
+
+    /// A leaf around the middle, narrower than `half`, and how many trials it took.
+    fn between(&self, middle: &Middle, half: f64) -> Option<(Joined, usize)> {
+        (1..=self.effort.trials).find_map(|trial| {
+            let leaf = middle.prove(half * 0.6f64.powi(trial as i32))?;
+            Some((Joined::of(middle, &leaf), trial))
+        })
     }
 }
+
+/// How often a leaf may be put between two others to join them.
+const MOST_BETWEEN: usize = 3;

@@ -170,7 +170,8 @@ impl<'a> Middle<'a> {
                 return None;
             }
             if (0..n).all(|j| reached[j] < spread[j]) {
-                return Some(leaf);
+                // What follows from the assumed spread is proved, and it is the tighter of the two.
+                return Some(Leaf { spread: reached, ..leaf });
             }
             for j in 0..n {
                 spread[j] = spread[j].max(1.15 * reached[j]);
@@ -179,15 +180,22 @@ impl<'a> Middle<'a> {
         None
     }
 
+    /// How unsure the slope in the middle is: it is `Y x'` only to within the defect and the slack.
+    pub fn unsure(&self) -> Row {
+        let n = self.arm.len();
+        std::array::from_fn(|j| {
+            let misfit = (0..n).map(|k| self.defect[j][k] * self.slope[k].abs()).sum::<f64>();
+            2.0 * misfit + self.slack_sum * (self.bend[j].abs() + self.slope[j].abs())
+        })
+    }
+
     /// The leaf for an assumed `spread` of the second derivative, and the spread that would follow from it.
     fn bound(&self, half: f64, spread: &Row) -> (Leaf, Row) {
         let n = self.arm.len();
         let mut slope_spread = [0.0; MAX_JOINTS];
+        let unsure = self.unsure();
         for j in 0..n {
-            // Besides the bend: the slope itself is `Y x'` only to within the defect and the slack.
-            let unsure = (0..n).map(|k| self.defect[j][k] * self.slope[k].abs()).sum::<f64>() * 2.0
-                + self.slack_sum * (self.bend[j].abs() + self.slope[j].abs());
-            slope_spread[j] = (half * (self.bend[j].abs() + spread[j]) + unsure) * OUTWARD;
+            slope_spread[j] = (half * (self.bend[j].abs() + spread[j]) + unsure[j]) * OUTWARD;
         }
         let motion = self.view.motion(&self.slope, &slope_spread, half, self.slack_sum);
         let [moved, turned] = self.target_change(&motion, half);

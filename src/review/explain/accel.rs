@@ -13,14 +13,16 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
     let data = scene.joint(joint);
     let alone = if excess.room.as_fraction() < 0.0 {
         format!(
-            "{} can't change its rate that fast. Depending on its controller the arm rounds this off and leaves the path for a moment, slows down, or stops with a fault of the drive.",
+            "{} can't change its rate that fast. Depending on its controller the arm rounds this off and leaves the path for a \
+             moment, slows down, or stops with a fault of the drive.",
             data.name
         )
     } else {
         format!("{} follows as long as the data hold; a heavier part or a stiffer grease in the cold takes the rest.", data.name)
     };
     let rests = format!(
-        "The acceleration of {} in the arm file, {}, taken to hold for every load and posture; the speed law, which is taken to start and end its ramps at once. {}",
+        "The acceleration of {} in the arm file, {}, taken to hold for every load and posture; the speed law, which is taken to \
+         start and end its ramps at once. {}",
         data.name,
         data.acceleration_of(data.accel),
         proof_text(scene.survey(), scene.survey().check(Check::Accel))
@@ -57,7 +59,8 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
             )
         };
         return format!(
-            "{moves}{both} The ramp's part shrinks in step with the acceleration given: by that rule {} would meet it here, an estimate for this one instant.",
+            "{moves}{both} The ramp's part shrinks in step with the acceleration given: by that rule {} would meet it here, an \
+             estimate for this one instant.",
             scene.asking_accel(scene.accel.abs() * share)
         );
     }
@@ -78,7 +81,8 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
     };
     let adds = if of(ramp) == of(0.0) { String::new() } else { format!("; the ramp of the speed adds {}", of(ramp)) };
     format!(
-        "{moves} Even at constant speed {} has to change its rate by {}, for its way bends here{adds}. {near} The bend's part grows with the square of the speed: {estimate}.",
+        "{moves} Even at constant speed {} has to change its rate by {}, for its way bends here{adds}. {near} The bend's part \
+         grows with the square of the speed: {estimate}.",
         data.name,
         of(bend)
     )

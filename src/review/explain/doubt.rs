@@ -14,7 +14,8 @@ pub fn doubt_text(judged: &Judged, doubt: &Doubt) -> String {
             let gap = Length::m(*gap).measure().text(1);
             let apart = if *turn > NO_TURN { format!("{gap} and {}", Angle::rad(*turn).measure().text(1)) } else { gap };
             format!(
-                "{}: the pose that the cell showed there is {apart} from where this recipe puts the TCP. A wrong tool or frame number \
+                "{}: the pose that the cell showed there is {apart} from where this recipe puts the TCP. A wrong tool or frame \
+                 number \
                  when it was noted, or a TCP or arm that differs from the recipe, looks like this.",
                 name(*waypoint)
             )
@@ -31,12 +32,14 @@ pub fn doubt_text(judged: &Judged, doubt: &Doubt) -> String {
         Doubt::NothingToRelease { waypoint } => format!("{} releases a load, but the tool carries none there.", name(*waypoint)),
         Doubt::NoMotion { waypoint } => {
             format!(
-                "{} is where the waypoint before it is, so the segment between them has no motion. A point taught twice looks like this.",
+                "{} is where the waypoint before it is, so the segment between them has no motion. A point taught twice looks \
+                 like this.",
                 name(*waypoint)
             )
         }
         Doubt::OverRatedLoad { waypoint, carried, rated } => format!(
-            "On the way to waypoint {} \"{}\" tool and load weigh {} together; the flange is rated for {}. The maker's limits then no longer hold, whatever else is clear.",
+            "On the way to waypoint {} \"{}\" tool and load weigh {} together; the flange is rated for {}. The maker's limits \
+             then no longer hold, whatever else is clear.",
             waypoint + 1,
             judged.recipe.waypoints[*waypoint].name,
             Mass::kg(*carried),

@@ -1,12 +1,14 @@
 use crate::kinematics::SingularKind;
 use crate::units::{Angle, Dimension, Measure, TurnRate};
 
-use super::direction::axis;
+use super::direction::{axis, line};
 use super::listing::all_of;
 use super::scene::Scene;
 
 /// A joint's part in the combination of joint rates that moves the tool least counts from this share on.
 const TAKES_PART: f64 = 0.3;
+/// The wrist's joints make the lost direction when their squared parts in it come to more than this.
+const MOSTLY: f64 = 0.7;
 /// The lost direction explains a joint's rate when it makes up at least this share of it.
 const EXPLAINS: f64 = 0.5;
 
@@ -15,12 +17,16 @@ const NO_TURN: f64 = 1e-4;
 
 /// What the nearness of a singular posture does to a joint's rate, in a few sentences; `None` where it does not explain it.
 pub(super) fn amplified(scene: &Scene, joint: usize) -> Option<String> {
+    // On a joint move nothing is inverted, so no posture amplifies anything.
+    if !scene.segment.follows_path() || scene.arm().is_redundant() {
+        return None;
+    }
     let closeness = scene.closeness();
     let parts = scene.parts();
     let last = parts.count - 1;
     let rates = scene.rates();
     let lost = lost_share(scene, joint);
-    if scene.arm().is_redundant() || closeness.is_none() || lost.abs() < EXPLAINS * rates[joint].abs() {
+    if closeness.is_none() || lost.abs() < EXPLAINS * rates[joint].abs() {
         return None;
     }
     let name = |j: usize| scene.joint(j).name.clone();
@@ -31,7 +37,9 @@ pub(super) fn amplified(scene: &Scene, joint: usize) -> Option<String> {
         0 | 1 => String::new(),
         _ => format!(" {} turn against each other and nearly cancel.", all_of(&told)),
     };
-    let kind = closeness.and_then(|close| close.kind);
+    // The nearest singular posture and the direction with the smallest singular value need not belong together.
+    let by_wrist: f64 = parts.joints[last].iter().skip(3).map(|share| share * share).sum();
+    let kind = closeness.and_then(|close| close.kind).filter(|kind| (*kind == SingularKind::Wrist) == (by_wrist > MOSTLY));
     if kind == Some(SingularKind::Wrist) && joint >= 3 {
         return Some(format!("{}{against}", wrist(scene, joint)));
     }
@@ -44,13 +52,14 @@ pub(super) fn amplified(scene: &Scene, joint: usize) -> Option<String> {
             all_of(&fighting.iter().map(|&j| name(j)).collect::<Vec<_>>())
         ),
     };
-    let of = |si: f64| scene.joint(joint).rate_of(si);
+    let of = |si: f64| scene.joint(joint).rate_of(si).signed();
     Some(format!(
-        "{opening}, and one direction of motion is nearly lost. Of the {} that {} turns, {} go into that direction alone; all other motion asks for {}.{against}",
-        of(rates[joint].abs()),
+        "{opening}, and one direction of motion is nearly lost; the tool feels it most {}. That direction alone asks \
+         {} of {}, all other motion together {}.{against}",
+        line(&scene.judged.recipe, &scene.speed_left().direction),
+        of(lost),
         name(joint),
-        of(lost.abs()),
-        of((rates[joint] - lost).abs())
+        of(rates[joint] - lost)
     ))
 }
 
@@ -83,8 +92,9 @@ fn wrist(scene: &Scene, joint: usize) -> String {
         "For the tool's turn and against that of the joints before it the wrist must turn: ".to_owned()
     };
     format!(
-        "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across both, about {}. \
-         With {} at a right angle no wrist joint would need more than that; here {} needs {} times as much.",
+        "The wrist is nearly straight: {} stands {} from where the axes of {} and {} are in line. {cause}{} of that lies across \
+         both, about {}. With {} at a right angle that would ask no more than the same rate of any wrist joint; here it asks {} times \
+         as much of {}.",
         names[1],
         Angle::rad(apart).measure().text(1),
         names[0],
@@ -92,7 +102,7 @@ fn wrist(scene: &Scene, joint: usize) -> String {
         TurnRate::rad_per_s(asked.abs()),
         axis(&(across * asked)),
         names[1],
-        scene.joint(joint).name,
         Measure::si(gain, Dimension::Ratio).text(usize::from(gain < 10.0)),
+        scene.joint(joint).name,
     )
 }

@@ -24,12 +24,14 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
     );
     let alone = if excess.room.as_fraction() < 0.0 {
         format!(
-            "The motor of {} can give more than its continuous rating for a short time, so a quick trial may look well. In production it overheats and its protection stops the arm, or {} sinks under the weight.",
+            "The motor of {} can give more than its continuous rating for a short time, so a quick trial may look well. In \
+             production it overheats and its protection stops the arm, or {} sinks under the weight.",
             data.name, data.name
         )
     } else {
         format!(
-            "{} holds this as long as the data are right. A part heavier than typed, a centre farther out, or friction and speeding up on top use up what is left; the motor runs hot when it stands here for long.",
+            "{} holds this as long as the data are right. A part heavier than typed, a centre farther out, or friction and \
+             speeding up on top use up what is left; the motor runs hot when it stands here for long.",
             data.name
         )
     };

@@ -1,6 +1,6 @@
 use crate::checks::{Excess, Finding, Kind, Place};
 use crate::motion::Segment;
-use crate::program::Then;
+use crate::program::{Arrive, Then};
 use crate::units::{Dimension, Measure, Seconds, Share};
 
 use super::{Judged, Label, Paragraph};
@@ -37,7 +37,7 @@ pub(super) fn on_cycle(judged: &Judged, segment: usize, place: Place) -> String 
 pub(super) fn name(judged: &Judged, segment: usize) -> String {
     let planned = &judged.plan.segments[segment];
     let waypoints = &judged.recipe.waypoints;
-    let kind = match waypoints[planned.to].arrive.as_ref().map(|arrive| arrive.word()) {
+    let kind = match waypoints[planned.to].arrive.as_ref().map(Arrive::word) {
         Some("joint") | None => "joint move",
         Some(word) => word,
     };

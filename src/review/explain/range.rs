@@ -9,12 +9,11 @@ use super::{Label, Paragraph, proof_text};
 /// How far a joint is from the end named in a finding: `1.2° to its end` or `0.8° beyond its end`.
 pub(super) fn to_end_text(joint: &Joint, excess: &Excess) -> String {
     let left = joint.range.to_end(excess.demand.si);
-    let left = if left < 0.0 {
+    if left < 0.0 {
         Measure::si(-left, excess.demand.of).text_up(1) + " beyond its end"
     } else {
         Measure::si(left, excess.demand.of).text_down(1) + " to its end"
-    };
-    left
+    }
 }
 
 /// What, why, left alone and rests on of a joint's range.
@@ -37,10 +36,12 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
             data.name
         )
     } else {
-        format!("{} still turns freely here. A point shifted a little, or a zero position set anew after a repair, uses up what is left.", data.name).replace(
-            "turns",
-            if data.kind == crate::arm::JointKind::Revolute { "turns" } else { "slides" },
+        format!(
+            "{} still turns freely here. A point shifted a little, or a zero position set anew after a repair, uses up what \
+            is left.",
+            data.name
         )
+        .replace("turns", if data.kind == crate::arm::JointKind::Revolute { "turns" } else { "slides" })
     };
     let rests = format!(
         "The range of {} in the arm file, {} to {}; a range set narrower in the cell is not known here. {}",
@@ -64,14 +65,16 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
     if excess.worst.u <= 0.0 || excess.worst.u >= 1.0 {
         let which = if excess.worst.u <= 0.0 { "start" } else { "end" };
         return format!(
-            "It is worst at the very {which} of the segment, so the waypoint there decides, not the way. Over the segment {} goes from {} to {}.",
+            "It is worst at the very {which} of the segment, so the waypoint there decides, not the way. Over the segment {} \
+             goes from {} to {}.",
             data.name,
             of(start),
             of(end)
         );
     }
     format!(
-        "{} starts at {} and ends at {}; in between the path takes it to {}. Both waypoints alone would not show this. {} Speed changes nothing about it.",
+        "{} starts at {} and ends at {}; in between the path takes it to {}. Both waypoints alone would not show this. {} Speed \
+         changes nothing about it.",
         data.name,
         of(start),
         of(end),

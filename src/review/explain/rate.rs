@@ -70,7 +70,8 @@ fn why(scene: &Scene, joint: usize, excess: &Excess) -> String {
     let cause = amplified(scene, joint).unwrap_or_else(|| plain_cause(scene, joint));
     let rate = scene.rate * allowed(excess).si / excess.demand.si.abs();
     format!(
-        "{} {cause} Rates grow in step with the speed of the whole segment: by that rule {name} would stay within {} here at {}, an estimate for this one instant.",
+        "{} {cause} Rates grow in step with the speed of the whole segment: by that rule {name} would stay within {} here at {}, \
+         an estimate for this one instant.",
         tool_moves(scene),
         allowed(excess).text_down(0),
         scene.asking(rate)
@@ -105,8 +106,14 @@ fn plain_cause(scene: &Scene, joint: usize) -> String {
             data.rate_of(alone.abs())
         );
     }
+    let about = scene.instant.posture.axis(joint).dot(&scene.turning());
+    if (about - rate).abs() < LIKE * rate.abs() {
+        let turn = TurnRate::rad_per_s(about.abs());
+        return format!("{opening} The tool turns at {turn} about the axis of {}, which takes that rate by itself.", data.name);
+    }
     format!(
-        "{opening} The axis of {} stands {} from the TCP; its rate follows from the tool's motion together with that of the other joints.",
+        "{opening} The axis of {} stands {} from the TCP; its rate follows from the tool's motion together with that of the \
+         other joints.",
         data.name,
         Length::m(lever)
     )
@@ -116,12 +123,14 @@ fn left_alone(scene: &Scene, joint: usize, excess: &Excess) -> String {
     let name = &scene.joint(joint).name;
     if excess.room.as_fraction() < 0.0 {
         return format!(
-            "{name} can't keep up. Depending on its controller the arm slows down along the path, falls behind and leaves it, or stops with a fault of the drive. \
+            "{name} can't keep up. Depending on its controller the arm slows down along the path, falls behind and leaves it, or \
+             stops with a fault of the drive. \
              It shows only at speed, never when the points are stepped through by hand."
         );
     }
     format!(
-        "{name} keeps up as long as the data hold. What is missing is the margin for a point shifted by a few millimetres or an override above 100 %."
+        "{name} keeps up as long as the data hold. What is missing is the margin for a point shifted by a few millimetres or an \
+         override above 100 %."
     )
 }
 

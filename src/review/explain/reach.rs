@@ -45,7 +45,8 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, trouble: &NoPath) -
             "The controller refuses the move, or stops on the way there with a fault."
         }
         NoPath::OtherPosture { .. } => {
-            "The controller refuses the move, or the arm arrives in the other posture. If it then goes on, the next joint move sweeps a way that nobody taught."
+            "The controller refuses the move, or the arm arrives in the other posture. If it then goes on, the next joint move \
+             sweeps a way that nobody taught."
         }
         NoPath::Orientation { .. } => "The controller refuses the move, or the tool arrives turned by as much as it misses.",
         NoPath::Lost { .. } => "Nothing is known about what follows, neither good nor bad, and none of it is judged.",
@@ -84,7 +85,8 @@ fn out_of_reach(judged: &Judged, finding: &Finding, u: f64, q: &Joints, sigma: f
         None => "",
     };
     let why = format!(
-        "There the arm stands in a limiting posture{kind}, in which one direction is lost: the smallest singular value is {}. The TCP is then {} from the origin of the base; the joints stand at {}.",
+        "There the arm stands in a limiting posture{kind}, in which one direction is lost: the smallest singular value is {}. \
+         The TCP is then {} from the origin of the base; the joints stand at {}.",
         Measure::si(sigma, Dimension::Ratio).text(4),
         length(tcp),
         values(judged, q)
@@ -104,7 +106,8 @@ fn lost(judged: &Judged, finding: &Finding, u: f64, sigma: f64) -> [String; 2] {
         "The search found no joint values for the waypoint.".to_owned()
     };
     let why = format!(
-        "No limiting posture was met there (the smallest singular value is {}), so this does not say that the place is out of reach; it says that nothing is known.",
+        "No limiting posture was met there (the smallest singular value is {}), so this does not say that the place is out of \
+         reach; it says that nothing is known.",
         Measure::si(sigma, Dimension::Ratio).text(4)
     );
     [what, why]
@@ -134,7 +137,8 @@ fn other_posture(judged: &Judged, finding: &Finding, arrives: &Joints, taught: &
     let size = |part: &[f64]| part.iter().map(|v| v * v).sum::<f64>().sqrt();
     let same = size(&error[..3]) < SAME && size(&error[3..]) < SAME;
     let why = if same {
-        "Both postures put the tool at the same pose. On a path the arm can't change from one to the other without passing a singular posture or leaving the path; a joint move can."
+        "Both postures put the tool at the same pose. On a path the arm can't change from one to the other without passing a \
+         singular posture or leaving the path; a joint move can."
     } else {
         "The path ends where the waypoint's pose is, but the joint values taught there put the tool elsewhere."
     };

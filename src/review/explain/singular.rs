@@ -15,7 +15,8 @@ pub(super) fn paragraphs(scene: &Scene, check: Check, excess: &Excess) -> [Parag
     let (demand, limit) = (excess.demand, excess.limit);
     let what = match check {
         Check::SpeedLeft => format!(
-            "With every joint at its full rate and the orientation held, the tool keeps {} in its worst direction; the recipe asks for {} in every direction.",
+            "With every joint at its full rate and the orientation held, the tool keeps {} in its worst direction; the recipe \
+             asks for {} in every direction.",
             demand.text_down(0),
             limit
         ),
@@ -25,13 +26,16 @@ pub(super) fn paragraphs(scene: &Scene, check: Check, excess: &Excess) -> [Parag
             limit.text(3)
         ),
     };
-    let alone = "Nothing is over because of this alone. But the arm is touchy here: a point shifted by millimetres, or an arm that differs a little from its model, may ask much more of the joints named, and some controllers refuse or slow a path this close.";
+    let alone = "Nothing is over because of this alone. But the arm is touchy here: a point shifted by millimetres, or an arm \
+        that differs a little from its model, may ask much more of the joints named, and some controllers refuse or slow a path \
+        this close.";
     let length = scene.arm().characteristic_length();
     let stated = if length.stated { "stated in the arm file" } else { "computed from the arm, since its file states none" };
     let rests = match check {
         Check::SpeedLeft => "The joints' rates and the arm's geometry, and on no characteristic length.".to_owned(),
         _ => format!(
-            "The arm's geometry, the TCP, and the characteristic length of {}, {stated}; with another length the figure is another.",
+            "The arm's geometry, the TCP, and the characteristic length of {}, {stated}; with another length the figure is \
+             another.",
             Length::m(length.m).measure().text(0)
         ),
     };

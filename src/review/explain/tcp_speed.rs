@@ -21,7 +21,8 @@ pub(super) fn paragraphs(scene: &Scene, excess: &Excess) -> [Paragraph; 4] {
     );
     let rate = scene.rate * excess.limit.si / excess.demand.si;
     let estimate = format!(
-        "The TCP's speed grows in step with that of the segment: by that rule it would stay within the limit here at {}, an estimate for this one instant.",
+        "The TCP's speed grows in step with that of the segment: by that rule it would stay within the limit here at {}, an \
+         estimate for this one instant.",
         scene.asking(rate)
     );
     let why = if scene.segment.follows_path() {
@@ -33,9 +34,11 @@ pub(super) fn paragraphs(scene: &Scene, excess: &Excess) -> [Paragraph; 4] {
             joints(scene)
         )
     };
-    let alone = "The arm itself can do this. But whatever the cell's limit stands for, such as the part's hold in the grip or the distances that the safeguards were laid out for, no longer fits.";
+    let alone = "No limit of the arm is broken by this alone. But whatever the cell's limit stands for, such as the part's hold in the \
+                 grip or the distances that the safeguards were laid out for, no longer fits.";
     let rests = format!(
-        "The limit in the recipe, the tool's TCP and the speed or share given. It is the speed of the TCP alone; elbow, tool corners and part may be faster. {}",
+        "The limit in the recipe, the tool's TCP and the speed or share given. It is the speed of the TCP alone; elbow, tool \
+         corners and part may be faster. {}",
         proof_text(scene.survey(), scene.survey().check(Check::TcpSpeed))
     );
     [

@@ -37,7 +37,8 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> V
                 "The arm file gives no holding torque for {}, so what they must hold has no limit to stand against.",
                 missing(judged, |joint| joint.torque.is_none())
             ),
-            "Whether the motors can hold arm, tool and load stays open. The first trial would tell, at the cost of a fault or a sinking arm.",
+            "Whether the motors can hold arm, tool and load stays open. The first trial would tell, at the cost of a fault or a \
+             sinking arm.",
         ),
         Unproved::NoMasses => (
             format!(
@@ -51,18 +52,19 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> V
                 "For {} a rating or a link mass is marked as a guess, and a guess is never enough for clear.",
                 missing(judged, guessed)
             ),
-            "If the guess is right, nothing. How far off it may be is what nobody has said.",
+            "The verdict moves with the guess, and how far off that may be nobody has said.",
         ),
         Unproved::BudgetSpent => (
             format!(
-                "{} instants were looked at and all were good, but the proof for those between did not close within its budget, mostly because something changes very quickly there.",
+                "{} instants were looked at and all were good, but the proof for those between did not close within its budget, \
+                 mostly because something changes very quickly there.",
                 survey.looked_at
             ),
-            "Most likely nothing. A narrow peak between two instants is possible all the same.",
+            "Where it was looked at nothing bad was seen; a narrow peak in between is possible all the same.",
         ),
         Unproved::SamplesOnly => (
             format!("{} instants were looked at and all were good; those between were not proved.", survey.looked_at),
-            "Most likely nothing. A narrow peak between two instants is possible all the same.",
+            "Where it was looked at nothing bad was seen; a narrow peak in between is possible all the same.",
         ),
         Unproved::NotFollowed => (
             "The path could not be followed to its end, and what comes after the loss was not seen.".to_owned(),

@@ -1,0 +1,92 @@
+//! The proof hammered: nothing that dense sampling finds may lie beyond a proved bound.
+
+mod random;
+
+use elbowroom::checks::{Check, Meter, Proof, Unproved, Verdict};
+use elbowroom::motion::Follower;
+use elbowroom::review::Judged;
+use random::{Draw, Family};
+
+/// Looks along a judged segment evenly in time and path, and compares every proved check with what is there.
+fn hammer(judged: &Judged, index: usize, looks: usize) {
+    let segment = &judged.plan.segments[index];
+    let survey = &judged.survey.segments[index];
+    let meter = Meter::of(&judged.arm, segment, &judged.recipe.acceptance, judged.plan.gravity);
+    let follower = Follower::of(&judged.arm, segment);
+    for k in 0..=looks {
+        let u = k as f64 / looks as f64;
+        let time = segment.law.time_of(u);
+        for side in [elbowroom::motion::Side::Before, elbowroom::motion::Side::After] {
+            let [u, rate, accel] = segment.law.at(time, side);
+            let at = follower.at(u).expect("a proved path can be followed");
+            let reading = meter.read(&at, rate, accel);
+            for check in Check::ALL {
+                let Proof::Proved(bound) = survey.check(check).proof else { continue };
+                for slot in meter.slots(check).filter(|slot| meter.channel(*slot).judged) {
+                    let room = meter.channel(slot).room(reading[slot]).as_fraction();
+                    assert!(
+                        room >= bound.as_fraction() - 1e-9,
+                        "{} segment, {check:?} slot {slot}: room {room} at u = {u}, proved {bound:?}",
+                        judged.arm.name()
+                    );
+                }
+            }
+        }
+    }
+}
+
+fn hammer_family(family: Family, seed: u64, count: usize) {
+    let mut draw = Draw(seed);
+    let (mut clear, mut unproven, mut reasons) = (0, 0, Vec::new());
+    for k in 0..count {
+        let arm = random::arm(family, &mut draw);
+        let recipe = random::segment(&arm, k % 3 != 0, &mut draw);
+        let judged = random::judged(arm, recipe);
+        let survey = &judged.survey.segments[0];
+        if judged.plan.segments[0].trouble.is_some() {
+            continue;
+        }
+        if survey.verdict == Verdict::Clear {
+            clear += 1;
+        }
+        for result in &survey.checks {
+            if let Proof::Open(why) = result.proof
+                && result.judged
+            {
+                assert_eq!(result.verdict, Verdict::Unproven, "an open proof is never clear");
+                if why == Unproved::BudgetSpent {
+                    unproven += 1;
+                    reasons.push((k, result.check));
+                }
+            }
+        }
+        hammer(&judged, 0, 1500);
+    }
+    assert!(clear * 4 > count, "{family:?}: only {clear} of {count} clear, so little was hammered");
+    assert!(unproven * 10 < count, "{family:?}: {unproven} of {count} checks unproven: {reasons:?}");
+}
+
+#[test]
+fn nothing_lies_beyond_a_bound_of_a_spherical_wrist() {
+    hammer_family(Family::SphericalWrist, 1, 90);
+}
+
+#[test]
+fn nothing_lies_beyond_a_bound_of_an_offset_wrist() {
+    hammer_family(Family::OffsetWrist, 2, 90);
+}
+
+#[test]
+fn nothing_lies_beyond_a_bound_of_seven_joints() {
+    hammer_family(Family::Seven, 3, 60);
+}
+
+#[test]
+fn nothing_lies_beyond_a_bound_of_four_joints_with_a_slide() {
+    hammer_family(Family::FourSlide, 4, 90);
+}
+
+#[test]
+fn nothing_lies_beyond_a_bound_of_three_joints_with_a_slide() {
+    hammer_family(Family::ThreeSlide, 5, 90);
+}
