@@ -3,7 +3,7 @@
 //!
 //! The modules stand in layers; each may name only those above it in this list:
 //! [`units`], [`geometry`], [`arm`], [`kinematics`], [`program`], [`dynamics`], [`motion`], [`checks`], [`review`], [`files`],
-//! [`report`], [`cli`].
+//! [`report`], [`tui`], [`cli`].
 
 pub mod arm;
 pub mod checks;
@@ -16,4 +16,5 @@ pub mod motion;
 pub mod program;
 pub mod report;
 pub mod review;
+pub mod tui;
 pub mod units;

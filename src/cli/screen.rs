@@ -1,18 +1,27 @@
 use std::path::Path;
+use std::sync::Arc;
 
-use crate::files::Opened;
+use crate::tui::{Options, Started};
 
 use super::args::ScreenArgs;
 use super::chosen::opened;
 use super::code::Code;
 
-/// Opens the review of a recipe on the screen; of the built-in demonstration cell for none.
-pub(super) fn run(recipe: Option<&Path>, options: ScreenArgs) -> anyhow::Result<Code> {
-    open_screen(&opened(recipe)?, options)
-}
-
-/// The one place where the command line meets the screen: `crate::tui::run::run(Started { .. }, Options { .. })` belongs here.
-fn open_screen(opened: &Opened, options: ScreenArgs) -> anyhow::Result<Code> {
-    let ScreenArgs { ascii: _, mono: _, light: _, mouse: _ } = options;
-    anyhow::bail!("the screen is not part of this build; `elbowroom check` prints the result for {}", opened.recipe_source.path)
+/// Opens the review of a recipe on the screen; of the built-in demonstration cell for none. The one place where the command line
+/// meets the screen.
+pub(super) fn run(recipe: Option<&Path>, asked: ScreenArgs) -> anyhow::Result<Code> {
+    let opened = opened(recipe)?;
+    let mut options = Options::of_environment(|name| std::env::var(name).ok());
+    options.ascii |= asked.ascii;
+    options.mono |= asked.mono;
+    options.light = asked.light;
+    options.mouse = asked.mouse;
+    let started = Started {
+        arm: Arc::new(opened.arm),
+        recipe: Arc::new(opened.recipe),
+        recipe_path: opened.recipe_source.path,
+        arm_path: opened.arm_source.path,
+    };
+    crate::tui::run(started, options)?;
+    Ok(Code::Clear)
 }

@@ -1,0 +1,127 @@
+use std::sync::Arc;
+use std::thread;
+
+use crossbeam_channel::{Receiver, Sender, unbounded};
+
+use crate::arm::Arm;
+use crate::checks::Watch;
+use crate::program::Recipe;
+
+use super::Judged;
+
+/// A ticket names one request; later requests have greater tickets.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub struct Ticket(u64);
+
+/// A reply is a finished check with the ticket of its request.
+#[derive(Debug, Clone)]
+pub struct Reply {
+    /// Which request it answers.
+    pub ticket: Ticket,
+    /// What became of it.
+    pub judged: Judged,
+}
+
+/// How far the newest request is.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct Progress {
+    /// Segments checked.
+    pub done: usize,
+    /// Segments in all.
+    pub of: usize,
+}
+
+#[derive(Debug)]
+struct Job {
+    ticket: Ticket,
+    arm: Arc<Arm>,
+    recipe: Arc<Recipe>,
+    before: Option<Judged>,
+    watch: Arc<Watch>,
+}
+
+#[derive(Debug)]
+struct Running {
+    watch: Arc<Watch>,
+    of: usize,
+}
+
+/// A recheck plans and surveys recipes away from the thread that asks. Only the newest request counts: it stops the older one, whose
+/// reply is dropped.
+#[derive(Debug)]
+pub struct Recheck {
+    jobs: Sender<Job>,
+    replies: Receiver<Reply>,
+    newest: Ticket,
+    running: Option<Running>,
+}
+
+impl Recheck {
+    /// Starts the worker.
+    ///
+    /// # Errors
+    /// Where the system gives no thread.
+    pub fn start() -> std::io::Result<Self> {
+        let (jobs, taken) = unbounded::<Job>();
+        let (answer, replies) = unbounded();
+        thread::Builder::new().name("recheck".to_owned()).spawn(move || work(&taken, &answer))?;
+        Ok(Self { jobs, replies, newest: Ticket(0), running: None })
+    }
+
+    /// Asks for a recipe to be checked; what `before` judged alike is taken over. An older request is stopped.
+    pub fn submit(&mut self, arm: &Arc<Arm>, recipe: &Arc<Recipe>, before: Option<Judged>) -> Ticket {
+        self.stop();
+        self.newest = Ticket(self.newest.0 + 1);
+        let watch = Arc::new(Watch::default());
+        self.running = Some(Running { watch: Arc::clone(&watch), of: recipe.waypoints.len().saturating_sub(1) });
+        let (arm, recipe) = (Arc::clone(arm), Arc::clone(recipe));
+        // A worker that is gone shows as a closed channel of replies.
+        let _ = self.jobs.send(Job { ticket: self.newest, arm, recipe, before, watch });
+        self.newest
+    }
+
+    /// Where replies arrive, to be waited for together with other news. Hand each to [`Recheck::accept`].
+    pub fn replies(&self) -> &Receiver<Reply> {
+        &self.replies
+    }
+
+    /// What a reply judged, if it answers the newest request.
+    pub fn accept(&mut self, reply: Reply) -> Option<Judged> {
+        (reply.ticket == self.newest).then(|| {
+            self.running = None;
+            reply.judged
+        })
+    }
+
+    /// How far the newest request is; `None` when nothing runs.
+    pub fn progress(&self) -> Option<Progress> {
+        self.running.as_ref().map(|running| Progress { done: running.watch.done().min(running.of), of: running.of })
+    }
+
+    /// Stops what runs.
+    pub fn stop(&mut self) {
+        if let Some(running) = self.running.take() {
+            running.watch.stop();
+        }
+    }
+}
+
+impl Drop for Recheck {
+    fn drop(&mut self) {
+        self.stop();
+    }
+}
+
+fn work(jobs: &Receiver<Job>, answer: &Sender<Reply>) {
+    while let Ok(job) = jobs.recv() {
+        // Stopped while it waited: a newer one stands behind it.
+        if job.watch.is_stopped() {
+            continue;
+        }
+        if let Some(judged) = Judged::of(&job.arm, &job.recipe, job.before.as_ref(), &job.watch)
+            && answer.send(Reply { ticket: job.ticket, judged }).is_err()
+        {
+            return;
+        }
+    }
+}

@@ -1,0 +1,71 @@
+use crate::checks::Check;
+use crate::review::{Judged, Progress};
+
+/// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
+#[derive(Debug, Clone)]
+pub enum Action {
+    /// One row up in the pane that is worked in.
+    Up,
+    /// One row down.
+    Down,
+    /// The cursor a step back in time.
+    Left,
+    /// The cursor a step on in time.
+    Right,
+    /// The cursor ten steps back.
+    LeapBack,
+    /// The cursor ten steps on.
+    LeapOn,
+    /// The cursor to the beginning of what the chart spans.
+    ToStart,
+    /// The cursor to its end.
+    ToEnd,
+    /// Work in the next pane.
+    NextPane,
+    /// Out of what is open.
+    Back,
+    /// The actions for what is selected, or the chosen one of them.
+    Enter,
+    /// To the worst finding.
+    Worst,
+    /// To the next finding.
+    NextFinding,
+    /// To the finding before.
+    PreviousFinding,
+    /// The explanation over the whole screen.
+    ReadWhy,
+    /// What was not checked, and the doubts.
+    NotChecked,
+    /// Ask for a waypoint's number or a time.
+    GoTo,
+    /// Ask for a part of a waypoint's name.
+    Find,
+    /// The chart spans the segment or the whole cycle.
+    Span,
+    /// The chart shows the next quantity.
+    NextQuantity,
+    /// Choose what the chart shows.
+    ChooseQuantity,
+    /// The chart shows this check.
+    Show(Check),
+    /// The chart shows the worst of all joints, or the selected one.
+    EveryJoint,
+    /// The keys and the signs.
+    Help,
+    /// End the program.
+    Quit,
+    /// Let the shell have the terminal for a while.
+    Suspend,
+    /// A character typed where text is asked for.
+    Type(char),
+    /// The last typed character away.
+    Erase,
+    /// A click on a column and row.
+    Click(u16, u16),
+    /// The terminal has these columns and rows now.
+    Resize(u16, u16),
+    /// The check has come this far.
+    Checking(Progress),
+    /// The check is done.
+    Judged(Box<Judged>),
+}

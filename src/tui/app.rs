@@ -1,0 +1,222 @@
+use std::sync::Arc;
+
+use ratatui::layout::Rect;
+
+use crate::arm::Arm;
+use crate::checks::Check;
+use crate::program::Recipe;
+use crate::review::{Judged, Progress, Session};
+
+use super::action::Action;
+use super::curve::Subject;
+use super::keys::{Binding, name};
+use super::scene::Scene;
+use super::theme::Theme;
+
+/// A pane that can be worked in.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Pane {
+    /// Waypoints and segments.
+    List,
+    /// The explanation.
+    Why,
+    /// The joints at the cursor.
+    Joints,
+    /// The chart.
+    Chart,
+}
+
+impl Pane {
+    /// The pane that Tab goes to from this one.
+    #[must_use]
+    pub fn next(self) -> Self {
+        match self {
+            Self::List => Self::Why,
+            Self::Why => Self::Joints,
+            Self::Joints => Self::Chart,
+            Self::Chart => Self::List,
+        }
+    }
+
+    /// Its name.
+    pub fn name(self) -> &'static str {
+        match self {
+            Self::List => "Segments",
+            Self::Why => "Why",
+            Self::Joints => "At the cursor",
+            Self::Chart => "Chart",
+        }
+    }
+}
+
+/// A page is a text that fills the screen.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Page {
+    /// The explanation of what is selected.
+    Why,
+    /// What was not checked, and the doubts.
+    NotChecked,
+    /// Keys and signs.
+    Help,
+}
+
+/// A question that is answered by typing.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Question {
+    /// A waypoint's number or a time.
+    GoTo,
+    /// A part of a waypoint's name.
+    Find,
+}
+
+/// What is typed in answer to a question.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Asking {
+    /// The question.
+    pub question: Question,
+    /// What has been typed.
+    pub typed: String,
+}
+
+/// An item is one action of a menu.
+#[derive(Debug, Clone)]
+pub struct Item {
+    /// What it does.
+    pub name: String,
+    /// The key that does the same, if there is one.
+    pub key: String,
+    /// The action.
+    pub action: Action,
+}
+
+impl Item {
+    /// The item of a key.
+    pub fn of(binding: &Binding, theme: Theme) -> Self {
+        let key = name(binding.keys[0], theme.ascii);
+        Self { name: binding.hint.to_owned(), key, action: binding.action.clone() }
+    }
+}
+
+/// A menu of named actions, of which one is chosen.
+#[derive(Debug, Clone)]
+pub struct Menu {
+    /// What it is about.
+    pub title: String,
+    /// What can be chosen.
+    pub items: Vec<Item>,
+    /// Which one is chosen.
+    pub chosen: usize,
+}
+
+/// What the screen is doing.
+#[derive(Debug, Clone)]
+pub enum Mode {
+    /// The panes.
+    Panes,
+    /// A page over the whole screen, scrolled down by some lines.
+    Page(Page, usize),
+    /// A menu over the panes.
+    Menu(Menu),
+    /// A question in the lowest row.
+    Asking(Asking),
+}
+
+/// What is to become of the program.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Wish {
+    /// Go on.
+    GoOn,
+    /// End.
+    Quit,
+    /// Give the terminal back for a while.
+    Suspend,
+}
+
+/// What the chart is set to.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct ChartSetting {
+    /// Which check.
+    pub check: Check,
+    /// The worst of all joints instead of the selected one.
+    pub every_joint: bool,
+    /// The whole cycle instead of the segment.
+    pub cycle: bool,
+}
+
+/// The app is everything that the screen shows and that keys can change.
+#[derive(Debug)]
+pub struct App {
+    /// The arm.
+    pub arm: Arc<Arm>,
+    /// What was taught.
+    pub recipe: Arc<Recipe>,
+    /// How things look.
+    pub theme: Theme,
+    /// The screen.
+    pub area: Rect,
+    /// The review; `None` until the first check is done.
+    pub session: Option<Session>,
+    /// How far a running check is.
+    pub progress: Option<Progress>,
+    /// What the screen is doing.
+    pub mode: Mode,
+    /// The pane that is worked in.
+    pub pane: Pane,
+    /// The selected joint.
+    pub joint: usize,
+    /// What the chart is set to.
+    pub chart: ChartSetting,
+    /// Lines that the explanation is scrolled down.
+    pub why_scroll: usize,
+    /// What was looked for last.
+    pub found: String,
+    /// A line for the person, until the next key.
+    pub message: Option<String>,
+    /// What is to become of the program.
+    pub wish: Wish,
+    /// What is drawn, computed from the rest.
+    pub scene: Scene,
+}
+
+impl App {
+    /// The screen before anything was checked.
+    pub fn new(arm: Arc<Arm>, recipe: Arc<Recipe>, theme: Theme, area: Rect) -> Self {
+        let progress = Some(Progress { done: 0, of: recipe.waypoints.len().saturating_sub(1) });
+        Self {
+            arm,
+            recipe,
+            theme,
+            area,
+            session: None,
+            progress,
+            mode: Mode::Panes,
+            pane: Pane::List,
+            joint: 0,
+            chart: ChartSetting { check: Check::Rate, every_joint: false, cycle: false },
+            why_scroll: 0,
+            found: String::new(),
+            message: None,
+            wish: Wish::GoOn,
+            scene: Scene::default(),
+        }
+    }
+
+    /// The judged recipe.
+    pub fn judged(&self) -> Option<&Judged> {
+        self.session.as_ref().map(Session::judged)
+    }
+
+    /// The segment that the cursor is on, counted from 0.
+    pub fn segment(&self) -> usize {
+        self.session.as_ref().map_or(0, |session| session.cursor().segment)
+    }
+
+    /// What the chart shows now.
+    pub fn subject(&self) -> Subject {
+        Subject {
+            check: self.chart.check,
+            joint: (!self.chart.every_joint && self.chart.check.is_per_joint()).then_some(self.joint),
+            segment: (!self.chart.cycle).then(|| self.segment()),
+        }
+    }
+}

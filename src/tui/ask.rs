@@ -1,0 +1,90 @@
+use super::action::Action;
+use super::app::{App, Asking, Mode, Question};
+use super::update::follow_finding;
+
+/// The question as it stands in the lowest row.
+pub fn prompt(question: Question) -> &'static str {
+    match question {
+        Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
+        Question::Find => "Find waypoint: ",
+    }
+}
+
+/// Handles a key while text is asked for.
+pub(super) fn answer(app: &mut App, action: &Action) {
+    let Mode::Asking(asking) = &mut app.mode else { return };
+    match action {
+        Action::Type(sign) if !sign.is_control() => asking.typed.push(*sign),
+        Action::Back => app.mode = Mode::Panes,
+        Action::Erase if asking.typed.is_empty() => app.mode = Mode::Panes,
+        Action::Erase => asking.typed.truncate(asking.typed.len() - asking.typed.chars().next_back().map_or(0, char::len_utf8)),
+        Action::Enter => {
+            let asking = asking.clone();
+            app.mode = Mode::Panes;
+            app.message = settle(app, &asking).err();
+        }
+        _ => {}
+    }
+}
+
+/// Goes where the answer says, or tells why not.
+fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
+    let typed = asking.typed.trim().to_owned();
+    match asking.question {
+        Question::GoTo => go_to(app, &typed),
+        Question::Find => {
+            let looked_for = if typed.is_empty() { app.found.clone() } else { typed };
+            find(app, &looked_for)
+        }
+    }
+}
+
+fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
+    if typed.is_empty() {
+        return Ok(());
+    }
+    let session = app.session.as_mut().ok_or("not checked yet")?;
+    // Some keyboards have a comma where others have a point.
+    if let Some(time) = typed.strip_suffix(['s', 'S']) {
+        let time: f64 = time.trim().replace(',', ".").parse().map_err(|_| format!("\"{typed}\" is not a time"))?;
+        if !time.is_finite() {
+            return Err(format!("\"{typed}\" is not a time"));
+        }
+        session.go_to_time(time);
+        return Ok(());
+    }
+    let count = session.segments() + 1;
+    match typed.parse::<usize>() {
+        Ok(1) => session.go_to_time(0.0),
+        Ok(number) if (2..=count).contains(&number) => {
+            session.go_to_segment(number - 2);
+            follow_finding(app);
+        }
+        Ok(number) => return Err(format!("there is no waypoint {number}; there are {count}")),
+        Err(_) => return Err(format!("\"{typed}\" is neither a waypoint's number nor a time such as 12.4s")),
+    }
+    Ok(())
+}
+
+/// The next waypoint after the cursor's whose name has the text in it, from the last on to the first.
+fn find(app: &mut App, text: &str) -> Result<(), String> {
+    if text.is_empty() {
+        return Ok(());
+    }
+    let session = app.session.as_mut().ok_or("not checked yet")?;
+    let wanted = text.to_lowercase();
+    let names = &app.recipe.waypoints;
+    let now = session.cursor().segment + 1;
+    let found =
+        (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));
+    app.found = text.to_owned();
+    match found {
+        Some(0) => session.go_to_time(0.0),
+        Some(index) => {
+            session.go_to_segment(index - 1);
+            follow_finding(app);
+        }
+        None => return Err(format!("no waypoint has \"{text}\" in its name")),
+    }
+    Ok(())
+}

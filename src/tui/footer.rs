@@ -1,0 +1,77 @@
+use ratatui::style::Style;
+use unicode_width::UnicodeWidthStr;
+
+use super::action::Action;
+use super::app::{App, Mode, Page};
+use super::ask;
+use super::keys::{BINDINGS, Binding, name};
+use super::sheet::{Sheet, fit};
+
+/// Draws the lowest row: a question, a message, or the keys.
+pub fn draw(sheet: &mut Sheet, app: &App) {
+    let theme = app.theme;
+    if let Mode::Asking(asking) = &app.mode {
+        let prompt = ask::prompt(asking.question);
+        let x = sheet.put(0, 0, prompt, theme.strong());
+        // The end of what is typed stays in view.
+        let room = sheet.width().saturating_sub(x + 1);
+        let skipped = asking.typed.chars().count().saturating_sub(room);
+        let shown: String = asking.typed.chars().skip(skipped).collect();
+        let x = sheet.put(x, 0, &shown, Style::new());
+        sheet.put(x, 0, " ", theme.selected());
+        return;
+    }
+    if let Some(message) = &app.message {
+        sheet.put(0, 0, &fit(message, sheet.width(), theme), theme.strong());
+        return;
+    }
+    let mut x = 0;
+    for (key, word) in hints(app, sheet.width()) {
+        x = sheet.put(x, 0, &key, theme.strong());
+        x = sheet.put(x, 0, &format!(" {word}"), Style::new()) + 2;
+    }
+}
+
+/// The keys that fit, with their words; those that lead to all others always.
+fn hints(app: &App, width: usize) -> Vec<(String, String)> {
+    let ascii = app.theme.ascii;
+    let told = |binding: &Binding| {
+        let key = match binding.action {
+            Action::Left => if ascii { "Left/Right" } else { "←→" }.to_owned(),
+            Action::Up => if ascii { "Up/Down" } else { "↑↓" }.to_owned(),
+            _ => name(binding.keys[0], ascii),
+        };
+        (key, binding.short.to_owned())
+    };
+    let wanted = |action: &Action| match (&app.mode, action) {
+        (_, Action::Help | Action::Quit) => true,
+        (Mode::Menu(_), action) => matches!(action, Action::Up | Action::Enter),
+        (Mode::Page(Page::Why, _), action) => matches!(action, Action::Up | Action::Worst | Action::NextFinding),
+        (Mode::Page(..), action) => matches!(action, Action::Up),
+        _ => true,
+    };
+    let mut hints: Vec<(bool, (String, String))> = BINDINGS
+        .iter()
+        .filter(|binding| !binding.short.is_empty() && wanted(&binding.action))
+        .map(|binding| (matches!(binding.action, Action::Enter | Action::Help | Action::Quit), told(binding)))
+        .collect();
+    if !matches!(app.mode, Mode::Panes) {
+        for (_, (key, word)) in &mut hints {
+            if word == "select" && matches!(app.mode, Mode::Page(..)) {
+                "scroll".clone_into(word);
+            }
+            if key == "Enter" {
+                "choose".clone_into(word);
+            }
+        }
+        hints.insert(0, (false, ("Esc".to_owned(), "back".to_owned())));
+    }
+    let total = |hints: &[(bool, (String, String))]| {
+        hints.iter().map(|(_, (key, word))| key.width() + word.width() + 3).sum::<usize>().saturating_sub(2)
+    };
+    while total(&hints) > width {
+        let Some(last) = hints.iter().rposition(|(kept, _)| !kept) else { break };
+        hints.remove(last);
+    }
+    hints.into_iter().map(|(_, hint)| hint).collect()
+}

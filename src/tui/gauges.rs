@@ -1,0 +1,147 @@
+use crate::arm::Joints;
+use crate::checks::{Check, Meter, Reading, Verdict};
+use crate::geometry::Pose;
+use crate::kinematics::Posture;
+use crate::motion::{Cursor, Follower, Instant, Segment, Side};
+use crate::review::Judged;
+use crate::units::{Measure, Room};
+
+/// A gauge is one quantity at one instant, with what it asks of its limit.
+#[derive(Debug, Clone, Copy)]
+pub struct Gauge {
+    /// Which check it belongs to.
+    pub check: Check,
+    /// Which joint, for checks that have one a joint.
+    pub joint: Option<usize>,
+    /// What is there.
+    pub value: Measure,
+    /// What it is told against, SI; infinite where there is no limit.
+    pub limit: f64,
+    /// What is left.
+    pub room: Room,
+    /// What must be left, as a fraction.
+    pub reserve: f64,
+    /// The verdict on this instant; clear where it is only shown.
+    pub verdict: Verdict,
+    /// Whether it is judged on this segment.
+    pub judged: bool,
+}
+
+/// A fraction that comes back from its time may differ by this much.
+const ROUNDING: f64 = 1e-9;
+
+/// A probe reads gauges along one segment.
+#[derive(Debug)]
+pub struct Probe<'a> {
+    segment: &'a Segment,
+    follower: Follower<'a>,
+    meter: Meter<'a>,
+}
+
+impl<'a> Probe<'a> {
+    /// A probe for a segment (counted from 0) of a judged recipe; `None` if there is no such segment.
+    pub fn of(judged: &'a Judged, segment: usize) -> Option<Self> {
+        let planned = judged.plan.segments.get(segment)?;
+        Some(Self {
+            segment: planned,
+            follower: Follower::of(&judged.arm, planned),
+            meter: Meter::of(&judged.arm, planned, &judged.recipe.acceptance, judged.plan.gravity),
+        })
+    }
+
+    /// The arm and what its joints do `time` seconds after the segment's start; `None` where it could not be followed.
+    pub fn read(&self, time: f64) -> Option<(Instant, Reading)> {
+        let (segment, lasts) = (self.segment, self.segment.duration());
+        let fraction = segment.law.at(time, Side::Before)[0];
+        if fraction > segment.followed_to() + ROUNDING {
+            return None;
+        }
+        let instant = self.follower.at(fraction.min(segment.followed_to()))?;
+        if time >= lasts + segment.dwell
+            && let Some(after) = &segment.carried_after
+        {
+            return Some((instant, self.meter.read_with(&instant, 0.0, 0.0, after)));
+        }
+        if time > lasts {
+            return Some((instant, self.meter.read(&instant, 0.0, 0.0)));
+        }
+        let [_, rate, accel] = segment.law.at(time, Side::Before);
+        let mut reading = self.meter.read(&instant, rate, accel);
+        // Where the speed law has a corner the side that asks more of the accelerations counts.
+        let [_, rate, accel_after] = segment.law.at(time, Side::After);
+        if accel_after != accel {
+            let other = self.meter.read(&instant, rate, accel_after);
+            for slot in self.meter.slots(Check::Accel) {
+                let channel = self.meter.channel(slot);
+                if channel.asked(other[slot]) > channel.asked(reading[slot]) {
+                    reading[slot] = other[slot];
+                }
+            }
+        }
+        Some((instant, reading))
+    }
+
+    /// The gauges of one check in a reading.
+    pub fn gauges(&self, reading: &Reading, check: Check) -> impl Iterator<Item = Gauge> {
+        self.meter.slots(check).map(move |slot| {
+            let (channel, value) = (self.meter.channel(slot), reading[slot]);
+            let verdict = if channel.judged { channel.verdict(channel.asked(value)) } else { Verdict::Clear };
+            Gauge {
+                check,
+                joint: channel.joint,
+                value: Measure::si(value, channel.of),
+                limit: channel.limit(value),
+                room: channel.room(value),
+                reserve: channel.reserve,
+                verdict,
+                judged: channel.judged,
+            }
+        })
+    }
+}
+
+/// Gauges are the arm and all its quantities at the cursor.
+#[derive(Debug, Clone)]
+pub struct Gauges {
+    /// Fraction of the segment's path.
+    pub fraction: f64,
+    /// Joint values.
+    pub q: Joints,
+    /// The arm.
+    pub posture: Posture,
+    /// The TCP, base.
+    pub tcp: Pose,
+    /// Mass of the load in the tool, kg.
+    pub load: f64,
+    /// All quantities; empty where the path could not be followed, and then the arm stands where it was lost.
+    pub all: Vec<Gauge>,
+}
+
+impl Gauges {
+    /// The gauges at a cursor; `None` for a recipe without segments.
+    pub fn at(judged: &Judged, cursor: Cursor) -> Option<Self> {
+        let probe = Probe::of(judged, cursor.segment)?;
+        let segment = probe.segment;
+        let gone = segment.carried_after.as_ref().filter(|_| cursor.time >= segment.duration() + segment.dwell);
+        let load = gone.unwrap_or(&segment.carried).load_mass;
+        if let Some((instant, reading)) = probe.read(cursor.time) {
+            let all = Check::ALL.into_iter().flat_map(|check| probe.gauges(&reading, check).collect::<Vec<_>>()).collect();
+            return Some(Self { fraction: instant.u, q: instant.q, posture: instant.posture, tcp: instant.tcp, load, all });
+        }
+        let q = segment.track.lost.map_or(segment.start, |lost| lost.q);
+        let posture = Posture::at(judged.arm.chain(), &q);
+        let tcp = posture.tcp(&segment.carried.tcp);
+        Some(Self { fraction: segment.followed_to(), q, posture, tcp, load, all: Vec::new() })
+    }
+
+    /// One quantity.
+    pub fn get(&self, check: Check, joint: Option<usize>) -> Option<&Gauge> {
+        self.all.iter().find(|gauge| gauge.check == check && gauge.joint == joint)
+    }
+
+    /// The gauge of a check that has the least room beyond its reserve.
+    pub fn worst(&self, check: Check) -> Option<&Gauge> {
+        let spare = |gauge: &Gauge| gauge.room.as_fraction() - gauge.reserve;
+        self.all.iter().filter(|gauge| gauge.check == check).min_by(|a, b| spare(a).total_cmp(&spare(b)))
+    }
+}

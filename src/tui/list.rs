@@ -1,0 +1,148 @@
+use ratatui::style::Style;
+
+use crate::review::Judged;
+
+use super::app::{App, Pane};
+use super::phrases::{events, how, nearest};
+use super::rows::{Row, doubt_words};
+use super::sheet::{Sheet, fit};
+
+/// Where the list's columns begin.
+#[derive(Debug, Clone, Copy)]
+struct Columns {
+    number: usize,
+    name: usize,
+    how: usize,
+    verdict: usize,
+    nearest: usize,
+    end: usize,
+    brief_how: bool,
+    brief_nearest: bool,
+}
+
+/// "J4 holding asks 154 %" and the like fit into this, beside the joint's name.
+const NEAREST: usize = 19;
+/// The same without "asks".
+const NEAREST_BRIEF: usize = 11;
+/// The longest word for a kind of segment.
+const KIND: usize = 5;
+
+impl Columns {
+    fn of(app: &App, width: usize) -> Self {
+        let rows = &app.scene.rows;
+        let digits = app.recipe.waypoints.len().to_string().len();
+        let fixed = 2 + digits + 1 + 1 + 1 + rows.verdict + 2;
+        let left = width.saturating_sub(fixed);
+        let joint = app.arm.joints().iter().map(|joint| joint.name.chars().count()).max().unwrap_or(0);
+        let (long, short) = (joint + NEAREST, joint + NEAREST_BRIEF);
+        let (mut brief_how, mut brief_nearest, mut name) = (false, false, rows.name.clamp(8, 28));
+        let how_wide = rows.how.max(KIND);
+        if name + how_wide + long > left {
+            brief_nearest = true;
+        }
+        if name + how_wide + short > left {
+            brief_how = true;
+        }
+        // The narrowest list leaves out how a waypoint is arrived at.
+        let how = match brief_how {
+            true if name + KIND + short > left + 2 => 0,
+            true => KIND,
+            false => how_wide,
+        };
+        name = name.min(left.saturating_sub(how + short)).max(8);
+        let at_name = 2 + digits + 1;
+        let at_how = at_name + name + 1;
+        let at_verdict = at_how + how + usize::from(how > 0);
+        Self {
+            number: 2 + digits,
+            name: at_name,
+            how: at_how,
+            verdict: at_verdict,
+            nearest: at_verdict + rows.verdict + 1,
+            end: width,
+            brief_how,
+            brief_nearest,
+        }
+    }
+}
+
+/// Draws waypoints and segments: a row for each segment with the waypoint that it arrives at, and below it what happens there.
+pub fn draw(sheet: &mut Sheet, app: &App) {
+    let theme = app.theme;
+    let columns = Columns::of(app, sheet.width());
+    let focused = app.pane == Pane::List;
+    let title_end = sheet.rule(0, Pane::List.name(), focused);
+    for (x, word) in [
+        (columns.how, "how"),
+        (columns.verdict, "is"),
+        (columns.nearest, if columns.brief_nearest { "nearest" } else { "nearest to its limit" }),
+    ] {
+        let shown = x != columns.how || columns.how < columns.verdict;
+        if shown && x > title_end && x + word.len() < sheet.width() {
+            sheet.put(x - 1, 0, &format!(" {word} "), Style::new());
+        }
+    }
+    let height = sheet.height().saturating_sub(1);
+    let (_, rows) = app.scene.rows.around(app.segment(), height);
+    for (y, row) in rows.iter().enumerate() {
+        let y = y + 1;
+        match row {
+            Row::Start => {
+                sheet.put_before(columns.number, y, "1", Style::new());
+                let name = fit(&app.recipe.waypoints[0].name, columns.how - columns.name - 1, theme);
+                sheet.put(columns.name, y, &name, Style::new());
+                if columns.how < columns.verdict {
+                    sheet.put(columns.how, y, "start", Style::new());
+                }
+            }
+            Row::Segment(segment) => draw_segment(sheet, app, *segment, y, columns),
+            Row::Events(waypoint) => {
+                let told = events(&app.recipe, *waypoint).join(", ");
+                note(sheet, app, columns, y, &told);
+            }
+            Row::Doubt(doubt) => {
+                let told = app.judged().map_or_else(String::new, |judged| doubt_words(judged, *doubt));
+                note(sheet, app, columns, y, &format!("doubt: {told}"));
+            }
+        }
+    }
+}
+
+fn note(sheet: &mut Sheet, app: &App, columns: Columns, y: usize, told: &str) {
+    let theme = app.theme;
+    let x = sheet.put(columns.name, y, theme.pick("└ ", "` "), Style::new());
+    let told = fit(told, columns.end.saturating_sub(x), theme);
+    sheet.put(x, y, &told, Style::new());
+}
+
+fn draw_segment(sheet: &mut Sheet, app: &App, segment: usize, y: usize, columns: Columns) {
+    let theme = app.theme;
+    let waypoint = segment + 1;
+    let selected = app.session.is_some() && segment == app.segment();
+    let plain = if selected { theme.strong() } else { Style::new() };
+    sheet.put_before(columns.number, y, &(waypoint + 1).to_string(), plain);
+    let name = fit(&app.recipe.waypoints[waypoint].name, columns.how - columns.name - 1, theme);
+    sheet.put(columns.name, y, &name, plain);
+    let asked = how(&app.recipe, waypoint);
+    let asked = if columns.brief_how { asked.split(' ').next().unwrap_or("").to_owned() } else { asked };
+    if columns.how < columns.verdict {
+        sheet.put(columns.how, y, &asked, plain);
+    }
+    if selected {
+        sheet.put(0, y, theme.here(), theme.strong());
+        let style = if app.pane == Pane::List { theme.selected() } else { theme.strong() };
+        sheet.tint(1, y, columns.verdict.saturating_sub(2), style);
+    }
+    if let Some(judged) = app.judged() {
+        draw_verdict(sheet, judged, segment, y, columns, plain);
+    }
+}
+
+fn draw_verdict(sheet: &mut Sheet, judged: &Judged, segment: usize, y: usize, columns: Columns, plain: Style) {
+    let Some(survey) = judged.survey.segments.get(segment) else { return };
+    let theme = sheet.theme();
+    sheet.put(columns.verdict, y, survey.verdict.word(), theme.verdict(survey.verdict));
+    let told = nearest(judged, survey, columns.brief_nearest);
+    let told = fit(&told, columns.end.saturating_sub(columns.nearest), theme);
+    sheet.put(columns.nearest, y, &told, plain);
+}

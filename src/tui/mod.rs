@@ -1,0 +1,80 @@
+//! The screen. A key becomes an [`Action`], [`update`] changes the [`App`], [`draw`] shows it; only [`run`] knows threads and the
+//! terminal.
+
+mod action;
+mod app;
+mod arm;
+mod ask;
+mod bands;
+mod chart;
+mod click;
+mod curve;
+mod footer;
+mod gauges;
+mod headline;
+mod help;
+mod joints;
+mod keys;
+mod layout;
+mod list;
+mod menu;
+mod not_checked;
+mod options;
+mod page;
+mod phrases;
+mod raster;
+mod ribbon;
+mod rows;
+mod run;
+mod scene;
+mod sheet;
+mod sketch;
+mod theme;
+mod update;
+mod why;
+
+use ratatui::buffer::Buffer;
+use ratatui::layout::Rect;
+
+pub use action::Action;
+pub use app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
+pub use keys::{BINDINGS, Binding, action_of};
+pub use options::Options;
+pub use run::{Screen, Started, restore, run};
+pub use theme::Theme;
+pub use update::update;
+
+use sheet::Sheet;
+
+/// Draws the app into an area of a buffer. Nothing is computed here that could be known before.
+pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
+    let theme = app.theme;
+    let layout = update::layout_in(app, area);
+    headline::draw(&mut Sheet::new(buffer, layout.headline, theme), app);
+    footer::draw(&mut Sheet::new(buffer, layout.footer, theme), app);
+    if let Mode::Page(page, scroll) = app.mode {
+        let height = area.height - layout.headline.height - layout.footer.height;
+        let whole = Rect { y: layout.headline.bottom(), height, ..area };
+        page::draw(&mut Sheet::new(buffer, whole, theme), app, page, scroll);
+        return;
+    }
+    let mut pane = |area: Rect, draw: fn(&mut Sheet, &App)| {
+        if !area.is_empty() {
+            draw(&mut Sheet::new(buffer, area, theme), app);
+        }
+    };
+    pane(layout.ribbon, ribbon::draw);
+    pane(layout.list, list::draw);
+    pane(layout.why, why::draw);
+    pane(layout.joints, joints::draw);
+    pane(layout.chart, chart::draw);
+    pane(layout.arm, arm::draw);
+    pane(layout.post, |sheet, app| {
+        for y in 0..sheet.height() {
+            sheet.put(0, y, app.theme.post(), ratatui::style::Style::new());
+        }
+    });
+    if let Mode::Menu(menu) = &app.mode {
+        menu::draw(&mut Sheet::new(buffer, area, theme), menu);
+    }
+}

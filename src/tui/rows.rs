@@ -1,0 +1,98 @@
+use unicode_width::UnicodeWidthStr;
+
+use crate::checks::{Doubt, Verdict};
+use crate::program::Recipe;
+use crate::review::{Judged, doubt_text};
+
+use super::phrases::{events, how};
+
+/// A row of the list.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Row {
+    /// The waypoint that the program starts from.
+    Start,
+    /// The segment of that number, counted from 0, with the waypoint that it arrives at.
+    Segment(usize),
+    /// What happens at a waypoint, counted from 0.
+    Events(usize),
+    /// A doubt about a waypoint, by its place among all doubts.
+    Doubt(usize),
+}
+
+/// The list's rows in order, and how wide its columns must be.
+#[derive(Debug, Clone, Default)]
+pub struct Rows {
+    rows: Vec<Row>,
+    of_segment: Vec<usize>,
+    /// Width of the longest name of a waypoint.
+    pub name: usize,
+    /// Width of the longest text on how a waypoint is arrived at.
+    pub how: usize,
+    /// Width of the longest verdict.
+    pub verdict: usize,
+}
+
+impl Rows {
+    /// The rows of a recipe, with doubts and verdicts once it is judged.
+    pub fn of(recipe: &Recipe, judged: Option<&Judged>) -> Self {
+        let mut list = Self { verdict: Verdict::Clear.word().len(), ..Self::default() };
+        let doubts = judged.map_or(&[][..], |judged| &judged.survey.doubts);
+        let mut by_waypoint: Vec<(usize, usize)> =
+            doubts.iter().enumerate().map(|(index, doubt)| (waypoint_of(doubt), index)).collect();
+        by_waypoint.sort_unstable();
+        let mut doubted = by_waypoint.into_iter().peekable();
+        for (index, waypoint) in recipe.waypoints.iter().enumerate() {
+            if index == 0 {
+                list.rows.push(Row::Start);
+            } else {
+                list.of_segment.push(list.rows.len());
+                list.rows.push(Row::Segment(index - 1));
+            }
+            if !events(recipe, index).is_empty() {
+                list.rows.push(Row::Events(index));
+            }
+            while let Some((_, doubt)) = doubted.next_if(|(at, _)| *at <= index) {
+                list.rows.push(Row::Doubt(doubt));
+            }
+            list.name = list.name.max(waypoint.name.width());
+            list.how = list.how.max(how(recipe, index).width());
+        }
+        if let Some(judged) = judged {
+            list.verdict = judged.survey.segments.iter().map(|survey| survey.verdict.word().len()).fold(list.verdict, usize::max);
+        }
+        list
+    }
+
+    /// Whether there are none.
+    pub fn is_empty(&self) -> bool {
+        self.rows.is_empty()
+    }
+
+    /// How many there are.
+    pub fn len(&self) -> usize {
+        self.rows.len()
+    }
+
+    /// The rows that stand in a list of `height` rows, so that a segment is among them, and the first one's place.
+    pub fn around(&self, segment: usize, height: usize) -> (usize, &[Row]) {
+        let row = self.of_segment.get(segment).copied().unwrap_or(0);
+        let first = row.saturating_sub(height / 2).min(self.rows.len().saturating_sub(height));
+        (first, &self.rows[first..(first + height).min(self.rows.len())])
+    }
+}
+
+fn waypoint_of(doubt: &Doubt) -> usize {
+    match doubt {
+        Doubt::Shown { waypoint, .. }
+        | Doubt::TakenTwice { waypoint }
+        | Doubt::NothingToRelease { waypoint }
+        | Doubt::NoMotion { waypoint }
+        | Doubt::OverRatedLoad { waypoint, .. } => *waypoint,
+        Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } => 0,
+    }
+}
+
+/// A doubt in words.
+pub fn doubt_words(judged: &Judged, doubt: usize) -> String {
+    judged.survey.doubts.get(doubt).map_or_else(String::new, |doubt| doubt_text(judged, doubt))
+}

@@ -1,0 +1,173 @@
+//! The only place that knows threads, the terminal and its signals.
+
+mod news;
+mod screen;
+
+use std::sync::Arc;
+use std::time::Duration;
+
+use anyhow::Context;
+use crossbeam_channel::{Receiver, never, select};
+use ratatui::crossterm::event::{Event, KeyEventKind, MouseButton, MouseEventKind};
+use ratatui::layout::Rect;
+
+use crate::arm::Arm;
+use crate::program::Recipe;
+use crate::review::{Recheck, Reply};
+
+use crate::tui::action::Action;
+use crate::tui::app::{App, Wish};
+use crate::tui::keys::action_of;
+use crate::tui::options::Options;
+use crate::tui::update::update;
+
+use news::{News, listen};
+
+pub use screen::{Screen, restore};
+
+/// What the screen is started with.
+#[derive(Debug, Clone)]
+pub struct Started {
+    /// The arm.
+    pub arm: Arc<Arm>,
+    /// What was taught.
+    pub recipe: Arc<Recipe>,
+    /// Where the recipe came from.
+    pub recipe_path: String,
+    /// Where the arm came from.
+    pub arm_path: String,
+}
+
+/// A running check is looked at this often: four times a second.
+const LOOK: Duration = Duration::from_millis(250);
+
+/// Runs the review screen until somebody quits or a signal ends it.
+///
+/// # Errors
+/// Where there is no terminal, it is gone, or the check came to an unexpected end.
+pub fn run(started: Started, options: Options) -> anyhow::Result<()> {
+    let ended = watched(started, options)?;
+    if let Some(signal) = ended {
+        end_by(signal)?;
+    }
+    Ok(())
+}
+
+/// Runs the screen; tells the signal that ended it, if one did. The terminal is given back when this returns.
+fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
+    let mut screen = Screen::take(options.mouse)?;
+    let news = listen().context("can't listen to the terminal")?;
+    let (width, height) = screen.size()?;
+    let mut app = App::new(started.arm, started.recipe, options.theme(), Rect::new(0, 0, width, height));
+    let mut recheck = Recheck::start().context("can't start the check")?;
+    recheck.submit(&app.arm, &app.recipe, None);
+    // A small recipe is done before anybody could read that it is being checked.
+    let mut waited = recheck.replies().recv_timeout(FIRST).ok();
+    loop {
+        if let Some(reply) = waited.take() {
+            accept(&mut app, &mut recheck, reply);
+        }
+        screen.show(&app)?;
+        match wait(&mut app, &mut recheck, &news)? {
+            Turn::Draw => {}
+            Turn::Quit => return Ok(None),
+            Turn::End(signal) => return Ok(Some(signal)),
+            Turn::Suspend => suspend(&mut screen, &mut app)?,
+        }
+    }
+}
+
+/// The first frame waits this long for the check.
+const FIRST: Duration = Duration::from_millis(50);
+
+/// What is to be done next.
+#[derive(Debug, PartialEq, Eq)]
+enum Turn {
+    Draw,
+    Quit,
+    End(i32),
+    Suspend,
+}
+
+/// Waits for something to happen, then takes all that waits, so that many keys make one frame.
+fn wait(app: &mut App, recheck: &mut Recheck, news: &Receiver<News>) -> anyhow::Result<Turn> {
+    let timer = if app.progress.is_some() { crossbeam_channel::after(LOOK) } else { never() };
+    let replies = recheck.replies().clone();
+    select! {
+        recv(news) -> told => {
+            let mut told = Some(told.context("the terminal can't be listened to any more")?);
+            while let Some(one) = told {
+                let turn = hear(app, &one)?;
+                if turn != Turn::Draw {
+                    return Ok(turn);
+                }
+                told = news.try_recv().ok();
+            }
+        }
+        recv(replies) -> reply => accept(app, recheck, reply.context("the check came to an unexpected end")?),
+        recv(timer) -> _ => {
+            if let Some(progress) = recheck.progress() {
+                update(app, Action::Checking(progress));
+            }
+        }
+    }
+    Ok(Turn::Draw)
+}
+
+fn accept(app: &mut App, recheck: &mut Recheck, reply: Reply) {
+    if let Some(judged) = recheck.accept(reply) {
+        update(app, Action::Judged(Box::new(judged)));
+    }
+}
+
+fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
+    let action = match news {
+        News::End(signal) => return Ok(Turn::End(*signal)),
+        News::Suspend => return Ok(Turn::Suspend),
+        News::Gone => anyhow::bail!("the terminal is gone"),
+        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(*key, &app.mode),
+        News::Terminal(Event::Resize(width, height)) => Some(Action::Resize(*width, *height)),
+        News::Terminal(Event::Mouse(mouse)) => match mouse.kind {
+            MouseEventKind::Down(MouseButton::Left) => Some(Action::Click(mouse.column, mouse.row)),
+            MouseEventKind::ScrollUp => Some(Action::Up),
+            MouseEventKind::ScrollDown => Some(Action::Down),
+            _ => None,
+        },
+        News::Terminal(_) => None,
+    };
+    if let Some(action) = action {
+        update(app, action);
+    }
+    Ok(match std::mem::replace(&mut app.wish, Wish::GoOn) {
+        Wish::GoOn => Turn::Draw,
+        Wish::Quit => Turn::Quit,
+        Wish::Suspend => Turn::Suspend,
+    })
+}
+
+/// Lets the shell have the terminal until it sends this program on.
+#[cfg(unix)]
+fn suspend(screen: &mut Screen, app: &mut App) -> anyhow::Result<()> {
+    restore();
+    signal_hook::low_level::emulate_default_handler(signal_hook::consts::SIGTSTP)?;
+    screen.enter()?;
+    let (width, height) = screen.size()?;
+    update(app, Action::Resize(width, height));
+    Ok(())
+}
+
+#[cfg(not(unix))]
+fn suspend(_: &mut Screen, _: &mut App) -> anyhow::Result<()> {
+    Ok(())
+}
+
+/// Ends as the signal would have ended the program, so that whoever sent it sees so.
+#[cfg(unix)]
+fn end_by(signal: i32) -> anyhow::Result<()> {
+    Ok(signal_hook::low_level::emulate_default_handler(signal)?)
+}
+
+#[cfg(not(unix))]
+fn end_by(_: i32) -> anyhow::Result<()> {
+    Ok(())
+}

@@ -1,0 +1,83 @@
+use std::sync::Arc;
+
+use crate::checks::{Survey, Verdict};
+use crate::motion::Cursor;
+use crate::review::{Explanation, explain, headline, no_finding, not_checked};
+
+use super::app::App;
+use super::bands::Bands;
+use super::curve::{Curve, Subject};
+use super::gauges::Gauges;
+use super::layout::Layout;
+use super::rows::Rows;
+use super::sketch::Sketch;
+
+/// A scene is what the panes draw, kept until what it was computed from changes. Drawing itself computes nothing.
+#[derive(Debug, Default)]
+pub struct Scene {
+    /// One sentence on the whole, and the worst verdict.
+    pub headline: Option<(String, Verdict)>,
+    /// Rows of the list.
+    pub rows: Rows,
+    /// Cells of the ribbon.
+    pub bands: Bands,
+    /// The path of the TCP.
+    pub sketch: Sketch,
+    /// The arm at the cursor.
+    pub gauges: Option<Gauges>,
+    /// The chart's curve.
+    pub curve: Curve,
+    /// The explanation of what is selected.
+    pub why: Option<Explanation>,
+    /// What was not checked.
+    pub not_checked: Vec<String>,
+    survey: Option<Arc<Survey>>,
+    width: Option<usize>,
+    cursor: Option<Cursor>,
+    subject: Option<Subject>,
+    told: Option<(usize, Option<usize>)>,
+}
+
+/// Brings the scene up to what the app shows.
+pub fn refresh(app: &mut App) {
+    if app.scene.rows.is_empty() {
+        app.scene.rows = Rows::of(&app.recipe, None);
+    }
+    let Some(session) = &app.session else { return };
+    let judged = session.judged();
+    let subject = app.subject();
+    let scene = &mut app.scene;
+    if scene.survey.as_ref().is_none_or(|known| !Arc::ptr_eq(known, &judged.survey)) {
+        *scene = Scene {
+            headline: Some((headline(judged), judged.survey.verdict())),
+            rows: Rows::of(&app.recipe, Some(judged)),
+            sketch: Sketch::of(judged),
+            not_checked: not_checked(judged),
+            survey: Some(Arc::clone(&judged.survey)),
+            ..Scene::default()
+        };
+    }
+    let width = Layout::ribbon_cells(app.area);
+    if scene.width != Some(width) {
+        scene.bands = Bands::of(judged, width);
+        scene.width = Some(width);
+    }
+    if scene.cursor != Some(session.cursor()) {
+        scene.gauges = Gauges::at(judged, session.cursor());
+        scene.cursor = Some(session.cursor());
+    }
+    if scene.subject != Some(subject) {
+        scene.curve = Curve::of(judged, subject);
+        scene.subject = Some(subject);
+    }
+    let told = (session.cursor().segment, session.finding_number());
+    if scene.told != Some(told) {
+        scene.why = match session.finding() {
+            Some(finding) => Some(explain(judged, finding)),
+            None if told.0 < session.segments() => Some(no_finding(judged, told.0)),
+            None => None,
+        };
+        scene.told = Some(told);
+        app.why_scroll = 0;
+    }
+}

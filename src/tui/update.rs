@@ -1,0 +1,232 @@
+use ratatui::layout::Rect;
+
+use crate::checks::Check;
+use crate::review::Session;
+
+use super::action::Action;
+use super::app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
+use super::ask;
+use super::keys::BINDINGS;
+use super::layout::{Layout, Wants};
+use super::phrases::check_word;
+use super::scene::refresh;
+use super::{click, page};
+
+/// Changes the app by an action. The only place where it changes.
+pub fn update(app: &mut App, action: Action) {
+    match action {
+        Action::Resize(width, height) => {
+            app.area.width = width;
+            app.area.height = height;
+        }
+        Action::Checking(progress) => app.progress = Some(progress),
+        Action::Judged(judged) => {
+            app.progress = None;
+            match &mut app.session {
+                Some(session) => session.renew(*judged),
+                None => {
+                    app.session = Some(Session::open(*judged));
+                    follow_finding(app);
+                }
+            }
+        }
+        asked => {
+            app.message = None;
+            by_mode(app, asked);
+        }
+    }
+    refresh(app);
+    page::hold_scroll(app);
+}
+
+fn by_mode(app: &mut App, action: Action) {
+    match (&mut app.mode, action) {
+        (_, Action::Quit) => app.wish = Wish::Quit,
+        (_, Action::Suspend) => app.wish = Wish::Suspend,
+        (Mode::Asking(_), action) => ask::answer(app, &action),
+        (Mode::Menu(menu), Action::Up) => menu.chosen = menu.chosen.checked_sub(1).unwrap_or(menu.items.len() - 1),
+        (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
+        (Mode::Menu(menu), Action::Enter) => {
+            let action = menu.items.get(menu.chosen).map(|item| item.action.clone());
+            app.mode = Mode::Panes;
+            if let Some(action) = action {
+                by_mode(app, action);
+            }
+        }
+        (Mode::Page(_, scroll), Action::Up) => *scroll = scroll.saturating_sub(1),
+        (Mode::Page(_, scroll), Action::Down) => *scroll += 1,
+        (Mode::Page(_, scroll), Action::LeapBack) => *scroll = scroll.saturating_sub(10),
+        (Mode::Page(_, scroll), Action::LeapOn) => *scroll += 10,
+        (Mode::Page(_, scroll), Action::ToStart) => *scroll = 0,
+        (Mode::Page(_, scroll), Action::ToEnd) => *scroll = usize::MAX / 2,
+        (Mode::Page(..) | Mode::Menu(_), Action::Back) => app.mode = Mode::Panes,
+        (Mode::Page(Page::Why, _), Action::ReadWhy)
+        | (Mode::Page(Page::Help, _), Action::Help)
+        | (Mode::Page(Page::NotChecked, _), Action::NotChecked)
+        | (Mode::Page(..), Action::Enter) => app.mode = Mode::Panes,
+        // The explanation follows from finding to finding.
+        (Mode::Page(Page::Why, _), action @ (Action::Worst | Action::NextFinding | Action::PreviousFinding)) => {
+            in_panes(app, &action);
+            app.mode = Mode::Page(Page::Why, 0);
+        }
+        (Mode::Page(..) | Mode::Menu(_), Action::Left | Action::Right | Action::Click(..)) => {}
+        (_, action) => {
+            app.mode = Mode::Panes;
+            in_panes(app, &action);
+        }
+    }
+}
+
+fn in_panes(app: &mut App, action: &Action) {
+    match action {
+        Action::Up => by_rows(app, -1),
+        Action::Down => by_rows(app, 1),
+        Action::Left => step(app, -1),
+        Action::Right => step(app, 1),
+        Action::LeapBack => step(app, -10),
+        Action::LeapOn => step(app, 10),
+        Action::ToStart => to_end(app, false),
+        Action::ToEnd => to_end(app, true),
+        Action::NextPane => app.pane = app.pane.next(),
+        Action::Back => app.pane = Pane::List,
+        Action::Enter => app.mode = Mode::Menu(actions(app)),
+        Action::Worst => find(app, Session::go_to_worst),
+        Action::NextFinding => find(app, Session::go_to_next_finding),
+        Action::PreviousFinding => find(app, Session::go_to_previous_finding),
+        Action::ReadWhy => app.mode = Mode::Page(Page::Why, 0),
+        Action::NotChecked => app.mode = Mode::Page(Page::NotChecked, 0),
+        Action::Help => app.mode = Mode::Page(Page::Help, 0),
+        Action::GoTo => app.mode = Mode::Asking(Asking { question: Question::GoTo, typed: String::new() }),
+        Action::Find => app.mode = Mode::Asking(Asking { question: Question::Find, typed: String::new() }),
+        Action::Span => app.chart.cycle = !app.chart.cycle,
+        Action::EveryJoint => app.chart.every_joint = !app.chart.every_joint,
+        Action::Show(check) => app.chart.check = *check,
+        Action::NextQuantity => turn_quantity(app, 1),
+        Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
+        Action::Click(column, row) => click::click(app, *column, *row),
+        _ => {}
+    }
+}
+
+fn step(app: &mut App, steps: isize) {
+    if let Some(session) = &mut app.session {
+        session.step(steps);
+    }
+}
+
+fn to_end(app: &mut App, last: bool) {
+    let cycle = app.chart.cycle;
+    if let Some(session) = &mut app.session {
+        let time = if last { f64::INFINITY } else { 0.0 };
+        if cycle { session.go_to_time(time) } else { session.go_to_time_in_segment(time) }
+    }
+}
+
+fn by_rows(app: &mut App, rows: isize) {
+    match app.pane {
+        Pane::List => {
+            if let Some(session) = &mut app.session {
+                session.go_by_segments(rows);
+            }
+            follow_finding(app);
+        }
+        Pane::Why => app.why_scroll = app.why_scroll.saturating_add_signed(rows),
+        Pane::Joints => app.joint = app.joint.saturating_add_signed(rows).min(app.arm.len() - 1),
+        Pane::Chart => turn_quantity(app, rows),
+    }
+}
+
+fn turn_quantity(app: &mut App, by: isize) {
+    // Reach has no quantity.
+    let shown = &Check::ALL[1..];
+    let now = shown.iter().position(|check| *check == app.chart.check).unwrap_or(0) as isize;
+    app.chart.check = shown[(now + by).rem_euclid(shown.len() as isize) as usize];
+}
+
+fn find(app: &mut App, go: impl Fn(&mut Session) -> bool) {
+    let Some(session) = &mut app.session else { return };
+    if go(session) {
+        follow_finding(app);
+    } else {
+        app.message = Some("no findings".to_owned());
+    }
+}
+
+/// The joint and the chart show what the finding is about; without one, what is nearest to its reserve.
+pub(super) fn follow_finding(app: &mut App) {
+    let Some(session) = &app.session else { return };
+    let nearest = session.judged().survey.segments.get(session.cursor().segment).and_then(|survey| survey.nearest());
+    let (check, joint) = match session.finding() {
+        Some(finding) => (finding.check, finding.joint),
+        None => nearest.map_or((app.chart.check, None), |(result, peak)| (result.check, peak.joint)),
+    };
+    // Reach has no quantity; what loses a path is closeness.
+    app.chart.check = if check == Check::Reach { Check::Singular } else { check };
+    app.joint = joint.unwrap_or(app.joint);
+}
+
+/// The actions for what is selected: those of the pane first, quitting last.
+fn actions(app: &App) -> Menu {
+    let choose = Item { name: "chart: choose quantity".to_owned(), key: String::new(), action: Action::ChooseQuantity };
+    let mut items: Vec<Item> =
+        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, app.theme)).collect();
+    items.push(choose);
+    let charting = matches!(app.pane, Pane::Chart | Pane::Joints);
+    items.sort_by_key(|item| match item.action {
+        Action::ReadWhy => 1,
+        Action::ChooseQuantity | Action::Span | Action::EveryJoint => {
+            if charting {
+                0
+            } else {
+                3
+            }
+        }
+        Action::Help => 4,
+        Action::Quit => 5,
+        _ => 2,
+    });
+    let number = app.judged().and_then(|judged| judged.plan.segments.get(app.segment())).map(|segment| segment.number());
+    let title = number.map_or_else(|| "Actions".to_owned(), |number| format!("Segment {number}"));
+    Menu { title, items, chosen: 0 }
+}
+
+/// Whether an action stands in the menu; the others are what arrows, Enter and Backspace do anyway.
+fn is_named(action: &Action) -> bool {
+    matches!(
+        action,
+        Action::NextPane
+            | Action::Worst
+            | Action::NextFinding
+            | Action::PreviousFinding
+            | Action::ReadWhy
+            | Action::NotChecked
+            | Action::GoTo
+            | Action::Find
+            | Action::Span
+            | Action::EveryJoint
+            | Action::Help
+            | Action::Quit
+    )
+}
+
+fn quantities(app: &App) -> Menu {
+    let checks = &Check::ALL[1..];
+    let item = |check: &Check| Item { name: check_word(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
+    Menu {
+        title: "The chart shows".to_owned(),
+        items: checks.iter().map(item).collect(),
+        chosen: checks.iter().position(|check| *check == app.chart.check).unwrap_or(0),
+    }
+}
+
+/// The layout of the screen as it is now.
+pub(super) fn layout(app: &App) -> Layout {
+    layout_in(app, app.area)
+}
+
+/// The layout that the app has in an area.
+pub(super) fn layout_in(app: &App, area: Rect) -> Layout {
+    let bands = &app.scene.bands;
+    let wants = Wants { joints: app.arm.len(), bands: bands.rows.len(), flagged: bands.flagged(), rows: app.scene.rows.len() };
+    Layout::of(area, app.pane, wants)
+}
