@@ -89,6 +89,7 @@ fn a_straight_wrist_comes_to_an_end() {
     let q = Joints::from_slice(&[0.3, 0.4, 0.9, 0.5, 0.0, -0.2]);
     let target = *Posture::at(six.chain(), &q).flange();
     let branches = every_branch(&six, &Pose::identity(), &target, &q);
-    assert!((8..400).contains(&branches.found.len()), "{}", branches.found.len());
+    // The straight one as it stands, and three other postures of the first joints, each with its wrist either way.
+    assert!((7..400).contains(&branches.found.len()), "{}", branches.found.len());
     assert!(branches.found[0].iter().zip(q.iter()).all(|(a, b)| near(*a, *b, 1e-12)));
 }

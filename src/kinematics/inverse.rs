@@ -93,7 +93,8 @@ pub fn every_branch(arm: &Arm, tcp: &Pose, target: &Pose, near: &Joints) -> Bran
     if let Some(wrist) = super::spherical_wrist(arm.chain()) {
         let last = target.then(&tcp.inverse()).then(&arm.chain().flange.inverse());
         let closed = wrist_branches(arm.chain(), wrist, &last, near).unwrap_or_default();
-        for q in closed.into_iter().filter_map(|seed| descend(arm, tcp, target, seed).ok()) {
+        // A posture that reaches the pose already stays as it is.
+        for q in std::iter::once(*near).chain(closed).filter_map(|seed| descend(arm, tcp, target, seed).ok()) {
             branches.keep(arm, near, q);
         }
         if !branches.found.is_empty() {

@@ -11,6 +11,8 @@ use super::SphericalWrist;
 const ONE_EQUATION: f64 = 1e-9;
 /// A pair of complex roots this close to the real line may be one double root.
 const NEARLY_REAL: f64 = 1e-4;
+/// Sine between the outer wrist axes below which they count as in line. Their angle comes from a cosine, so half the digits are lost.
+const IN_LINE: f64 = 1e-6;
 /// A cosine may exceed 1 by this much and still mean an arm that is just stretched.
 const JUST_BEYOND: f64 = 1e-9;
 
@@ -137,7 +139,7 @@ fn turn_wrist(m: &M3, a: &M3, b: &M3, near: &Joints) -> Vec<[f64; 3]> {
     for q5 in [middle + off, middle - off] {
         let last = a * about_z(q5) * v;
         // With the outer axes in line only the sum of their joints is fixed.
-        let q4 = if last.x.hypot(last.y) < 1e-9 { near[3] } else { m[(1, 2)].atan2(m[(0, 2)]) - last.y.atan2(last.x) };
+        let q4 = if last.x.hypot(last.y) < IN_LINE { near[3] } else { m[(1, 2)].atan2(m[(0, 2)]) - last.y.atan2(last.x) };
         let rest = (about_z(q4) * a * about_z(q5) * b).transpose() * m;
         found.push([q4, q5, rest[(1, 0)].atan2(rest[(0, 0)])]);
     }

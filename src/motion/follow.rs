@@ -16,7 +16,7 @@ pub struct Follower<'a> {
 
 /// Newton steps allowed from the nearest node.
 const STEPS: usize = 12;
-/// A Newton step below this (rad or m) is not worth making.
+/// After a Newton step below this (rad or m) nothing is left to gain.
 const LAST_STEP: f64 = 1e-11;
 /// Near a singular posture steps stop shrinking before that; after `PATIENCE` of them this is as good as it gets.
 const LAST_STEP_THERE: f64 = 1e-8;
@@ -114,6 +114,8 @@ impl<'a> Follower<'a> {
                 return None;
             }
             if size < LAST_STEP || (count >= PATIENCE && size < LAST_STEP_THERE) {
+                // The joint values take the step; the posture is not worth computing again for so little.
+                q.iter_mut().zip(&step).for_each(|(v, s)| *v += s);
                 return self.finish(target, u, q, posture, tcp, jacobian, lu).map(|instant| (instant, first));
             }
             q.iter_mut().zip(&step).for_each(|(v, s)| *v += s);
