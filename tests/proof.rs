@@ -23,7 +23,7 @@ fn hammer(judged: &Judged, index: usize, looks: usize) {
             for check in Check::ALL {
                 let Proof::Proved(bound) = survey.check(check).proof else { continue };
                 for slot in meter.slots(check).filter(|slot| meter.channel(*slot).judged) {
-                    let room = meter.channel(slot).room(reading[slot]).as_fraction();
+                    let room = meter.channel(slot).within(&reading).room(reading[slot]).as_fraction();
                     assert!(
                         room >= bound.as_fraction() - 1e-9,
                         "{} segment, {check:?} slot {slot}: room {room} at u = {u}, proved {bound:?}",

@@ -4,13 +4,16 @@
 //! stretches and the proof treat all of them alike.
 
 mod accel;
+mod brake;
 mod channel;
 mod check;
 mod doubt;
 mod finding;
+mod flange;
 mod holding;
 mod judge;
 mod meter;
+mod moving;
 mod proof;
 mod range;
 mod rate;
