@@ -8,7 +8,7 @@ use super::proof::{Covered, Effort, cover};
 use super::stretch::{finding, stretches, worst_of};
 use super::sweep::{Look, Sweep};
 use super::{
-    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, Unproved, Verdict, brake,
+    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved, Verdict, brake,
     holding, moving, reach,
 };
 
@@ -56,6 +56,7 @@ pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Accep
         checks,
         findings,
         profile,
+        torque: TorqueSum::of(arm, segment, &meter),
         looked_at: case.sweep.looks.len(),
         tally,
     }

@@ -1,6 +1,6 @@
 use crate::units::{Measure, Room};
 
-use super::{Check, Finding, Tally, Verdict};
+use super::{Check, Finding, Tally, TorqueSum, Verdict};
 
 /// A place is one instant of a segment.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -50,6 +50,8 @@ pub enum Unproved {
 pub enum Proof {
     /// Proved for every instant: the room is nowhere less than this.
     Proved(Room),
+    /// Summed up over the whole cycle, closer until the sum no longer changed; what it may still be off by is counted against it.
+    Settled,
     /// A witness was found: an instant where it is not clear.
     Witness,
     /// Neither.
@@ -103,6 +105,8 @@ pub struct SegmentSurvey {
     pub findings: Vec<Finding>,
     /// Room along it.
     pub profile: Profile,
+    /// Its part of the torque over the cycle.
+    pub torque: TorqueSum,
     /// How many instants were looked at.
     pub looked_at: usize,
     /// How the proof went.

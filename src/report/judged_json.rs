@@ -114,6 +114,7 @@ impl CheckJson {
 fn proof(proof: Proof) -> (&'static str, Option<f64>) {
     match proof {
         Proof::Proved(room) => ("proved", percent(room)),
+        Proof::Settled => ("settled", None),
         Proof::Witness => ("witness", None),
         Proof::Open(why) => (unproved(why), None),
     }

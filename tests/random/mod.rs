@@ -8,7 +8,7 @@ use elbowroom::arm::{
 };
 use elbowroom::geometry::{Pose, Rotation, V3};
 use elbowroom::kinematics::Posture;
-use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Recipe, Taught, Tool, Usual, Waypoint};
+use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Recipe, Repeat, Taught, Tool, Usual, Waypoint};
 use elbowroom::units::{Acceleration, Seconds, Share, Speed, TurnAcceleration, TurnRate};
 
 /// SplitMix64: small, well mixed, and the same everywhere.
@@ -216,6 +216,7 @@ pub fn recipe(waypoints: Vec<Waypoint>) -> Recipe {
         tools: vec![],
         loads: vec![],
         frames: vec![],
+        repeat: Repeat::Start,
         carrying: None,
         waypoints,
     }
