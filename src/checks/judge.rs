@@ -8,8 +8,8 @@ use super::proof::{Covered, Effort, cover};
 use super::stretch::{finding, stretches, worst_of};
 use super::sweep::{Look, Sweep};
 use super::{
-    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved, Verdict, brake,
-    holding, moving, reach,
+    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved, Verdict,
+    brake, holding, moving, reach,
 };
 
 /// One segment while it is judged.

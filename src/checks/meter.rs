@@ -135,7 +135,7 @@ impl<'a> Meter<'a> {
 const STANDS: f64 = 1e-9;
 
 /// Which way a joint moves, or is about to move at the ends of a segment: -1, 0 or 1.
-pub(super) fn direction(slope: f64, rate: f64, accel: f64) -> f64 {
+pub fn direction(slope: f64, rate: f64, accel: f64) -> f64 {
     let stands = slope.abs() <= STANDS || (rate == 0.0 && accel == 0.0);
     if stands { 0.0 } else { slope.signum() }
 }

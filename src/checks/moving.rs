@@ -23,7 +23,7 @@ pub(super) fn channel(arm: &Arm, joint: &Joint, index: usize, criteria: &Accepta
 
 /// Whether all that the torque in motion of a joint is made of is given: masses and inertias of the links from it on outwards, and
 /// its own rotor and friction.
-pub(super) fn is_complete(arm: &Arm, joint: usize) -> bool {
+pub fn is_complete(arm: &Arm, joint: usize) -> bool {
     arm.has_inertias(joint) && arm.joints()[joint].drive.is_complete()
 }
 

@@ -120,10 +120,12 @@ impl SegmentSurvey {
     }
 
     /// The judged check that is nearest to its reserve, with its worst peak: the worse verdict first. Rate and acceleration of a
-    /// clear joint move are what its shares make them, so they come last.
+    /// clear joint move are what its shares make them, and a clear load at the flange is what it is on every segment, so they come
+    /// last.
     pub fn nearest(&self) -> Option<(&CheckResult, &Peak)> {
         let by_share = |result: &CheckResult| {
-            self.joint_move && result.verdict == Verdict::Clear && matches!(result.check, Check::Rate | Check::Accel)
+            let given = self.joint_move && matches!(result.check, Check::Rate | Check::Accel) || result.check == Check::Flange;
+            given && result.verdict == Verdict::Clear
         };
         let spare = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
         self.checks.iter().filter(|result| result.judged).filter_map(|result| Some((result, result.worst()?))).min_by(

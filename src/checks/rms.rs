@@ -7,7 +7,8 @@ use crate::units::{Measure, Room};
 
 use super::torque_sum::SETTLED;
 use super::{
-    Channel, Check, CheckResult, Excess, Finding, Kind, Peak, Place, Proof, Scale, SegmentSurvey, TorqueSum, Unproved, Verdict, moving,
+    Channel, Check, CheckResult, Excess, Finding, Kind, Peak, Place, Proof, Scale, SegmentSurvey, TorqueSum, Unproved, Verdict,
+    moving,
 };
 
 /// What one joint's torque amounts to over the whole cycle.
@@ -39,9 +40,11 @@ const SAME_POSTURE: f64 = 1e-3;
 pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<SegmentSurvey>]) -> (Cycle, Vec<Finding>) {
     let duration = plan.duration();
     let followed = plan.segments.iter().all(|segment| segment.followed_to() >= 1.0 && segment.trouble.is_none());
-    let standing = plan.segments.first().filter(|_| plan.first_dwell > 0.0 && followed).map(|first| {
-        TorqueSum::before(arm, first, &recipe.acceptance, plan.gravity, plan.first_dwell)
-    });
+    let standing = plan
+        .segments
+        .first()
+        .filter(|_| plan.first_dwell > 0.0 && followed)
+        .map(|first| TorqueSum::before(arm, first, &recipe.acceptance, plan.gravity, plan.first_dwell));
     let mut shares = Vec::with_capacity(arm.len());
     let mut worst = Vec::with_capacity(arm.len());
     for j in 0..arm.len() {
@@ -86,7 +89,7 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
         rms.judged |= channel.judged || over_alone;
         if (channel.judged && verdict != Verdict::Clear) || over_alone {
             rms.verdict = rms.verdict.max(verdict);
-            rms.proof = Proof::Witness;
+            rms.proof = Proof::Settled;
             findings.push(finding(&peak, shares[j].most.0, verdict, &plan.segments[shares[j].most.0]));
         }
         rms.peaks.push(peak);

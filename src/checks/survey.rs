@@ -27,7 +27,11 @@ pub struct Survey {
 impl Survey {
     /// The worst verdict of all segments and of the cycle as a whole.
     pub fn verdict(&self) -> Verdict {
-        self.segments.iter().map(|segment| segment.verdict).max().map_or(Verdict::Unproven, |worst| worst.max(self.cycle.rms.verdict))
+        self.segments
+            .iter()
+            .map(|segment| segment.verdict)
+            .max()
+            .map_or(Verdict::Unproven, |worst| worst.max(self.cycle.rms.verdict))
     }
 
     /// How many segments have a verdict.

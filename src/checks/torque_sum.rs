@@ -131,4 +131,3 @@ impl Run<'_> {
 fn simpson(a: &At, m: &At, b: &At) -> Squares {
     std::array::from_fn(|j| (b.dt - a.dt) / 6.0 * (a.squares[j] + 4.0 * m.squares[j] + b.squares[j]))
 }
-

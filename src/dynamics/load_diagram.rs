@@ -19,10 +19,8 @@ pub fn at_axis(posture: &Posture, carried: &Carried, j: usize) -> AtAxis {
     let mass = carried.mass();
     let lever = if mass > 0.0 { z.cross(&(flange.point(&(carried.moment() / mass)) - o)).norm() } else { 0.0 };
     // Steiner's theorem for each of the two.
-    let bodies = [
-        (carried.tool_mass, carried.tool_com, carried.tool_inertia),
-        (carried.load_mass, carried.load_com, carried.load_inertia),
-    ];
+    let bodies =
+        [(carried.tool_mass, carried.tool_com, carried.tool_inertia), (carried.load_mass, carried.load_com, carried.load_inertia)];
     let axis = flange.axes.transpose() * z;
     let inertia = bodies
         .iter()

@@ -8,7 +8,9 @@ use super::table::{STAND_IN, Table};
 
 /// Reads one joint. `convention` is what the arm file says at its top.
 pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Convention>) -> Joint {
-    table.only(&["name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer", "link"]);
+    table.only(&[
+        "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer", "link",
+    ]);
     let name = table.text("name", "text, such as \"J1\"").map_or_else(|| format!("{} (no name)", index + 1), str::to_owned);
     let kind = kind(table);
     let [value_unit, rate_unit, accel_unit, effort_unit] = match kind {

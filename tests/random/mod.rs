@@ -3,8 +3,8 @@
 use std::sync::Arc;
 
 use elbowroom::arm::{
-    Arm, ArmData, Body, Convention, Curve, Drive, Flange, Friction, Grounds, Joint, JointKind, Joints, Placement, Range, Rotor, Task,
-    TaskRow, TorqueRating, WristLimit,
+    Arm, ArmData, Body, Convention, Curve, Drive, Flange, Friction, Grounds, Joint, JointKind, Joints, Placement, Range, Rotor,
+    Task, TaskRow, TorqueRating, WristLimit,
 };
 use elbowroom::geometry::{Pose, Rotation, V3};
 use elbowroom::kinematics::Posture;
@@ -127,7 +127,8 @@ pub fn arm(family: Family, draw: &mut Draw) -> Arm {
         joint.torque = Some(TorqueRating { holding, peak: Some(peak), grounds: Grounds::Sheet });
         joint.brake = Some(1.2 * holding);
         let rotor = Rotor { inertia: 0.1 * mass * draw.unit(), grounds: Grounds::Sheet };
-        let friction = Friction { steady: 0.05 * holding * draw.unit(), viscous: 0.02 * holding * draw.unit(), grounds: Grounds::Sheet };
+        let friction =
+            Friction { steady: 0.05 * holding * draw.unit(), viscous: 0.02 * holding * draw.unit(), grounds: Grounds::Sheet };
         joint.drive = Drive { rotor: Some(rotor), friction: Some(friction), balancer: None };
         if draw.unit() < 0.3 {
             let pull = 0.2 * holding * draw.between(-1.0, 1.0);

@@ -163,3 +163,83 @@ impl Bodies {
         asked
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::arm::{Arm, Joints};
+    use crate::dynamics::{Going, moving_torque};
+    use crate::files::read_arm;
+    use crate::geometry::Pose;
+    use crate::kinematics::{Jacobian, Posture};
+    use crate::motion::Instant;
+    use crate::program::Carried;
+
+    use super::super::view::Reference;
+
+    /// Two joints through one point, about z and about y, and a body whose principal axes stand at 45 degrees between x and z.
+    const SLANTED: &str = r#"
+elbowroom-arm = 1
+name = "Slanted"
+task = "x y"
+[[joint]]
+name = "1"
+kind = "revolute"
+place = { xyz = [0, 0, 0] }
+axis = [0, 0, 1]
+range = [-90, 90]
+rate = 90
+accel = 90
+[[joint]]
+name = "2"
+kind = "revolute"
+place = { xyz = [0, 0, 0] }
+axis = [0, 1, 0]
+range = [-90, 90]
+rate = 90
+accel = 90
+link = { mass = 1, com = [0, 0, 0], inertia = [1, 1, 1, 0, 0.3, 0] }
+"#;
+
+    fn instant(arm: &Arm, q: Joints, slope: Joints) -> Instant {
+        let posture = Posture::at(arm.chain(), &q);
+        let tcp = posture.tcp(&Pose::identity());
+        let jacobian = Jacobian::at(arm.chain(), &posture, &tcp.at);
+        Instant { u: 0.5, q, slope, bend: Joints::zeros(q.len()), posture, tcp, jacobian, lu: None }
+    }
+
+    #[test]
+    fn a_turning_tensor_is_met_to_the_last_percent() {
+        let arm = read_arm(SLANTED, "slanted").expect("it reads");
+        let (carried, half) = (Carried::nothing(), 1e-3);
+        // Joint 2 turns little beside joint 1, so that the bound, which knows only how long the sum is, is met as well.
+        let slope = Joints::from_slice(&[1.0, 0.05]);
+        let at = instant(&arm, Joints::zeros(2), slope);
+        let view = View::of(arm.chain(), &at, &carried, None, V3::zeros(), Reference::Tcp, 1);
+        let none = [0.0; 2];
+        let motion = view.motion(&slope, &none, half, 0.0);
+        let ways = Ways { slope: &slope, slope_spread: &none, bend: &none, bend_spread: &none };
+        let [alpha, _] = Bodies::of(&view).asked(&view, &motion, &ways);
+        let asked = |s: f64| {
+            let posture = Posture::at(arm.chain(), &[s * slope[0], s * slope[1]]);
+            let going = Going { rates: Joints::zeros(2), accelerations: slope };
+            moving_torque(arm.chain(), &posture, &carried, &V3::zeros(), None, &going)[0]
+        };
+        let reached = (asked(half) - alpha[0].0).abs().max((asked(-half) - alpha[0].0).abs());
+        assert!((asked(0.0) - alpha[0].0).abs() < 1e-12);
+        assert!(reached <= alpha[0].1, "{reached} lies beyond {}", alpha[0].1);
+        assert!(reached > 0.99 * alpha[0].1, "only {reached} of {}", alpha[0].1);
+    }
+
+    #[test]
+    fn principal_moments_come_from_invariants() {
+        for moments in [[1.0, 2.0, 2.5], [3.0, 3.0, 3.0], [0.5, 0.5, 1.0], [1.0, 1.0, 0.2], [0.0, 0.0, 0.0]] {
+            let axes = crate::geometry::turn_about(&V3::new(0.6, 0.0, 0.8), 0.7);
+            let tensor = Tensor::of(axes * M3::from_diagonal(&V3::from(moments)) * axes.transpose());
+            let most = moments.iter().fold(0.0f64, |most, m| most.max(*m));
+            let least = moments.iter().fold(f64::INFINITY, |least, m| least.min(*m));
+            assert!((tensor.most - most).abs() < 1e-7 && (tensor.apart - (most - least)).abs() < 1e-7, "{moments:?} {tensor:?}");
+        }
+        assert!(Tensor::of(M3::identity() * f64::NAN).apart.is_nan());
+    }
+}

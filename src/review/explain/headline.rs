@@ -6,11 +6,14 @@ use super::Judged;
 pub fn headline(judged: &Judged) -> String {
     let survey = &judged.survey;
     let ready = if survey.verdict() == Verdict::Clear { "READY TO SIGN" } else { "NOT READY" };
+    let cycle = survey.cycle.rms.verdict;
+    let of_cycle = (cycle != Verdict::Clear).then(|| format!("the cycle as a whole {}", cycle.word()));
     let counts: Vec<String> = Verdict::ALL
         .into_iter()
         .map(|verdict| (survey.count(verdict), verdict))
         .filter(|(count, _)| *count > 0)
         .map(|(count, verdict)| format!("{count} {}", verdict.word()))
+        .chain(of_cycle)
         .collect();
     format!("{}: {ready}: {}", judged.recipe.name, counts.join(", "))
 }
