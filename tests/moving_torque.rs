@@ -202,6 +202,10 @@ fn a_load_square_to_a_wrist_axis_is_weighed_by_hand() {
 
 /// A mass of 10 kg on an upright slide: up by 500 mm at 0.5 m/s and 2 m/s², half a second's rest, and down again.
 fn hoist(friction: &str) -> elbowroom::review::Judged {
+    hoist_with(friction, "")
+}
+
+fn hoist_with(friction: &str, more: &str) -> elbowroom::review::Judged {
     let arm = format!(
         r#"
 elbowroom-arm = 1
@@ -218,6 +222,7 @@ accel = 2000
 torque = {{ holding = 200, peak = 200 }}
 rotor = {{ inertia = 0 }}
 friction = {friction}
+{more}
 link = {{ mass = 10, com = [0, 0, 0], inertia = [0, 0, 0, 0, 0, 0] }}
 "#
     );
@@ -269,4 +274,21 @@ fn friction_counts_on_the_way_up_and_not_on_the_way_down() {
     let most = |k: usize| judged.survey.segments[k].check(elbowroom::checks::Check::Moving).peaks[0].demand.si;
     assert!((most(0) - (10.0 * 11.80665 + 9.0)).abs() < 1e-9, "{}", most(0));
     assert!((most(1) - 10.0 * 11.80665).abs() < 1e-9, "{}", most(1));
+}
+
+#[test]
+fn a_balancer_takes_its_part_off_holding_motion_and_brake() {
+    use elbowroom::checks::Check;
+    // It lifts with 120 N at the low end of the range and 50 N at the high one: 110 N at 0 mm and 60 N at 500 mm.
+    let judged = hoist_with("{ steady = 0, viscous = 0 }", "balancer = [[-100, 120], [600, 50]]\nbrake = 100");
+    let weight: f64 = 98.0665;
+    let up = &judged.survey.segments[0];
+    for check in [Check::Holding, Check::Brake] {
+        let demand = up.check(check).peaks[0].demand.si;
+        assert!((demand - (weight - 60.0)).abs() < 1e-9, "{check:?} {demand}");
+        let elbowroom::checks::Proof::Proved(_) = up.check(check).proof else { panic!("{check:?}: {:?}", up.check(check)) };
+    }
+    // Going down the most is asked where the ramp has ended, at 437.5 mm: m g less 66.25 N.
+    let moving = judged.survey.segments[1].check(Check::Moving).peaks[0].demand.si;
+    assert!((moving - (weight - 66.25)).abs() < 1e-9, "{moving}");
 }

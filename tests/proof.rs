@@ -38,6 +38,8 @@ fn hammer(judged: &Judged, index: usize, looks: usize) {
 fn hammer_family(family: Family, seed: u64, count: usize) {
     let mut draw = Draw(seed);
     let (mut clear, mut unproven, mut reasons) = (0, 0, Vec::new());
+    let loads = [Check::Holding, Check::Moving, Check::Brake, Check::Flange];
+    let mut proved = [0; 4];
     for k in 0..count {
         let arm = random::arm(family, &mut draw);
         let recipe = random::segment(&arm, k % 3 != 0, &mut draw);
@@ -48,6 +50,9 @@ fn hammer_family(family: Family, seed: u64, count: usize) {
         }
         if survey.verdict == Verdict::Clear {
             clear += 1;
+        }
+        for (check, count) in loads.iter().zip(&mut proved) {
+            *count += usize::from(matches!(survey.check(*check).proof, Proof::Proved(_)));
         }
         for result in &survey.checks {
             if let Proof::Open(why) = result.proof
@@ -63,6 +68,7 @@ fn hammer_family(family: Family, seed: u64, count: usize) {
         hammer(&judged, 0, 1500);
     }
     assert!(clear * 4 > count, "{family:?}: only {clear} of {count} clear, so little was hammered");
+    assert!(proved.iter().all(|proved| proved * 4 > count), "{family:?}: {loads:?} proved {proved:?} times of {count}");
     assert!(unproven * 10 < count, "{family:?}: {unproven} of {count} checks unproven: {reasons:?}");
 }
 
