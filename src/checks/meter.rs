@@ -1,4 +1,4 @@
-use crate::arm::{Arm, MAX_JOINTS};
+use crate::arm::{Arm, Joints, MAX_JOINTS};
 use crate::dynamics::{Going, drive_torque, holding_torque, moving_torque, with_friction};
 use crate::geometry::V3;
 use crate::kinematics::{Lu, invert, null_rows, smallest_singular_value, speed_left, stacked};
@@ -101,16 +101,14 @@ impl<'a> Meter<'a> {
             None => weights,
         };
         let going = Going { rates: at.rates(rate), accelerations: at.accelerations(rate, accel) };
-        let moving = moving_torque(chain, &at.posture, carried, &self.gravity, wrench.as_ref(), &going);
+        let moving = self.moving_torques(at, rate, accel, carried);
         for (j, joint) in self.arm.joints().iter().enumerate() {
             let balance = joint.drive.balance(at.q[j]);
             reading[j] = at.q[j];
             reading[MAX_JOINTS + j] = going.rates[j];
             reading[2 * MAX_JOINTS + j] = going.accelerations[j];
             reading[3 * MAX_JOINTS + j] = torque[j] - balance;
-            let asked = moving[j] + drive_torque(&joint.drive, at.q[j], going.accelerations[j]);
-            let friction = joint.drive.friction.map_or(0.0, |f| f.asks(direction(at.slope[j], rate, accel), going.rates[j]));
-            reading[4 * MAX_JOINTS + j] = with_friction(asked, friction);
+            reading[4 * MAX_JOINTS + j] = moving[j];
             reading[5 * MAX_JOINTS + j] = weights[j] - balance;
         }
         flange::read(self.arm.flange(), &at.posture, carried, &mut reading[FLANGE..SINGULAR]);
@@ -128,6 +126,20 @@ impl<'a> Meter<'a> {
         let [x, y, z, ..] = at.jacobian.twist(&at.slope);
         reading[SINGULAR + 2] = V3::new(x, y, z).norm() * rate;
         reading
+    }
+
+    /// The torque in motion of every joint alone, rotors, friction and balancers included, N·m or N; for those who need no more.
+    pub(super) fn moving_torques(&self, at: &Instant, rate: f64, accel: f64, carried: &Carried) -> Joints {
+        let going = Going { rates: at.rates(rate), accelerations: at.accelerations(rate, accel) };
+        let push = if std::ptr::eq(carried, &self.segment.carried) { self.segment.push } else { None };
+        let wrench = push.map(|push| push.in_base(&at.tcp));
+        let mut torque = moving_torque(self.arm.chain(), &at.posture, carried, &self.gravity, wrench.as_ref(), &going);
+        for (j, joint) in self.arm.joints().iter().enumerate() {
+            let asked = torque[j] + drive_torque(&joint.drive, at.q[j], going.accelerations[j]);
+            let friction = joint.drive.friction.map_or(0.0, |f| f.asks(direction(at.slope[j], rate, accel), going.rates[j]));
+            torque[j] = with_friction(asked, friction);
+        }
+        torque
     }
 }
 

@@ -3,7 +3,7 @@ use crate::geometry::V3;
 use crate::motion::{Follower, Segment};
 use crate::program::Acceptance;
 
-use super::{Check, Meter, Place};
+use super::{Meter, Place};
 
 /// The squared torque of every joint summed up over one segment, for the root mean square over the cycle.
 #[derive(Debug, Clone, PartialEq)]
@@ -17,7 +17,7 @@ pub struct TorqueSum {
 }
 
 /// The integral of a squared torque is settled to this share of the squared continuous rating, on average over the time.
-pub const SETTLED: f64 = 1e-6;
+pub const SETTLED: f64 = 1e-5;
 /// Intervals of one piece of a speed law are halved at most this often.
 const MOST_HALVINGS: u32 = 16;
 
@@ -112,18 +112,14 @@ impl Run<'_> {
         }
         let Some(instant) = self.follower.at(u) else { return Joints::from_fn(n, |_| f64::NAN) };
         let carried = self.segment.carried;
-        let reading = self.meter.read_with(&instant, 0.0, 0.0, &carried);
-        Joints::from_slice(&self.moving(&reading).map(|torque| torque * torque * time)[..n])
+        let torque = self.meter.moving_torques(&instant, 0.0, 0.0, &carried);
+        Joints::from_fn(n, |j| torque[j] * torque[j] * time)
     }
 
     fn squares(&self, u: f64, rate: f64, accel: f64) -> Squares {
         let Some(instant) = self.follower.at(u) else { return [f64::NAN; MAX_JOINTS] };
-        self.moving(&self.meter.read(&instant, rate, accel)).map(|torque| torque * torque)
-    }
-
-    fn moving(&self, reading: &super::Reading) -> Squares {
-        let first = self.meter.slots(Check::Moving).start;
-        std::array::from_fn(|j| if j < self.arm.len() { reading[first + j] } else { 0.0 })
+        let torque = self.meter.moving_torques(&instant, rate, accel, &self.segment.carried);
+        std::array::from_fn(|j| torque.get(j).map_or(0.0, |torque| torque * torque))
     }
 }
 

@@ -8,7 +8,7 @@ pub fn proof_text(survey: &SegmentSurvey, result: &CheckResult) -> String {
             format!("Proved for every instant between as well: the room is nowhere less than {room}.")
         }
         Proof::Settled => {
-            "Summed up over every segment and dwell, closer until the sum no longer changed by a millionth of the squared rating."
+            "Summed up over every segment and dwell, closer until the sum no longer changed by a hundred-thousandth of the squared rating."
                 .to_owned()
         }
         Proof::Witness => {
