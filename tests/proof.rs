@@ -18,7 +18,11 @@ fn hammer(judged: &Judged, index: usize, looks: usize) {
         let time = segment.law.time_of(u);
         for side in [elbowroom::motion::Side::Before, elbowroom::motion::Side::After] {
             let [u, rate, accel] = segment.law.at(time, side);
-            let at = follower.at(u).expect("a proved path can be followed");
+            let Some(at) = follower.at(u) else {
+                let reach = survey.check(Check::Reach).proof;
+                assert!(!matches!(reach, Proof::Proved(_)), "a proved path can be followed, at u = {u} too");
+                continue;
+            };
             let reading = meter.read(&at, rate, accel);
             for check in Check::ALL {
                 let Proof::Proved(bound) = survey.check(check).proof else { continue };
@@ -55,21 +59,22 @@ fn hammer_family(family: Family, seed: u64, count: usize) {
             *count += usize::from(matches!(survey.check(*check).proof, Proof::Proved(_)));
         }
         for result in &survey.checks {
-            if let Proof::Open(why) = result.proof
+            if let Proof::Open(_) = result.proof
                 && result.judged
             {
                 assert_eq!(result.verdict, Verdict::Unproven, "an open proof is never clear");
-                if why == Unproved::BudgetSpent {
-                    unproven += 1;
-                    reasons.push((k, result.check));
-                }
             }
+        }
+        let open = |check: &Check| survey.check(*check).proof == Proof::Open(Unproved::BudgetSpent);
+        if let Some(first) = Check::ALL.into_iter().find(open) {
+            unproven += 1;
+            reasons.push((k, first));
         }
         hammer(&judged, 0, 1500);
     }
     assert!(clear * 4 > count, "{family:?}: only {clear} of {count} clear, so little was hammered");
     assert!(proved.iter().all(|proved| proved * 4 > count), "{family:?}: {loads:?} proved {proved:?} times of {count}");
-    assert!(unproven * 10 < count, "{family:?}: {unproven} of {count} checks unproven: {reasons:?}");
+    assert!(unproven * 20 < count, "{family:?}: {unproven} of {count} segments unproven: {reasons:?}");
 }
 
 #[test]

@@ -2,13 +2,13 @@ use std::sync::Arc;
 
 use crate::arm::{Arm, Joints};
 use crate::motion::{Plan, Segment};
-use crate::program::{Recipe, Repeat};
+use crate::program::{Carried, Recipe, Repeat};
 use crate::units::{Measure, Room};
 
 use super::torque_sum::SETTLED;
 use super::{
-    Channel, Check, CheckResult, Excess, Finding, Kind, Peak, Place, Proof, Scale, SegmentSurvey, TorqueSum, Unproved, Verdict,
-    moving,
+    Channel, Check, CheckResult, Excess, Finding, Kind, Meter, Peak, Place, Proof, Scale, SegmentSurvey, TorqueSum, Unproved,
+    Verdict, moving,
 };
 
 /// What one joint's torque amounts to over the whole cycle.
@@ -40,11 +40,12 @@ const SAME_POSTURE: f64 = 1e-3;
 pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<SegmentSurvey>]) -> (Cycle, Vec<Finding>) {
     let duration = plan.duration();
     let followed = plan.segments.iter().all(|segment| segment.followed_to() >= 1.0 && segment.trouble.is_none());
-    let standing = plan
-        .segments
-        .first()
-        .filter(|_| plan.first_dwell > 0.0 && followed)
-        .map(|first| TorqueSum::before(arm, first, &recipe.acceptance, plan.gravity, plan.first_dwell));
+    let standing = plan.segments.first().filter(|_| plan.first_dwell > 0.0 && followed).map(|first| {
+        let meter = Meter::of(arm, first, &recipe.acceptance, plan.gravity);
+        // What is taken at the first waypoint is taken at the end of the dwell.
+        let carried = Carried::of(recipe.tool_at(0), recipe.load_before(0));
+        TorqueSum::before(arm, first, &meter, &carried, plan.first_dwell)
+    });
     let mut shares = Vec::with_capacity(arm.len());
     let mut worst = Vec::with_capacity(arm.len());
     for j in 0..arm.len() {
@@ -62,6 +63,8 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
         worst.push(segments.get(share.most.0).map_or(Place { time: 0.0, u: 0.0 }, |survey| survey.torque.highest[j]));
         shares.push(share);
     }
+    // A place at which Newton did not settle leaves the sum unknown; reach tells of it.
+    let followed = followed && shares.iter().all(|share| share.whole.is_finite());
     let mut findings = Vec::new();
     let repeats = recipe.repeat == Repeat::Start && followed && duration > 0.0 && is_closed(plan);
     let mut rms = CheckResult {

@@ -1,7 +1,6 @@
 use crate::arm::{Arm, Joints, MAX_JOINTS};
-use crate::geometry::V3;
 use crate::motion::{Follower, Segment};
-use crate::program::Acceptance;
+use crate::program::Carried;
 
 use super::{Meter, Place};
 
@@ -35,13 +34,12 @@ impl TorqueSum {
             return Self { moves: unknown, stands: unknown, highest: [Place { time: 0.0, u: 0.0 }; MAX_JOINTS] };
         }
         let (moves, highest) = run.integral();
-        Self { moves: Joints::from_slice(&moves[..n]), stands: run.standing(1.0, segment.dwell), highest }
+        Self { moves: Joints::from_slice(&moves[..n]), stands: run.standing(1.0, segment.dwell, &{ segment.carried }), highest }
     }
 
-    /// The integral over a time in which the arm stands at the start of a segment.
-    pub(super) fn before(arm: &Arm, segment: &Segment, criteria: &Acceptance, gravity: V3, time: f64) -> Joints {
-        let meter = Meter::of(arm, segment, criteria, gravity);
-        Run { arm, meter: &meter, segment, follower: Follower::of(arm, segment) }.standing(0.0, time)
+    /// The integral over a time in which the arm stands at the start of a segment with what it carries there.
+    pub(super) fn before(arm: &Arm, segment: &Segment, meter: &Meter, carried: &Carried, time: f64) -> Joints {
+        Run { arm, meter, segment, follower: Follower::of(arm, segment) }.standing(0.0, time, carried)
     }
 }
 
@@ -105,14 +103,13 @@ impl Run<'_> {
     }
 
     /// The integral over a dwell at fraction `u`, in which the process force, which belongs to the motion, is left out.
-    fn standing(&self, u: f64, time: f64) -> Joints {
+    fn standing(&self, u: f64, time: f64, carried: &Carried) -> Joints {
         let n = self.arm.len();
         if !(time > 0.0) {
             return Joints::zeros(n);
         }
         let Some(instant) = self.follower.at(u) else { return Joints::from_fn(n, |_| f64::NAN) };
-        let carried = self.segment.carried;
-        let torque = self.meter.moving_torques(&instant, 0.0, 0.0, &carried);
+        let torque = self.meter.moving_torques(&instant, 0.0, 0.0, carried);
         Joints::from_fn(n, |j| torque[j] * torque[j] * time)
     }
 

@@ -95,6 +95,8 @@ fn torque(judged: &Judged) -> Vec<String> {
         told.push("Torque over the cycle: the recipe says that it runs once.".to_owned());
     } else if !is_closed(&judged.plan) {
         told.push("Torque over the cycle: the last waypoint is not where the first is, so the way back is missing.".to_owned());
+    } else if judged.survey.cycle.rms.proof == Proof::Open(Unproved::NotFollowed) {
+        told.push("Torque over the cycle: a path could not be followed to its end.".to_owned());
     } else if let Some(names) = names(&|j| !is_complete(arm, j) || arm.joints()[j].torque.is_none()) {
         told.push(format!("Torque over the cycle of {names}: its torque in motion is not known as a whole, or not rated."));
     }

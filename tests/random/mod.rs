@@ -8,7 +8,7 @@ use elbowroom::arm::{
 };
 use elbowroom::geometry::{Pose, Rotation, V3};
 use elbowroom::kinematics::Posture;
-use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Recipe, Repeat, Taught, Tool, Usual, Waypoint};
+use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Push, PushAxes, Recipe, Repeat, Taught, Tool, Usual, Waypoint};
 use elbowroom::units::{Acceleration, Seconds, Share, Speed, TurnAcceleration, TurnRate};
 
 /// SplitMix64: small, well mixed, and the same everywhere.
@@ -193,6 +193,11 @@ pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
         waypoint("end", Taught::Joints(posture(arm, draw)), Some(Arrive::Joint { share: Some(share), accel_share: None }))
     };
     let mut recipe = recipe(vec![waypoint("start", Taught::Joints(start), None), last]);
+    if draw.unit() < 0.4 {
+        let axes = if draw.unit() < 0.5 { PushAxes::Tool } else { PushAxes::Frame("base".to_owned()) };
+        let force = draw.direction() * draw.between(5.0, 40.0);
+        recipe.waypoints[1].push = Some(Push { force, torque: draw.direction() * draw.between(0.0, 4.0), axes });
+    }
     let com = V3::new(draw.between(-0.1, 0.1), draw.between(-0.1, 0.1), draw.between(0.0, 0.15));
     let body = Body { mass: draw.between(0.5, 6.0), com, inertia: Some(tensor(0.05, draw)), grounds: Grounds::Sheet };
     recipe.tools = vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body) }];
