@@ -215,6 +215,7 @@ fn peak(meter: &Meter, sweep: &Sweep, after: Option<&Look>, slot: usize) -> Opti
         limit: Measure::si(channel.limit(value), channel.of),
         room: channel.room(value),
         reserve: Room::fraction(channel.reserve),
+        judged: channel.judged || (channel.is_flagged_over() && channel.asked(value) > channel.over_above()),
     })
 }
 

@@ -26,6 +26,8 @@ pub struct Peak {
     pub room: Room,
     /// What must be left.
     pub reserve: Room,
+    /// Whether it counts for the verdict, or is only shown.
+    pub judged: bool,
 }
 
 /// Why a check that shows nothing bad is not called clear.
@@ -74,10 +76,12 @@ pub struct CheckResult {
 }
 
 impl CheckResult {
-    /// The peak nearest to its reserve.
+    /// The peak nearest to its reserve, of those that count if any does.
     pub fn worst(&self) -> Option<&Peak> {
         let over_reserve = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
-        self.peaks.iter().filter(|peak| peak.limit.si.is_finite()).min_by(|a, b| over_reserve(a).total_cmp(&over_reserve(b)))
+        let counts = self.peaks.iter().any(|peak| peak.judged);
+        let meant = self.peaks.iter().filter(|peak| peak.limit.si.is_finite() && (peak.judged || !counts));
+        meant.min_by(|a, b| over_reserve(a).total_cmp(&over_reserve(b)))
     }
 }
 

@@ -66,7 +66,7 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
     // A place at which Newton did not settle leaves the sum unknown; reach tells of it.
     let followed = followed && shares.iter().all(|share| share.whole.is_finite());
     let mut findings = Vec::new();
-    let repeats = recipe.repeat == Repeat::Start && followed && duration > 0.0 && is_closed(plan);
+    let repeats = recipe.repeat == Repeat::Start && followed && duration > 0.0 && is_closed(recipe, plan);
     let mut rms = CheckResult {
         check: Check::Rms,
         judged: false,
@@ -75,15 +75,7 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
         peaks: Vec::new(),
     };
     for (j, joint) in arm.joints().iter().enumerate().filter(|_| followed && duration > 0.0) {
-        let complete = moving::is_complete(arm, j);
-        let channel = Channel {
-            check: Check::Rms,
-            joint: Some(j),
-            of: joint.kind.effort(),
-            scale: joint.torque.map_or(Scale::Open, |torque| Scale::Ceiling(torque.holding)),
-            reserve: recipe.acceptance.rms_reserve.as_fraction(),
-            judged: repeats && complete && joint.torque.is_some(),
-        };
+        let channel = channel(arm, recipe, j, repeats);
         // What the integral may still be off by counts against the room.
         let value = (shares[j].whole / duration + joint.torque.map_or(0.0, |t| SETTLED * t.holding * t.holding)).sqrt();
         let peak = peak(&channel, value, worst[j]);
@@ -95,18 +87,14 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
             rms.proof = Proof::Settled;
             findings.push(finding(&peak, shares[j].most.0, verdict, &plan.segments[shares[j].most.0]));
         }
-        rms.peaks.push(peak);
+        rms.peaks.push(Peak { judged: channel.judged || over_alone, ..peak });
     }
     if rms.judged && rms.verdict == Verdict::Clear {
         match moving::unproved(arm) {
             Some(why) => {
                 rms.verdict = Verdict::Unproven;
                 rms.proof = Proof::Open(why);
-                let segment = plan.segments.first().map_or(0.0, |segment| segment.duration());
-                let to = Place { time: segment, u: 1.0 };
-                let from = Place { time: 0.0, u: 0.0 };
-                let kind = Kind::Unproved(why);
-                findings.push(Finding { segment: 0, check: Check::Rms, joint: None, verdict: Verdict::Unproven, from, to, kind });
+                findings.push(unknown(why, plan));
             }
             None => rms.proof = Proof::Settled,
         }
@@ -114,12 +102,32 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
     (Cycle { rms, shares, duration }, findings)
 }
 
-/// Whether the last waypoint is where the first one is, so that the cycle may start again.
-pub fn is_closed(plan: &Plan) -> bool {
-    match (plan.segments.first(), plan.segments.last()) {
-        (Some(first), Some(last)) => first.start.zip(&last.end, |a, b| a - b).largest() <= SAME_POSTURE,
-        _ => false,
+/// Whether the cycle ends as it began, in the same posture with the same tool and load, so that it may start again.
+pub fn is_closed(recipe: &Recipe, plan: &Plan) -> bool {
+    let (Some(first), Some(last)) = (plan.segments.first(), plan.segments.last()) else { return false };
+    first.start.zip(&last.end, |a, b| a - b).largest() <= SAME_POSTURE
+        && recipe.tool_at(0).map(|tool| &tool.name) == recipe.tool_at(last.to).map(|tool| &tool.name)
+        && recipe.load_before(0).map(|load| &load.name) == recipe.load_after(last.to).map(|load| &load.name)
+}
+
+/// The root mean square torque of a joint against its continuous rating; judged where all that it is made of is given.
+fn channel(arm: &Arm, recipe: &Recipe, j: usize, repeats: bool) -> Channel {
+    let joint = &arm.joints()[j];
+    Channel {
+        check: Check::Rms,
+        joint: Some(j),
+        of: joint.kind.effort(),
+        scale: joint.torque.map_or(Scale::Open, |torque| Scale::Ceiling(torque.holding)),
+        reserve: recipe.acceptance.rms_reserve.as_fraction(),
+        judged: repeats && moving::is_complete(arm, j) && joint.torque.is_some(),
     }
+}
+
+/// A finding that the cycle's torque is not known.
+fn unknown(why: Unproved, plan: &Plan) -> Finding {
+    let end = plan.segments.first().map_or(0.0, |segment| segment.duration());
+    let [from, to] = [(0.0, 0.0), (end, 1.0)].map(|(time, u)| Place { time, u });
+    Finding { segment: 0, check: Check::Rms, joint: None, verdict: Verdict::Unproven, from, to, kind: Kind::Unproved(why) }
 }
 
 fn peak(channel: &Channel, value: f64, at: Place) -> Peak {
@@ -130,6 +138,7 @@ fn peak(channel: &Channel, value: f64, at: Place) -> Peak {
         limit: Measure::si(channel.limit(value), channel.of),
         room: channel.room(value),
         reserve: Room::fraction(channel.reserve),
+        judged: channel.judged,
     }
 }
 

@@ -79,7 +79,7 @@ fn cycle_json(judged: &Judged) -> CycleJson {
     let rms = &judged.survey.cycle.rms;
     CycleJson {
         verdict: rms.verdict.word(),
-        closed: is_closed(&judged.plan),
+        closed: is_closed(&judged.recipe, &judged.plan),
         checks: Checks(vec![(rms.check, CheckJson::of_cycle(judged, rms))]),
     }
 }

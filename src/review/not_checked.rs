@@ -93,8 +93,8 @@ fn torque(judged: &Judged) -> Vec<String> {
     }
     if recipe.repeat == Repeat::Never {
         told.push("Torque over the cycle: the recipe says that it runs once.".to_owned());
-    } else if !is_closed(&judged.plan) {
-        told.push("Torque over the cycle: the last waypoint is not where the first is, so the way back is missing.".to_owned());
+    } else if !is_closed(recipe, &judged.plan) {
+        told.push("Torque over the cycle: it does not end in the posture, with the tool and load, that it begins with, so the way back is missing.".to_owned());
     } else if judged.survey.cycle.rms.proof == Proof::Open(Unproved::NotFollowed) {
         told.push("Torque over the cycle: a path could not be followed to its end.".to_owned());
     } else if let Some(names) = names(&|j| !is_complete(arm, j) || arm.joints()[j].torque.is_none()) {
