@@ -86,6 +86,15 @@ impl Channel {
         if asked <= MOST_ASKED { asked } else { MOST_ASKED }
     }
 
+    /// What `value` asks in a reading: as [`Channel::within`] and [`Channel::asked`], without a copy of the channel.
+    #[inline]
+    pub fn asked_in(&self, reading: &Reading, value: f64) -> f64 {
+        match self.scale {
+            Scale::CeilingByRate(_) => self.within(reading).asked(value),
+            _ => self.asked(value),
+        }
+    }
+
     /// The room that `value` leaves.
     pub fn room(&self, value: f64) -> Room {
         Room::fraction(1.0 - self.asked(value))

@@ -128,7 +128,7 @@ impl Run<'_> {
             for &[rate, accel] in if still { &[[0.0, 0.0]][..] } else { &corners[..] } {
                 let reading = self.meter.read(at, rate.max(0.0), accel);
                 for &slot in &taken {
-                    let asked = self.meter.channel(slot).within(&reading).asked(reading[slot]);
+                    let asked = self.meter.channel(slot).asked_in(&reading, reading[slot]);
                     let most = self.out.asked[slot].get_or_insert(0.0);
                     *most = most.max(asked);
                 }
@@ -190,7 +190,7 @@ impl Run<'_> {
         let mut flagged = false;
         self.needs.retain(|&slot| {
             let channel = self.meter.channel(slot);
-            let clear = channel.within(&reading).asked(reading[slot]) <= channel.flagged_above();
+            let clear = channel.asked_in(&reading, reading[slot]) <= channel.flagged_above();
             flagged |= !clear;
             clear
         });
