@@ -130,6 +130,10 @@ fn the_demonstration_cell_teaches_what_it_should() {
             assert!(check["proved"] == true || check["judged"] == false, "segment {number}, {name}: {check}");
         }
     }
+    let cycle = &report["cycle"];
+    assert_eq!((&cycle["verdict"], &cycle["closed"]), (&"clear".into(), &true.into()));
+    let rms = &cycle["checks"]["rms"];
+    assert_eq!((&rms["judged"], &rms["proof"], rms["joints"].as_array().map(Vec::len)), (&true.into(), &"settled".into(), Some(6)));
     let doubts = report["doubts"].as_array().expect("doubts");
     assert_eq!(doubts.len(), 1, "{doubts:?}");
     assert_eq!(doubts[0]["waypoint"], 7);
@@ -147,7 +151,20 @@ fn json_has_its_keys_and_only_finite_figures() {
         for key in ["index", "from", "to", "arrive", "duration_s", "verdict", "room", "checks"] {
             assert!(!segment[key].is_null(), "{key} of {segment}");
         }
-        for key in ["reach", "range", "rate", "accel", "holding", "singular", "speed_left", "tcp_speed"] {
+        for key in [
+            "reach",
+            "range",
+            "rate",
+            "accel",
+            "holding",
+            "moving",
+            "brake",
+            "flange",
+            "rms",
+            "singular",
+            "speed_left",
+            "tcp_speed",
+        ] {
             let check = segment["checks"][key].as_object().unwrap_or_else(|| panic!("no {key}"));
             for key in ["room", "verdict", "proved", "joint", "at", "demand", "limit", "unit", "joints"] {
                 assert!(check.contains_key(key), "{key} of {check:?}");

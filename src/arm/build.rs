@@ -105,6 +105,11 @@ impl Arm {
         self.len() > self.task.rows().len()
     }
 
+    /// Whether every link's mass and inertia from joint `from` on outwards are given: what its torque in motion depends on.
+    pub fn has_inertias(&self, from: usize) -> bool {
+        self.joints()[from..].iter().all(|joint| joint.link.is_some_and(|link| link.inertia.is_some()))
+    }
+
     /// Whether every link's mass is given.
     pub fn has_masses(&self) -> bool {
         self.joints().iter().all(|joint| joint.link.is_some())
@@ -178,22 +183,11 @@ fn joint_faults(joint: &Joint, field: &Field) -> Vec<Fault> {
     above_zero(field.key("accel"), "accel", joint.accel, kind.acceleration());
     if let Some(torque) = &joint.torque {
         above_zero(field.key("torque").key("holding"), "holding", torque.holding, kind.effort());
-        if let Some(peak) = torque.peak {
-            above_zero(field.key("torque").key("peak"), "peak", peak, kind.effort());
-        }
     }
     if let Some(brake) = joint.brake {
         above_zero(field.key("brake"), "brake", brake, kind.effort());
     }
-    if let Some(torque) = &joint.torque
-        && let Some(peak) = torque.peak
-        && peak < torque.holding
-    {
-        faults.push(Fault::new(
-            field.key("torque").key("peak"),
-            format!("{thing}: peak is {peak}; it must be at least holding, {}", torque.holding),
-        ));
-    }
+    faults.extend(super::drive_faults::faults(joint, field, &thing));
     let range = joint.range;
     if !(range.low.is_finite() && range.high.is_finite() && range.low < range.high) {
         let (low, high) = (tidy(joint.value(range.low).shown()), tidy(joint.value(range.high).shown()));
@@ -241,6 +235,10 @@ fn flange_faults(data: &ArmData) -> Vec<Fault> {
     }
     for (index, limit) in data.flange.wrist.iter().enumerate() {
         let field = field.key("wrist").item(index);
+        if data.flange.wrist[..index].iter().any(|other| other.joint == limit.joint) {
+            let name = data.joints.get(limit.joint).map_or("", |joint| joint.name.as_str());
+            faults.push(Fault::new(field.key("joint"), format!("flange: wrist {}: {name} is listed already", index + 1)));
+        }
         if !(limit.moment.is_finite() && limit.moment > 0.0) {
             faults.push(Fault::new(field.key("moment"), format!("flange: moment is {} N·m; it must be above 0", limit.moment)));
         }

@@ -1,4 +1,4 @@
-use crate::geometry::{Pose, V3};
+use crate::geometry::{M3, Pose, V3};
 
 use super::{Joint, JointKind, MAX_JOINTS};
 
@@ -18,6 +18,8 @@ pub struct Chain {
     pub mass: [f64; MAX_JOINTS],
     /// Link centres of mass in the moved axis system of their joint, m.
     pub com: [V3; MAX_JOINTS],
+    /// Link inertias about their centres in the moved axis system of their joint, kg·m²; zero where the arm file gives none.
+    pub inertia: [M3; MAX_JOINTS],
 }
 
 impl Chain {
@@ -29,6 +31,7 @@ impl Chain {
             flange: Pose::identity(),
             mass: [0.0; MAX_JOINTS],
             com: [V3::zeros(); MAX_JOINTS],
+            inertia: [M3::zeros(); MAX_JOINTS],
         };
         let mut link = Pose::identity();
         for (j, joint) in joints.iter().enumerate() {
@@ -38,6 +41,8 @@ impl Chain {
             if let Some(body) = &joint.link {
                 chain.mass[j] = body.mass;
                 chain.com[j] = around.after.point(&body.com);
+                let tensor = body.inertia.unwrap_or_else(M3::zeros);
+                chain.inertia[j] = around.after.axes * tensor * around.after.axes.transpose();
             }
             link = around.after;
         }

@@ -1,6 +1,6 @@
 use crate::units::{Dimension, Measure};
 
-use super::{Body, Grounds, Placement};
+use super::{Body, Curve, Drive, Grounds, Placement};
 
 /// How a joint moves.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -71,8 +71,8 @@ impl Range {
 pub struct TorqueRating {
     /// Continuously, at standstill.
     pub holding: f64,
-    /// For a short time, if the maker says.
-    pub peak: Option<f64>,
+    /// For a short time, against the size of the joint's rate (rad/s or m/s), if the maker says.
+    pub peak: Option<Curve>,
     /// Where the figures come from.
     pub grounds: Grounds,
 }
@@ -96,6 +96,8 @@ pub struct Joint {
     pub torque: Option<TorqueRating>,
     /// What its brake holds, N·m or N.
     pub brake: Option<f64>,
+    /// Rotor, friction and balancer; makers often don't say.
+    pub drive: Drive,
     /// The link that it moves, in that link's coordinate system; makers often don't say.
     pub link: Option<Body>,
 }

@@ -3,6 +3,9 @@
 mod body;
 mod build;
 mod chain;
+mod curve;
+mod drive;
+mod drive_faults;
 mod flange;
 mod joint;
 mod joints;
@@ -12,6 +15,8 @@ mod task;
 pub use body::{Body, Grounds};
 pub use build::{Arm, ArmData, CharacteristicLength};
 pub use chain::Chain;
+pub use curve::Curve;
+pub use drive::{Drive, Friction, Rotor};
 pub use flange::{Flange, WristLimit};
 pub use joint::{Joint, JointKind, Range, TorqueRating};
 pub use joints::{Joints, MAX_JOINTS};

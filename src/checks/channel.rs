@@ -1,16 +1,18 @@
-use crate::arm::MAX_JOINTS;
+use crate::arm::{Curve, MAX_JOINTS};
 use crate::units::{Dimension, Room};
 
-use super::{Check, Verdict};
+use super::{Check, Reading, Verdict};
 
 /// How many channels there are for the largest arm.
-pub(super) const CHANNELS: usize = 4 * MAX_JOINTS + 3;
+pub(super) const CHANNELS: usize = 8 * MAX_JOINTS + 4;
 
 /// A scale turns a channel's value into what it asks of its limit.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub enum Scale {
     /// The value's size must not exceed the limit.
     Ceiling(f64),
+    /// The value's size must not exceed a limit that falls with the size of the joint's rate.
+    CeilingByRate(Curve),
     /// The value must stay within `half` of `middle`.
     Within {
         /// Middle of what is allowed.
@@ -49,11 +51,28 @@ const ROUNDING: f64 = 1e-9;
 const MOST_ASKED: f64 = 11.0;
 
 impl Channel {
-    /// What `value` asks of the limit, 1 being all of it. What is not a number asks everything.
+    /// A channel that is not there: nothing is read and nothing judged.
+    pub(super) const UNUSED: Self =
+        Self { check: Check::Reach, joint: None, of: Dimension::Ratio, scale: Scale::Open, reserve: 0.0, judged: false };
+
+    /// The channel as it stands for one reading: where the limit depends on the joint's rate, with the limit at that rate.
+    #[inline]
+    pub fn within(&self, reading: &Reading) -> Self {
+        match (self.scale, self.joint) {
+            (Scale::CeilingByRate(curve), Some(joint)) => {
+                Self { scale: Scale::Ceiling(curve.at(reading[MAX_JOINTS + joint].abs())), ..*self }
+            }
+            _ => *self,
+        }
+    }
+
+    /// What `value` asks of the limit, 1 being all of it. What is not a number asks everything. A limit that depends on the rate
+    /// counts as at its lowest; see [`Channel::within`].
     #[inline]
     pub fn asked(&self, value: f64) -> f64 {
         let asked = match self.scale {
             Scale::Ceiling(limit) => value.abs() / limit,
+            Scale::CeilingByRate(curve) => value.abs() / curve.at(f64::INFINITY),
             Scale::Within { middle, half } => (value - middle).abs() / half,
             Scale::Floor(limit) => {
                 if value > 0.0 {
@@ -67,6 +86,15 @@ impl Channel {
         if asked <= MOST_ASKED { asked } else { MOST_ASKED }
     }
 
+    /// What `value` asks in a reading: as [`Channel::within`] and [`Channel::asked`], without a copy of the channel.
+    #[inline]
+    pub fn asked_in(&self, reading: &Reading, value: f64) -> f64 {
+        match self.scale {
+            Scale::CeilingByRate(_) => self.within(reading).asked(value),
+            _ => self.asked(value),
+        }
+    }
+
     /// The room that `value` leaves.
     pub fn room(&self, value: f64) -> Room {
         Room::fraction(1.0 - self.asked(value))
@@ -76,6 +104,12 @@ impl Channel {
     #[inline]
     pub fn flagged_above(&self) -> f64 {
         1.0 - self.reserve + ROUNDING
+    }
+
+    /// Whether it is flagged, though not judged, where what is known of it is over the limit by itself.
+    #[inline]
+    pub fn is_flagged_over(&self) -> bool {
+        self.check == Check::Moving && !self.judged && self.scale != Scale::Open
     }
 
     /// More than this asked breaks the limit.
@@ -99,6 +133,7 @@ impl Channel {
     pub fn limit(&self, value: f64) -> f64 {
         match self.scale {
             Scale::Ceiling(limit) | Scale::Floor(limit) => limit,
+            Scale::CeilingByRate(curve) => curve.at(f64::INFINITY),
             Scale::Within { middle, half } => {
                 if value < middle {
                     middle - half

@@ -13,6 +13,15 @@ pub enum Check {
     Accel,
     /// Holding torque against the drives' continuous ratings.
     Holding,
+    /// Torque in motion against the drives' peak ratings.
+    Moving,
+    /// Holding torque against the brakes.
+    Brake,
+    /// Tool and load against the flange's rated load and load diagram.
+    Flange,
+    /// Root mean square of the torque over the whole cycle against the drives' continuous ratings. Judged for the cycle, not for a
+    /// segment.
+    Rms,
     /// Smallest singular value against the least one allowed.
     Singular,
     /// Tool speed left in the worst direction against the least one allowed.
@@ -23,8 +32,20 @@ pub enum Check {
 
 impl Check {
     /// All checks in order.
-    pub const ALL: [Self; 8] =
-        [Self::Reach, Self::Range, Self::Rate, Self::Accel, Self::Holding, Self::Singular, Self::SpeedLeft, Self::TcpSpeed];
+    pub const ALL: [Self; 12] = [
+        Self::Reach,
+        Self::Range,
+        Self::Rate,
+        Self::Accel,
+        Self::Holding,
+        Self::Moving,
+        Self::Brake,
+        Self::Flange,
+        Self::Rms,
+        Self::Singular,
+        Self::SpeedLeft,
+        Self::TcpSpeed,
+    ];
 
     /// Its name in data.
     pub fn key(self) -> &'static str {
@@ -34,6 +55,10 @@ impl Check {
             Self::Rate => "rate",
             Self::Accel => "accel",
             Self::Holding => "holding",
+            Self::Moving => "moving",
+            Self::Brake => "brake",
+            Self::Flange => "flange",
+            Self::Rms => "rms",
             Self::Singular => "singular",
             Self::SpeedLeft => "speed_left",
             Self::TcpSpeed => "tcp_speed",
@@ -42,12 +67,17 @@ impl Check {
 
     /// Whether it judges by what the arm can do; the others judge by what the cell asks.
     pub fn is_arm_limit(self) -> bool {
-        matches!(self, Self::Reach | Self::Range | Self::Rate | Self::Accel | Self::Holding)
+        !matches!(self, Self::Singular | Self::SpeedLeft | Self::TcpSpeed)
     }
 
     /// Whether it has a channel for every joint.
     pub fn is_per_joint(self) -> bool {
-        matches!(self, Self::Range | Self::Rate | Self::Accel | Self::Holding)
+        matches!(self, Self::Range | Self::Rate | Self::Accel | Self::Holding | Self::Moving | Self::Brake)
+    }
+
+    /// Whether it also looks at the stop with what was taken or released there.
+    pub(super) fn looks_after_stop(self) -> bool {
+        matches!(self, Self::Holding | Self::Brake | Self::Flange)
     }
 
     /// Whether breaking it alone makes a segment `tight` at worst: closeness is a matter of care, not of what the arm can do.
@@ -55,17 +85,21 @@ impl Check {
         matches!(self, Self::Singular | Self::SpeedLeft)
     }
 
-    /// Its first channel; none for reach.
+    /// Its first channel; none for reach, and for what is judged over the whole cycle.
     pub(super) fn first_channel(self) -> Option<usize> {
         match self {
-            Self::Reach => None,
+            Self::Reach | Self::Rms => None,
             Self::Range => Some(0),
             Self::Rate => Some(MAX_JOINTS),
             Self::Accel => Some(2 * MAX_JOINTS),
             Self::Holding => Some(3 * MAX_JOINTS),
-            Self::Singular => Some(4 * MAX_JOINTS),
-            Self::SpeedLeft => Some(4 * MAX_JOINTS + 1),
-            Self::TcpSpeed => Some(4 * MAX_JOINTS + 2),
+            Self::Moving => Some(4 * MAX_JOINTS),
+            Self::Brake => Some(5 * MAX_JOINTS),
+            // The rated load, then moment and inertia for each listed axis.
+            Self::Flange => Some(6 * MAX_JOINTS),
+            Self::Singular => Some(8 * MAX_JOINTS + 1),
+            Self::SpeedLeft => Some(8 * MAX_JOINTS + 2),
+            Self::TcpSpeed => Some(8 * MAX_JOINTS + 3),
         }
     }
 }

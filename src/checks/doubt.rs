@@ -1,4 +1,4 @@
-use crate::arm::Arm;
+use crate::arm::{Arm, Body};
 use crate::kinematics::{Posture, pose_error};
 use crate::motion::{Plan, pose_in_base};
 use crate::program::{Recipe, Taught, Then};
@@ -40,6 +40,13 @@ pub enum Doubt {
         /// The waypoint it arrives at, counted from 0.
         waypoint: usize,
     },
+    /// Torque in motion is rated but not known as a whole: some link's inertia, rotor or friction is missing.
+    MotionInPart,
+    /// A tool or load with a mass but without an inertia.
+    NoInertia {
+        /// What it is and its name.
+        thing: String,
+    },
     /// Tool and load together exceed the flange's rated load.
     OverRatedLoad {
         /// The waypoint it arrives at, counted from 0.
@@ -65,6 +72,7 @@ pub fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
     for load in recipe.loads.iter().filter(|load| load.body.mass == 0.0) {
         found.push(Doubt::LoadWithoutMass { load: load.name.clone() });
     }
+    found.extend(motion_in_part(arm, recipe));
     for (index, waypoint) in recipe.waypoints.iter().enumerate() {
         found.extend(shown_gap(arm, recipe, plan, index));
         match (&waypoint.then, recipe.load_before(index)) {
@@ -81,6 +89,26 @@ pub fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
         {
             found.push(Doubt::OverRatedLoad { waypoint: index, carried: segment.carried.mass(), rated });
         }
+    }
+    found
+}
+
+/// What makes the torque in motion less than the whole, where it is rated at all.
+fn motion_in_part(arm: &Arm, recipe: &Recipe) -> Vec<Doubt> {
+    let rated = |j: &usize| arm.joints()[*j].torque.is_some_and(|torque| torque.peak.is_some());
+    let mut found = Vec::new();
+    if !(0..arm.len()).any(|j| rated(&j)) {
+        return found;
+    }
+    if (0..arm.len()).any(|j| rated(&j) && !super::moving::is_complete(arm, j)) {
+        found.push(Doubt::MotionInPart);
+    }
+    let point = |body: &Body| body.mass > 0.0 && body.inertia.is_none();
+    for tool in recipe.tools.iter().filter(|tool| tool.body.as_ref().is_some_and(point)) {
+        found.push(Doubt::NoInertia { thing: format!("Tool \"{}\"", tool.name) });
+    }
+    for load in recipe.loads.iter().filter(|load| point(&load.body)) {
+        found.push(Doubt::NoInertia { thing: format!("Load \"{}\"", load.name) });
     }
     found
 }

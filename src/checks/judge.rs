@@ -8,7 +8,8 @@ use super::proof::{Covered, Effort, cover};
 use super::stretch::{finding, stretches, worst_of};
 use super::sweep::{Look, Sweep};
 use super::{
-    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, Unproved, Verdict, holding, reach,
+    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved, Verdict,
+    brake, holding, moving, reach,
 };
 
 /// One segment while it is judged.
@@ -55,6 +56,7 @@ pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Accep
         checks,
         findings,
         profile,
+        torque: TorqueSum::of(arm, segment, &meter),
         looked_at: case.sweep.looks.len(),
         tally,
     }
@@ -89,7 +91,7 @@ impl Case<'_> {
     fn settle(&self, covered: &Covered, checks: &mut [CheckResult], findings: &mut Vec<Finding>) {
         for result in checks.iter_mut().filter(|result| result.judged && result.proof == Proof::Open(Unproved::SamplesOnly)) {
             let slots = self.meter.slots(result.check).filter(|&slot| self.meter.channel(slot).judged);
-            let stop = self.after.as_ref().filter(|_| result.check == Check::Holding);
+            let stop = self.after.as_ref().filter(|_| result.check.looks_after_stop());
             let asked = slots
                 .map(|slot| Some(stop.map_or(0.0, |look| look.asked[slot]).max(covered.asked[slot]?)))
                 .try_fold(0.0f64, |most, asked| Some(most.max(asked?)));
@@ -115,7 +117,7 @@ impl Case<'_> {
         let judged = slots.clone().any(|slot| self.meter.channel(slot).judged) || check == Check::Holding;
         let proof = Proof::Open(Unproved::SamplesOnly);
         let mut result = CheckResult { check, judged, verdict: Verdict::Clear, proof, peaks: Vec::new() };
-        let after = self.after.as_ref().filter(|_| check == Check::Holding);
+        let after = self.after.as_ref().filter(|_| check.looks_after_stop());
         for slot in slots {
             let channel = self.meter.channel(slot);
             let mut found = stretches(&self.sweep, self.meter, slot, self.index);
@@ -129,6 +131,8 @@ impl Case<'_> {
                 }
                 found.push(at_stop);
             }
+            // What is not judged may still be over by itself.
+            result.judged |= !found.is_empty();
             result.verdict = found.iter().map(|finding| finding.verdict).fold(result.verdict, Verdict::max);
             findings.extend(found);
             result.peaks.extend(peak(self.meter, &self.sweep, after, slot));
@@ -179,7 +183,12 @@ fn why_unproven(check: Check, arm: &Arm, segment: &Segment) -> Option<Unproved> 
     if segment.followed_to() < 1.0 {
         return Some(Unproved::NotFollowed);
     }
-    if check == Check::Holding { holding::unproved(arm) } else { None }
+    match check {
+        Check::Holding => holding::unproved(arm),
+        Check::Moving => moving::unproved(arm),
+        Check::Brake => brake::unproved(arm),
+        _ => None,
+    }
 }
 
 fn peak(meter: &Meter, sweep: &Sweep, after: Option<&Look>, slot: usize) -> Option<Peak> {
@@ -198,6 +207,7 @@ fn peak(meter: &Meter, sweep: &Sweep, after: Option<&Look>, slot: usize) -> Opti
         worst = look;
     }
     let value = worst.reading[slot];
+    let channel = &channel.within(&worst.reading);
     Some(Peak {
         joint: channel.joint,
         at: worst.place,
@@ -205,6 +215,7 @@ fn peak(meter: &Meter, sweep: &Sweep, after: Option<&Look>, slot: usize) -> Opti
         limit: Measure::si(channel.limit(value), channel.of),
         room: channel.room(value),
         reserve: Room::fraction(channel.reserve),
+        judged: channel.judged || (channel.is_flagged_over() && channel.asked(value) > channel.over_above()),
     })
 }
 

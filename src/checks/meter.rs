@@ -1,15 +1,20 @@
-use crate::arm::{Arm, MAX_JOINTS};
-use crate::dynamics::holding_torque;
+use crate::arm::{Arm, Joints, MAX_JOINTS};
+use crate::dynamics::{Going, drive_torque, holding_torque, moving_torque, with_friction};
 use crate::geometry::V3;
 use crate::kinematics::{Lu, invert, null_rows, smallest_singular_value, speed_left, stacked};
 use crate::motion::{Instant, Segment};
 use crate::program::{Acceptance, Carried};
 
 use super::channel::CHANNELS;
-use super::{Channel, Check, accel, holding, range, rate, singular, tcp_speed};
+use super::{Channel, Check, accel, brake, flange, holding, moving, range, rate, singular, tcp_speed};
 
 /// A reading is the value of every channel at one instant, SI.
 pub type Reading = [f64; CHANNELS];
+
+/// First slot of the flange's channels.
+const FLANGE: usize = 6 * MAX_JOINTS;
+/// First slot of the channels that are not a joint's.
+const SINGULAR: usize = 8 * MAX_JOINTS + 1;
 
 /// A meter reads all channels of a segment.
 #[derive(Debug)]
@@ -25,7 +30,7 @@ impl<'a> Meter<'a> {
     /// A meter for one segment of an arm under the given criteria and gravity (base axes, m/s²).
     pub fn of(arm: &'a Arm, segment: &'a Segment, criteria: &Acceptance, gravity: V3) -> Self {
         let path = segment.follows_path();
-        let mut channels = [tcp_speed::channel(criteria); CHANNELS];
+        let mut channels = [Channel::UNUSED; CHANNELS];
         let mut used = Vec::with_capacity(CHANNELS);
         for (j, joint) in arm.joints().iter().enumerate() {
             for (check, channel) in [
@@ -33,6 +38,8 @@ impl<'a> Meter<'a> {
                 (Check::Rate, rate::channel(joint, j, criteria, path)),
                 (Check::Accel, accel::channel(joint, j, criteria, path)),
                 (Check::Holding, holding::channel(joint, j, criteria)),
+                (Check::Moving, moving::channel(arm, joint, j, criteria)),
+                (Check::Brake, brake::channel(joint, j, criteria)),
             ] {
                 let slot = check.first_channel().expect("per joint") + j;
                 channels[slot] = channel;
@@ -45,6 +52,10 @@ impl<'a> Meter<'a> {
             (Check::TcpSpeed, tcp_speed::channel(criteria)),
         ] {
             let slot = check.first_channel().expect("single");
+            channels[slot] = channel;
+            used.push(slot);
+        }
+        for (slot, channel) in (FLANGE..).zip(flange::channels(arm.flange())) {
             channels[slot] = channel;
             used.push(slot);
         }
@@ -67,6 +78,7 @@ impl<'a> Meter<'a> {
         match check.first_channel() {
             None => 0..0,
             Some(first) if check.is_per_joint() => first..first + self.arm.len(),
+            Some(first) if check == Check::Flange => first..first + 1 + 2 * self.arm.flange().wrist.len(),
             Some(first) => first..first + 1,
         }
     }
@@ -82,15 +94,26 @@ impl<'a> Meter<'a> {
         let mut reading = [0.0; CHANNELS];
         let push = if std::ptr::eq(carried, &self.segment.carried) { self.segment.push } else { None };
         let wrench = push.map(|push| push.in_base(&at.tcp));
-        let torque = holding_torque(self.arm.chain(), &at.posture, carried, &self.gravity, wrench.as_ref());
-        for j in 0..n {
+        let chain = self.arm.chain();
+        let weights = holding_torque(chain, &at.posture, carried, &self.gravity, None);
+        let torque = match &wrench {
+            Some(wrench) => holding_torque(chain, &at.posture, carried, &self.gravity, Some(wrench)),
+            None => weights,
+        };
+        let going = Going { rates: at.rates(rate), accelerations: at.accelerations(rate, accel) };
+        let moving = self.moving_torques(at, rate, accel, carried);
+        for (j, joint) in self.arm.joints().iter().enumerate() {
+            let balance = joint.drive.balance(at.q[j]);
             reading[j] = at.q[j];
-            reading[MAX_JOINTS + j] = at.slope[j] * rate;
-            reading[2 * MAX_JOINTS + j] = at.bend[j] * rate * rate + at.slope[j] * accel;
-            reading[3 * MAX_JOINTS + j] = torque[j];
+            reading[MAX_JOINTS + j] = going.rates[j];
+            reading[2 * MAX_JOINTS + j] = going.accelerations[j];
+            reading[3 * MAX_JOINTS + j] = torque[j] - balance;
+            reading[4 * MAX_JOINTS + j] = moving[j];
+            reading[5 * MAX_JOINTS + j] = weights[j] - balance;
         }
+        flange::read(self.arm.flange(), &at.posture, carried, &mut reading[FLANGE..SINGULAR]);
         let task = self.arm.task();
-        reading[4 * MAX_JOINTS] = smallest_singular_value(&at.jacobian.scaled_rows(task, self.arm.characteristic_length().m));
+        reading[SINGULAR] = smallest_singular_value(&at.jacobian.scaled_rows(task, self.arm.characteristic_length().m));
         let lu = at.lu.unwrap_or_else(|| {
             let null = if self.arm.is_redundant() {
                 null_rows(&at.jacobian, task, self.arm.joints())
@@ -99,9 +122,32 @@ impl<'a> Meter<'a> {
             };
             Lu::of(stacked(&at.jacobian, task, &null), n)
         });
-        reading[4 * MAX_JOINTS + 1] = speed_left(&invert(&lu), task, self.arm.joints()).moving;
+        reading[SINGULAR + 1] = speed_left(&invert(&lu), task, self.arm.joints()).moving;
         let [x, y, z, ..] = at.jacobian.twist(&at.slope);
-        reading[4 * MAX_JOINTS + 2] = V3::new(x, y, z).norm() * rate;
+        reading[SINGULAR + 2] = V3::new(x, y, z).norm() * rate;
         reading
     }
+
+    /// The torque in motion of every joint alone, rotors, friction and balancers included, N·m or N; for those who need no more.
+    pub(super) fn moving_torques(&self, at: &Instant, rate: f64, accel: f64, carried: &Carried) -> Joints {
+        let going = Going { rates: at.rates(rate), accelerations: at.accelerations(rate, accel) };
+        let push = if std::ptr::eq(carried, &self.segment.carried) { self.segment.push } else { None };
+        let wrench = push.map(|push| push.in_base(&at.tcp));
+        let mut torque = moving_torque(self.arm.chain(), &at.posture, carried, &self.gravity, wrench.as_ref(), &going);
+        for (j, joint) in self.arm.joints().iter().enumerate() {
+            let asked = torque[j] + drive_torque(&joint.drive, at.q[j], going.accelerations[j]);
+            let friction = joint.drive.friction.map_or(0.0, |f| f.asks(direction(at.slope[j], rate, accel), going.rates[j]));
+            torque[j] = with_friction(asked, friction);
+        }
+        torque
+    }
+}
+
+/// A joint whose way along the whole segment would be shorter than this at the slope of an instant stands still there, rad or m.
+const STANDS: f64 = 1e-9;
+
+/// Which way a joint moves, or is about to move at the ends of a segment: -1, 0 or 1.
+pub fn direction(slope: f64, rate: f64, accel: f64) -> f64 {
+    let stands = slope.abs() <= STANDS || (rate == 0.0 && accel == 0.0);
+    if stands { 0.0 } else { slope.signum() }
 }

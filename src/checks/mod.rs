@@ -4,31 +4,39 @@
 //! stretches and the proof treat all of them alike.
 
 mod accel;
+mod brake;
 mod channel;
 mod check;
 mod doubt;
 mod finding;
+mod flange;
 mod holding;
 mod judge;
 mod meter;
+mod moving;
 mod proof;
 mod range;
 mod rate;
 mod reach;
 mod result;
+mod rms;
 mod singular;
 mod stretch;
 mod survey;
 mod sweep;
 mod tcp_speed;
+mod torque_sum;
 mod verdict;
 
 pub use channel::{Channel, Scale};
 pub use check::Check;
 pub use doubt::{Doubt, doubts};
 pub use finding::{Excess, Finding, Kind};
-pub use meter::{Meter, Reading};
+pub use meter::{Meter, Reading, direction};
+pub use moving::is_complete;
 pub use proof::Tally;
 pub use result::{CheckResult, Peak, Place, Profile, Proof, SegmentSurvey, Unproved};
+pub use rms::{Cycle, RmsShare, is_closed};
 pub use survey::{Survey, Watch, survey};
+pub use torque_sum::TorqueSum;
 pub use verdict::Verdict;

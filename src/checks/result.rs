@@ -1,6 +1,6 @@
 use crate::units::{Measure, Room};
 
-use super::{Check, Finding, Tally, Verdict};
+use super::{Check, Finding, Tally, TorqueSum, Verdict};
 
 /// A place is one instant of a segment.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -26,6 +26,8 @@ pub struct Peak {
     pub room: Room,
     /// What must be left.
     pub reserve: Room,
+    /// Whether it counts for the verdict, or is only shown.
+    pub judged: bool,
 }
 
 /// Why a check that shows nothing bad is not called clear.
@@ -50,6 +52,8 @@ pub enum Unproved {
 pub enum Proof {
     /// Proved for every instant: the room is nowhere less than this.
     Proved(Room),
+    /// Summed up over the whole cycle, closer until the sum no longer changed; what it may still be off by is counted against it.
+    Settled,
     /// A witness was found: an instant where it is not clear.
     Witness,
     /// Neither.
@@ -72,10 +76,12 @@ pub struct CheckResult {
 }
 
 impl CheckResult {
-    /// The peak nearest to its reserve.
+    /// The peak nearest to its reserve, of those that count if any does.
     pub fn worst(&self) -> Option<&Peak> {
         let over_reserve = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
-        self.peaks.iter().filter(|peak| peak.limit.si.is_finite()).min_by(|a, b| over_reserve(a).total_cmp(&over_reserve(b)))
+        let counts = self.peaks.iter().any(|peak| peak.judged);
+        let meant = self.peaks.iter().filter(|peak| peak.limit.si.is_finite() && (peak.judged || !counts));
+        meant.min_by(|a, b| over_reserve(a).total_cmp(&over_reserve(b)))
     }
 }
 
@@ -103,6 +109,8 @@ pub struct SegmentSurvey {
     pub findings: Vec<Finding>,
     /// Room along it.
     pub profile: Profile,
+    /// Its part of the torque over the cycle.
+    pub torque: TorqueSum,
     /// How many instants were looked at.
     pub looked_at: usize,
     /// How the proof went.
@@ -116,10 +124,12 @@ impl SegmentSurvey {
     }
 
     /// The judged check that is nearest to its reserve, with its worst peak: the worse verdict first. Rate and acceleration of a
-    /// clear joint move are what its shares make them, so they come last.
+    /// clear joint move are what its shares make them, and a clear load at the flange is what it is on every segment, so they come
+    /// last.
     pub fn nearest(&self) -> Option<(&CheckResult, &Peak)> {
         let by_share = |result: &CheckResult| {
-            self.joint_move && result.verdict == Verdict::Clear && matches!(result.check, Check::Rate | Check::Accel)
+            let given = self.joint_move && matches!(result.check, Check::Rate | Check::Accel) || result.check == Check::Flange;
+            given && result.verdict == Verdict::Clear
         };
         let spare = |peak: &Peak| peak.room.as_fraction() - peak.reserve.as_fraction();
         self.checks.iter().filter(|result| result.judged).filter_map(|result| Some((result, result.worst()?))).min_by(

@@ -8,15 +8,17 @@ const BORDER: f64 = 1e-6;
 /// Every flagged stretch of one channel along a sweep.
 pub(super) fn stretches(sweep: &Sweep, meter: &Meter, slot: usize, segment: usize) -> Vec<Finding> {
     let channel = meter.channel(slot);
-    if !channel.judged {
-        return Vec::new();
-    }
-    runs(&sweep.looks, |look| look.asked[slot] > channel.flagged_above())
+    let level = match (channel.judged, channel.is_flagged_over()) {
+        (true, _) => channel.flagged_above(),
+        (false, true) => channel.over_above(),
+        (false, false) => return Vec::new(),
+    };
+    runs(&sweep.looks, |look| look.asked[slot] > level)
         .into_iter()
         .map(|run| {
             let worst = worst_of(&sweep.looks[run.clone()], slot);
-            let from = border(sweep, slot, channel.flagged_above(), run.start, run.start.checked_sub(1));
-            let to = border(sweep, slot, channel.flagged_above(), run.end - 1, Some(run.end));
+            let from = border(sweep, slot, level, run.start, run.start.checked_sub(1));
+            let to = border(sweep, slot, level, run.end - 1, Some(run.end));
             let above = channel.over_above();
             let over = (!channel.check.is_tight_at_worst() && worst.asked[slot] > above).then(|| {
                 let is_over = |k: &usize| sweep.looks[*k].asked[slot] > above;
@@ -44,6 +46,7 @@ pub(super) fn finding(
     over: Option<[Place; 2]>,
 ) -> Finding {
     let value = worst.reading[slot];
+    let channel = &channel.within(&worst.reading);
     let excess = Excess {
         worst: worst.place,
         over,

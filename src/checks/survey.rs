@@ -8,13 +8,16 @@ use crate::motion::Plan;
 use crate::program::Recipe;
 
 use super::judge::judge;
-use super::{Doubt, Finding, SegmentSurvey, Verdict, doubts};
+use super::rms::cycle;
+use super::{Cycle, Doubt, Finding, SegmentSurvey, Verdict, doubts};
 
 /// A survey is the result of checking a whole recipe.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Survey {
     /// One result a segment.
     pub segments: Vec<Arc<SegmentSurvey>>,
+    /// The torque over the whole cycle.
+    pub cycle: Cycle,
     /// All findings, the worst first.
     pub findings: Vec<Finding>,
     /// Data that is probably wrong.
@@ -22,9 +25,13 @@ pub struct Survey {
 }
 
 impl Survey {
-    /// The worst verdict of all segments.
+    /// The worst verdict of all segments and of the cycle as a whole.
     pub fn verdict(&self) -> Verdict {
-        self.segments.iter().map(|segment| segment.verdict).max().unwrap_or(Verdict::Unproven)
+        self.segments
+            .iter()
+            .map(|segment| segment.verdict)
+            .max()
+            .map_or(Verdict::Unproven, |worst| worst.max(self.cycle.rms.verdict))
     }
 
     /// How many segments have a verdict.
@@ -82,6 +89,8 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<(&Recipe, 
         .collect();
     let segments = segments?;
     let mut findings: Vec<Finding> = segments.iter().flat_map(|segment| segment.findings.iter().copied()).collect();
+    let (cycle, of_cycle) = cycle(arm, recipe, plan, &segments);
+    findings.extend(of_cycle);
     findings.sort_by(Finding::order);
-    Some(Survey { segments, findings, doubts: doubts(arm, recipe, plan) })
+    Some(Survey { segments, cycle, findings, doubts: doubts(arm, recipe, plan) })
 }

@@ -67,7 +67,7 @@ impl<'a> Sweep<'a> {
     pub fn look_of(&self, place: Place, reading: Reading) -> Look {
         let mut asked = [0.0; CHANNELS];
         for &slot in self.meter.used() {
-            asked[slot] = self.meter.channel(slot).asked(reading[slot]);
+            asked[slot] = self.meter.channel(slot).asked_in(&reading, reading[slot]);
         }
         Look { place, reading, asked }
     }

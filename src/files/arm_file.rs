@@ -109,7 +109,7 @@ fn wrist_limit(table: &Table<'_>, joints: &[Joint], nameless: bool) -> WristLimi
 
 #[cfg(test)]
 mod tests {
-    use crate::arm::Placement;
+    use crate::arm::{Curve, Placement};
     use crate::geometry::{Rotation, V3};
 
     use super::*;
@@ -157,7 +157,7 @@ wrist = [{ joint = "turn", moment = 9 }]
         assert_eq!((body.mass, body.com), (2.0, V3::new(0.01, 0.0, -0.02)));
         let tensor = body.inertia.expect("a tensor");
         assert_eq!((tensor[(0, 1)], tensor[(2, 0)], tensor[(1, 2)], tensor[(2, 2)]), (0.1, 0.2, 0.3, 3.0));
-        assert_eq!(turn.torque.map(|torque| (torque.holding, torque.peak)), Some((50.0, Some(80.0))));
+        assert_eq!(turn.torque.map(|torque| (torque.holding, torque.peak)), Some((50.0, Some(Curve::level(80.0)))));
         assert_eq!((slide.torque, slide.link), (None, None));
         assert_eq!(arm.flange().wrist[0].joint, 0);
         assert_eq!(arm.task().words(), "x y");

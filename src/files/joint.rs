@@ -1,13 +1,16 @@
-use crate::arm::{Body, Convention, Joint, JointKind, Placement, Range, TorqueRating};
+use crate::arm::{Body, Convention, Curve, Joint, JointKind, Placement, Range, TorqueRating};
 use crate::geometry::{Pose, V3};
 
 use super::body::{body, grounds};
+use super::drive::{curve, drive};
 use super::placed::{own_pose, unit};
 use super::table::{STAND_IN, Table};
 
 /// Reads one joint. `convention` is what the arm file says at its top.
 pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Convention>) -> Joint {
-    table.only(&["name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "link"]);
+    table.only(&[
+        "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer", "link",
+    ]);
     let name = table.text("name", "text, such as \"J1\"").map_or_else(|| format!("{} (no name)", index + 1), str::to_owned);
     let kind = kind(table);
     let [value_unit, rate_unit, accel_unit, effort_unit] = match kind {
@@ -25,8 +28,9 @@ pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Conventi
         range,
         rate: si(table.number("rate", rate_unit)),
         accel: si(table.number("accel", accel_unit)),
-        torque: table.table("torque").map(|torque| rating(&torque.called(table.thing().to_owned()), effort_unit)),
+        torque: table.table("torque").map(|torque| rating(&torque.called(table.thing().to_owned()), kind, effort_unit)),
         brake: table.maybe_number("brake"),
+        drive: drive(table, kind, effort_unit),
         link: link(table),
     }
 }
@@ -82,10 +86,14 @@ fn by_dh(dh: &Table<'_>, convention: Option<Convention>) -> Placement {
     }
 }
 
-fn rating(torque: &Table<'_>, unit: &str) -> TorqueRating {
+fn rating(torque: &Table<'_>, kind: JointKind, unit: &str) -> TorqueRating {
     torque.only(&["holding", "peak", "grounds"]);
     let holding = torque.number("holding", unit);
-    let peak = torque.maybe_number("peak");
+    let peak = if torque.is_array("peak") {
+        curve(torque, "peak", kind, &format!("[rate, {unit}]"))
+    } else {
+        torque.maybe_number("peak").map(Curve::level)
+    };
     // A stand-in says nothing about the other figure.
     let doubtful = torque.is_bad("holding") || torque.is_bad("peak");
     TorqueRating {

@@ -9,6 +9,7 @@ mod body;
 mod cell;
 mod complaint;
 mod demo;
+mod drive;
 mod heading;
 mod joint;
 mod opened;

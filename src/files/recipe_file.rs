@@ -1,7 +1,7 @@
 use toml::de::DeTable;
 
 use crate::arm::Arm;
-use crate::program::Recipe;
+use crate::program::{Recipe, Repeat};
 use crate::units::{Fault, Field, Step};
 
 use super::page::{Page, parse, without_mark};
@@ -76,6 +76,7 @@ fn recipe(top: &Table<'_>, arm: Option<&Arm>) -> Recipe {
         heading::RECIPE.key,
         "name",
         "arm",
+        "repeat",
         "carrying",
         "mount",
         "acceptance",
@@ -94,6 +95,7 @@ fn recipe(top: &Table<'_>, arm: Option<&Arm>) -> Recipe {
         tools: cell::tools(top),
         loads: cell::loads(top),
         frames: cell::frames(top),
+        repeat: top.word("repeat", &[("start", Repeat::Start), ("never", Repeat::Never)]).unwrap_or_default(),
         carrying: top.maybe_text("carrying").map(str::to_owned),
         waypoints: waypoints(top, arm),
     }

@@ -165,6 +165,37 @@ impl<'a> Table<'a> {
         (list.len() == items.len()).then_some(list)
     }
 
+    /// Whether an array stands under the key.
+    pub(super) fn is_array(&self, key: &str) -> bool {
+        self.get(key).is_some_and(|value| value.get_ref().is_array())
+    }
+
+    /// An array of pairs of numbers that may be there; `None` also where it can't be taken. `pair` says what a pair is.
+    pub(super) fn pairs(&self, key: &str, pair: &str) -> Option<Vec<[f64; 2]>> {
+        let value = self.get(key)?;
+        let DeValue::Array(items) = value.get_ref() else {
+            self.complain(key, format_args!("{key} is {}; it must be an array of pairs {pair}", describe(value.get_ref())));
+            return None;
+        };
+        let mut pairs = Vec::with_capacity(items.len());
+        for (index, item) in items.iter().enumerate() {
+            let numbers: Option<Vec<_>> =
+                item.get_ref().as_array().map(|item| item.iter().map(|part| number(part.get_ref())).collect());
+            let says = match numbers.as_deref() {
+                Some([Ok(x), Ok(y)]) => {
+                    pairs.push([*x, *y]);
+                    continue;
+                }
+                Some([Err(says), _] | [_, Err(says)]) => says.clone(),
+                Some(other) => format!("has {} values; it must be a pair {pair}", other.len()),
+                None => format!("is {}; it must be a pair {pair}", describe(item.get_ref())),
+            };
+            self.page.complain(item.span().start, format!("{}: {key}[{}] {says}", self.thing, index + 1));
+            self.page.mark_bad(self.field.key(key));
+        }
+        (pairs.len() == items.len()).then_some(pairs)
+    }
+
     /// Text that must be there and not empty; `what` says what it must be.
     pub(super) fn text(&self, key: &str, what: &str) -> Option<&'a str> {
         if !self.has(key) {

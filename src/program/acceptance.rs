@@ -9,6 +9,12 @@ pub struct Acceptance {
     pub accel_reserve: Share,
     /// Room that holding must leave of every joint's continuous torque.
     pub holding_reserve: Share,
+    /// Room that motion must leave of every joint's peak torque.
+    pub moving_reserve: Share,
+    /// Room that holding must leave of every brake.
+    pub brake_reserve: Share,
+    /// Room that the root mean square over the cycle must leave of every joint's continuous torque.
+    pub rms_reserve: Share,
     /// Least distance to a turning joint's end.
     pub range_least: Angle,
     /// Least distance to a sliding joint's end.
@@ -29,6 +35,9 @@ impl Default for Acceptance {
             rate_reserve: Share::fraction(0.10),
             accel_reserve: Share::fraction(0.0),
             holding_reserve: Share::fraction(0.20),
+            moving_reserve: Share::fraction(0.20),
+            brake_reserve: Share::fraction(0.20),
+            rms_reserve: Share::fraction(0.20),
             range_least: Angle::deg(3.0),
             slide_least: Length::mm(5.0),
             singular_least: 0.05,

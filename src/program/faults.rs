@@ -75,9 +75,14 @@ impl Recipe {
         let a = &self.acceptance;
         let field = Field::top().key("acceptance");
         let mut faults = Vec::new();
-        for (key, reserve) in
-            [("rate-reserve", a.rate_reserve), ("accel-reserve", a.accel_reserve), ("holding-reserve", a.holding_reserve)]
-        {
+        for (key, reserve) in [
+            ("rate-reserve", a.rate_reserve),
+            ("accel-reserve", a.accel_reserve),
+            ("holding-reserve", a.holding_reserve),
+            ("moving-reserve", a.moving_reserve),
+            ("brake-reserve", a.brake_reserve),
+            ("rms-reserve", a.rms_reserve),
+        ] {
             let percent = tidy(reserve.as_percent());
             if !(0.0..100.0).contains(&percent) {
                 faults.push(Fault::new(

@@ -14,6 +14,6 @@ pub use arrive::{Arrive, PathSpeed};
 pub use carried::Carried;
 pub(crate) use faults::arc_fault;
 pub use frame::{BASE, Frame, WORLD, frame_in_base};
-pub use recipe::{Recipe, Usual};
+pub use recipe::{Recipe, Repeat, Usual};
 pub use tool::{Load, Tool};
 pub use waypoint::{Given, Push, PushAxes, Shown, Taught, Then, Waypoint};

@@ -33,6 +33,16 @@ impl Default for Usual {
     }
 }
 
+/// What happens when the last waypoint is left behind.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub enum Repeat {
+    /// The cycle starts again at once; any pause is the dwell at the last waypoint.
+    #[default]
+    Start,
+    /// It runs once.
+    Never,
+}
+
 /// A recipe is everything a person opens to be judged: which arm, how it is mounted, tools, loads, frames, waypoints, criteria.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Recipe {
@@ -52,6 +62,8 @@ pub struct Recipe {
     pub loads: Vec<Load>,
     /// Frames.
     pub frames: Vec<Frame>,
+    /// How the cycle goes on after the last waypoint.
+    pub repeat: Repeat,
     /// The load in the tool at the first waypoint.
     pub carrying: Option<String>,
     /// Waypoints in order.

@@ -1,5 +1,6 @@
 use serde::Serialize;
 
+use crate::checks::is_closed;
 use crate::motion::Segment;
 use crate::review::{Judged, not_checked};
 use crate::units::Seconds;
@@ -21,9 +22,18 @@ struct Report {
     verdict: &'static str,
     duration_s: Option<f64>,
     segments: Vec<SegmentJson>,
+    cycle: CycleJson,
     findings: Vec<FindingJson>,
     doubts: Vec<DoubtJson>,
     not_checked: Vec<String>,
+}
+
+/// What is judged over the cycle as a whole.
+#[derive(Debug, Serialize)]
+struct CycleJson {
+    verdict: &'static str,
+    closed: bool,
+    checks: Checks,
 }
 
 /// One segment. `index` is its number as people read it: that of the waypoint it arrives at, counted from 1.
@@ -57,11 +67,21 @@ pub fn check_json(judged: &Judged, recipe_file: &str, arm_file: &str) -> String 
         verdict: judged.survey.verdict().word(),
         duration_s: figure(judged.plan.duration()),
         segments,
+        cycle: cycle_json(judged),
         findings: judged.survey.findings.iter().map(|finding| FindingJson::of(judged, finding)).collect(),
         doubts: judged.survey.doubts.iter().map(|doubt| DoubtJson::of(judged, doubt)).collect(),
         not_checked: not_checked(judged),
     };
     serde_json::to_string(&report).expect("names are text, and figures are finite or null")
+}
+
+fn cycle_json(judged: &Judged) -> CycleJson {
+    let rms = &judged.survey.cycle.rms;
+    CycleJson {
+        verdict: rms.verdict.word(),
+        closed: is_closed(&judged.recipe, &judged.plan),
+        checks: Checks(vec![(rms.check, CheckJson::of_cycle(judged, rms))]),
+    }
 }
 
 fn segment_json(judged: &Judged, index: usize, segment: &Segment) -> SegmentJson {

@@ -106,7 +106,7 @@ impl DoubtJson {
             | Doubt::NothingToRelease { waypoint }
             | Doubt::NoMotion { waypoint }
             | Doubt::OverRatedLoad { waypoint, .. } => Some(waypoint + 1),
-            Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } => None,
+            Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } | Doubt::MotionInPart | Doubt::NoInertia { .. } => None,
         };
         Self { waypoint, text: doubt_text(judged, doubt) }
     }

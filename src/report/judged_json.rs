@@ -49,7 +49,7 @@ impl At {
 pub(super) struct JointPeak {
     joint: String,
     peak: Option<f64>,
-    at: At,
+    at: Option<At>,
     limit: Option<f64>,
     unit: &'static str,
     room: Option<f64>,
@@ -74,7 +74,18 @@ pub(super) struct CheckJson {
 }
 
 impl CheckJson {
+    /// A result of a segment.
     pub(super) fn of(judged: &Judged, segment: &Segment, result: &CheckResult) -> Self {
+        Self::told(judged, Some(segment), result)
+    }
+
+    /// A result of the cycle as a whole, which is at no instant.
+    pub(super) fn of_cycle(judged: &Judged, result: &CheckResult) -> Self {
+        Self::told(judged, None, result)
+    }
+
+    fn told(judged: &Judged, segment: Option<&Segment>, result: &CheckResult) -> Self {
+        let at = |peak: &Peak| segment.map(|segment| At::of(segment, peak.at));
         let worst = result.worst().or_else(|| result.peaks.first());
         let name = |peak: &Peak| peak.joint.map(|j| judged.arm.joints()[j].name.clone());
         let room = |peak: &Peak| peak.limit.si.is_finite().then(|| percent(peak.room)).flatten();
@@ -85,7 +96,7 @@ impl CheckJson {
                 Some(JointPeak {
                     joint: name(peak)?,
                     peak: shown(peak.demand),
-                    at: At::of(segment, peak.at),
+                    at: at(peak),
                     limit: shown(peak.limit),
                     unit: peak.demand.of.ascii(),
                     room: room(peak),
@@ -102,7 +113,7 @@ impl CheckJson {
             proof,
             proved_room,
             joint: worst.and_then(name),
-            at: worst.map(|peak| At::of(segment, peak.at)),
+            at: worst.and_then(at),
             demand: worst.and_then(|peak| shown(peak.demand)),
             limit: worst.and_then(|peak| shown(peak.limit)),
             unit: worst.map(|peak| peak.demand.of.ascii()),
@@ -114,6 +125,7 @@ impl CheckJson {
 fn proof(proof: Proof) -> (&'static str, Option<f64>) {
     match proof {
         Proof::Proved(room) => ("proved", percent(room)),
+        Proof::Settled => ("settled", None),
         Proof::Witness => ("witness", None),
         Proof::Open(why) => (unproved(why), None),
     }

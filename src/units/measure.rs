@@ -19,6 +19,8 @@ pub enum Dimension {
     Torque,
     /// Force, N for both.
     Force,
+    /// Moment of inertia, kg·m² for both.
+    Inertia,
     /// Mass, kg for both.
     Mass,
     /// Time, s for both.
@@ -33,7 +35,7 @@ impl Dimension {
         match self {
             Self::Angle | Self::TurnRate | Self::TurnAcceleration => 180.0 / std::f64::consts::PI,
             Self::Length | Self::Speed | Self::Acceleration => 1000.0,
-            Self::Torque | Self::Force | Self::Mass | Self::Time | Self::Ratio => 1.0,
+            Self::Torque | Self::Force | Self::Inertia | Self::Mass | Self::Time | Self::Ratio => 1.0,
         }
     }
 
@@ -48,6 +50,7 @@ impl Dimension {
             Self::Acceleration => "mm/s²",
             Self::Torque => "N·m",
             Self::Force => "N",
+            Self::Inertia => "kg·m²",
             Self::Mass => "kg",
             Self::Time => "s",
             Self::Ratio => "",
@@ -65,6 +68,7 @@ impl Dimension {
             Self::Acceleration => "mm_s2",
             Self::Torque => "nm",
             Self::Force => "n",
+            Self::Inertia => "kg_m2",
             Self::Mass => "kg",
             Self::Time => "s",
             Self::Ratio => "1",
@@ -137,7 +141,7 @@ impl fmt::Display for Measure {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         let shown = self.shown();
         let digits = f.precision().unwrap_or(match self.of {
-            Dimension::Ratio => 3,
+            Dimension::Ratio | Dimension::Inertia => 3,
             Dimension::Time => 2,
             Dimension::Speed | Dimension::Acceleration => 0,
             _ if shown.abs() >= 99.95 => 0,

@@ -35,7 +35,7 @@ pub const ARMS: &[Case] = &[
     (
         "rate = 175",
         "rate = 175\ncolour = \"grey\"",
-        r#"joint J1: unknown key "colour"; the keys here are "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake" and "link" (arm.toml:12:1)"#,
+        r#"joint J1: unknown key "colour"; the keys here are "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer" and "link" (arm.toml:12:1)"#,
     ),
     (
         "range = [-170, 170]",
@@ -176,4 +176,76 @@ pub const ARMS: &[Case] = &[
         "characteristic-length is 0.1 mm; it must be at least 0.5 mm (arm.toml:5:25)",
     ),
     ("range = [0, 400]", "range = [400, 33]", "joint J3: range is [400, 33]; the first must be below the second (arm.toml:31:9)"),
+    (
+        "brake = 700",
+        "brake = 700\nrotor = { inertia = -1 }",
+        "joint J1: rotor inertia is -1; it must be 0 or more (arm.toml:15:21)",
+    ),
+    (
+        "brake = 700",
+        "brake = 700\nrotor = { mass = 1 }",
+        "joint J1: rotor: inertia is missing; it must be a number (kg·m²) (arm.toml:15:9)\njoint J1: rotor: unknown key \"mass\"; the keys here are \"inertia\" and \"grounds\" (arm.toml:15:11)",
+    ),
+    ("brake = 700", "brake = 700\nrotor = 3", "joint J1: rotor is the number 3; it must be a table, { ... } (arm.toml:15:9)"),
+    (
+        "brake = 700",
+        "brake = 700\nfriction = { steady = -2, viscous = -0.5 }",
+        "joint J1: steady friction is -2; it must be 0 or more (arm.toml:15:23)\njoint J1: viscous friction is -0.5; it must be 0 or more (arm.toml:15:37)",
+    ),
+    (
+        "brake = 700",
+        "brake = 700\nfriction = { steady = 6 }",
+        "joint J1: friction: viscous is missing; it must be a number (N·m per deg/s) (arm.toml:15:12)",
+    ),
+    (
+        "accel = 4000",
+        "accel = 4000\nfriction = { steady = 6 }",
+        "joint J3: friction: viscous is missing; it must be a number (N per mm/s) (arm.toml:34:12)",
+    ),
+    (
+        "brake = 700",
+        "brake = 700\nbalancer = 40",
+        "joint J1: balancer is the number 40; it must be an array of pairs [deg, N·m] (arm.toml:15:12)",
+    ),
+    (
+        "brake = 700",
+        "brake = 700\nbalancer = [[-170, 5], 4]",
+        "joint J1: balancer[2] is the number 4; it must be a pair [deg, N·m] (arm.toml:15:24)",
+    ),
+    (
+        "brake = 700",
+        "brake = 700\nbalancer = [[-90, 5], [90, -5]]",
+        "joint J1: balancer is given from -90 to 90; it must cover the range, -170 to 170 (arm.toml:15:12)",
+    ),
+    (
+        "brake = 700",
+        "brake = 700\nbalancer = [[-170, 5], [-170, 3]]",
+        "joint J1: balancer goes from -170 to -170; its pairs must be in rising order (arm.toml:15:12)",
+    ),
+    ("brake = 700", "brake = 700\nbalancer = []", "joint J1: balancer has 0 pairs; it must have 1 to 12 (arm.toml:15:12)"),
+    (
+        "brake = 700",
+        "brake = 700\nbalancer = [[-170, \"low\"], [170]]",
+        "joint J1: balancer[1] is text \"low\"; it must be a number (arm.toml:15:13)\njoint J1: balancer[2] has 1 values; it must be a pair [deg, N·m] (arm.toml:15:28)",
+    ),
+    (
+        "peak = 900",
+        "peak = [[0, 900], [120, 700]]",
+        "joint J1: peak ends at 120; it must reach the joint's rate, 175 (arm.toml:13:34)",
+    ),
+    (
+        "peak = 900",
+        "peak = [[0, 900], [120, 700], [175, 800]]",
+        "joint J1: peak rises from 700 to 800 N·m; it must not rise with the rate (arm.toml:13:34)",
+    ),
+    ("peak = 900", "peak = [[10, 900], [175, 700]]", "joint J1: peak begins at 10; it must begin at a rate of 0 (arm.toml:13:34)"),
+    ("peak = 900", "peak = [[0, 400], [175, 300]]", "joint J1: peak is 400; it must be at least holding, 500 (arm.toml:13:34)"),
+    ("peak = 900", "peak = [[0, 900], [175, 0]]", "joint J1: peak is 0 N·m; it must be above 0 (arm.toml:13:34)"),
+    ("peak = 900", "peak = \"high\"", "joint J1: peak is text \"high\"; it must be a number (arm.toml:13:34)"),
+    ("peak = 900", "peak = -3", "joint J1: peak is -3 N·m; it must be above 0 (arm.toml:13:34)"),
+    (
+        "wrist = [{ joint = \"J2\", moment = 30, inertia = 1.2 }]",
+        "wrist = [{ joint = \"J2\", moment = 30 }, { joint = \"J2\", moment = 20 }]",
+        "flange: wrist 2: J2 is listed already (arm.toml:37:51)",
+    ),
 ];

@@ -3,11 +3,12 @@
 use std::sync::Arc;
 
 use elbowroom::arm::{
-    Arm, ArmData, Body, Convention, Flange, Grounds, Joint, JointKind, Joints, Placement, Range, Task, TaskRow, TorqueRating,
+    Arm, ArmData, Body, Convention, Curve, Drive, Flange, Friction, Grounds, Joint, JointKind, Joints, Placement, Range, Rotor,
+    Task, TaskRow, TorqueRating, WristLimit,
 };
 use elbowroom::geometry::{Pose, Rotation, V3};
 use elbowroom::kinematics::Posture;
-use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Recipe, Taught, Usual, Waypoint};
+use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Push, PushAxes, Recipe, Repeat, Taught, Tool, Usual, Waypoint};
 use elbowroom::units::{Acceleration, Seconds, Share, Speed, TurnAcceleration, TurnRate};
 
 /// SplitMix64: small, well mixed, and the same everywhere.
@@ -65,6 +66,7 @@ fn turning(name: usize, a: f64, alpha: f64, d: f64, theta: f64) -> Joint {
         accel: 12.0 + name as f64 * 6.0,
         torque: None,
         brake: None,
+        drive: Drive::default(),
         link: None,
     }
 }
@@ -116,11 +118,39 @@ pub fn arm(family: Family, draw: &mut Draw) -> Arm {
     for joint in &mut joints {
         mass *= draw.between(0.4, 0.8);
         let com = V3::new(draw.between(-0.2, 0.0), draw.between(-0.1, 0.1), draw.between(-0.1, 0.1));
-        joint.link = Some(Body { mass, com, inertia: None, grounds: Grounds::Sheet });
-        joint.torque = Some(TorqueRating { holding: mass * 15.0 + 60.0, peak: None, grounds: Grounds::Sheet });
+        joint.link = Some(Body { mass, com, inertia: Some(tensor(mass * 0.03, draw)), grounds: Grounds::Sheet });
+        let holding = mass * 15.0 + 60.0;
+        // A slide moves all its mass, not the square of a lever.
+        let most = if joint.kind == JointKind::Prismatic { 5.0 * holding } else { 3.0 * holding };
+        let falling = [[0.0, most], [0.4 * joint.rate, most], [joint.rate, 0.7 * most], [2.0 * joint.rate, 0.6 * most]];
+        let peak = if draw.unit() < 0.5 { Curve::level(most) } else { Curve::through(&falling).expect("in order") };
+        joint.torque = Some(TorqueRating { holding, peak: Some(peak), grounds: Grounds::Sheet });
+        joint.brake = Some(1.2 * holding);
+        let rotor = Rotor { inertia: 0.1 * mass * draw.unit(), grounds: Grounds::Sheet };
+        let friction =
+            Friction { steady: 0.05 * holding * draw.unit(), viscous: 0.02 * holding * draw.unit(), grounds: Grounds::Sheet };
+        joint.drive = Drive { rotor: Some(rotor), friction: Some(friction), balancer: None };
+        if draw.unit() < 0.3 {
+            let pull = 0.2 * holding * draw.between(-1.0, 1.0);
+            let points = [[-4.0, -pull], [-0.5, 0.3 * pull], [0.3, 0.4 * pull], [4.0, pull]];
+            joint.drive.balancer = Curve::through(&points);
+        }
     }
+    let last = joints.len() - 1;
+    // Of an arm with slides the last axes are far from the flange.
+    let far = if matches!(family, Family::FourSlide | Family::ThreeSlide) { 4.0 } else { 1.0 };
+    let limit = |joint: usize| WristLimit { joint, moment: 32.0 * far, inertia: Some(0.9 * far * far) };
+    let flange = Flange { rated_load: Some(12.0), wrist: vec![limit(last), limit(last - 1), limit(last - 2)] };
     let name = format!("{family:?}");
-    Arm::build(ArmData { name, joints, flange: Flange::default(), characteristic_length: Some(0.5), task }).expect("a sound arm")
+    Arm::build(ArmData { name, joints, flange, characteristic_length: Some(0.5), task }).expect("a sound arm")
+}
+
+/// An inertia tensor of a body about as large as `size`, kg·m², its principal axes turned anyhow.
+fn tensor(size: f64, draw: &mut Draw) -> elbowroom::geometry::M3 {
+    let [a, b] = [draw.between(0.3, 1.0), draw.between(0.3, 1.0)];
+    let axes = elbowroom::geometry::turn_about(&draw.direction(), draw.between(0.0, 3.0));
+    let moments = [a, b, draw.between((a - b).abs(), a + b)].map(|moment| size * moment);
+    axes * elbowroom::geometry::M3::from_diagonal(&V3::from(moments)) * axes.transpose()
 }
 
 /// A posture well inside the ranges.
@@ -162,7 +192,16 @@ pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
         let share = Share::fraction(draw.between(0.2, 1.0));
         waypoint("end", Taught::Joints(posture(arm, draw)), Some(Arrive::Joint { share: Some(share), accel_share: None }))
     };
-    recipe(vec![waypoint("start", Taught::Joints(start), None), last])
+    let mut recipe = recipe(vec![waypoint("start", Taught::Joints(start), None), last]);
+    if draw.unit() < 0.4 {
+        let axes = if draw.unit() < 0.5 { PushAxes::Tool } else { PushAxes::Frame("base".to_owned()) };
+        let force = draw.direction() * draw.between(5.0, 40.0);
+        recipe.waypoints[1].push = Some(Push { force, torque: draw.direction() * draw.between(0.0, 4.0), axes });
+    }
+    let com = V3::new(draw.between(-0.1, 0.1), draw.between(-0.1, 0.1), draw.between(0.0, 0.15));
+    let body = Body { mass: draw.between(0.5, 6.0), com, inertia: Some(tensor(0.05, draw)), grounds: Grounds::Sheet };
+    recipe.tools = vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body) }];
+    recipe
 }
 
 /// A recipe of these waypoints with criteria that leave most of them clear.
@@ -183,6 +222,7 @@ pub fn recipe(waypoints: Vec<Waypoint>) -> Recipe {
         tools: vec![],
         loads: vec![],
         frames: vec![],
+        repeat: Repeat::Start,
         carrying: None,
         waypoints,
     }

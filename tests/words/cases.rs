@@ -6,6 +6,8 @@ use elbowroom::review::{Explanation, Judged, Label, explain, wrap};
 
 /// A six-axis arm with a spherical wrist.
 pub const SIX: &str = include_str!("six-axis.toml");
+/// A six-axis arm whose file gives all that torque in motion needs.
+pub const FULL: &str = include_str!("../../recipes/arms/six-axis-12kg.toml");
 /// An arm of four joints, the third of which slides.
 pub const FOUR: &str = include_str!("../../recipes/arms/four-axis-rrpr.toml");
 

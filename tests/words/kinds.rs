@@ -1,7 +1,7 @@
 use elbowroom::checks::{Check, Doubt, Kind};
 use elbowroom::review::{Judged, doubt_text, explain, headline, no_finding, not_checked};
 
-use crate::cases::{FOUR, READY, SIX, STRETCH, found, judged, past_a_straight_wrist, shown};
+use crate::cases::{FOUR, FULL, READY, SIX, STRETCH, found, judged, past_a_straight_wrist, shown};
 
 fn snapshot(name: &str, judged: &Judged, check: Check) {
     insta::assert_snapshot!(name, shown(&explain(judged, &found(judged, check))));
@@ -92,6 +92,75 @@ fn holding_after_something_is_taken_is_told_at_the_stop() {
     let judged = judged(SIX, "[acceptance]\nholding-reserve = 19", &taking);
     let finding = judged.survey.findings.iter().find(|finding| matches!(finding.kind, Kind::Excess(excess) if excess.after_stop));
     insta::assert_snapshot!("holding_after", shown(&explain(&judged, finding.expect("there is one"))));
+}
+
+/// The recipe's closing leg: back to where [`STRETCH`] began.
+const BACK: &str = "[[waypoint]]\nname = \"back\"\njoints = [-22, 28, -33, 0, 55, 0]\narrive = \"joint\"\nshare = 90\n";
+
+#[test]
+fn torque_in_motion_is_told_by_its_parts_and_by_what_helps() {
+    let dip = r#"
+    carrying = "housing"
+    [[waypoint]]
+    name = "above"
+    joints = [-22, 28, -33, 0, 55, 0]
+    [[waypoint]]
+    name = "below"
+    joints = [-22, 68, -58, 0, 55, 0]
+    arrive = "joint"
+    share = 100
+    "#;
+    let falling = FULL.replace("peak = 1500 }", "peak = [[0, 1000], [40, 1000], [165, 500]] }");
+    snapshot("moving", &judged(&falling, "", dip), Check::Moving);
+    snapshot("moving_tight", &judged(FULL, "[acceptance]\nmoving-reserve = 45", dip), Check::Moving);
+    // Without rotor and friction it is told only where links, tool and load are over by themselves.
+    let weak = SIX.replace("peak = 1500", "peak = 700");
+    let in_part = judged(&weak, "", dip);
+    snapshot("moving_in_part", &in_part, Check::Moving);
+    assert!(not_checked(&in_part).iter().any(|told| told.starts_with("Torque in motion of J1")), "{:?}", not_checked(&in_part));
+    assert!(!not_checked(&judged(FULL, "", dip)).iter().any(|told| told.starts_with("Torque in motion")));
+    let strong = judged(SIX, "", dip);
+    assert!(!strong.survey.segments[0].check(Check::Moving).judged && strong.survey.doubts.contains(&Doubt::MotionInPart));
+}
+
+#[test]
+fn a_push_is_a_part_of_torque_in_motion() {
+    let pressing = r#"
+    carrying = "housing"
+    [[waypoint]]
+    name = "above"
+    joints = [-22, 28, -33, 0, 55, 0]
+    [[waypoint]]
+    name = "below"
+    joints = [-22, 48, -43, 0, 55, 0]
+    arrive = "joint"
+    share = 40
+    push = { force = [0, 0, 300], frame = "base" }
+    "#;
+    snapshot("moving_push", &judged(FULL, "[acceptance]\nmoving-reserve = 60", pressing), Check::Moving);
+}
+
+#[test]
+fn a_brake_is_told_by_what_it_holds_when_the_power_fails() {
+    snapshot("brake", &judged(&FULL.replace("brake  = 950", "brake  = 560"), "", STRETCH), Check::Brake);
+    snapshot("brake_tight", &judged(FULL, "[acceptance]\nbrake-reserve = 45", STRETCH), Check::Brake);
+}
+
+#[test]
+fn the_load_at_the_flange_is_told_by_weight_lever_and_inertia() {
+    let rated = |from: &str, to: &str| judged(&FULL.replace(from, to), "", STRETCH);
+    snapshot("flange_mass", &rated("rated-load = 12", "rated-load = 9"), Check::Flange);
+    snapshot("flange_moment", &rated("\"J5\", moment = 30", "\"J5\", moment = 18"), Check::Flange);
+    snapshot("flange_inertia", &rated("\"J5\", moment = 30, inertia = 1.2", "\"J5\", moment = 30, inertia = 0.4"), Check::Flange);
+}
+
+#[test]
+fn the_cycle_is_told_by_its_segments_and_by_the_pause_that_helps() {
+    let closed = judged(FULL, "[acceptance]\nholding-reserve = 5\nrms-reserve = 45", &format!("{STRETCH}dwell = 2\n{BACK}"));
+    snapshot("rms", &closed, Check::Rms);
+    assert_eq!(headline(&closed), "Test: NOT READY: 2 clear, the cycle as a whole tight");
+    let open = judged(FULL, "", STRETCH);
+    assert!(not_checked(&open).iter().any(|told| told.contains("way back is missing")), "{:?}", not_checked(&open));
 }
 
 #[test]

@@ -3,8 +3,11 @@ use crate::checks::channel::{CHANNELS, Channel, Scale};
 use crate::checks::{Check, Meter};
 use crate::geometry::V3;
 
-use super::ball::{Ball, Moving, Slope};
+use super::ball::{Ball, Moving};
+use super::flange;
 use super::leaf::{Leaf, Middle, Row};
+use super::newton_euler::Ways;
+use super::torque::{Stretch, Torques};
 use super::view::{Motion, View};
 
 /// How the fraction runs with time over a stretch: on one piece of the law, where its acceleration is constant and its squared
@@ -19,7 +22,7 @@ pub(super) struct Pace {
 
 impl Pace {
     /// The greatest squared rate over a stretch of half-width `half`.
-    fn most_squared(self, half: f64) -> f64 {
+    pub fn most_squared(self, half: f64) -> f64 {
         (self.rate_squared + 2.0 * self.accel.abs() * half).max(0.0)
     }
 }
@@ -31,10 +34,11 @@ pub(super) type Asked = [f64; CHANNELS];
 const MARGIN: f64 = 1e-10;
 
 /// What a largest size asks of a ceiling; an open channel asks nothing.
-fn asked_of(channel: &Channel, most: f64) -> f64 {
+pub(super) fn asked_of(channel: &Channel, most: f64) -> f64 {
     match channel.scale {
         Scale::Ceiling(limit) => most / limit + MARGIN,
         Scale::Within { half, .. } => most / half + MARGIN,
+        Scale::CeilingByRate(_) => channel.asked(most) + MARGIN,
         Scale::Floor(_) | Scale::Open => 0.0,
     }
 }
@@ -45,8 +49,10 @@ pub(super) fn on_path(meter: &Meter, needs: &[usize], middle: &Middle, leaf: &Le
     let fastest_squared = pace.most_squared(h);
     let fastest = fastest_squared.sqrt();
     let mut asked = [0.0; CHANNELS];
-    let wants = |check: Check| meter.slots(check).any(|slot| needs.contains(&slot));
-    let torque = wants(Check::Holding).then(|| middle.view.holding(&leaf.motion, &middle.slope, &leaf.slope_spread));
+    let ways = Ways { slope: &middle.slope, slope_spread: &leaf.slope_spread, bend: &middle.bend, bend_spread: &leaf.spread };
+    let stretch = Stretch { view: &middle.view, motion: &leaf.motion, ways, half: h };
+    let torques = Torques::over(middle.arm.joints(), meter, needs, stretch);
+    flange::bound(meter, needs, &middle.view, &ways, h, leaf.motion.slack, &mut asked);
     for &slot in needs {
         let channel = meter.channel(slot);
         let j = channel.joint.unwrap_or(0);
@@ -69,10 +75,11 @@ pub(super) fn on_path(meter: &Meter, needs: &[usize], middle: &Middle, leaf: &Le
                 let most = (value + h * change).abs().max((value - h * change).abs());
                 asked_of(channel, most + d * (h * pace.accel.abs() + fastest_squared))
             }
-            Check::Holding => asked_of(channel, torque.as_ref().expect("wanted")[j].most(h)),
+            Check::Holding | Check::Moving | Check::Brake => torques.as_ref().map_or(f64::NAN, |t| t.asked(channel, pace)),
+            Check::Flange => asked[slot],
             Check::SpeedLeft => speed_left(channel, middle, leaf),
             Check::TcpSpeed => asked_of(channel, middle.tcp_speed(leaf) * fastest),
-            Check::Singular | Check::Reach => 0.0,
+            Check::Singular | Check::Reach | Check::Rms => 0.0,
         };
     }
     if let Some(slot) = meter.slots(Check::Singular).find(|slot| needs.contains(slot)) {
@@ -130,19 +137,19 @@ pub(super) struct Even<'a> {
     pub half: f64,
 }
 
-/// Bounds over a stretch of a joint move: only holding and TCP speed need any; the rest is exact by its ends.
+/// Bounds over a stretch of a joint move: only torques, flange and TCP speed need any; the rest is exact by its ends.
 pub(super) fn on_joint_move(arm: &Arm, meter: &Meter, needs: &[usize], even: &Even, pace: Pace) -> Asked {
     let mut asked = [0.0; CHANNELS];
     let Even { view, motion, slope, half } = *even;
-    let wants = |check: Check| meter.slots(check).any(|slot| needs.contains(&slot));
-    let torque = wants(Check::Holding).then(|| view.holding(motion, slope, &[0.0; MAX_JOINTS]));
+    let none = [0.0; MAX_JOINTS];
+    let ways = Ways { slope, slope_spread: &none, bend: &none, bend_spread: &none };
+    let torques = Torques::over(arm.joints(), meter, needs, Stretch { view, motion, ways, half });
+    flange::bound(meter, needs, view, &ways, half, motion.slack, &mut asked);
     for &slot in needs {
         let channel = meter.channel(slot);
         asked[slot] = match channel.check {
-            Check::Holding => {
-                let torque: &[Slope; MAX_JOINTS] = torque.as_ref().expect("wanted");
-                asked_of(channel, torque[channel.joint.unwrap_or(0)].most(half))
-            }
+            Check::Holding | Check::Moving | Check::Brake => torques.as_ref().map_or(f64::NAN, |t| t.asked(channel, pace)),
+            Check::Flange => asked[slot],
             Check::TcpSpeed => {
                 let offset = view.tcp_offset(motion);
                 let twist = (0..arm.len()).fold(Moving::zero(), |sum, j| {

@@ -128,7 +128,7 @@ impl Run<'_> {
             for &[rate, accel] in if still { &[[0.0, 0.0]][..] } else { &corners[..] } {
                 let reading = self.meter.read(at, rate.max(0.0), accel);
                 for &slot in &taken {
-                    let asked = self.meter.channel(slot).asked(reading[slot]);
+                    let asked = self.meter.channel(slot).asked_in(&reading, reading[slot]);
                     let most = self.out.asked[slot].get_or_insert(0.0);
                     *most = most.max(asked);
                 }
@@ -190,7 +190,7 @@ impl Run<'_> {
         let mut flagged = false;
         self.needs.retain(|&slot| {
             let channel = self.meter.channel(slot);
-            let clear = channel.asked(reading[slot]) <= channel.flagged_above();
+            let clear = channel.asked_in(&reading, reading[slot]) <= channel.flagged_above();
             flagged |= !clear;
             clear
         });
@@ -200,7 +200,7 @@ impl Run<'_> {
         if self.segment.follows_path() { self.try_path(&instant, whole, pace) } else { self.try_joint(&instant, whole, pace) }
     }
 
-    fn view(&self, at: &Instant, viewer: usize) -> View<'_> {
+    fn view<'b>(&'b self, at: &'b Instant, viewer: usize) -> View<'b> {
         let reference = match (self.wrist, self.arm.task().is_whole() && self.arm.len() >= 6) {
             (Some(wrist), _) => Reference::InLastLink(wrist.centre),
             (None, true) => Reference::NearLastAxes,

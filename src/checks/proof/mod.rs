@@ -23,7 +23,10 @@ mod border;
 mod bounds;
 mod closeness;
 mod cover;
+mod flange;
 mod leaf;
+mod newton_euler;
+mod torque;
 mod view;
 
 pub use cover::Tally;

@@ -12,13 +12,17 @@ use super::ball::{Ball, Moving, Slope};
 /// middle of the arm, neither end moves much.
 #[derive(Debug, Clone)]
 pub(super) struct View<'a> {
-    chain: &'a Chain,
+    pub chain: &'a Chain,
+    /// The middle itself.
+    pub at: &'a Instant,
+    /// Tool and load.
+    pub carried: &'a Carried,
     /// The link that looks on: 0 is the base, j + 1 the link of joint j.
     viewer: usize,
     /// Axes.
     pub z: [V3; MAX_JOINTS],
     /// From a point on each axis to a point on the next; the last to the reference point.
-    e: [V3; MAX_JOINTS],
+    pub e: [V3; MAX_JOINTS],
     /// Mass moment of each link with all that hangs on its end, about its axis point, kg·m.
     b: [V3; MAX_JOINTS],
     /// Mass from each link on outwards, kg.
@@ -39,8 +43,8 @@ pub(super) struct Motion {
     pub r: [Moving; MAX_JOINTS],
     /// Turning of every link, 0 the base, seen from the viewer.
     pub turning: [Ball; MAX_JOINTS + 1],
-    slack: f64,
-    half: f64,
+    pub slack: f64,
+    pub half: f64,
 }
 
 /// Points that joint axes are nearest to, for the reference point: enough to make the system of equations regular.
@@ -50,8 +54,8 @@ impl<'a> View<'a> {
     /// The view at an instant. `centre` is the wrist centre in the last axis system where there is one.
     pub fn of(
         chain: &'a Chain,
-        at: &Instant,
-        carried: &Carried,
+        at: &'a Instant,
+        carried: &'a Carried,
         push: Option<Push>,
         gravity: V3,
         reference: Reference,
@@ -67,6 +71,8 @@ impl<'a> View<'a> {
         };
         let mut view = Self {
             chain,
+            at,
+            carried,
             viewer,
             z: [V3::zeros(); MAX_JOINTS],
             e: [V3::zeros(); MAX_JOINTS],
@@ -190,9 +196,20 @@ impl<'a> View<'a> {
         Moving::fixed(vector, &motion.turning[0], motion.half, motion.slack)
     }
 
-    /// The holding torque of every joint.
+    /// The same view from the last link.
+    pub fn seen_from_the_last_link(&self) -> Self {
+        Self { viewer: self.chain.len, ..self.clone() }
+    }
+
+    /// The point of joint `j`'s axis that vectors of its link start from, base, m.
+    pub fn axis_point(&self, j: usize) -> V3 {
+        let reference = self.at.tcp.at - self.to_tcp;
+        self.e[j..self.chain.len].iter().fold(reference, |point, e| point - e)
+    }
+
+    /// The holding torque that the weights ask of every joint.
     #[inline]
-    pub fn holding(&self, motion: &Motion, slope: &[f64], spread: &[f64]) -> [Slope; MAX_JOINTS] {
+    pub fn weights(&self, motion: &Motion, slope: &[f64], spread: &[f64]) -> [Slope; MAX_JOINTS] {
         let n = self.chain.len;
         let mut torque = [Slope::default(); MAX_JOINTS];
         let g = self.base_vector(motion, self.gravity);
@@ -210,26 +227,31 @@ impl<'a> View<'a> {
                 motion.z[j].dot(&g).times(-self.mass[j])
             };
         }
-        if let Some(push) = self.push {
-            let [force, moment] = self.push_in_base.map(|vector| {
-                if push.with_tool {
-                    Moving::fixed(vector, &motion.turning[n], motion.half, motion.slack)
-                } else {
-                    self.base_vector(motion, vector)
-                }
-            });
-            let offset = self.tcp_offset(motion);
-            for j in 0..n {
-                let add = if self.chain.turns[j] {
-                    let turn = motion.r[j].plus(&offset).cross(&force).plus(&moment);
-                    motion.z[j].dot(&turn)
-                } else {
-                    motion.z[j].dot(&force)
-                };
-                torque[j] = torque[j].plus(add);
-            }
-        }
         torque
+    }
+
+    /// What a process force adds to that; `None` without one.
+    pub fn push(&self, motion: &Motion) -> Option<[Slope; MAX_JOINTS]> {
+        let push = self.push?;
+        let n = self.chain.len;
+        let [force, moment] = self.push_in_base.map(|vector| {
+            if push.with_tool {
+                Moving::fixed(vector, &motion.turning[n], motion.half, motion.slack)
+            } else {
+                self.base_vector(motion, vector)
+            }
+        });
+        let offset = self.tcp_offset(motion);
+        let mut torque = [Slope::default(); MAX_JOINTS];
+        for j in 0..n {
+            torque[j] = if self.chain.turns[j] {
+                let turn = motion.r[j].plus(&offset).cross(&force).plus(&moment);
+                motion.z[j].dot(&turn)
+            } else {
+                motion.z[j].dot(&force)
+            };
+        }
+        Some(torque)
     }
 }
 

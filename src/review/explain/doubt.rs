@@ -1,3 +1,4 @@
+use crate::arm::Joint;
 use crate::checks::Doubt;
 use crate::units::{Angle, Length, Mass};
 
@@ -36,6 +37,18 @@ pub fn doubt_text(judged: &Judged, doubt: &Doubt) -> String {
                  like this.",
                 name(*waypoint)
             )
+        }
+        Doubt::MotionInPart => {
+            let lacking = |joint: &&Joint| !joint.drive.is_complete() || joint.link.is_none_or(|link| link.inertia.is_none());
+            let names: Vec<String> = judged.arm.joints().iter().filter(lacking).map(|joint| joint.name.clone()).collect();
+            format!(
+                "Torque in motion is links, tool and load only: for {} the arm file leaves out the link's inertia, the rotor or the \
+                 friction. Where that alone is over the peak rating it is told; otherwise it counts as not checked.",
+                super::listing::all_of(&names)
+            )
+        }
+        Doubt::NoInertia { thing } => {
+            format!("{thing} has no inertia. In motion it is judged as a point, which asks too little of the wrist.")
         }
         Doubt::OverRatedLoad { waypoint, carried, rated } => format!(
             "On the way to waypoint {} \"{}\" tool and load weigh {} together; the flange is rated for {}. The maker's limits \

@@ -6,11 +6,14 @@ use super::Judged;
 pub fn headline(judged: &Judged) -> String {
     let survey = &judged.survey;
     let ready = if survey.verdict() == Verdict::Clear { "READY TO SIGN" } else { "NOT READY" };
+    let cycle = survey.cycle.rms.verdict;
+    let of_cycle = (cycle != Verdict::Clear).then(|| format!("the cycle as a whole {}", cycle.word()));
     let counts: Vec<String> = Verdict::ALL
         .into_iter()
         .map(|verdict| (survey.count(verdict), verdict))
         .filter(|(count, _)| *count > 0)
         .map(|(count, verdict)| format!("{count} {}", verdict.word()))
+        .chain(of_cycle)
         .collect();
     format!("{}: {ready}: {}", judged.recipe.name, counts.join(", "))
 }
@@ -23,6 +26,10 @@ pub fn check_words(check: Check) -> &'static str {
         Check::Rate => "rate",
         Check::Accel => "acceleration",
         Check::Holding => "holding",
+        Check::Moving => "torque in motion",
+        Check::Brake => "brake",
+        Check::Flange => "load at the flange",
+        Check::Rms => "torque over the cycle",
         Check::Singular => "singularity",
         Check::SpeedLeft => "tool speed left",
         Check::TcpSpeed => "TCP speed",

@@ -3,12 +3,12 @@ use crate::checks::{Check, Excess};
 use crate::units::{Dimension, Force, Length, Mass, Measure};
 
 use super::direction::{heading, in_tool};
-use super::listing::{adding_up, all_of};
+use super::listing::{all_of, sum_of};
 use super::rate::at_most;
 use super::scene::Scene;
 use super::{Bar, Label, Paragraph, proof_text};
 
-/// Shares below this part of the limit are left out of the bars, unless they would not add up without them.
+/// A push that asks less than this of a joint asks nothing, N·m or N.
 const TELLING: f64 = 1e-6;
 
 /// What, why, left alone and rests on of holding.
@@ -37,7 +37,7 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
     };
     [
         Paragraph::says(Label::What, what.trim_end().to_owned()),
-        Paragraph { label: Label::Why, text: why(scene, joint, excess.demand), bars: bars(scene, joint, excess.limit) },
+        Paragraph { label: Label::Why, text: why(scene, joint, excess.demand), bars: bars(scene, joint, excess.limit, true) },
         Paragraph::says(Label::LeftAlone, alone),
         Paragraph::says(
             Label::RestsOn,
@@ -47,30 +47,29 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
 }
 
 /// Who asks how much: every link, tool, load and process force that asks anything of the joint. The figures add up to the total.
-fn bars(scene: &Scene, joint: usize, limit: Measure) -> Vec<Bar> {
+pub(super) fn bars(scene: &Scene, joint: usize, limit: Measure, with_push: bool) -> Vec<Bar> {
     let shares = scene.shares();
     let mut rows: Vec<(String, f64)> =
         shares.links.iter().enumerate().map(|(j, link)| (format!("link of {}", scene.joint(j).name), link[joint])).collect();
-    let recipe = &scene.judged.recipe;
-    let tool = recipe.tool_at(scene.segment.to).map_or("tool".to_owned(), |tool| tool.name.clone());
-    let after = std::ptr::eq(scene.carried, &scene.segment.carried);
-    let load = if after { recipe.load_before(scene.segment.to) } else { recipe.load_after(scene.segment.to) };
+    let [tool, load] = scene.carried_names();
     rows.push((tool, shares.tool[joint]));
-    rows.push((load.map_or("load".to_owned(), |load| load.name.clone()), shares.load[joint]));
-    rows.push(("push of the work".to_owned(), shares.push[joint]));
-    rows.retain(|(_, share)| share.abs() > TELLING * limit.si);
-    let of = |si: f64| Measure::si(si, limit.of);
-    let total = of(rows.iter().map(|(_, share)| share).sum());
-    let digits = usize::from(total.si.abs() < 99.95);
-    let figures = adding_up(&rows.iter().map(|(_, share)| of(*share)).collect::<Vec<_>>(), digits);
-    rows.push(("together".to_owned(), total.si));
-    let told = figures.into_iter().map(|figure| of(figure).text(digits)).chain([total.text(digits)]);
-    rows.iter().zip(told).map(|((name, share), figure)| Bar { name: name.clone(), figure, share: share / limit.si }).collect()
+    rows.push((load, shares.load[joint]));
+    if with_push {
+        rows.push(("push of the work".to_owned(), shares.push[joint]));
+    }
+    rows.push(("balancer".to_owned(), -balance(scene, joint)));
+    sum_of(rows, limit)
+}
+
+/// What a balancer exerts on the joint here, N·m or N.
+fn balance(scene: &Scene, joint: usize) -> f64 {
+    scene.joint(joint).drive.balance(scene.instant.q[joint])
 }
 
 fn why(scene: &Scene, joint: usize, demand: Measure) -> String {
     let data = scene.joint(joint);
-    let pulled = Measure::si(-demand.si, demand.of);
+    let balance = balance(scene, joint);
+    let pulled = Measure::si(-demand.si - balance, demand.of);
     let turned = match data.kind {
         JointKind::Revolute => "pull",
         JointKind::Prismatic => "press",
@@ -84,13 +83,16 @@ fn why(scene: &Scene, joint: usize, demand: Measure) -> String {
         pulled.signed(),
         demand.signed()
     );
+    if balance != 0.0 {
+        text += &format!(" Its balancer gives {} of its own.", data.effort_of(balance).signed());
+    }
     text += &lever(scene, joint);
     text += &push(scene, joint);
     text + " Standing still asks all of this, so going slower helps nothing."
 }
 
 /// How far tool and load are out from a joint's axis, across gravity.
-fn lever(scene: &Scene, joint: usize) -> String {
+pub(super) fn lever(scene: &Scene, joint: usize) -> String {
     let mass = scene.carried.mass();
     let data = scene.joint(joint);
     if mass <= 0.0 {
@@ -119,7 +121,7 @@ fn push(scene: &Scene, joint: usize) -> String {
     let Some(push) = scene.push else { return String::new() };
     let recipe = &scene.judged.recipe;
     let shares = scene.shares();
-    let (share, total) = (shares.push[joint], shares.total()[joint]);
+    let (share, total) = (shares.push[joint], shares.total()[joint] - balance(scene, joint));
     let effect = if share.abs() < TELLING {
         "asks nothing of this joint".to_owned()
     } else {

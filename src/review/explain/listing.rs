@@ -1,7 +1,9 @@
 use crate::units::Measure;
 
+use super::Bar;
+
 /// Words in a row, read aloud: `J1`, `J1 and J2`, `J1, J2 and J3`.
-pub(super) fn all_of(words: &[String]) -> String {
+pub(in crate::review) fn all_of(words: &[String]) -> String {
     match words {
         [] => String::new(),
         [one] => one.clone(),
@@ -22,6 +24,24 @@ pub(super) fn adding_up(shares: &[Measure], digits: usize) -> Vec<f64> {
         steps[index] += 1.0;
     }
     steps.into_iter().map(|step| step / scale).collect()
+}
+
+/// Shares below this part of the limit are left out of the bars.
+const TELLING: f64 = 1e-6;
+
+/// Bars of what adds up to a demand, the sum below them; a full bar is the limit. What adds nothing is left out.
+pub(super) fn sum_of(mut rows: Vec<(String, f64)>, limit: Measure) -> Vec<Bar> {
+    rows.retain(|(_, share)| share.abs() > TELLING * limit.si);
+    let of = |si: f64| Measure::si(si, limit.of);
+    let total = of(rows.iter().map(|(_, share)| share).sum());
+    let digits = match total.of {
+        crate::units::Dimension::Inertia => 3,
+        _ => usize::from(total.si.abs() < 99.95),
+    };
+    let figures = adding_up(&rows.iter().map(|(_, share)| of(*share)).collect::<Vec<_>>(), digits);
+    rows.push(("together".to_owned(), total.si));
+    let told = figures.into_iter().map(|figure| of(figure).text(digits)).chain([total.text(digits)]);
+    rows.iter().zip(told).map(|((name, share), figure)| Bar { name: name.clone(), figure, share: share / limit.si }).collect()
 }
 
 #[cfg(test)]

@@ -1,19 +1,23 @@
 //! The words in which findings, doubts and whole recipes are told. Screen, command line and reports share them.
 
 mod accel;
+mod brake;
 mod direction;
 mod doubt;
 mod explanation;
 mod fight;
+mod flange;
 mod headline;
 mod holding;
 mod listing;
+mod moving;
 mod no_finding;
 mod place;
 mod proof;
 mod range;
 mod rate;
 mod reach;
+mod rms;
 mod scene;
 mod singular;
 mod tcp_speed;
@@ -30,6 +34,7 @@ pub use wrap::wrap;
 use crate::checks::{Check, Excess, Finding, Kind};
 
 use super::Judged;
+pub(super) use listing::all_of;
 use scene::Scene;
 
 /// Tells a finding of a judged recipe.
@@ -59,6 +64,9 @@ fn title(judged: &Judged, finding: &Finding) -> String {
 }
 
 fn excess_paragraphs(judged: &Judged, finding: &Finding, excess: &Excess) -> Vec<Paragraph> {
+    if finding.check == Check::Rms {
+        return rms::paragraphs(judged, finding, excess);
+    }
     let Some(scene) = Scene::of(judged, finding, excess) else {
         return vec![place::paragraph(judged, finding)];
     };
@@ -67,6 +75,9 @@ fn excess_paragraphs(judged: &Judged, finding: &Finding, excess: &Excess) -> Vec
         (Check::Rate, Some(joint)) => rate::paragraphs(&scene, joint, excess),
         (Check::Accel, Some(joint)) => accel::paragraphs(&scene, joint, excess),
         (Check::Holding, Some(joint)) => holding::paragraphs(&scene, joint, excess),
+        (Check::Moving, Some(joint)) => moving::paragraphs(&scene, joint, excess),
+        (Check::Brake, Some(joint)) => brake::paragraphs(&scene, joint, excess),
+        (Check::Flange, joint) => flange::paragraphs(&scene, joint, excess),
         (Check::TcpSpeed, _) => tcp_speed::paragraphs(&scene, excess),
         _ => singular::paragraphs(&scene, finding.check, excess),
     };

@@ -7,6 +7,10 @@ pub fn proof_text(survey: &SegmentSurvey, result: &CheckResult) -> String {
         Proof::Proved(room) => {
             format!("Proved for every instant between as well: the room is nowhere less than {room}.")
         }
+        Proof::Settled => {
+            "Summed up over every segment and dwell, closer until the sum no longer changed by a hundred-thousandth of the squared rating."
+                .to_owned()
+        }
         Proof::Witness => {
             format!("It was found by looking at {looked}, closer where it rises; the instant told here is enough to show it.")
         }

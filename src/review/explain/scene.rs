@@ -1,6 +1,6 @@
 use crate::arm::{Arm, Joint, Joints, MAX_JOINTS};
-use crate::checks::{Check, Excess, Finding, Place, SegmentSurvey};
-use crate::dynamics::{Shares, Wrench, holding_shares};
+use crate::checks::{Check, Excess, Finding, Place, SegmentSurvey, direction};
+use crate::dynamics::{Going, MovingParts, Shares, Wrench, holding_shares};
 use crate::geometry::V3;
 use crate::kinematics::{
     Closeness, Lu, SpeedLeft, Svd, invert, null_rows, singular_posture, speed_left, spherical_wrist, stacked, svd,
@@ -12,6 +12,7 @@ use crate::units::{Acceleration, Share, Speed, TurnAcceleration, TurnRate};
 use super::Judged;
 
 /// A scene is one instant of a segment computed anew, with everything that the words draw on.
+#[derive(Clone, Copy)]
 pub(super) struct Scene<'a> {
     pub judged: &'a Judged,
     pub index: usize,
@@ -37,9 +38,15 @@ impl<'a> Scene<'a> {
         if excess.after_stop {
             scene.carried = scene.segment.carried_after.as_ref()?;
             (scene.rate, scene.accel, scene.push) = (0.0, 0.0, None);
-        } else if let (Check::Accel, Some(joint)) = (finding.check, finding.joint) {
+        } else if let (Check::Accel | Check::Moving, Some(joint)) = (finding.check, finding.joint) {
             // At a corner of the law the acceleration jumps; the side is meant that the finding tells.
-            let miss = |[rate, accel]: [f64; 2]| (scene.instant.accelerations(rate, accel)[joint] - excess.demand.si).abs();
+            let miss = |[rate, accel]: [f64; 2]| {
+                let value = match finding.check {
+                    Check::Moving => Self { rate, accel, ..scene }.moving_parts(joint).at_pace(1.0),
+                    _ => scene.instant.accelerations(rate, accel)[joint],
+                };
+                (value - excess.demand.si).abs()
+            };
             let sides = [Side::Before, Side::After].map(|side| {
                 let [_, rate, accel] = scene.segment.law.at(excess.worst.time, side);
                 [rate, accel]
@@ -114,6 +121,32 @@ impl<'a> Scene<'a> {
     /// Who asks how much of the holding torque.
     pub fn shares(&self) -> Shares {
         holding_shares(self.arm().chain(), &self.instant.posture, self.carried, &self.judged.plan.gravity, self.push.as_ref())
+    }
+
+    /// What a joint's torque in motion is made of here.
+    pub fn moving_parts(&self, joint: usize) -> MovingParts {
+        let accelerations = self.instant.accelerations(self.rate, self.accel);
+        MovingParts::of(
+            self.arm().chain(),
+            self.joint(joint),
+            joint,
+            self.instant.q[joint],
+            &self.instant.posture,
+            self.carried,
+            &self.judged.plan.gravity,
+            self.push.as_ref(),
+            &Going { rates: self.rates(), accelerations },
+            direction(self.instant.slope[joint], self.rate, self.accel),
+        )
+    }
+
+    /// The names of tool and load here.
+    pub fn carried_names(&self) -> [String; 2] {
+        let recipe = &self.judged.recipe;
+        let tool = recipe.tool_at(self.segment.to).map_or("tool".to_owned(), |tool| tool.name.clone());
+        let after = !std::ptr::eq(self.carried, &self.segment.carried);
+        let load = if after { recipe.load_after(self.segment.to) } else { recipe.load_before(self.segment.to) };
+        [tool, load.map_or("load".to_owned(), |load| load.name.clone())]
     }
 
     /// What would have to be asked for so that the fraction runs no faster than `rate` (1/s): the path's speed, or the share of

@@ -19,7 +19,8 @@ pub(super) fn in_brief(why: Unproved) -> &'static str {
 /// What, where, why, left alone and rests on where nothing bad was seen but it is not known.
 pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> Vec<Paragraph> {
     let survey = &judged.survey.segments[finding.segment];
-    let what = match survey.check(finding.check).worst() {
+    let result = if finding.check == Check::Rms { &judged.survey.cycle.rms } else { survey.check(finding.check) };
+    let what = match result.worst() {
         Some(peak) => format!(
             "For {} nothing bad was seen: the most that is asked is {}. But it is not known to hold everywhere.",
             check_words(finding.check),
@@ -85,6 +86,7 @@ fn missing(judged: &Judged, is_missing: impl Fn(&Joint) -> bool) -> String {
 }
 
 fn guessed(joint: &Joint) -> bool {
-    joint.torque.is_some_and(|torque| torque.grounds == Grounds::Guess)
+    joint.drive.is_guessed()
+        || joint.torque.is_some_and(|torque| torque.grounds == Grounds::Guess)
         || joint.link.is_some_and(|link| link.grounds == Grounds::Guess)
 }

@@ -1,7 +1,7 @@
 use unicode_width::UnicodeWidthStr;
 
 /// Units that are not parted from the figure before them.
-const UNITS: [&str; 11] = ["%", "°", "°/s", "°/s²", "mm", "mm/s", "mm/s²", "N·m", "N", "kg", "s"];
+const UNITS: [&str; 12] = ["kg·m²", "%", "°", "°/s", "°/s²", "mm", "mm/s", "mm/s²", "N·m", "N", "kg", "s"];
 
 /// Text in lines of at most `width` columns, broken between words; a figure keeps its unit. Only a word longer than a line is
 /// longer than that.
