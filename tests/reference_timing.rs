@@ -71,6 +71,7 @@ fn joint_move(by: &[f64], share: f64, accel_share: f64) -> Law {
         loads: vec![],
         frames: vec![],
         carrying: None,
+        repeat: elbowroom::program::Repeat::default(),
         waypoints: vec![at(degrees(&[5.0, 10.0, -20.0]), None), {
             let end = degrees(&[5.0, 10.0, -20.0]).zip(&degrees(by), |a, b| a + b);
             at(end, Some(arrive))

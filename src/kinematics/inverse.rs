@@ -282,6 +282,7 @@ mod tests {
             accel: 9.0,
             torque: None,
             brake: None,
+            drive: crate::arm::Drive::default(),
             link: None,
         });
         let data = ArmData {

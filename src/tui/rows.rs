@@ -88,7 +88,7 @@ fn waypoint_of(doubt: &Doubt) -> usize {
         | Doubt::NothingToRelease { waypoint }
         | Doubt::NoMotion { waypoint }
         | Doubt::OverRatedLoad { waypoint, .. } => *waypoint,
-        Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } => 0,
+        Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } | Doubt::MotionInPart | Doubt::NoInertia { .. } => 0,
     }
 }
 

@@ -40,6 +40,7 @@ pub fn joint(kind: JointKind, placement: Placement) -> Joint {
         accel: 1.0,
         torque: Some(TorqueRating { holding: 100.0, peak: None, grounds: Grounds::Sheet }),
         brake: None,
+        drive: elbowroom::arm::Drive::default(),
         link: None,
     }
 }

@@ -167,39 +167,39 @@ impl Bodies {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::arm::{Arm, Joints};
+    use crate::arm::{Arm, ArmData, Body, Drive, Flange, Grounds, Joint, JointKind, Joints, Placement, Range, Task, TaskRow};
+    use crate::checks::proof::view::Reference;
     use crate::dynamics::{Going, moving_torque};
-    use crate::files::read_arm;
     use crate::geometry::Pose;
     use crate::kinematics::{Jacobian, Posture};
     use crate::motion::Instant;
     use crate::program::Carried;
 
-    use super::super::view::Reference;
-
     /// Two joints through one point, about z and about y, and a body whose principal axes stand at 45 degrees between x and z.
-    const SLANTED: &str = r#"
-elbowroom-arm = 1
-name = "Slanted"
-task = "x y"
-[[joint]]
-name = "1"
-kind = "revolute"
-place = { xyz = [0, 0, 0] }
-axis = [0, 0, 1]
-range = [-90, 90]
-rate = 90
-accel = 90
-[[joint]]
-name = "2"
-kind = "revolute"
-place = { xyz = [0, 0, 0] }
-axis = [0, 1, 0]
-range = [-90, 90]
-rate = 90
-accel = 90
-link = { mass = 1, com = [0, 0, 0], inertia = [1, 1, 1, 0, 0.3, 0] }
-"#;
+    fn slanted() -> Arm {
+        let joint = |name: &str, axis: V3, link: Option<Body>| Joint {
+            name: name.to_owned(),
+            kind: JointKind::Revolute,
+            placement: Placement::Axis { place: Pose::identity(), axis },
+            range: Range { low: -1.5, high: 1.5 },
+            rate: 1.5,
+            accel: 1.5,
+            torque: None,
+            brake: None,
+            drive: Drive::default(),
+            link,
+        };
+        let tensor = Body::tensor([1.0, 1.0, 1.0, 0.0, 0.3, 0.0]);
+        let body = Body { mass: 1.0, com: V3::zeros(), inertia: Some(tensor), grounds: Grounds::Sheet };
+        Arm::build(ArmData {
+            name: "Slanted".to_owned(),
+            joints: vec![joint("1", V3::z(), None), joint("2", V3::y(), Some(body))],
+            flange: Flange::default(),
+            characteristic_length: None,
+            task: Task::of(&[TaskRow::X, TaskRow::Y]),
+        })
+        .expect("sound")
+    }
 
     fn instant(arm: &Arm, q: Joints, slope: Joints) -> Instant {
         let posture = Posture::at(arm.chain(), &q);
@@ -210,7 +210,7 @@ link = { mass = 1, com = [0, 0, 0], inertia = [1, 1, 1, 0, 0.3, 0] }
 
     #[test]
     fn a_turning_tensor_is_met_to_the_last_percent() {
-        let arm = read_arm(SLANTED, "slanted").expect("it reads");
+        let arm = slanted();
         let (carried, half) = (Carried::nothing(), 1e-3);
         // Joint 2 turns little beside joint 1, so that the bound, which knows only how long the sum is, is met as well.
         let slope = Joints::from_slice(&[1.0, 0.05]);
