@@ -25,7 +25,7 @@ mod verdict;
 
 pub use channel::{Channel, Scale};
 pub use check::Check;
-pub use doubt::{Doubt, doubts};
+pub use doubt::{Angles, Doubt, Hung, Lengths, doubts};
 pub use finding::{Excess, Finding, Kind};
 pub use meter::{Meter, Reading};
 pub use proof::Tally;

@@ -25,6 +25,7 @@ pub(super) fn acceptance(top: &Table<'_>) -> Acceptance {
         "singular-least",
         "tool-speed-left",
         "tcp-speed",
+        "wind-up",
     ]);
     let percent = |key: &str, otherwise: Share| table.maybe_number(key).map_or(otherwise, Share::percent);
     Acceptance {
@@ -36,6 +37,7 @@ pub(super) fn acceptance(top: &Table<'_>) -> Acceptance {
         singular_least: table.maybe_number("singular-least").unwrap_or(usual.singular_least),
         tool_speed_left: table.maybe_number("tool-speed-left").map_or(usual.tool_speed_left, Speed::mm_per_s),
         tcp_speed: table.maybe_number("tcp-speed").map(Speed::mm_per_s),
+        wind_up: table.maybe_number("wind-up").map(Angle::deg),
     }
 }
 

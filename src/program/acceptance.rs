@@ -19,6 +19,8 @@ pub struct Acceptance {
     pub tool_speed_left: Speed,
     /// Greatest speed of the TCP, if the cell has one.
     pub tcp_speed: Option<Speed>,
+    /// How far the least and the greatest value of a wrist joint on the cycle may be apart, for the cables' sake, if the cell says.
+    pub wind_up: Option<Angle>,
 }
 
 impl Default for Acceptance {
@@ -34,6 +36,7 @@ impl Default for Acceptance {
             singular_least: 0.05,
             tool_speed_left: Speed::mm_per_s(100.0),
             tcp_speed: None,
+            wind_up: None,
         }
     }
 }

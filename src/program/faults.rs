@@ -101,6 +101,9 @@ impl Recipe {
         if let Some(speed) = a.tcp_speed {
             faults.extend(not_above_zero(field.key("tcp-speed"), "acceptance", "tcp-speed", speed.measure()));
         }
+        if let Some(angle) = a.wind_up {
+            faults.extend(not_above_zero(field.key("wind-up"), "acceptance", "wind-up", angle.measure()));
+        }
         faults
     }
 
