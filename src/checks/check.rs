@@ -55,6 +55,11 @@ impl Check {
         matches!(self, Self::Singular | Self::SpeedLeft)
     }
 
+    /// Whether it depends on where the arm is alone and not on how fast: what breaks it does so at every override.
+    pub fn is_of_posture_alone(self) -> bool {
+        matches!(self, Self::Reach | Self::Range | Self::Holding | Self::Singular | Self::SpeedLeft)
+    }
+
     /// Its first channel; none for reach.
     pub(super) fn first_channel(self) -> Option<usize> {
         match self {

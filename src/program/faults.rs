@@ -22,6 +22,7 @@ impl Recipe {
                 faults.extend(body.faults(&top.key("tool").item(index), &format!("tool \"{}\"", tool.name)));
             }
         }
+        faults.extend(self.tool_point_faults());
         for (index, load) in self.loads.iter().enumerate() {
             faults.extend(load.body.faults(&top.key("load").item(index), &format!("load \"{}\"", load.name)));
         }
@@ -68,6 +69,26 @@ impl Recipe {
         all("load", self.loads.iter().map(|l| l.name.as_str()).collect());
         all("frame", self.frames.iter().map(|f| f.name.as_str()).collect());
         all("waypoint", self.waypoints.iter().map(|w| w.name.as_str()).collect());
+        faults
+    }
+
+    fn tool_point_faults(&self) -> Vec<Fault> {
+        let mut faults = Vec::new();
+        for (index, tool) in self.tools.iter().enumerate() {
+            let mut seen = HashSet::new();
+            for (k, point) in tool.points.iter().enumerate() {
+                let field = Field::top().key("tool").item(index).key("points").item(k);
+                let thing = format!("tool \"{}\": point {}", tool.name, k + 1);
+                if point.name.trim().is_empty() {
+                    faults.push(Fault::new(field.key("name"), format!("{thing}: name is empty")));
+                } else if !seen.insert(&point.name) {
+                    faults.push(Fault::new(field.key("name"), format!("{thing}: name \"{}\" is taken already", point.name)));
+                }
+                if !point.at.iter().all(|v| v.is_finite()) {
+                    faults.push(Fault::new(field.key("xyz"), format!("{thing}: xyz holds something that is not a number")));
+                }
+            }
+        }
         faults
     }
 

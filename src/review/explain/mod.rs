@@ -5,6 +5,7 @@ mod direction;
 mod doubt;
 mod explanation;
 mod fight;
+mod first_run;
 mod headline;
 mod holding;
 mod listing;
@@ -14,6 +15,7 @@ mod proof;
 mod range;
 mod rate;
 mod reach;
+mod reduced_speed;
 mod scene;
 mod singular;
 mod tcp_speed;
@@ -22,9 +24,11 @@ mod wrap;
 
 pub use doubt::doubt_text;
 pub use explanation::{Bar, Explanation, Label, Paragraph};
+pub use first_run::{FIRST_RUN_CAUTIONS, first_run_text, held_back_words, stage_words};
 pub use headline::{check_words, headline};
 pub use no_finding::no_finding;
 pub use proof::proof_text;
+pub use reduced_speed::reduced_speed_text;
 pub use wrap::wrap;
 
 use crate::checks::{Check, Excess, Finding, Kind};

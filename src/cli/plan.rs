@@ -1,0 +1,85 @@
+use crate::checks::{Spot, Watch};
+use crate::report::plan_json;
+use crate::review::{
+    FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, first_run, first_run_text, headline, held_back_words, reduced_speed,
+    reduced_speed_text, stage_words, wrap,
+};
+use crate::units::Speed;
+
+use super::args::PlanArgs;
+use super::chosen::{Chosen, chosen};
+use super::code::Code;
+use super::columns::{Stands, columns};
+use super::not_checked_text::{CAUTION, hanging};
+use super::out;
+
+/// Plans the first run of a recipe.
+pub(super) fn run(args: &PlanArgs) -> anyhow::Result<Code> {
+    let chosen = chosen(args.recipe.as_deref())?;
+    let watch = Watch::default();
+    let plan = first_run(&chosen.judged, &watch).expect("nobody stops this watch");
+    let reduced = reduced_speed(&chosen.judged, &watch).expect("nobody stops this watch");
+    let told = if args.json {
+        plan_json(&chosen.judged, &plan, &reduced, &chosen.recipe_file, &chosen.arm_file) + "\n"
+    } else {
+        text(&chosen, &plan, &reduced, usize::from(args.width))
+    };
+    out::print(&told)?;
+    Ok(Code::Clear)
+}
+
+fn text(chosen: &Chosen, plan: &FirstRun, reduced: &[Reduced], width: usize) -> String {
+    let judged = &chosen.judged;
+    let table_width = width.min(80);
+    let cautions: String =
+        FIRST_RUN_CAUTIONS.iter().enumerate().map(|(k, caution)| hanging(&format!("{}. ", k + 1), caution, width)).collect();
+    let parts = [
+        format!("{}\nno arm connected; {} on {}\n", headline(judged), chosen.recipe_file, judged.arm.name()),
+        "First-run plan\n".to_owned() + &cautions,
+        stages(judged, plan, table_width),
+        wrap(&first_run_text(judged, plan).join(" "), width).join("\n") + "\n",
+        segments(judged, plan, reduced, table_width),
+        hanging("reduced speed: ", &reduced_speed_text(judged, reduced).join(" "), width),
+        wrap(CAUTION, width).join("\n") + "\n",
+    ];
+    parts.join("\n")
+}
+
+/// The stages in a table: override, verdict, what is not clear there.
+fn stages(judged: &Judged, plan: &FirstRun, width: usize) -> String {
+    let mut rows = vec![["override", "verdict", "not clear"].map(str::to_owned)];
+    rows.extend(
+        plan.stages.iter().map(|stage| [stage.run_at.to_string(), stage.verdict().word().to_owned(), stage_words(judged, stage)]),
+    );
+    columns(&rows, [Stands::Last, Stands::First, Stands::First], 2, width)
+}
+
+/// The segments in a table: how fast each is clear, the peaks of speed at full override, and the override at reduced speed.
+fn segments(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], width: usize) -> String {
+    let mut rows = vec![["#", "to", "clear to", "held back by", "TCP", "flange", "reduced at"].map(str::to_owned)];
+    rows.extend(plan.segments.iter().zip(reduced).map(|(run, reduced)| {
+        let segment = &judged.plan.segments[run.segment];
+        let speed = |spot: Spot| Speed::m_per_s(reduced.peak(&spot)).measure().text_up(0);
+        [
+            segment.number().to_string(),
+            judged.recipe.waypoints[segment.to].name.clone(),
+            run.highest.map_or("never".to_owned(), |share| share.to_string()),
+            held_back_words(judged, run.held_back),
+            speed(Spot::Tcp),
+            speed(Spot::Flange),
+            reduced.run_at.to_string(),
+        ]
+    }));
+    let [first, last] = [Stands::First, Stands::Last];
+    let mut text = columns(&rows, [last, first, last, first, last, last, last], 1, width);
+    for reduced in reduced {
+        for peak in &reduced.peaks {
+            if let Spot::Tool(name) = &peak.spot {
+                let number = judged.plan.segments[reduced.segment].number();
+                text +=
+                    &hanging("", &format!("On segment {number} \"{name}\" moves at up to {}.", Speed::m_per_s(peak.speed)), width);
+            }
+        }
+    }
+    text
+}
