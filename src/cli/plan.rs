@@ -34,7 +34,9 @@ fn text(chosen: &Chosen, plan: &FirstRun, reduced: &[Reduced], width: usize) -> 
     let cautions: String =
         FIRST_RUN_CAUTIONS.iter().enumerate().map(|(k, caution)| hanging(&format!("{}. ", k + 1), caution, width)).collect();
     let parts = [
-        format!("{}\nno arm connected; {} on {}\n", headline(judged), chosen.recipe_file, judged.arm.name()),
+        wrap(&headline(judged), width).join("\n")
+            + "\n"
+            + &hanging("", &format!("no arm connected; {} on {}", chosen.recipe_file, judged.arm.name()), width),
         "First-run plan\n".to_owned() + &cautions,
         stages(judged, plan, table_width),
         wrap(&first_run_text(judged, plan).join(" "), width).join("\n") + "\n",
@@ -45,8 +47,19 @@ fn text(chosen: &Chosen, plan: &FirstRun, reduced: &[Reduced], width: usize) -> 
     parts.join("\n")
 }
 
+/// Below this many columns a table keeps only its figures, and words stand in lines of their own.
+const NARROW: usize = 72;
+
 /// The stages in a table: override, verdict, what is not clear there.
 fn stages(judged: &Judged, plan: &FirstRun, width: usize) -> String {
+    if width < NARROW {
+        let line = |stage: &crate::review::Stage| {
+            let words = stage_words(judged, stage);
+            let words = if words.is_empty() { stage.verdict().word().to_owned() } else { words };
+            hanging(&format!("{}: ", stage.run_at), &words, width)
+        };
+        return plan.stages.iter().map(line).collect();
+    }
     let mut rows = vec![["override", "verdict", "not clear"].map(str::to_owned)];
     rows.extend(
         plan.stages.iter().map(|stage| [stage.run_at.to_string(), stage.verdict().word().to_owned(), stage_words(judged, stage)]),
@@ -71,7 +84,13 @@ fn segments(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], width: usize)
         ]
     }));
     let [first, last] = [Stands::First, Stands::Last];
-    let mut text = columns(&rows, [last, first, last, first, last, last, last], 1, width);
+    let mut text = if width < NARROW {
+        let few: Vec<[String; 4]> =
+            rows.into_iter().map(|[number, to, clear, _, _, _, reduced]| [number, to, clear, reduced]).collect();
+        columns(&few, [last, first, last, last], 1, width)
+    } else {
+        columns(&rows, [last, first, last, first, last, last, last], 1, width)
+    };
     for reduced in reduced {
         for peak in &reduced.peaks {
             if let Spot::Tool(name) = &peak.spot {

@@ -46,6 +46,7 @@ fn particular(judged: &Judged) -> Vec<String> {
     if recipe.acceptance.tcp_speed.is_none() {
         told.push("TCP speed: the recipe sets no limit, so it is shown but not judged.".to_owned());
     }
+    told.push("Speeds of flange, elbow, tool corners and part: only that of the TCP is judged.".to_owned());
     if recipe.waypoints.iter().any(|waypoint| waypoint.fly_by.is_some()) {
         told.push("Fly-by: every waypoint is judged as a stop point; the rounded corner that the cell runs is not.".to_owned());
     }

@@ -1,7 +1,7 @@
 use crate::checks::{Check, Verdict};
 use crate::review::{FirstRun, HeldBack, SegmentRun, Stage};
 
-use super::listing::all_of;
+use super::listing::{all_of, first_of};
 use super::{Judged, check_words};
 
 /// What a person minds before and during a first run, in order; in the sense of ISO 10218-2. The first two come before any stage.
@@ -14,6 +14,9 @@ pub const FIRST_RUN_CAUTIONS: [&str; 6] = [
     "The cell's risk assessment, the arm maker's documents and local codes come first and may ask for more.",
 ];
 
+/// Segments with gaps in their clear overrides that are told one by one.
+const MOST_WITH_GAPS: usize = 5;
+
 /// The plan in a few sentences: how fast the whole program is clear, what holds back what, and where slower is not safer.
 pub fn first_run_text(judged: &Judged, plan: &FirstRun) -> Vec<String> {
     let mut told = vec![match plan.highest {
@@ -21,36 +24,34 @@ pub fn first_run_text(judged: &Judged, plan: &FirstRun) -> Vec<String> {
         Some(share) => format!("The whole program is clear up to an override of {share}."),
         None => "At no override that was tried is the whole program clear.".to_owned(),
     }];
-    let speed_blind: Vec<&SegmentRun> = plan
-        .segments
-        .iter()
-        .filter(|run| run.highest.is_none() && run.held_back.is_some_and(|(check, _)| check.is_of_posture_alone()))
-        .collect();
-    for run in &speed_blind {
-        told.push(format!(
-            "Segment {} is held back by {}, which no override changes.",
-            judged.plan.segments[run.segment].number(),
-            held_back_words(judged, run.held_back)
-        ));
+    let number = |run: &SegmentRun| judged.plan.segments[run.segment].number();
+    let never = |run: &&SegmentRun| run.highest.is_none();
+    let (blind, other): (Vec<&SegmentRun>, Vec<&SegmentRun>) =
+        plan.segments.iter().filter(never).partition(|run| run.held_back.is_some_and(|(check, _)| check.is_of_posture_alone()));
+    for (runs, which) in [(blind, "which no override changes"), (other, "at every override that was tried")] {
+        let told_each: Vec<String> =
+            runs.iter().map(|run| format!("segment {} by {}", number(run), held_back_words(judged, run.held_back))).collect();
+        if !told_each.is_empty() {
+            told.push(format!("Held back, {which}: {}.", all_of(&first_of(&told_each))));
+        }
     }
     let slower: Vec<String> = plan
         .segments
         .iter()
         .filter(|run| run.highest.is_some_and(|share| share.as_fraction() < 1.0))
         .map(|run| {
-            let number = judged.plan.segments[run.segment].number();
             let by = held_back_words(judged, run.held_back);
-            format!("segment {number} up to {}, held back by {by}", run.highest.unwrap_or_default())
+            format!("segment {} up to {}, held back by {by}", number(run), run.highest.unwrap_or_default())
         })
         .collect();
     if !slower.is_empty() {
-        told.push(format!("Clear only below full speed: {}.", all_of(&slower)));
+        told.push(format!("Clear only below full speed: {}.", all_of(&first_of(&slower))));
     }
-    for run in plan.segments.iter().filter(|run| !run.gaps.is_empty()) {
+    for run in plan.segments.iter().filter(|run| !run.gaps.is_empty()).take(MOST_WITH_GAPS) {
         let gaps: Vec<String> = run.gaps.iter().map(ToString::to_string).collect();
         told.push(format!(
             "Segment {} is clear up to {}, but not at {}: not every demand falls with speed.",
-            judged.plan.segments[run.segment].number(),
+            number(run),
             run.highest.unwrap_or_default(),
             all_of(&gaps)
         ));
@@ -84,7 +85,7 @@ pub fn stage_words(judged: &Judged, stage: &Stage) -> String {
         .filter(|verdict| *verdict != Verdict::Clear)
         .map(|verdict| (verdict, of(verdict)))
         .filter(|(_, numbers)| !numbers.is_empty())
-        .map(|(verdict, numbers)| format!("{} {} (segment {})", numbers.len(), verdict.word(), numbers.join(", ")))
+        .map(|(verdict, numbers)| format!("{} {} (segment {})", numbers.len(), verdict.word(), first_of(&numbers).join(", ")))
         .collect();
     told.join(", ")
 }

@@ -2,6 +2,7 @@ use crate::checks::Verdict;
 use crate::review::{REDUCED_SPEED, Reduced};
 use crate::units::{Share, Speed};
 
+use super::listing::first_of;
 use super::{Judged, explain};
 
 /// The program in manual mode at reduced speed, in a few sentences: which segments need an override for it, and what is not clear
@@ -21,7 +22,7 @@ pub fn reduced_speed_text(judged: &Judged, reduced: &[Reduced]) -> Vec<String> {
             "TCP and flange keep {limit} (ISO 10218-1:2011, 5.6.2) at an override of {} throughout; segment by segment: {}, the \
              others as they are.",
             percent(least),
-            each.join(", ")
+            first_of(&each).join(", ")
         ));
     }
     let unclear: Vec<String> = reduced
@@ -35,7 +36,7 @@ pub fn reduced_speed_text(judged: &Judged, reduced: &[Reduced]) -> Vec<String> {
     told.push(if unclear.is_empty() {
         "Judged again there, every segment is clear.".to_owned()
     } else {
-        format!("Judged again there, not clear: {}.", unclear.join("; "))
+        format!("Judged again there, not clear: {}.", first_of(&unclear).join("; "))
     });
     told.push(
         "The override is found by looking at the speeds of TCP and flange; that the TCP keeps the limit at it is then judged and \
