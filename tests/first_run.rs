@@ -3,7 +3,7 @@
 use std::process::Command;
 use std::sync::Arc;
 
-use elbowroom::checks::{Check, Proof, Spot, Verdict, Watch, judge_at, spot_peaks};
+use elbowroom::checks::{Check, Proof, Spot, Verdict, Watch, judge_at, spot_peaks, stopping};
 use elbowroom::files::{demo, read_arm, read_recipe};
 use elbowroom::motion::{Follower, Segment, Side};
 use elbowroom::program::ToolPoint;
@@ -179,7 +179,11 @@ fn a_whole_program_is_planned_to_the_override_of_its_slowest_segment() {
 }
 
 fn elbowroom(arguments: &[&str]) -> String {
-    let run = Command::new(env!("CARGO_BIN_EXE_elbowroom")).args(arguments).output().expect("the program starts");
+    let run = Command::new(env!("CARGO_BIN_EXE_elbowroom"))
+        .args(arguments)
+        .current_dir(env!("CARGO_MANIFEST_DIR"))
+        .output()
+        .expect("the program starts");
     assert_eq!(run.status.code(), Some(0), "{}", String::from_utf8_lossy(&run.stderr));
     String::from_utf8(run.stdout).expect("it prints UTF-8")
 }
@@ -218,4 +222,55 @@ fn what_is_wrong_with_stages_and_points_is_told() {
     let keyed = "points = [{ name = \"a\", xy = [0, 0, 1] }]";
     assert!(told(keyed, "").contains("unknown key \"xy\""), "{}", told(keyed, ""));
     assert!(told("", "[acceptance]\nwind-up = 0").contains("wind-up is 0; it must be above 0"));
+}
+
+#[test]
+fn a_stop_lets_the_tcp_and_the_joint_run_on_as_even_braking_does() {
+    // By hand: from 180 deg/s at 900 deg/s² a joint takes 0.2 s and 18 degrees, and 0.1 s and 18 degrees of reaction before; on
+    // a radius of 300 mm the TCP runs 300 mm * 36 degrees = 188.5 mm.
+    let stop = |data: &str| {
+        let arm = TURNTABLE.replace("accel = 900\n", &format!("accel = 900\n{data}\n"));
+        let judged = turntable("", "");
+        let arm = read_arm(&arm, "arm.toml").unwrap_or_else(|wrong| panic!("{wrong}"));
+        stopping(&arm, &judged.plan.segments[0])
+    };
+    for data in ["stop = { decel = 900, reaction = 0.1 }", "stop = { time = 0.2, reaction = 0.1 }"] {
+        let stop = stop(data).expect("it has data");
+        assert!((stop.joints[0].run_on.to_degrees() - 36.0).abs() < 1e-9);
+        assert!((stop.joints[0].time - 0.3).abs() < 1e-12 && (stop.time - 0.3).abs() < 1e-12);
+        assert!((stop.tcp - 0.3 * 36f64.to_radians()).abs() < 1e-12);
+    }
+    assert!(stop("").is_none(), "without data nothing is told");
+    for (data, told) in [
+        ("stop = { decel = 0 }", "joint J1: decel is 0 deg/s²; it must be above 0"),
+        ("stop = { time = -1 }", "joint J1: time is -1 s; it must be above 0"),
+        ("stop = { decel = 9, reaction = -1 }", "joint J1: reaction is -1 s; it must be 0 or more"),
+        ("stop = { decel = 9, time = 1 }", "decel and time both say how it brakes"),
+        ("stop = {}", "stop needs decel"),
+    ] {
+        let arm = TURNTABLE.replace("accel = 900\n", &format!("accel = 900\n{data}\n"));
+        let wrong = read_arm(&arm, "arm.toml").expect_err("it is wrong").to_string();
+        assert!(wrong.contains(told), "{wrong}");
+    }
+}
+
+#[test]
+fn stopping_is_shown_where_the_arm_file_has_data() {
+    insta::assert_snapshot!("plan_with_stops", elbowroom(&["plan", "recipes/tray-feed.toml", "--width", "80"]));
+    let plan: Value = serde_json::from_str(&elbowroom(&["plan", "recipes/tray-feed.toml", "--json"])).expect("it prints JSON");
+    let stops = plan["stopping"].as_array().expect("stops");
+    assert_eq!(stops.len(), 7);
+    assert_eq!(stops[0]["joints"][2]["unit"], "mm");
+}
+
+#[test]
+fn lower_overrides_that_are_not_clear_are_told() {
+    let judged = demo_judged();
+    let mut plan = first_run(&judged, &Watch::default()).expect("nobody stops it");
+    plan.segments[0].gaps = vec![Share::percent(45.0), Share::percent(40.0)];
+    plan.segments[0].highest = Some(Share::percent(80.0));
+    plan.segments[0].held_back = Some((Check::TcpSpeed, None));
+    let told = first_run_text(&judged, &plan).join(" ");
+    assert!(told.contains("Segment 2 is clear up to 80 %, but not at 45 % and 40 %: not every demand falls with speed."), "{told}");
+    assert!(told.contains("segment 2 up to 80 %, held back by TCP speed and segment 10 up to 58 %"), "{told}");
 }

@@ -1,6 +1,6 @@
 use crate::units::{Dimension, Measure};
 
-use super::{Body, Grounds, Placement};
+use super::{Body, Grounds, Placement, Stop};
 
 /// How a joint moves.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -96,6 +96,8 @@ pub struct Joint {
     pub torque: Option<TorqueRating>,
     /// What its brake holds, N·m or N.
     pub brake: Option<f64>,
+    /// How it comes to rest when a stop is asked for; makers often say so for some joints only.
+    pub stop: Option<Stop>,
     /// The link that it moves, in that link's coordinate system; makers often don't say.
     pub link: Option<Body>,
 }

@@ -81,35 +81,42 @@ fn carried_points(arm: &Arm, segment: &Segment, points: &[ToolPoint]) -> Vec<Car
 }
 
 fn peak(arm: &Arm, segment: &Segment, follower: &Follower, point: &Carrying) -> Option<SpotPeak> {
+    let speed = |instant: &Instant, rate: f64| by_fraction(arm, instant, point).norm() * rate;
+    let (speed, at) = greatest(segment, follower, speed)?;
+    Some(SpotPeak { spot: point.spot.clone(), speed, at })
+}
+
+/// The greatest value on a segment that is found by looking, of something that depends on the instant and on the rate of the path's
+/// fraction (1/s), and where. `None` where there is no motion to look at.
+pub(super) fn greatest(segment: &Segment, follower: &Follower, value: impl Fn(&Instant, f64) -> f64) -> Option<(f64, Place)> {
     let until = segment.followed_to();
-    let speed = |piece: usize, dt: f64| {
-        let piece = &segment.law.pieces()[piece];
-        let [u, rate, _] = piece.at(dt);
+    let pieces = segment.law.pieces();
+    let look = |piece: usize, dt: f64| {
+        let [u, rate, _] = pieces[piece].at(dt);
         let u = u.clamp(0.0, 1.0);
         let instant = follower.at(u).filter(|_| u <= until)?;
-        let speed = by_fraction(arm, &instant, point).norm() * rate.max(0.0);
-        Some((speed, Place { time: piece.start + dt, u }))
+        Some((value(&instant, rate.max(0.0)), Place { time: pieces[piece].start + dt, u }))
     };
     let mut best: Option<(f64, Place, usize, f64)> = None;
-    for (index, piece) in segment.law.pieces().iter().enumerate().filter(|(_, piece)| piece.duration > 0.0) {
+    for (index, piece) in pieces.iter().enumerate().filter(|(_, piece)| piece.duration > 0.0) {
         for k in 0..=LOOKS {
             let dt = piece.duration * k as f64 / LOOKS as f64;
-            let Some((value, place)) = speed(index, dt) else { continue };
+            let Some((value, place)) = look(index, dt) else { continue };
             if best.is_none_or(|(most, ..)| value > most) {
                 best = Some((value, place, index, dt));
             }
         }
     }
-    let (mut value, mut at, piece, mut dt) = best?;
-    let mut step = segment.law.pieces()[piece].duration / LOOKS as f64;
+    let (mut most, mut at, piece, mut dt) = best?;
+    let mut step = pieces[piece].duration / LOOKS as f64;
     for _ in 0..CLOSER {
         step *= 0.5;
         for there in [dt - step, dt + step] {
-            let inside = (0.0..=segment.law.pieces()[piece].duration).contains(&there);
-            if let Some((more, place)) = speed(piece, there).filter(|(more, _)| inside && *more > value) {
-                (value, at, dt) = (more, place, there);
+            let inside = (0.0..=pieces[piece].duration).contains(&there);
+            if let Some((more, place)) = look(piece, there).filter(|(more, _)| inside && *more > most) {
+                (most, at, dt) = (more, place, there);
             }
         }
     }
-    Some(SpotPeak { spot: point.spot.clone(), speed: value, at })
+    Some((most, at))
 }

@@ -1,10 +1,10 @@
-use crate::checks::{Spot, Watch};
+use crate::checks::{Spot, Watch, stopping};
 use crate::report::plan_json;
 use crate::review::{
-    FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, first_run, first_run_text, headline, held_back_words, reduced_speed,
-    reduced_speed_text, stage_words, wrap,
+    FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, first_run, first_run_text, headline, held_back_words, joint_stop_words,
+    reduced_speed, reduced_speed_text, stage_words, stopping_text, wrap,
 };
-use crate::units::Speed;
+use crate::units::{Length, Seconds, Speed};
 
 use super::args::PlanArgs;
 use super::chosen::{Chosen, chosen};
@@ -42,8 +42,11 @@ fn text(chosen: &Chosen, plan: &FirstRun, reduced: &[Reduced], width: usize) -> 
         wrap(&first_run_text(judged, plan).join(" "), width).join("\n") + "\n",
         segments(judged, plan, reduced, table_width),
         hanging("reduced speed: ", &reduced_speed_text(judged, reduced).join(" "), width),
+        stops(judged, table_width),
+        hanging("stopping: ", &stopping_text(judged), width),
         wrap(CAUTION, width).join("\n") + "\n",
     ];
+    let parts: Vec<String> = parts.into_iter().filter(|part| !part.is_empty()).collect();
     parts.join("\n")
 }
 
@@ -101,4 +104,30 @@ fn segments(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], width: usize)
         }
     }
     text
+}
+
+/// What a stop asks for, in a table: the TCP's way along its path, the joint that runs on farthest, and the time until all rest.
+/// Empty where no segment has stopping data.
+fn stops(judged: &Judged, width: usize) -> String {
+    let mut rows = vec![["#", "to", "TCP runs on", "at", "farthest joint", "rests after"].map(str::to_owned)];
+    for segment in &judged.plan.segments {
+        let Some(stop) = stopping(&judged.arm, segment) else { continue };
+        rows.push([
+            segment.number().to_string(),
+            judged.recipe.waypoints[segment.to].name.clone(),
+            Length::m(stop.tcp).measure().text_up(0),
+            Seconds::s(stop.tcp_at.time).to_string(),
+            joint_stop_words(judged, &stop),
+            Seconds::s(stop.time).measure().text_up(2),
+        ]);
+    }
+    if rows.len() == 1 {
+        return String::new();
+    }
+    let [first, last] = [Stands::First, Stands::Last];
+    if width < NARROW {
+        let few: Vec<[String; 4]> = rows.into_iter().map(|[number, to, way, _, _, rests]| [number, to, way, rests]).collect();
+        return columns(&few, [last, first, last, last], 1, width);
+    }
+    columns(&rows, [last, first, last, last, first, last], 1, width)
 }

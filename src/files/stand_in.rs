@@ -18,6 +18,7 @@ pub(super) fn arm_for(recipe: &Recipe) -> Option<Arm> {
         accel: 1.0,
         torque: None,
         brake: None,
+        stop: None,
         link: None,
     };
     let data = ArmData {

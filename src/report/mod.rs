@@ -6,6 +6,7 @@ mod grid;
 mod judged_json;
 mod plan_json;
 mod save;
+mod stopping_json;
 mod trace_csv;
 
 pub use check_json::{FORMAT, check_json};

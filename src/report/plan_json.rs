@@ -6,6 +6,7 @@ use crate::review::{FIRST_RUN_CAUTIONS, FirstRun, Judged, REDUCED_SPEED, Reduced
 use crate::units::{Share, Speed};
 
 use super::judged_json::{At, figure, shown};
+use super::stopping_json::{StoppingJson, stopping_json};
 
 /// The name and version of the format that [`plan_json`] writes.
 pub const PLAN_FORMAT: &str = "elbowroom-plan/1";
@@ -24,6 +25,7 @@ struct PlanJson {
     stages: Vec<StageJson>,
     segments: Vec<SegmentRunJson>,
     reduced_speed: ReducedJson,
+    stopping: Vec<StoppingJson>,
     told: Vec<String>,
     cautions: [&'static str; FIRST_RUN_CAUTIONS.len()],
 }
@@ -49,6 +51,7 @@ struct SegmentRunJson {
     not_clear_below: Vec<Option<f64>>,
     held_back_by: Option<&'static str>,
     joint: Option<String>,
+    at_any_speed: bool,
 }
 
 /// The second judgement, in manual mode at reduced speed.
@@ -106,6 +109,7 @@ pub fn plan_json(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], recipe_f
         stages: stages.collect(),
         segments: plan.segments.iter().map(|run| segment_run(judged, run)).collect(),
         reduced_speed: ReducedJson::of(judged, reduced),
+        stopping: stopping_json(judged),
         told: first_run_text(judged, plan),
         cautions: FIRST_RUN_CAUTIONS,
     };
@@ -123,6 +127,7 @@ fn segment_run(judged: &Judged, run: &SegmentRun) -> SegmentRunJson {
         not_clear_below: run.gaps.iter().map(|share| percent(*share)).collect(),
         held_back_by: run.held_back.map(|(check, _)| check.key()),
         joint: run.held_back.and_then(|(_, joint)| joint).map(|j| judged.arm.joints()[j].name.clone()),
+        at_any_speed: run.at_any_speed,
     }
 }
 

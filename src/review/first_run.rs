@@ -1,6 +1,6 @@
 use std::collections::BTreeMap;
 
-use crate::checks::{Check, SegmentSurvey, Verdict, Watch, each_segment, judge_at};
+use crate::checks::{Check, Finding, Kind, SegmentSurvey, Unproved, Verdict, Watch, each_segment, judge_at};
 use crate::motion::Segment;
 use crate::units::Share;
 
@@ -36,6 +36,8 @@ pub struct SegmentRun {
     pub gaps: Vec<Share>,
     /// What is not clear just above the highest override, or at every one; `None` where full speed is clear.
     pub held_back: Option<HeldBack>,
+    /// Whether that is so at every override, since it does not depend on speed.
+    pub at_any_speed: bool,
 }
 
 /// A plan for the first run: which overrides are clear.
@@ -125,9 +127,9 @@ impl<'a> Trial<'a> {
     fn search(&mut self) -> SegmentRun {
         let segment = self.index;
         let full = self.judged.survey.segments[self.index].as_ref();
-        if let Some(finding) = full.findings.iter().find(|finding| finding.check.is_of_posture_alone()) {
+        if let Some(finding) = full.findings.iter().find(|finding| holds_at_any_speed(finding)) {
             let held_back = Some((finding.check, finding.joint));
-            return SegmentRun { segment, highest: None, gaps: Vec::new(), held_back };
+            return SegmentRun { segment, highest: None, gaps: Vec::new(), held_back, at_any_speed: true };
         }
         let steps = (1..=FULL / STEP).rev().map(|k| k * STEP);
         let outcomes: Vec<(usize, Outcome)> = steps.map(|percent| (percent, self.at_percent(percent))).collect();
@@ -141,8 +143,14 @@ impl<'a> Trial<'a> {
         let gaps = gaps.map(|(percent, _)| share(*percent)).collect();
         let above = highest.map_or(1, |percent| percent + 1);
         let held_back = if highest == Some(FULL) { None } else { self.at_percent(above).held_back };
-        SegmentRun { segment, highest: highest.map(share), gaps, held_back }
+        SegmentRun { segment, highest: highest.map(share), gaps, held_back, at_any_speed: false }
     }
+}
+
+/// Whether a finding at full speed is one at every override. A proof that merely did not close may close at another.
+fn holds_at_any_speed(finding: &Finding) -> bool {
+    let open = matches!(finding.kind, Kind::Unproved(Unproved::BudgetSpent | Unproved::SamplesOnly));
+    finding.check.is_of_posture_alone() && !open
 }
 
 fn share(percent: usize) -> Share {

@@ -65,6 +65,7 @@ fn turning(name: usize, a: f64, alpha: f64, d: f64, theta: f64) -> Joint {
         accel: 12.0 + name as f64 * 6.0,
         torque: None,
         brake: None,
+        stop: None,
         link: None,
     }
 }

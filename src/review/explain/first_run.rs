@@ -26,8 +26,7 @@ pub fn first_run_text(judged: &Judged, plan: &FirstRun) -> Vec<String> {
     }];
     let number = |run: &SegmentRun| judged.plan.segments[run.segment].number();
     let never = |run: &&SegmentRun| run.highest.is_none();
-    let (blind, other): (Vec<&SegmentRun>, Vec<&SegmentRun>) =
-        plan.segments.iter().filter(never).partition(|run| run.held_back.is_some_and(|(check, _)| check.is_of_posture_alone()));
+    let (blind, other): (Vec<&SegmentRun>, Vec<&SegmentRun>) = plan.segments.iter().filter(never).partition(|run| run.at_any_speed);
     for (runs, which) in [(blind, "which no override changes"), (other, "at every override that was tried")] {
         let told_each: Vec<String> =
             runs.iter().map(|run| format!("segment {} by {}", number(run), held_back_words(judged, run.held_back))).collect();

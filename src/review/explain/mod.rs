@@ -18,6 +18,7 @@ mod reach;
 mod reduced_speed;
 mod scene;
 mod singular;
+mod stopping;
 mod tcp_speed;
 mod unproved;
 mod wrap;
@@ -29,6 +30,7 @@ pub use headline::{check_words, headline};
 pub use no_finding::no_finding;
 pub use proof::proof_text;
 pub use reduced_speed::reduced_speed_text;
+pub use stopping::{joint_stop_words, stopping_text};
 pub use wrap::wrap;
 
 use crate::checks::{Check, Excess, Finding, Kind};
