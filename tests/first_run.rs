@@ -3,7 +3,7 @@
 use std::process::Command;
 use std::sync::Arc;
 
-use elbowroom::checks::{Check, Proof, Spot, Verdict, Watch, judge_at, spot_peaks, stopping};
+use elbowroom::checks::{Check, Meter, Proof, Spot, Verdict, Watch, judge_at, spot_peaks, stopping};
 use elbowroom::files::{demo, read_arm, read_recipe};
 use elbowroom::motion::{Follower, Segment, Side};
 use elbowroom::program::ToolPoint;
@@ -273,4 +273,29 @@ fn lower_overrides_that_are_not_clear_are_told() {
     let told = first_run_text(&judged, &plan).join(" ");
     assert!(told.contains("Segment 2 is clear up to 80 %, but not at 45 % and 40 %: not every demand falls with speed."), "{told}");
     assert!(told.contains("segment 2 up to 80 %, held back by TCP speed and segment 10 up to 58 %"), "{told}");
+}
+
+#[test]
+fn nothing_lies_beyond_what_was_proved_at_an_override() {
+    let judged = demo_judged();
+    let criteria = &judged.recipe.acceptance;
+    for (index, segment) in judged.plan.segments.iter().enumerate() {
+        for k in [0.1, 0.33, 0.58] {
+            let survey = judge_at(&judged.arm, index, segment, criteria, judged.plan.gravity, Share::fraction(k));
+            let slow = segment.at_override(k);
+            let meter = Meter::of(&judged.arm, &slow, criteria, judged.plan.gravity);
+            let follower = Follower::of(&judged.arm, &slow);
+            for step in 0..=500 {
+                let [u, rate, accel] = slow.law.at(slow.duration() * f64::from(step) / 500.0, Side::Before);
+                let reading = meter.read(&follower.at(u).expect("followed"), rate, accel);
+                for result in &survey.checks {
+                    let Proof::Proved(bound) = result.proof else { continue };
+                    for slot in meter.slots(result.check).filter(|slot| meter.channel(*slot).judged) {
+                        let room = meter.channel(slot).room(reading[slot]).as_fraction();
+                        assert!(room >= bound.as_fraction() - 1e-9, "segment {index} at {k}: {:?} {room} {bound:?}", result.check);
+                    }
+                }
+            }
+        }
+    }
 }

@@ -10,6 +10,7 @@ mod doubt;
 mod finding;
 mod holding;
 mod judge;
+mod looks;
 mod meter;
 mod points;
 mod proof;

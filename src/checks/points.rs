@@ -1,10 +1,11 @@
 use crate::arm::Arm;
 use crate::geometry::V3;
 use crate::kinematics::spherical_wrist;
-use crate::motion::{Follower, Instant, Segment};
+use crate::motion::{Instant, Segment};
 use crate::program::ToolPoint;
 
 use super::Place;
+use super::looks::Looks;
 
 /// A point of the arm or of what hangs on it whose speed people ask for.
 #[derive(Debug, Clone, PartialEq)]
@@ -39,18 +40,18 @@ struct Carrying {
     at: V3,
 }
 
-/// Looks along each piece of a law before the best of them is looked at more closely.
-const LOOKS: usize = 48;
-/// Halvings of the closer look: to a millionth of the distance between two looks.
-const CLOSER: usize = 30;
 /// An arm of fewer joints has no elbow to speak of.
 const WITH_ELBOW: usize = 5;
 
 /// Peaks of the speeds of TCP, flange, wrist centre, elbow and the tool's named points on a segment, as far as it can be followed.
 /// Empty where it can't be followed at all or has no motion.
 pub fn spot_peaks(arm: &Arm, segment: &Segment, points: &[ToolPoint]) -> Vec<SpotPeak> {
-    let follower = Follower::of(arm, segment);
-    carried_points(arm, segment, points).into_iter().filter_map(|point| peak(arm, segment, &follower, &point)).collect()
+    let looks = Looks::along(arm, segment);
+    let peak = |point: Carrying| {
+        let (speed, at) = looks.greatest(|instant, rate| by_fraction(arm, instant, &point).norm() * rate)?;
+        Some(SpotPeak { spot: point.spot, speed, at })
+    };
+    carried_points(arm, segment, points).into_iter().filter_map(peak).collect()
 }
 
 /// The velocity of a point by the path's fraction, base axes, m.
@@ -78,45 +79,4 @@ fn carried_points(arm: &Arm, segment: &Segment, points: &[ToolPoint]) -> Vec<Car
     }
     all.extend(points.iter().map(|point| on_flange(Spot::Tool(point.name.clone()), &point.at)));
     all
-}
-
-fn peak(arm: &Arm, segment: &Segment, follower: &Follower, point: &Carrying) -> Option<SpotPeak> {
-    let speed = |instant: &Instant, rate: f64| by_fraction(arm, instant, point).norm() * rate;
-    let (speed, at) = greatest(segment, follower, speed)?;
-    Some(SpotPeak { spot: point.spot.clone(), speed, at })
-}
-
-/// The greatest value on a segment that is found by looking, of something that depends on the instant and on the rate of the path's
-/// fraction (1/s), and where. `None` where there is no motion to look at.
-pub(super) fn greatest(segment: &Segment, follower: &Follower, value: impl Fn(&Instant, f64) -> f64) -> Option<(f64, Place)> {
-    let until = segment.followed_to();
-    let pieces = segment.law.pieces();
-    let look = |piece: usize, dt: f64| {
-        let [u, rate, _] = pieces[piece].at(dt);
-        let u = u.clamp(0.0, 1.0);
-        let instant = follower.at(u).filter(|_| u <= until)?;
-        Some((value(&instant, rate.max(0.0)), Place { time: pieces[piece].start + dt, u }))
-    };
-    let mut best: Option<(f64, Place, usize, f64)> = None;
-    for (index, piece) in pieces.iter().enumerate().filter(|(_, piece)| piece.duration > 0.0) {
-        for k in 0..=LOOKS {
-            let dt = piece.duration * k as f64 / LOOKS as f64;
-            let Some((value, place)) = look(index, dt) else { continue };
-            if best.is_none_or(|(most, ..)| value > most) {
-                best = Some((value, place, index, dt));
-            }
-        }
-    }
-    let (mut most, mut at, piece, mut dt) = best?;
-    let mut step = pieces[piece].duration / LOOKS as f64;
-    for _ in 0..CLOSER {
-        step *= 0.5;
-        for there in [dt - step, dt + step] {
-            let inside = (0.0..=pieces[piece].duration).contains(&there);
-            if let Some((more, place)) = look(piece, there).filter(|(more, _)| inside && *more > most) {
-                (most, at, dt) = (more, place, there);
-            }
-        }
-    }
-    Some((most, at))
 }

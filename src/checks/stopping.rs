@@ -1,9 +1,9 @@
 use crate::arm::{Arm, Stop};
 use crate::geometry::V3;
-use crate::motion::{Follower, Instant, Segment};
+use crate::motion::{Instant, Segment};
 
 use super::Place;
-use super::points::greatest;
+use super::looks::Looks;
 
 /// How a joint runs on when a stop is asked for at its fastest instant.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -48,17 +48,17 @@ const AT_REST: f64 = 1e-9;
 /// What a stop at any instant of a segment asks for. `None` where the arm file lacks stopping data of a joint that moves, or there
 /// is no motion.
 pub fn stopping(arm: &Arm, segment: &Segment) -> Option<Stopping> {
-    let follower = Follower::of(arm, segment);
+    let looks = Looks::along(arm, segment);
     let mut joints = Vec::new();
     for (joint, data) in arm.joints().iter().enumerate() {
-        let (rate, at) = greatest(segment, &follower, |instant, rate| (instant.slope[joint] * rate).abs())?;
+        let (rate, at) = looks.greatest(|instant, rate| (instant.slope[joint] * rate).abs())?;
         if rate > AT_REST {
             let stop = data.stop?;
             joints.push(JointStop { joint, run_on: stop.run_on(rate, data.rate), time: stop.time(rate, data.rate), at });
         }
     }
-    let (tcp, tcp_at) = greatest(segment, &follower, |instant, rate| together(arm, instant, rate)[0])?;
-    let (time, time_at) = greatest(segment, &follower, |instant, rate| together(arm, instant, rate)[1])?;
+    let (tcp, tcp_at) = looks.greatest(|instant, rate| together(arm, instant, rate)[0])?;
+    let (time, time_at) = looks.greatest(|instant, rate| together(arm, instant, rate)[1])?;
     Some(Stopping { joints, tcp, tcp_at, time, time_at })
 }
 

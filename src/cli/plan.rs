@@ -1,8 +1,8 @@
 use crate::checks::{Spot, Watch, stopping};
 use crate::report::plan_json;
 use crate::review::{
-    FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, first_run, first_run_text, headline, held_back_words, joint_stop_words,
-    reduced_speed, reduced_speed_text, stage_words, stopping_text, wrap,
+    FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, fastest_text, first_run, first_run_text, headline, held_back_words,
+    joint_stop_words, reduced_speed, reduced_speed_text, stage_words, stopping_text, wrap,
 };
 use crate::units::{Length, Seconds, Speed};
 
@@ -87,23 +87,14 @@ fn segments(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], width: usize)
         ]
     }));
     let [first, last] = [Stands::First, Stands::Last];
-    let mut text = if width < NARROW {
+    let table = if width < NARROW {
         let few: Vec<[String; 4]> =
             rows.into_iter().map(|[number, to, clear, _, _, _, reduced]| [number, to, clear, reduced]).collect();
         columns(&few, [last, first, last, last], 1, width)
     } else {
         columns(&rows, [last, first, last, first, last, last, last], 1, width)
     };
-    for reduced in reduced {
-        for peak in &reduced.peaks {
-            if let Spot::Tool(name) = &peak.spot {
-                let number = judged.plan.segments[reduced.segment].number();
-                text +=
-                    &hanging("", &format!("On segment {number} \"{name}\" moves at up to {}.", Speed::m_per_s(peak.speed)), width);
-            }
-        }
-    }
-    text
+    table + &wrap(&fastest_text(judged, reduced), width).join("\n") + "\n"
 }
 
 /// What a stop asks for, in a table: the TCP's way along its path, the joint that runs on farthest, and the time until all rest.

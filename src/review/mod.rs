@@ -8,8 +8,8 @@ mod not_checked;
 mod reduced_speed;
 
 pub use explain::{
-    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, check_words, doubt_text, explain, first_run_text, headline,
-    held_back_words, joint_stop_words, no_finding, proof_text, reduced_speed_text, stage_words, stopping_text, wrap,
+    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, check_words, doubt_text, explain, fastest_text, first_run_text,
+    headline, held_back_words, joint_stop_words, no_finding, proof_text, reduced_speed_text, stage_words, stopping_text, wrap,
 };
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
 pub use judged::Judged;

@@ -13,7 +13,7 @@ pub fn not_checked(judged: &Judged) -> Vec<String> {
             "Safeguards, interlocks, emergency stops and the cell's risk assessment.",
             "Torque in motion: only what holding still asks is judged.",
             "Brakes, gears, heat and wear.",
-            "Cables and hoses: how they wind and pull.",
+            "Cables and hoses: how they pull and rub; how far the wrist winds them is only told, where the recipe sets a limit.",
             "The grip: whether the tool holds the part.",
             "The task program's logic, signals and waiting times.",
             "How the first waypoint is reached, and the way back to it when the cycle starts again.",

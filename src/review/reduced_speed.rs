@@ -48,7 +48,7 @@ pub fn reduced_speed(judged: &Judged, watch: &Watch) -> Option<Vec<Reduced>> {
     each_segment(&judged.plan, watch, |index, segment| {
         let peaks = peaks(judged, segment);
         let fastest = peaks.iter().filter(|peak| matches!(peak.spot, Spot::Tcp | Spot::Flange)).map(|peak| peak.speed);
-        let run_at = override_for(fastest.fold(0.0, f64::max));
+        let run_at = override_for(fastest.fold(0.0, |most, speed| if speed <= most { most } else { speed }));
         let survey = judge_at(&judged.arm, index, segment, &criteria, judged.plan.gravity, run_at);
         Reduced { segment: index, peaks, run_at, survey }
     })

@@ -29,7 +29,7 @@ pub use first_run::{FIRST_RUN_CAUTIONS, first_run_text, held_back_words, stage_w
 pub use headline::{check_words, headline};
 pub use no_finding::no_finding;
 pub use proof::proof_text;
-pub use reduced_speed::reduced_speed_text;
+pub use reduced_speed::{fastest_text, reduced_speed_text};
 pub use stopping::{joint_stop_words, stopping_text};
 pub use wrap::wrap;
 

@@ -1,4 +1,4 @@
-use crate::checks::Verdict;
+use crate::checks::{Spot, SpotPeak, Verdict};
 use crate::review::{REDUCED_SPEED, Reduced};
 use crate::units::{Share, Speed};
 
@@ -44,6 +44,36 @@ pub fn reduced_speed_text(judged: &Judged, reduced: &[Reduced]) -> Vec<String> {
             .to_owned(),
     );
     told
+}
+
+/// How fast each point of arm and tool gets anywhere in the program at full override: `TCP 3856 mm/s (segment 2)`.
+pub fn fastest_text(judged: &Judged, reduced: &[Reduced]) -> String {
+    let mut fastest: Vec<(&SpotPeak, usize)> = Vec::new();
+    for (peak, segment) in reduced.iter().flat_map(|of| of.peaks.iter().map(|peak| (peak, of.segment))) {
+        match fastest.iter_mut().find(|(known, _)| known.spot == peak.spot) {
+            Some(known) if known.0.speed < peak.speed => *known = (peak, segment),
+            Some(_) => {}
+            None => fastest.push((peak, segment)),
+        }
+    }
+    let told: Vec<String> = fastest
+        .into_iter()
+        .map(|(peak, segment)| {
+            let speed = Speed::m_per_s(peak.speed).measure().text_up(0);
+            format!("{} {speed} (segment {})", spot_words(&peak.spot), judged.plan.segments[segment].number())
+        })
+        .collect();
+    if told.is_empty() { String::new() } else { format!("Fastest at full override, by looking: {}.", first_of(&told).join(", ")) }
+}
+
+fn spot_words(spot: &Spot) -> String {
+    match spot {
+        Spot::Tcp => "TCP".to_owned(),
+        Spot::Flange => "flange".to_owned(),
+        Spot::WristCentre => "wrist centre".to_owned(),
+        Spot::Elbow => "elbow".to_owned(),
+        Spot::Tool(name) => format!("\"{name}\""),
+    }
 }
 
 /// An override in whole percent, in tenths below one.
