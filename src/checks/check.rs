@@ -60,6 +60,12 @@ impl Check {
         matches!(self, Self::Reach | Self::Range | Self::Holding | Self::Singular | Self::SpeedLeft)
     }
 
+    /// Whether what it asks grows with the override at every place of a path, so that clear at one override is clear at every
+    /// lower one.
+    pub fn grows_with_speed(self) -> bool {
+        matches!(self, Self::Rate | Self::Accel | Self::TcpSpeed)
+    }
+
     /// Its first channel; none for reach.
     pub(super) fn first_channel(self) -> Option<usize> {
         match self {

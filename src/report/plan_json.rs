@@ -52,6 +52,7 @@ struct SegmentRunJson {
     held_back_by: Option<&'static str>,
     joint: Option<String>,
     at_any_speed: bool,
+    clear_below: bool,
 }
 
 /// The second judgement, in manual mode at reduced speed.
@@ -128,6 +129,7 @@ fn segment_run(judged: &Judged, run: &SegmentRun) -> SegmentRunJson {
         held_back_by: run.held_back.map(|(check, _)| check.key()),
         joint: run.held_back.and_then(|(_, joint)| joint).map(|j| judged.arm.joints()[j].name.clone()),
         at_any_speed: run.at_any_speed,
+        clear_below: run.clear_below,
     }
 }
 

@@ -38,6 +38,9 @@ pub struct SegmentRun {
     pub held_back: Option<HeldBack>,
     /// Whether that is so at every override, since it does not depend on speed.
     pub at_any_speed: bool,
+    /// Whether clear at the highest override is clear at every lower one, since each demand that is judged grows with the
+    /// override or is the same at every one. Otherwise lower ones are known where they were tried.
+    pub clear_below: bool,
 }
 
 /// A plan for the first run: which overrides are clear.
@@ -51,7 +54,8 @@ pub struct FirstRun {
     pub highest: Option<Share>,
 }
 
-/// Overrides are tried in steps of this many percent; between the highest clear one and the next they are tried one by one.
+/// Where a demand need not fall with speed, overrides are tried in steps of this many percent; between the highest clear one and
+/// the next step they are tried one by one.
 const STEP: usize = 5;
 /// Override in percent at full speed.
 const FULL: usize = 100;
@@ -129,22 +133,52 @@ impl<'a> Trial<'a> {
         let full = self.judged.survey.segments[self.index].as_ref();
         if let Some(finding) = full.findings.iter().find(|finding| holds_at_any_speed(finding)) {
             let held_back = Some((finding.check, finding.joint));
-            return SegmentRun { segment, highest: None, gaps: Vec::new(), held_back, at_any_speed: true };
+            return SegmentRun { segment, highest: None, gaps: Vec::new(), held_back, at_any_speed: true, clear_below: true };
         }
-        let steps = (1..=FULL / STEP).rev().map(|k| k * STEP);
-        let outcomes: Vec<(usize, Outcome)> = steps.map(|percent| (percent, self.at_percent(percent))).collect();
-        let is_clear = |outcome: &Outcome| outcome.verdict == Verdict::Clear;
-        // Below the least step nothing was tried yet.
-        let found = outcomes.iter().find(|(_, outcome)| is_clear(outcome)).map_or(0, |(percent, _)| *percent);
-        let highest = (found..(found + STEP).min(FULL + 1))
-            .rev()
-            .find(|percent| *percent > 0 && self.at_percent(*percent).verdict == Verdict::Clear);
-        let gaps = outcomes.iter().filter(|(percent, outcome)| *percent < highest.unwrap_or(0) && !is_clear(outcome));
-        let gaps = gaps.map(|(percent, _)| share(*percent)).collect();
-        let above = highest.map_or(1, |percent| percent + 1);
-        let held_back = if highest == Some(FULL) { None } else { self.at_percent(above).held_back };
-        SegmentRun { segment, highest: highest.map(share), gaps, held_back, at_any_speed: false }
+        let mut judged = full.checks.iter().filter(|result| result.judged).map(|result| result.check);
+        let clear_below = judged.all(|check| check.is_of_posture_alone() || check.grows_with_speed());
+        let is_clear = |percent: usize| self.at_percent(percent).verdict == Verdict::Clear;
+        let (highest, gaps) = if clear_below { (halve(is_clear), Vec::new()) } else { step_down(is_clear) };
+        let held_back = match highest {
+            Some(FULL) => None,
+            found => self.at_percent(found.unwrap_or(0) + 1).held_back,
+        };
+        SegmentRun {
+            segment,
+            highest: highest.map(share),
+            gaps: gaps.into_iter().map(share).collect(),
+            held_back,
+            at_any_speed: false,
+            clear_below,
+        }
     }
+}
+
+/// The highest clear override in percent where every one below a clear one is clear too.
+fn halve(mut is_clear: impl FnMut(usize) -> bool) -> Option<usize> {
+    if is_clear(FULL) {
+        return Some(FULL);
+    }
+    let (mut clear, mut not) = (0, FULL);
+    while not - clear > 1 {
+        let middle = usize::midpoint(clear, not);
+        if is_clear(middle) {
+            clear = middle;
+        } else {
+            not = middle;
+        }
+    }
+    (clear > 0).then_some(clear)
+}
+
+/// The highest clear override in percent that steps find, and the steps below it that are not clear, the higher ones first.
+fn step_down(mut is_clear: impl FnMut(usize) -> bool) -> (Option<usize>, Vec<usize>) {
+    let (clear, not): (Vec<usize>, Vec<usize>) = (1..=FULL / STEP).rev().map(|k| k * STEP).partition(|percent| is_clear(*percent));
+    // Below the least step nothing was tried yet.
+    let found = clear.first().copied().unwrap_or(0);
+    let highest = (found..(found + STEP).min(FULL + 1)).rev().find(|percent| *percent > 0 && is_clear(*percent));
+    let gaps = not.into_iter().filter(|percent| *percent < highest.unwrap_or(0)).collect();
+    (highest, gaps)
 }
 
 /// Whether a finding at full speed is one at every override. A proof that merely did not close may close at another.
@@ -176,4 +210,26 @@ fn highest_of_all(judged: &Judged, tried: &[(&SegmentRun, &BTreeMap<usize, Outco
         .into_iter()
         .find(|percent| trials.iter_mut().all(|trial| trial.at_percent(*percent).verdict == Verdict::Clear))
         .map(share)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn halving_finds_the_edge_of_what_is_clear() {
+        for edge in 0..=FULL {
+            assert_eq!(halve(|percent| percent <= edge), (edge > 0).then_some(edge));
+        }
+    }
+
+    #[test]
+    fn steps_find_the_edge_and_the_gaps_below_it() {
+        for edge in 0..=FULL {
+            assert_eq!(step_down(|percent| percent <= edge), ((edge > 0).then_some(edge), Vec::new()), "{edge}");
+        }
+        let with_a_gap = |percent: usize| percent <= 83 && !(38..=51).contains(&percent);
+        assert_eq!(step_down(with_a_gap), (Some(83), vec![50, 45, 40]));
+        assert_eq!(step_down(|_| false), (None, Vec::new()));
+    }
 }

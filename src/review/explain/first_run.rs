@@ -56,9 +56,14 @@ pub fn first_run_text(judged: &Judged, plan: &FirstRun) -> Vec<String> {
         ));
     }
     told.push(
-        "Rates grow with the override and accelerations with its square; holding is the same at every one. Overrides were tried in \
-         steps of 5 %, then of 1 %; each that is told was judged and proved itself, those between were not."
-            .to_owned(),
+        if plan.segments.iter().all(|run| run.clear_below) {
+            "Rates grow with the override and accelerations with its square, holding is the same at every one; so what is clear at \
+             one override is clear at every lower one. Each that is told was judged and proved itself."
+        } else {
+            "Rates grow with the override and accelerations with its square, but not every demand falls with speed. Overrides were \
+             tried in steps of 5 %, then of 1 %; each that is told was judged and proved itself, those between were not."
+        }
+        .to_owned(),
     );
     told
 }
