@@ -36,6 +36,7 @@ impl Example {
             torque: None,
             brake: None,
             drive: Drive::default(),
+            stop: None,
             link: Some(Body { mass, com: V3::from(com), inertia: Some(tensor), grounds: Grounds::Sheet }),
         };
         // Links 2 and 3 have their x axis along base -z and their z axis along base x.

@@ -3,7 +3,7 @@ use std::collections::HashSet;
 use crate::geometry::V3;
 use crate::units::{Dimension, Fault, Field, Measure, tidy};
 
-use super::{Chain, Flange, Joint, JointKind, MAX_JOINTS, Placement, Task};
+use super::{Braking, Chain, Flange, Joint, JointKind, MAX_JOINTS, Placement, Task};
 
 /// The data of an arm as somebody wrote them, SI, not yet checked.
 #[derive(Debug, Clone, PartialEq)]
@@ -186,6 +186,17 @@ fn joint_faults(joint: &Joint, field: &Field) -> Vec<Fault> {
     }
     if let Some(brake) = joint.brake {
         above_zero(field.key("brake"), "brake", brake, kind.effort());
+    }
+    if let Some(stop) = joint.stop {
+        let field = field.key("stop");
+        match stop.braking {
+            Braking::Decel(decel) => above_zero(field.key("decel"), "decel", decel, kind.acceleration()),
+            Braking::FromFullRate(time) => above_zero(field.key("time"), "time", time, Dimension::Time),
+        }
+        if !(stop.reaction.is_finite() && stop.reaction >= 0.0) {
+            let says = format!("{thing}: reaction is {} s; it must be 0 or more", stop.reaction);
+            faults.push(Fault::new(field.key("reaction"), says));
+        }
     }
     faults.extend(super::drive_faults::faults(joint, field, &thing));
     let range = joint.range;

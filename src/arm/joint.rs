@@ -1,6 +1,6 @@
 use crate::units::{Dimension, Measure};
 
-use super::{Body, Curve, Drive, Grounds, Placement};
+use super::{Body, Curve, Drive, Grounds, Placement, Stop};
 
 /// How a joint moves.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -98,6 +98,8 @@ pub struct Joint {
     pub brake: Option<f64>,
     /// Rotor, friction and balancer; makers often don't say.
     pub drive: Drive,
+    /// How it comes to rest when a stop is asked for; makers often say so for some joints only.
+    pub stop: Option<Stop>,
     /// The link that it moves, in that link's coordinate system; makers often don't say.
     pub link: Option<Body>,
 }

@@ -10,6 +10,7 @@ mod flange;
 mod joint;
 mod joints;
 mod placement;
+mod stop;
 mod task;
 
 pub use body::{Body, Grounds};
@@ -21,4 +22,5 @@ pub use flange::{Flange, WristLimit};
 pub use joint::{Joint, JointKind, Range, TorqueRating};
 pub use joints::{Joints, MAX_JOINTS};
 pub use placement::{Convention, Placement};
+pub use stop::{Braking, Stop};
 pub use task::{Task, TaskRow};

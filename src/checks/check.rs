@@ -85,6 +85,17 @@ impl Check {
         matches!(self, Self::Singular | Self::SpeedLeft)
     }
 
+    /// Whether it depends on where the arm is alone and not on how fast: what breaks it does so at every override.
+    pub fn is_of_posture_alone(self) -> bool {
+        matches!(self, Self::Reach | Self::Range | Self::Holding | Self::Brake | Self::Flange | Self::Singular | Self::SpeedLeft)
+    }
+
+    /// Whether what it asks grows with the override at every place of a path, so that clear at one override is clear at every
+    /// lower one.
+    pub fn grows_with_speed(self) -> bool {
+        matches!(self, Self::Rate | Self::Accel | Self::TcpSpeed)
+    }
+
     /// Its first channel; none for reach, and for what is judged over the whole cycle.
     pub(super) fn first_channel(self) -> Option<usize> {
         match self {

@@ -2,7 +2,7 @@ use crate::arm::Arm;
 use crate::geometry::V3;
 use crate::motion::Segment;
 use crate::program::Acceptance;
-use crate::units::{Measure, Room};
+use crate::units::{Measure, Room, Share};
 
 use super::proof::{Covered, Effort, cover};
 use super::stretch::{finding, stretches, worst_of};
@@ -60,6 +60,12 @@ pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Accep
         looked_at: case.sweep.looks.len(),
         tally,
     }
+}
+
+/// Judges one segment at an override (above 0, at most 1): rates scale by it and accelerations by its square. Everything is
+/// looked at and proved anew, since not every demand grows with speed.
+pub fn judge_at(arm: &Arm, index: usize, segment: &Segment, criteria: &Acceptance, gravity: V3, run_at: Share) -> SegmentSurvey {
+    judge(arm, index, &segment.at_override(run_at.as_fraction()), criteria, gravity)
 }
 
 impl Case<'_> {

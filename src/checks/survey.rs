@@ -4,7 +4,7 @@ use std::sync::atomic::{AtomicBool, AtomicUsize, Ordering};
 use rayon::prelude::*;
 
 use crate::arm::Arm;
-use crate::motion::Plan;
+use crate::motion::{Plan, Segment};
 use crate::program::Recipe;
 
 use super::judge::judge;
@@ -62,6 +62,19 @@ impl Watch {
     pub fn done(&self) -> usize {
         self.done.load(Ordering::Relaxed)
     }
+}
+
+/// Does the same work for every segment of a plan on all cores; results in the plan's order. `None` if the watch stopped it.
+pub fn each_segment<T: Send>(plan: &Plan, watch: &Watch, work: impl Fn(usize, &Segment) -> T + Sync) -> Option<Vec<T>> {
+    plan.segments
+        .par_iter()
+        .enumerate()
+        .map(|(index, segment)| {
+            let result = (!watch.is_stopped()).then(|| work(index, segment))?;
+            watch.done.fetch_add(1, Ordering::Relaxed);
+            Some(result)
+        })
+        .collect()
 }
 
 /// Checks a planned recipe on all cores. Segments that an earlier survey of the same arm and criteria judged alike are taken from

@@ -62,6 +62,12 @@ pub(super) enum Command {
     /// Tell findings at length: what, where, why, what happens if it is left alone, what the verdict rests on
     #[command(after_help = "Exit codes: 0 told, 2 the recipe could not be judged or has no such segment.")]
     Explain(ExplainArgs),
+    /// Plan the first run: at which overrides everything is clear, stage by stage and segment by segment
+    #[command(
+        after_help = "Stages are those of the recipe's acceptance criteria. An override scales rates by itself and accelerations by its \
+                      square. Exit codes: 0 planned, 2 the recipe could not be judged."
+    )]
+    Plan(PlanArgs),
     /// Write the motion over the cycle as CSV
     #[command(
         after_help = "Rows stand at every step from the start of the cycle, and at every waypoint and corner of a speed law, one \
@@ -102,6 +108,23 @@ pub(super) struct ExplainArgs {
     /// Tell only of this segment: the number of the waypoint that it arrives at
     #[arg(long, value_name = "NUMBER")]
     pub segment: Option<usize>,
+    /// Columns to wrap text at
+    #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
+    pub width: u16,
+}
+
+/// Arguments of `plan`.
+#[derive(Debug, ClapArgs)]
+pub(super) struct PlanArgs {
+    /// The recipe
+    #[arg(required_unless_present = "demo")]
+    pub recipe: Option<PathBuf>,
+    /// Take the built-in demonstration cell
+    #[arg(long, conflicts_with = "recipe")]
+    pub demo: bool,
+    /// Print JSON, one object on one line
+    #[arg(long)]
+    pub json: bool,
     /// Columns to wrap text at
     #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
     pub width: u16,

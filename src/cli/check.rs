@@ -1,13 +1,14 @@
 use std::path::Path;
 
+use crate::checks::Watch;
 use crate::report::check_json;
-use crate::review::headline;
+use crate::review::{Judged, headline, reduced_speed, reduced_speed_text};
 
 use super::args::CheckArgs;
 use super::chosen::{Chosen, chosen};
 use super::code::Code;
 use super::findings_text::findings_text;
-use super::not_checked_text::{CAUTION, doubts_text, not_checked_text};
+use super::not_checked_text::{CAUTION, doubts_text, hanging, not_checked_text};
 use super::out::{self, Reader};
 use super::table::table;
 
@@ -52,9 +53,16 @@ fn told(args: &CheckArgs, chosen: &Chosen, before: bool) -> String {
         table(judged, width.min(80)),
         findings_text(judged, width),
         doubts_text(judged, width),
+        reduced_text(judged, width),
         not_checked_text(judged, width),
         crate::review::wrap(CAUTION, width).join("\n") + "\n",
     ];
     let parts: Vec<String> = parts.into_iter().filter(|part| !part.is_empty()).collect();
     apart.to_owned() + &parts.join("\n")
+}
+
+/// The second judgement, in manual mode at reduced speed.
+fn reduced_text(judged: &Judged, width: usize) -> String {
+    let reduced = reduced_speed(judged, &Watch::default()).expect("nobody stops this watch");
+    hanging("reduced speed: ", &reduced_speed_text(judged, &reduced).join(" "), width)
 }

@@ -5,10 +5,12 @@ mod args;
 mod check;
 mod chosen;
 mod code;
+mod columns;
 mod explain;
 mod findings_text;
 mod not_checked_text;
 mod out;
+mod plan;
 mod screen;
 mod step;
 mod table;
@@ -35,6 +37,7 @@ pub fn run() -> ExitCode {
         None => screen::run(args.recipe.as_deref(), args.screen),
         Some(Command::Check(check)) => check::run(&check),
         Some(Command::Explain(explain)) => explain::run(&explain),
+        Some(Command::Plan(plan)) => plan::run(&plan),
         Some(Command::Trace(trace)) => trace::run(&trace),
     };
     match done {

@@ -27,7 +27,8 @@ pub(super) fn not_checked_text(judged: &Judged, width: usize) -> String {
     hanging("not checked: ", &format!("{}.", brief.join("; ")), width)
 }
 
-fn hanging(label: &str, text: &str, width: usize) -> String {
+/// A paragraph behind a label, its further lines set in.
+pub(super) fn hanging(label: &str, text: &str, width: usize) -> String {
     let mut lines = wrap(&format!("{label}{text}"), width - 2).into_iter();
     let first = lines.next().unwrap_or_default();
     std::iter::once(first).chain(lines.map(|line| format!("  {line}"))).map(|line| line + "\n").collect()

@@ -80,7 +80,7 @@ fn nearest(judged: &Judged, index: usize) -> String {
 }
 
 /// A name cut to a number of columns, its end marked.
-fn cut(text: &str, columns: usize) -> String {
+pub(super) fn cut(text: &str, columns: usize) -> String {
     if text.width() <= columns {
         return text.to_owned();
     }

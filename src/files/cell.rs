@@ -1,9 +1,9 @@
-use crate::geometry::Pose;
-use crate::program::{Acceptance, BASE, Frame, Load, Tool, Usual};
+use crate::geometry::{Pose, V3};
+use crate::program::{Acceptance, BASE, Frame, Load, Stages, Tool, ToolPoint, Usual};
 use crate::units::{Acceleration, Angle, Length, Share, Speed, TurnAcceleration, TurnRate};
 
 use super::body::{body, maybe_body};
-use super::placed::{own_pose, pose};
+use super::placed::{metres, own_pose, pose};
 use super::table::Table;
 
 /// Where the base stands in the world: the table `mount`.
@@ -28,6 +28,8 @@ pub(super) fn acceptance(top: &Table<'_>) -> Acceptance {
         "singular-least",
         "tool-speed-left",
         "tcp-speed",
+        "wind-up",
+        "stages",
     ]);
     let percent = |key: &str, otherwise: Share| table.maybe_number(key).map_or(otherwise, Share::percent);
     Acceptance {
@@ -42,7 +44,20 @@ pub(super) fn acceptance(top: &Table<'_>) -> Acceptance {
         singular_least: table.maybe_number("singular-least").unwrap_or(usual.singular_least),
         tool_speed_left: table.maybe_number("tool-speed-left").map_or(usual.tool_speed_left, Speed::mm_per_s),
         tcp_speed: table.maybe_number("tcp-speed").map(Speed::mm_per_s),
+        stages: stages(&table),
+        wind_up: table.maybe_number("wind-up").map(Angle::deg),
     }
+}
+
+/// Overrides of the first run, in percent.
+fn stages(table: &Table<'_>) -> Stages {
+    let wanted = format!("1 to {} overrides in %, rising, above 0 and at most 100", Stages::MOST);
+    let Some(given) = table.list("stages", &wanted) else { return Stages::default() };
+    Stages::of(&given.iter().map(|percent| Share::percent(*percent)).collect::<Vec<_>>()).unwrap_or_else(|| {
+        let shown: Vec<String> = given.iter().map(f64::to_string).collect();
+        table.complain("stages", format_args!("stages is [{}]; it must be {wanted}", shown.join(", ")));
+        Stages::default()
+    })
 }
 
 /// What segments use where they say nothing: the table `usual`.
@@ -64,13 +79,21 @@ pub(super) fn usual(top: &Table<'_>) -> Usual {
 /// The tables `tool`.
 pub(super) fn tools(top: &Table<'_>) -> Vec<Tool> {
     each(top, "tool", |table| {
-        table.only(&["name", "tcp", "mass", "com", "inertia", "grounds"]);
+        table.only(&["name", "tcp", "mass", "com", "inertia", "grounds", "points"]);
         let name = name(table);
         if !table.has("tcp") {
             table.missing("tcp", "it must be a table { xyz, rpy }: where the TCP stands on the flange");
         }
         let tcp = table.table("tcp").map_or_else(Pose::identity, |tcp| own_pose(&tcp));
-        Tool { name, tcp, body: maybe_body(table) }
+        Tool { name, tcp, body: maybe_body(table), points: points(table) }
+    })
+}
+
+/// The named points of a tool, in flange axes.
+fn points(table: &Table<'_>) -> Vec<ToolPoint> {
+    each(table, "points", |table| {
+        table.only(&["name", "xyz"]);
+        ToolPoint { name: name(table), at: table.numbers("xyz", "mm").map_or_else(V3::zeros, metres) }
     })
 }
 

@@ -1,4 +1,4 @@
-use crate::arm::{Body, Convention, Curve, Joint, JointKind, Placement, Range, TorqueRating};
+use crate::arm::{Body, Braking, Convention, Curve, Joint, JointKind, Placement, Range, Stop, TorqueRating};
 use crate::geometry::{Pose, V3};
 
 use super::body::{body, grounds};
@@ -9,7 +9,8 @@ use super::table::{STAND_IN, Table};
 /// Reads one joint. `convention` is what the arm file says at its top.
 pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Convention>) -> Joint {
     table.only(&[
-        "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer", "link",
+        "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer",
+        "stop", "link",
     ]);
     let name = table.text("name", "text, such as \"J1\"").map_or_else(|| format!("{} (no name)", index + 1), str::to_owned);
     let kind = kind(table);
@@ -31,6 +32,7 @@ pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Conventi
         torque: table.table("torque").map(|torque| rating(&torque.called(table.thing().to_owned()), kind, effort_unit)),
         brake: table.maybe_number("brake"),
         drive: drive(table, kind, effort_unit),
+        stop: table.table("stop").and_then(|stop| stop_data(&stop.called(table.thing().to_owned()), kind)),
         link: link(table),
     }
 }
@@ -101,6 +103,21 @@ fn rating(torque: &Table<'_>, kind: JointKind, unit: &str) -> TorqueRating {
         peak: if doubtful { None } else { peak },
         grounds: grounds(torque),
     }
+}
+
+/// Stopping data: a deceleration or the time from full rate to rest, and the time until it brakes.
+fn stop_data(stop: &Table<'_>, kind: JointKind) -> Option<Stop> {
+    stop.only(&["decel", "time", "reaction"]);
+    let decel = stop.maybe_number("decel").map(|decel| Braking::Decel(decel / kind.acceleration().per_si()));
+    let time = stop.maybe_number("time").map(Braking::FromFullRate);
+    if decel.is_some() && time.is_some() {
+        stop.complain("time", "decel and time both say how it brakes; keep one of them");
+    }
+    let Some(braking) = decel.or(time) else {
+        stop.missing("decel", "stop needs decel (deg/s² or mm/s²), or time (s, from full rate to rest)");
+        return None;
+    };
+    Some(Stop { braking, reaction: stop.maybe_number("reaction").unwrap_or(0.0) })
 }
 
 fn link(table: &Table<'_>) -> Option<Body> {

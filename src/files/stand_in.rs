@@ -19,6 +19,7 @@ pub(super) fn arm_for(recipe: &Recipe) -> Option<Arm> {
         torque: None,
         brake: None,
         drive: crate::arm::Drive::default(),
+        stop: None,
         link: None,
     };
     let data = ArmData {

@@ -283,6 +283,7 @@ mod tests {
             torque: None,
             brake: None,
             drive: crate::arm::Drive::default(),
+            stop: None,
             link: None,
         });
         let data = ArmData {

@@ -74,6 +74,20 @@ impl Law {
         Self { pieces: [still; 3], count: 1 }
     }
 
+    /// The same motion at an override of `k`, above 0: time runs `k` times as fast, so rates scale by `k` and accelerations by
+    /// `k` squared. The path is untouched.
+    #[must_use]
+    pub fn scaled(&self, k: f64) -> Self {
+        let scaled = |piece: &Piece| Piece {
+            start: piece.start / k,
+            duration: piece.duration / k,
+            u: piece.u,
+            rate: piece.rate * k,
+            accel: piece.accel * k * k,
+        };
+        Self { pieces: self.pieces.each_ref().map(scaled), count: self.count }
+    }
+
     /// Its pieces in order.
     pub fn pieces(&self) -> &[Piece] {
         &self.pieces[..self.count]
@@ -144,6 +158,22 @@ mod tests {
             for u in [0.0, 1e-9, 0.1, 0.25, 0.5, 0.77, 1.0 - 1e-9, 1.0] {
                 let t = law.time_of(u);
                 assert!((law.at(t, Side::Before)[0] - u).abs() < 1e-12, "{rate} {accel} {u}");
+            }
+        }
+    }
+
+    #[test]
+    fn an_override_scales_time_rates_and_accelerations_by_its_powers() {
+        let law = Law::trapezoid(0.7, 1.3);
+        for k in [0.1, 0.25, 0.58, 1.0] {
+            let slow = law.scaled(k);
+            assert!((slow.duration() - law.duration() / k).abs() < 1e-12);
+            assert!((slow.top_rate() - k * law.top_rate()).abs() < 1e-12);
+            for share in [0.0, 0.1, 0.4, 0.77, 1.0] {
+                let [u, rate, accel] = law.at(share * law.duration(), Side::Before);
+                let [slow_u, slow_rate, slow_accel] = slow.at(share * slow.duration(), Side::Before);
+                assert!((u - slow_u).abs() < 1e-12 && (slow_rate - k * rate).abs() < 1e-12);
+                assert!((slow_accel - k * k * accel).abs() < 1e-12, "{k} {share}");
             }
         }
     }

@@ -113,6 +113,14 @@ impl Segment {
         self.to + 1
     }
 
+    /// The same segment at an override of `k`, above 0 and at most 1: the path as it is, time stretched. The stop at its end is
+    /// not.
+    #[must_use]
+    pub fn at_override(&self, k: f64) -> Self {
+        let shares = self.shares.map(|[rate, accel]| [rate * k, accel * k * k]);
+        Self { law: self.law.scaled(k), shares, ..self.clone() }
+    }
+
     /// How long it moves, s.
     pub fn duration(&self) -> f64 {
         self.law.duration()

@@ -1,5 +1,7 @@
 use crate::units::{Angle, Length, Share, Speed};
 
+use super::Stages;
+
 /// The acceptance criteria: the reserves and limits that a program is judged by.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Acceptance {
@@ -25,6 +27,10 @@ pub struct Acceptance {
     pub tool_speed_left: Speed,
     /// Greatest speed of the TCP, if the cell has one.
     pub tcp_speed: Option<Speed>,
+    /// How far the least and the greatest value of a wrist joint on the cycle may be apart, for the cables' sake, if the cell says.
+    pub wind_up: Option<Angle>,
+    /// Overrides at which the first run is tried, one after the other.
+    pub stages: Stages,
 }
 
 impl Default for Acceptance {
@@ -43,6 +49,8 @@ impl Default for Acceptance {
             singular_least: 0.05,
             tool_speed_left: Speed::mm_per_s(100.0),
             tcp_speed: None,
+            wind_up: None,
+            stages: Stages::default(),
         }
     }
 }

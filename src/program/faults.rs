@@ -22,6 +22,7 @@ impl Recipe {
                 faults.extend(body.faults(&top.key("tool").item(index), &format!("tool \"{}\"", tool.name)));
             }
         }
+        faults.extend(self.tool_point_faults());
         for (index, load) in self.loads.iter().enumerate() {
             faults.extend(load.body.faults(&top.key("load").item(index), &format!("load \"{}\"", load.name)));
         }
@@ -71,6 +72,26 @@ impl Recipe {
         faults
     }
 
+    fn tool_point_faults(&self) -> Vec<Fault> {
+        let mut faults = Vec::new();
+        for (index, tool) in self.tools.iter().enumerate() {
+            let mut seen = HashSet::new();
+            for (k, point) in tool.points.iter().enumerate() {
+                let field = Field::top().key("tool").item(index).key("points").item(k);
+                let thing = format!("tool \"{}\": point {}", tool.name, k + 1);
+                if point.name.trim().is_empty() {
+                    faults.push(Fault::new(field.key("name"), format!("{thing}: name is empty")));
+                } else if !seen.insert(&point.name) {
+                    faults.push(Fault::new(field.key("name"), format!("{thing}: name \"{}\" is taken already", point.name)));
+                }
+                if !point.at.iter().all(|v| v.is_finite()) {
+                    faults.push(Fault::new(field.key("xyz"), format!("{thing}: xyz holds something that is not a number")));
+                }
+            }
+        }
+        faults
+    }
+
     fn acceptance_faults(&self) -> Vec<Fault> {
         let a = &self.acceptance;
         let field = Field::top().key("acceptance");
@@ -105,6 +126,9 @@ impl Recipe {
         not_negative("tool-speed-left", a.tool_speed_left.measure());
         if let Some(speed) = a.tcp_speed {
             faults.extend(not_above_zero(field.key("tcp-speed"), "acceptance", "tcp-speed", speed.measure()));
+        }
+        if let Some(angle) = a.wind_up {
+            faults.extend(not_above_zero(field.key("wind-up"), "acceptance", "wind-up", angle.measure()));
         }
         faults
     }

@@ -6,6 +6,7 @@ mod carried;
 mod faults;
 mod frame;
 mod recipe;
+mod stages;
 mod tool;
 mod waypoint;
 
@@ -15,5 +16,6 @@ pub use carried::Carried;
 pub(crate) use faults::arc_fault;
 pub use frame::{BASE, Frame, WORLD, frame_in_base};
 pub use recipe::{Recipe, Repeat, Usual};
-pub use tool::{Load, Tool};
+pub use stages::Stages;
+pub use tool::{Load, Tool, ToolPoint};
 pub use waypoint::{Given, Push, PushAxes, Shown, Taught, Then, Waypoint};

@@ -1,5 +1,5 @@
 use crate::arm::Body;
-use crate::geometry::Pose;
+use crate::geometry::{Pose, V3};
 
 /// A tool is what is bolted to the flange.
 #[derive(Debug, Clone, PartialEq)]
@@ -10,6 +10,17 @@ pub struct Tool {
     pub tcp: Pose,
     /// Its mass, centre and inertia in flange axes; `None` where the recipe gives no mass.
     pub body: Option<Body>,
+    /// Points of it whose speed is told besides that of the TCP.
+    pub points: Vec<ToolPoint>,
+}
+
+/// A named point of a tool, such as the far end of a grip.
+#[derive(Debug, Clone, PartialEq)]
+pub struct ToolPoint {
+    /// Its name.
+    pub name: String,
+    /// Where it is, flange axes, m.
+    pub at: V3,
 }
 
 /// A load is what the tool carries (ISO: payload), such as the part.

@@ -1,12 +1,13 @@
 use serde::Serialize;
 
-use crate::checks::is_closed;
+use crate::checks::{Watch, is_closed};
 use crate::motion::Segment;
-use crate::review::{Judged, not_checked};
+use crate::review::{Judged, not_checked, reduced_speed};
 use crate::units::Seconds;
 
 use super::finding_json::{DoubtJson, FindingJson};
 use super::judged_json::{CheckJson, Checks, figure, percent, shown};
+use super::plan_json::ReducedJson;
 
 /// The name and version of the format that [`check_json`] writes.
 pub const FORMAT: &str = "elbowroom-check/1";
@@ -25,6 +26,7 @@ struct Report {
     cycle: CycleJson,
     findings: Vec<FindingJson>,
     doubts: Vec<DoubtJson>,
+    reduced_speed: ReducedJson,
     not_checked: Vec<String>,
 }
 
@@ -57,6 +59,7 @@ struct SegmentJson {
 /// what has no finite figure is null.
 pub fn check_json(judged: &Judged, recipe_file: &str, arm_file: &str) -> String {
     let segments = judged.plan.segments.iter().enumerate().map(|(index, segment)| segment_json(judged, index, segment)).collect();
+    let reduced = reduced_speed(judged, &Watch::default()).expect("nobody stops this watch");
     let report = Report {
         format: FORMAT,
         version: env!("CARGO_PKG_VERSION"),
@@ -70,6 +73,7 @@ pub fn check_json(judged: &Judged, recipe_file: &str, arm_file: &str) -> String 
         cycle: cycle_json(judged),
         findings: judged.survey.findings.iter().map(|finding| FindingJson::of(judged, finding)).collect(),
         doubts: judged.survey.doubts.iter().map(|doubt| DoubtJson::of(judged, doubt)).collect(),
+        reduced_speed: ReducedJson::of(judged, &reduced),
         not_checked: not_checked(judged),
     };
     serde_json::to_string(&report).expect("names are text, and figures are finite or null")

@@ -100,14 +100,6 @@ pub(super) struct DoubtJson {
 
 impl DoubtJson {
     pub(super) fn of(judged: &Judged, doubt: &Doubt) -> Self {
-        let waypoint = match doubt {
-            Doubt::Shown { waypoint, .. }
-            | Doubt::TakenTwice { waypoint }
-            | Doubt::NothingToRelease { waypoint }
-            | Doubt::NoMotion { waypoint }
-            | Doubt::OverRatedLoad { waypoint, .. } => Some(waypoint + 1),
-            Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } | Doubt::MotionInPart | Doubt::NoInertia { .. } => None,
-        };
-        Self { waypoint, text: doubt_text(judged, doubt) }
+        Self { waypoint: doubt.waypoint().map(|index| index + 1), text: doubt_text(judged, doubt) }
     }
 }

@@ -4,10 +4,13 @@ mod check_json;
 mod finding_json;
 mod grid;
 mod judged_json;
+mod plan_json;
 mod save;
+mod stopping_json;
 mod trace_csv;
 
 pub use check_json::{FORMAT, check_json};
 pub use grid::{MOST_ROWS, TooManyRows};
+pub use plan_json::{PLAN_FORMAT, plan_json};
 pub use save::save;
 pub use trace_csv::{TraceError, trace_csv};

@@ -14,7 +14,7 @@ pub fn not_checked(judged: &Judged) -> Vec<String> {
             "Stopping time and distance, and the separation of people from the arm.",
             "Safeguards, interlocks, emergency stops and the cell's risk assessment.",
             "Gears, heat and wear; brakes beyond what they hold at standstill.",
-            "Cables and hoses: how they wind and pull.",
+            "Cables and hoses: how they pull and rub; how far the wrist winds them is only told, where the recipe sets a limit.",
             "The grip: whether the tool holds the part.",
             "The task program's logic, signals and waiting times.",
             "How the first waypoint is reached, and the way back to it when the cycle starts again.",
@@ -48,6 +48,7 @@ fn particular(judged: &Judged) -> Vec<String> {
     if recipe.acceptance.tcp_speed.is_none() {
         told.push("TCP speed: the recipe sets no limit, so it is shown but not judged.".to_owned());
     }
+    told.push("Speeds of flange, elbow, tool corners and part: only that of the TCP is judged.".to_owned());
     if recipe.waypoints.iter().any(|waypoint| waypoint.fly_by.is_some()) {
         told.push("Fly-by: every waypoint is judged as a stop point; the rounded corner that the cell runs is not.".to_owned());
     }

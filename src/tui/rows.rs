@@ -82,14 +82,7 @@ impl Rows {
 }
 
 fn waypoint_of(doubt: &Doubt) -> usize {
-    match doubt {
-        Doubt::Shown { waypoint, .. }
-        | Doubt::TakenTwice { waypoint }
-        | Doubt::NothingToRelease { waypoint }
-        | Doubt::NoMotion { waypoint }
-        | Doubt::OverRatedLoad { waypoint, .. } => *waypoint,
-        Doubt::ToolWithoutMass { .. } | Doubt::LoadWithoutMass { .. } | Doubt::MotionInPart | Doubt::NoInertia { .. } => 0,
-    }
+    doubt.waypoint().unwrap_or(0)
 }
 
 /// A doubt in words.

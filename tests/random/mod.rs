@@ -67,6 +67,7 @@ fn turning(name: usize, a: f64, alpha: f64, d: f64, theta: f64) -> Joint {
         torque: None,
         brake: None,
         drive: Drive::default(),
+        stop: None,
         link: None,
     }
 }
@@ -200,7 +201,7 @@ pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
     }
     let com = V3::new(draw.between(-0.1, 0.1), draw.between(-0.1, 0.1), draw.between(0.0, 0.15));
     let body = Body { mass: draw.between(0.5, 6.0), com, inertia: Some(tensor(0.05, draw)), grounds: Grounds::Sheet };
-    recipe.tools = vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body) }];
+    recipe.tools = vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body), points: vec![] }];
     recipe
 }
 

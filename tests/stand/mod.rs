@@ -41,6 +41,7 @@ pub fn joint(kind: JointKind, placement: Placement) -> Joint {
         torque: Some(TorqueRating { holding: 100.0, peak: None, grounds: Grounds::Sheet }),
         brake: None,
         drive: elbowroom::arm::Drive::default(),
+        stop: None,
         link: None,
     }
 }

@@ -187,6 +187,7 @@ mod tests {
             torque: None,
             brake: None,
             drive: Drive::default(),
+            stop: None,
             link,
         };
         let tensor = Body::tensor([1.0, 1.0, 1.0, 0.0, 0.3, 0.0]);

@@ -11,6 +11,18 @@ pub(in crate::review) fn all_of(words: &[String]) -> String {
     }
 }
 
+/// The most words of a row that are told one by one.
+const MOST_TOLD: usize = 12;
+
+/// A long row of words cut short: the first twelve, then how many more there are.
+pub(super) fn first_of(words: &[String]) -> Vec<String> {
+    let mut told: Vec<String> = words.iter().take(MOST_TOLD).cloned().collect();
+    if words.len() > MOST_TOLD {
+        told.push(format!("{} more", words.len() - MOST_TOLD));
+    }
+    told
+}
+
 /// Shares of one sum as figures that add up to the sum as it is shown: each is rounded down, and what is then missing goes to
 /// those that lost most.
 pub(super) fn adding_up(shares: &[Measure], digits: usize) -> Vec<f64> {
@@ -57,6 +69,13 @@ mod tests {
         for (figure, share) in figures.iter().zip(&shares) {
             assert!((figure - share.shown()).abs() < 1.0);
         }
+    }
+
+    #[test]
+    fn long_rows_are_cut_short() {
+        let words = |n: usize| (1..=n).map(|j| format!("{j}")).collect::<Vec<_>>();
+        assert_eq!(first_of(&words(12)), words(12));
+        assert_eq!(first_of(&words(100)).last().expect("some"), "88 more");
     }
 
     #[test]
