@@ -7,7 +7,7 @@ use super::table::{STAND_IN, Table};
 
 /// Reads one joint. `convention` is what the arm file says at its top.
 pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Convention>) -> Joint {
-    table.only(&["name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "link"]);
+    table.only(&["name", "kind", "dh", "place", "axis", "range", "rate", "accel", "jerk", "torque", "brake", "link"]);
     let name = table.text("name", "text, such as \"J1\"").map_or_else(|| format!("{} (no name)", index + 1), str::to_owned);
     let kind = kind(table);
     let [value_unit, rate_unit, accel_unit, effort_unit] = match kind {
@@ -25,6 +25,7 @@ pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Conventi
         range,
         rate: si(table.number("rate", rate_unit)),
         accel: si(table.number("accel", accel_unit)),
+        jerk: table.maybe_number("jerk").map(si),
         torque: table.table("torque").map(|torque| rating(&torque.called(table.thing().to_owned()), effort_unit)),
         brake: table.maybe_number("brake"),
         link: link(table),
