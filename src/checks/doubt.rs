@@ -1,6 +1,6 @@
 use crate::arm::Arm;
 use crate::kinematics::{Posture, pose_error};
-use crate::motion::{Plan, pose_in_base};
+use crate::motion::{Passed, Plan, pose_in_base};
 use crate::program::{Recipe, Taught, Then};
 
 /// A doubt is something in the data that is probably a mistake. It changes no verdict.
@@ -40,6 +40,18 @@ pub enum Doubt {
         /// The waypoint it arrives at, counted from 0.
         waypoint: usize,
     },
+    /// A fly-by point whose blend is cut to a part of a neighbour that is too short for it.
+    FlyByCut {
+        /// Which waypoint, counted from 0.
+        waypoint: usize,
+        /// The radius asked for, m.
+        radius: f64,
+    },
+    /// A fly-by point that can't be passed without a stop, so that it is judged as a stop point only.
+    FlyByStops {
+        /// Which waypoint, counted from 0.
+        waypoint: usize,
+    },
     /// Tool and load together exceed the flange's rated load.
     OverRatedLoad {
         /// The waypoint it arrives at, counted from 0.
@@ -72,7 +84,13 @@ pub fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
             (Some(Then::Release), None) => found.push(Doubt::NothingToRelease { waypoint: index }),
             _ => {}
         }
-        let Some(segment) = index.checked_sub(1).and_then(|before| plan.segments.get(before)) else { continue };
+        let fly_by = plan.fly_bys.binary_search_by_key(&index, |fly_by| fly_by.waypoint).ok().map(|at| plan.fly_bys[at]);
+        match fly_by.map(|fly_by| (fly_by.passed, fly_by.radius)) {
+            Some((Passed::Cut, radius)) => found.push(Doubt::FlyByCut { waypoint: index, radius }),
+            Some((Passed::Stopped, _)) => found.push(Doubt::FlyByStops { waypoint: index }),
+            Some((Passed::Whole, _)) | None => {}
+        }
+        let Some(segment) = plan.arriving(index) else { continue };
         if segment.trouble.is_none() && segment.duration() == 0.0 {
             found.push(Doubt::NoMotion { waypoint: index });
         }
@@ -87,7 +105,7 @@ pub fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
 
 fn shown_gap(arm: &Arm, recipe: &Recipe, plan: &Plan, waypoint: usize) -> Option<Doubt> {
     let shown = recipe.waypoints[waypoint].shown.as_ref()?;
-    let q = match (&recipe.waypoints[waypoint].taught, waypoint.checked_sub(1).and_then(|k| plan.segments.get(k))) {
+    let q = match (&recipe.waypoints[waypoint].taught, plan.arriving(waypoint)) {
         (Taught::Joints(q), _) => *q,
         (_, Some(segment)) => segment.end,
         (_, None) => plan.segments.first()?.start,

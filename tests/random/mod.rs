@@ -124,6 +124,15 @@ pub fn arm(family: Family, draw: &mut Draw) -> Arm {
     Arm::build(ArmData { name, joints, flange: Flange::default(), characteristic_length: Some(0.5), task }).expect("a sound arm")
 }
 
+/// The same arm with a limit of jerk: so many times each joint's acceleration a second.
+#[allow(dead_code, reason = "not every test that draws arms limits jerk")]
+pub fn with_jerk(arm: &Arm, times: f64) -> Arm {
+    let joints = arm.joints().iter().map(|joint| Joint { jerk: Some(joint.accel * times), ..joint.clone() }).collect();
+    let task = (!arm.task().is_whole()).then(|| arm.task().clone());
+    let data = ArmData { name: arm.name().to_owned(), joints, flange: Flange::default(), characteristic_length: Some(0.5), task };
+    Arm::build(data).expect("a sound arm")
+}
+
 /// A posture well inside the ranges.
 pub fn posture(arm: &Arm, draw: &mut Draw) -> Joints {
     Joints::from_fn(arm.len(), |j| {

@@ -37,6 +37,17 @@ pub fn doubt_text(judged: &Judged, doubt: &Doubt) -> String {
                 name(*waypoint)
             )
         }
+        Doubt::FlyByCut { waypoint, radius } => format!(
+            "{} asks for a fly-by radius of {}, which is more than the segments beside it leave room for. The blend is judged with \
+             as much as they do; the cell's controller may do otherwise.",
+            name(*waypoint),
+            Length::m(*radius).measure().text(0)
+        ),
+        Doubt::FlyByStops { waypoint } => format!(
+            "{} is a fly-by point that is judged as a stop point: a segment beside it has no motion, turns on the spot or could \
+             not be followed, or the tool or the process force changes there.",
+            name(*waypoint)
+        ),
         Doubt::OverRatedLoad { waypoint, carried, rated } => format!(
             "On the way to waypoint {} \"{}\" tool and load weigh {} together; the flange is rated for {}. The maker's limits \
              then no longer hold, whatever else is clear.",
