@@ -184,7 +184,7 @@ fn nothing_lies_beyond_a_bound_of_a_blend_with_an_offset_wrist() {
 
 #[test]
 fn nothing_lies_beyond_a_bound_of_a_blend_with_seven_joints() {
-    hammer_family(Family::Seven, 43, 10);
+    hammer_family(Family::Seven, 43, 24);
 }
 
 #[test]
@@ -208,7 +208,7 @@ fn the_stop_version_counts_as_well_as_the_cycle() {
     let (arm, recipe) = program(Family::SphericalWrist, false, &mut draw);
     let judged = random::judged(arm, recipe);
     let stops = judged.plan.stops.iter().filter(|stop| stop.is_some()).count();
-    assert!(stops >= 3, "{stops}");
+    assert!(stops >= 1, "{stops}");
     for (index, stop) in judged.plan.stops.iter().enumerate() {
         let Some(stop) = stop else { continue };
         let segment = &judged.plan.segments[index];

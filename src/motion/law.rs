@@ -27,6 +27,9 @@ pub struct Piece {
 /// How often an interval is halved to find an instant: enough for the last digit.
 const HALVINGS: usize = 80;
 
+/// Rates that differ by no more than this share are one, so that no ramp is made of rounding.
+const SAME_RATE: f64 = 1e-9;
+
 impl Piece {
     /// Fraction, its rate and its acceleration `dt` seconds into the piece.
     #[inline]
@@ -174,6 +177,8 @@ impl Law {
         if limits.jerk.is_infinite() && from == 0.0 && to == 0.0 {
             return Self::trapezoid(limits.rate, limits.accel);
         }
+        let top = limits.rate;
+        let [from, to] = [from, to].map(|rate| if (rate - top).abs() <= SAME_RATE * top { top } else { rate });
         let needs = |top: f64| limits.way(from, top) + limits.way(top, to);
         let least = from.max(to);
         let top = if needs(limits.rate) <= 1.0 {
@@ -183,6 +188,7 @@ impl Law {
         } else {
             bisect(least, limits.rate.max(least), |top| needs(top) <= 1.0)
         };
+        let top = if top - least <= SAME_RATE * top { least } else { top };
         let mut law = Self { count: 0, ..Self::none() };
         let up = limits.way(from, top);
         let down = 1.0 - limits.way(top, to);

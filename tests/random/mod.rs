@@ -157,6 +157,7 @@ pub fn waypoint(name: &str, taught: Taught, arrive: Option<Arrive>) -> Waypoint 
 }
 
 /// A line from a drawn posture to a drawn pose nearby, or a joint move to a drawn posture.
+#[allow(dead_code, reason = "not every test that draws arms draws single segments")]
 pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
     let start = posture(arm, draw);
     let last = if line {

@@ -250,7 +250,7 @@ impl Run<'_> {
                 None => break Some((half, asked)),
                 Some(share) => half *= share,
             }
-            if half < NARROWEST || trials > 3 * self.effort.trials {
+            if half < NARROWEST.min(whole) || trials > 3 * self.effort.trials {
                 break None;
             }
         };
@@ -271,7 +271,7 @@ impl Run<'_> {
         let mut half = whole.min(self.hint * 1.6).min(0.6 * middle.hope());
         let mut trials = 0;
         let (mut best, mut failed_at) = (None, f64::INFINITY);
-        while trials < 3 * self.effort.trials && half >= NARROWEST {
+        while trials < 3 * self.effort.trials && half >= NARROWEST.min(whole) {
             trials += 1;
             let Some(leaf) = middle.prove(half + SEAM) else {
                 failed_at = half;
