@@ -7,7 +7,7 @@ use super::{CheckResult, Finding, Peak, Place, Proof, SegmentSurvey, Verdict};
 ///
 /// Findings of the stop version stand only where the cycle shows nothing as bad of that check and joint, and are marked. Peaks
 /// taken from it stand at the nearest place of the cycle; the profile is the cycle's.
-pub(super) fn worse_of_both(plan: &Plan, mut run: SegmentSurvey, stop: SegmentSurvey) -> SegmentSurvey {
+pub(super) fn worse_of_both(plan: &Plan, mut run: SegmentSurvey, stop: &SegmentSurvey) -> SegmentSurvey {
     let segment = &plan.segments[run.segment];
     for (result, other) in run.checks.iter_mut().zip(&stop.checks) {
         result.judged |= other.judged;

@@ -80,7 +80,7 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<(&Recipe, 
             let result = known.unwrap_or_else(|| {
                 let run = judged(segment);
                 Arc::new(match &plan.stops[index] {
-                    Some(stop) => worse_of_both(plan, run, judged(stop)),
+                    Some(stop) => worse_of_both(plan, run, &judged(stop)),
                     None => run,
                 })
             });

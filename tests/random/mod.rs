@@ -128,7 +128,7 @@ pub fn arm(family: Family, draw: &mut Draw) -> Arm {
 #[allow(dead_code, reason = "not every test that draws arms limits jerk")]
 pub fn with_jerk(arm: &Arm, times: f64) -> Arm {
     let joints = arm.joints().iter().map(|joint| Joint { jerk: Some(joint.accel * times), ..joint.clone() }).collect();
-    let task = (!arm.task().is_whole()).then(|| arm.task().clone());
+    let task = (!arm.task().is_whole()).then(|| *arm.task());
     let data = ArmData { name: arm.name().to_owned(), joints, flange: Flange::default(), characteristic_length: Some(0.5), task };
     Arm::build(data).expect("a sound arm")
 }
