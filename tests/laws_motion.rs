@@ -25,6 +25,9 @@ fn segment(arm: &Arm, path: Path, tcp: Pose, start: Joints) -> Segment {
     let track = Track::along(arm, &path, &tcp, &start);
     let end = track.nodes.last().map_or(start, |node| node.q);
     Segment {
+        blend: false,
+        part: [0.0, 1.0],
+        limits: None,
         to: 1,
         path,
         law: Law::trapezoid(1.0, 1.0),

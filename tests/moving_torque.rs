@@ -1,6 +1,5 @@
 //! Torque in motion against published figures and by second routes.
 
-#[expect(dead_code, reason = "arms and postures are drawn here, but no segments")]
 mod random;
 
 use elbowroom::arm::{Arm, ArmData, Body, Drive, Flange, Grounds, Joint, JointKind, Joints, Placement, Range, Task, TaskRow};
@@ -37,6 +36,7 @@ impl Example {
             brake: None,
             drive: Drive::default(),
             stop: None,
+            jerk: None,
             link: Some(Body { mass, com: V3::from(com), inertia: Some(tensor), grounds: Grounds::Sheet }),
         };
         // Links 2 and 3 have their x axis along base -z and their z axis along base x.

@@ -174,6 +174,7 @@ fn joint_faults(joint: &Joint, field: &Field) -> Vec<Fault> {
             let unit = match of {
                 Dimension::TurnRate => "deg/s",
                 Dimension::TurnAcceleration => "deg/s²",
+                Dimension::TurnJerk => "deg/s³",
                 other => other.sign(),
             };
             faults.push(Fault::new(field, format!("{thing}: {what} is {shown} {unit}; it must be above 0")));
@@ -181,6 +182,9 @@ fn joint_faults(joint: &Joint, field: &Field) -> Vec<Fault> {
     };
     above_zero(field.key("rate"), "rate", joint.rate, kind.rate());
     above_zero(field.key("accel"), "accel", joint.accel, kind.acceleration());
+    if let Some(jerk) = joint.jerk {
+        above_zero(field.key("jerk"), "jerk", jerk, kind.jerk());
+    }
     if let Some(torque) = &joint.torque {
         above_zero(field.key("torque").key("holding"), "holding", torque.holding, kind.effort());
     }

@@ -27,6 +27,11 @@ impl JointKind {
         self.pick(Dimension::TurnAcceleration, Dimension::Acceleration)
     }
 
+    /// What its jerk measures.
+    pub fn jerk(self) -> Dimension {
+        self.pick(Dimension::TurnJerk, Dimension::Jerk)
+    }
+
     /// What its drive supplies.
     pub fn effort(self) -> Dimension {
         self.pick(Dimension::Torque, Dimension::Force)
@@ -92,6 +97,8 @@ pub struct Joint {
     pub rate: f64,
     /// Greatest acceleration, rad/s² or m/s².
     pub accel: f64,
+    /// Greatest jerk, rad/s³ or m/s³; without one, accelerations begin and end at once.
+    pub jerk: Option<f64>,
     /// What its drive can supply; makers often don't say.
     pub torque: Option<TorqueRating>,
     /// What its brake holds, N·m or N.

@@ -42,6 +42,8 @@ pub struct Finding {
     pub check: Check,
     /// Which joint, for checks with a channel a joint.
     pub joint: Option<usize>,
+    /// Whether it, with its places, is of the segment's version that stops at the fly-by points; otherwise of the cycle.
+    pub stop: bool,
     /// How bad it is.
     pub verdict: Verdict,
     /// Where the stretch begins.

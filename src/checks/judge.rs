@@ -51,7 +51,7 @@ pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Accep
     let profile = profile(&meter, &case.sweep);
     SegmentSurvey {
         segment: index,
-        joint_move: !segment.follows_path(),
+        joint_move: !segment.follows_path() && !segment.blend,
         verdict,
         checks,
         findings,
@@ -115,7 +115,16 @@ impl Case<'_> {
 
     fn unproved(&self, check: Check, why: Unproved) -> Finding {
         let [from, to] = [(0.0, 0.0), (self.segment.duration(), 1.0)].map(|(time, u)| Place { time, u });
-        Finding { segment: self.index, check, joint: None, verdict: Verdict::Unproven, from, to, kind: Kind::Unproved(why) }
+        Finding {
+            segment: self.index,
+            check,
+            joint: None,
+            stop: false,
+            verdict: Verdict::Unproven,
+            from,
+            to,
+            kind: Kind::Unproved(why),
+        }
     }
 
     fn look_at(&self, check: Check, findings: &mut Vec<Finding>) -> CheckResult {
@@ -167,6 +176,7 @@ fn judge_reach(index: usize, segment: &Segment, findings: &mut Vec<Finding>) -> 
             segment: index,
             check: Check::Reach,
             joint: None,
+            stop: false,
             verdict,
             from: start,
             to: at,

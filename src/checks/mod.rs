@@ -4,6 +4,7 @@
 //! stretches and the proof treat all of them alike.
 
 mod accel;
+mod both;
 mod brake;
 mod channel;
 mod check;

@@ -127,7 +127,16 @@ fn channel(arm: &Arm, recipe: &Recipe, j: usize, repeats: bool) -> Channel {
 fn unknown(why: Unproved, plan: &Plan) -> Finding {
     let end = plan.segments.first().map_or(0.0, |segment| segment.duration());
     let [from, to] = [(0.0, 0.0), (end, 1.0)].map(|(time, u)| Place { time, u });
-    Finding { segment: 0, check: Check::Rms, joint: None, verdict: Verdict::Unproven, from, to, kind: Kind::Unproved(why) }
+    Finding {
+        segment: 0,
+        check: Check::Rms,
+        joint: None,
+        verdict: Verdict::Unproven,
+        from,
+        to,
+        kind: Kind::Unproved(why),
+        stop: false,
+    }
 }
 
 fn peak(channel: &Channel, value: f64, at: Place) -> Peak {
@@ -153,7 +162,7 @@ fn finding(peak: &Peak, segment: usize, verdict: Verdict, planned: &Segment) -> 
         after_stop: false,
     };
     let [from, to] = [(0.0, 0.0), (planned.duration(), 1.0)].map(|(time, u)| Place { time, u });
-    Finding { segment, check: Check::Rms, joint: peak.joint, verdict, from, to, kind: Kind::Excess(excess) }
+    Finding { segment, check: Check::Rms, joint: peak.joint, verdict, from, to, kind: Kind::Excess(excess), stop: false }
 }
 
 impl Cycle {

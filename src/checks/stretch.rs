@@ -57,7 +57,7 @@ pub(super) fn finding(
         after_stop: false,
     };
     let verdict = channel.verdict(worst.asked[slot]);
-    Finding { segment, check: channel.check, joint: channel.joint, verdict, from, to, kind: Kind::Excess(excess) }
+    Finding { segment, check: channel.check, joint: channel.joint, stop: false, verdict, from, to, kind: Kind::Excess(excess) }
 }
 
 /// Runs of looks that satisfy a condition, as ranges of indices.

@@ -7,6 +7,7 @@ use crate::arm::Arm;
 use crate::motion::{Plan, Segment};
 use crate::program::Recipe;
 
+use super::both::worse_of_both;
 use super::judge::judge;
 use super::rms::cycle;
 use super::{Cycle, Doubt, Finding, SegmentSurvey, Verdict, doubts};
@@ -93,9 +94,16 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<(&Recipe, 
             let known = before.and_then(|(_, old, survey)| {
                 let same = old.segments.iter().position(|other| Arc::ptr_eq(other, segment) || **other == **segment)?;
                 let known = survey.segments.get(same)?;
-                (known.segment == index).then(|| Arc::clone(known))
+                (known.segment == index && old.stops[same] == plan.stops[index]).then(|| Arc::clone(known))
             });
-            let result = known.unwrap_or_else(|| Arc::new(judge(arm, index, segment, &recipe.acceptance, plan.gravity)));
+            let judged = |segment: &Segment| judge(arm, index, segment, &recipe.acceptance, plan.gravity);
+            let result = known.unwrap_or_else(|| {
+                let run = judged(segment);
+                Arc::new(match &plan.stops[index] {
+                    Some(stop) => worse_of_both(plan, run, &judged(stop)),
+                    None => run,
+                })
+            });
             watch.done.fetch_add(1, Ordering::Relaxed);
             Some(result)
         })

@@ -15,17 +15,22 @@ pub(super) fn run(args: &ExplainArgs) -> anyhow::Result<Code> {
     let wanted = match args.segment {
         None => None,
         Some(number) => {
-            let index = judged.plan.segments.iter().position(|segment| segment.number() == number);
-            let last = judged.plan.segments.last().map_or(0, |segment| segment.number());
-            Some(index.ok_or_else(|| anyhow::anyhow!("there is no segment {number}; they are numbered from 2 to {last}"))?)
+            let segments = &judged.plan.segments;
+            let last = segments.last().map_or(0, |segment| segment.number());
+            // A fly-by point has two: the segment that arrives there, and the blend past it.
+            let meant: Vec<usize> = (0..segments.len()).filter(|&index| segments[index].number() == number).collect();
+            anyhow::ensure!(!meant.is_empty(), "there is no segment {number}; they are numbered from 2 to {last}");
+            Some(meant)
         }
     };
-    let is_meant = |finding: &&Finding| wanted.is_none_or(|index| finding.segment == index);
+    let is_meant = |finding: &&Finding| wanted.as_ref().is_none_or(|meant| meant.contains(&finding.segment));
     let mut parts = vec![headline(&judged) + "\n"];
     parts.extend(judged.survey.findings.iter().filter(is_meant).map(|finding| explanation_text(&explain(&judged, finding), width)));
     match wanted {
-        Some(index) if parts.len() == 1 => parts.push(explanation_text(&no_finding(&judged, index), width)),
-        Some(_) => {}
+        Some(meant) => {
+            let quiet = meant.into_iter().filter(|&index| judged.survey.segments[index].findings.is_empty());
+            parts.extend(quiet.map(|index| explanation_text(&no_finding(&judged, index), width)));
+        }
         None if judged.survey.doubts.is_empty() => {}
         None => parts.push(doubts_text(&judged, width)),
     }

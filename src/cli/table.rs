@@ -32,7 +32,7 @@ pub(super) fn table(judged: &Judged, width: usize) -> String {
 
 fn row(judged: &Judged, index: usize, segment: &Segment) -> [String; 6] {
     let waypoint = &judged.recipe.waypoints[segment.to];
-    let how = waypoint.arrive.as_ref().map_or("joint", |arrive| arrive.word());
+    let how = if segment.blend { "fly-by" } else { waypoint.arrive.as_ref().map_or("joint", |arrive| arrive.word()) };
     [
         segment.number().to_string(),
         waypoint.name.clone(),
@@ -45,6 +45,9 @@ fn row(judged: &Judged, index: usize, segment: &Segment) -> [String; 6] {
 
 /// The speed or share that a segment was given.
 fn asked(judged: &Judged, segment: &Segment) -> String {
+    if segment.blend {
+        return judged.recipe.waypoints[segment.to].fly_by.map_or(String::new(), |radius| radius.to_string());
+    }
     let usual = &judged.recipe.usual;
     let path = |speed: &PathSpeed| match speed.speed.or(usual.speed) {
         Some(given) => given.to_string(),

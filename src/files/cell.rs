@@ -1,6 +1,6 @@
 use crate::geometry::{Pose, V3};
 use crate::program::{Acceptance, BASE, Frame, Load, Stages, Tool, ToolPoint, Usual};
-use crate::units::{Acceleration, Angle, Length, Share, Speed, TurnAcceleration, TurnRate};
+use crate::units::{Acceleration, Angle, Jerk, Length, Share, Speed, TurnAcceleration, TurnJerk, TurnRate};
 
 use super::body::{body, maybe_body};
 use super::placed::{metres, own_pose, pose};
@@ -65,12 +65,14 @@ pub(super) fn usual(top: &Table<'_>) -> Usual {
     let plain = Usual::default();
     let Some(table) = top.table("usual") else { return plain };
     let table = table.called("usual".to_owned());
-    table.only(&["speed", "accel", "turn-speed", "turn-accel", "share", "accel-share"]);
+    table.only(&["speed", "accel", "turn-speed", "turn-accel", "jerk", "turn-jerk", "share", "accel-share"]);
     Usual {
         speed: table.maybe_number("speed").map(Speed::mm_per_s),
         accel: table.maybe_number("accel").map_or(plain.accel, Acceleration::mm_per_s2),
         turn_speed: table.maybe_number("turn-speed").map_or(plain.turn_speed, TurnRate::deg_per_s),
         turn_accel: table.maybe_number("turn-accel").map_or(plain.turn_accel, TurnAcceleration::deg_per_s2),
+        jerk: table.maybe_number("jerk").map(Jerk::mm_per_s3),
+        turn_jerk: table.maybe_number("turn-jerk").map(TurnJerk::deg_per_s3),
         share: table.maybe_number("share").map(Share::percent),
         accel_share: table.maybe_number("accel-share").map_or(plain.accel_share, Share::percent),
     }

@@ -9,8 +9,8 @@ use super::table::{STAND_IN, Table};
 /// Reads one joint. `convention` is what the arm file says at its top.
 pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Convention>) -> Joint {
     table.only(&[
-        "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer",
-        "stop", "link",
+        "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "jerk", "torque", "brake", "rotor", "friction",
+        "balancer", "stop", "link",
     ]);
     let name = table.text("name", "text, such as \"J1\"").map_or_else(|| format!("{} (no name)", index + 1), str::to_owned);
     let kind = kind(table);
@@ -29,6 +29,7 @@ pub(super) fn joint(table: &Table<'_>, index: usize, convention: Option<Conventi
         range,
         rate: si(table.number("rate", rate_unit)),
         accel: si(table.number("accel", accel_unit)),
+        jerk: table.maybe_number("jerk").map(si),
         torque: table.table("torque").map(|torque| rating(&torque.called(table.thing().to_owned()), kind, effort_unit)),
         brake: table.maybe_number("brake"),
         drive: drive(table, kind, effort_unit),

@@ -16,6 +16,7 @@ pub(super) fn arm_for(recipe: &Recipe) -> Option<Arm> {
         range: Range { low: -1.0, high: 1.0 },
         rate: 1.0,
         accel: 1.0,
+        jerk: None,
         torque: None,
         brake: None,
         drive: crate::arm::Drive::default(),

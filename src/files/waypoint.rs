@@ -1,7 +1,7 @@
 use crate::arm::{Arm, Joints, MAX_JOINTS};
 use crate::geometry::{Rotation, V3};
 use crate::program::{Arrive, Given, PathSpeed, Push, PushAxes, Taught, Then, Waypoint};
-use crate::units::{Acceleration, Dimension, Length, Seconds, Share, Speed, TurnAcceleration, TurnRate};
+use crate::units::{Acceleration, Dimension, Jerk, Length, Seconds, Share, Speed, TurnAcceleration, TurnJerk, TurnRate};
 
 use super::cell::{TOOL_AXES, name};
 use super::placed::{given, via};
@@ -11,7 +11,7 @@ use super::table::Table;
 const OF_JOINT: [&str; 2] = ["share", "accel-share"];
 
 /// Keys that say how fast a line or an arc is followed.
-const OF_PATH: [&str; 4] = ["speed", "accel", "turn-speed", "turn-accel"];
+const OF_PATH: [&str; 6] = ["speed", "accel", "turn-speed", "turn-accel", "jerk", "turn-jerk"];
 
 /// The kinds of segment, before their figures are read.
 #[derive(Clone, Copy, PartialEq)]
@@ -51,6 +51,8 @@ fn waypoint(table: &Table<'_>, arm: Option<&Arm>) -> Waypoint {
         "accel",
         "turn-speed",
         "turn-accel",
+        "jerk",
+        "turn-jerk",
         "via",
         "fly-by",
         "dwell",
@@ -119,6 +121,8 @@ fn arrive(table: &Table<'_>) -> Option<Arrive> {
         accel: table.maybe_number("accel").map(Acceleration::mm_per_s2),
         turn_speed: table.maybe_number("turn-speed").map(TurnRate::deg_per_s),
         turn_accel: table.maybe_number("turn-accel").map(TurnAcceleration::deg_per_s2),
+        jerk: table.maybe_number("jerk").map(Jerk::mm_per_s3),
+        turn_jerk: table.maybe_number("turn-jerk").map(TurnJerk::deg_per_s3),
     };
     let via = table.table("via").map(|point| via(&point));
     let Some(kind) = kind else {

@@ -284,6 +284,7 @@ mod tests {
             brake: None,
             drive: crate::arm::Drive::default(),
             stop: None,
+            jerk: None,
             link: None,
         });
         let data = ArmData {

@@ -77,13 +77,18 @@ impl<'a> Follower<'a> {
     }
 
     fn joint_instant(&self, u: f64) -> Instant {
-        let Path::Joint { from, to } = self.path else { unreachable!("only joint moves have no target") };
-        let slope = from.zip(to, |a, b| b - a);
-        let q = Joints::from_fn(from.len(), |j| from[j] + u * slope[j]);
+        let [q, slope, bend] = match self.path {
+            Path::Joint { from, to } => {
+                let slope = from.zip(to, |a, b| b - a);
+                [Joints::from_fn(from.len(), |j| from[j] + u * slope[j]), slope, Joints::zeros(from.len())]
+            }
+            Path::JointBlend(blend) => blend.at(u),
+            _ => unreachable!("only joint moves have no target"),
+        };
         let posture = Posture::at(self.arm.chain(), &q);
         let tcp = posture.tcp(self.tcp);
         let jacobian = Jacobian::at(self.arm.chain(), &posture, &tcp.at);
-        Instant { u, q, slope, bend: Joints::zeros(q.len()), posture, tcp, jacobian, lu: None }
+        Instant { u, q, slope, bend, posture, tcp, jacobian, lu: None }
     }
 
     /// Newton from `guess` to the target of fraction `u`, in the cell of `node`. Also tells how far the first step went, rad or m.
@@ -144,8 +149,7 @@ impl<'a> Follower<'a> {
         let slope = Joints::from_slice(&lu.solve(&wanted)[..n]);
         let drift = drift(self.arm.chain(), &posture, &tcp.at, &slope);
         for (slot, &row) in task.rows().iter().enumerate() {
-            let bend = if row < 3 { target.bend[row] } else { 0.0 };
-            wanted[slot] = bend - drift[row];
+            wanted[slot] = [target.bend, target.swing][row / 3][row % 3] - drift[row];
         }
         let bend = Joints::from_slice(&lu.solve(&wanted)[..n]);
         (slope.is_finite() && bend.is_finite()).then_some(Instant { u, q, slope, bend, posture, tcp, jacobian, lu: Some(lu) })

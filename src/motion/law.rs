@@ -18,15 +18,27 @@ pub struct Piece {
     pub u: f64,
     /// Fraction per second at its beginning.
     pub rate: f64,
-    /// Fraction per second squared, constant on the piece.
+    /// Fraction per second squared at its beginning.
     pub accel: f64,
+    /// Fraction per second cubed, constant on the piece; 0 where there is no jerk limit.
+    pub jerk: f64,
 }
+
+/// How often an interval is halved to find an instant: enough for the last digit.
+const HALVINGS: usize = 80;
+
+/// Rates that differ by no more than this share are one, so that no ramp is made of rounding.
+const SAME_RATE: f64 = 1e-9;
 
 impl Piece {
     /// Fraction, its rate and its acceleration `dt` seconds into the piece.
     #[inline]
     pub fn at(&self, dt: f64) -> [f64; 3] {
-        [self.u + dt * (self.rate + 0.5 * dt * self.accel), self.rate + dt * self.accel, self.accel]
+        [
+            self.u + dt * (self.rate + dt * (0.5 * self.accel + dt * self.jerk / 6.0)),
+            self.rate + dt * (self.accel + 0.5 * dt * self.jerk),
+            self.accel + dt * self.jerk,
+        ]
     }
 
     /// Fraction at its end.
@@ -37,6 +49,9 @@ impl Piece {
     /// How long into the piece the fraction is `u`, s.
     pub fn time_of(&self, u: f64) -> f64 {
         let ahead = u - self.u;
+        if self.jerk != 0.0 {
+            return self.cubic_time_of(u);
+        }
         if self.accel == 0.0 {
             return (ahead / self.rate).clamp(0.0, self.duration);
         }
@@ -45,13 +60,98 @@ impl Piece {
         let time = 2.0 * ahead / (self.rate + root);
         if time.is_nan() { 0.0 } else { time.clamp(0.0, self.duration) }
     }
+
+    /// The same on a piece with jerk, where the fraction never falls: Newton within a bracket that is halved where he leaves it.
+    fn cubic_time_of(&self, u: f64) -> f64 {
+        let (mut low, mut high) = (0.0, self.duration);
+        let mut time = 0.5 * self.duration;
+        for _ in 0..HALVINGS {
+            let [there, rate, _] = self.at(time);
+            if there < u {
+                low = time;
+            } else {
+                high = time;
+            }
+            let next = time - (there - u) / rate;
+            let next = if next > low && next < high { next } else { 0.5 * (low + high) };
+            if next == time || !(high > low) {
+                break;
+            }
+            time = next;
+        }
+        if u <= self.u {
+            0.0
+        } else if u >= self.end() {
+            self.duration
+        } else {
+            time
+        }
+    }
 }
 
-/// A law says how the fraction of a path runs with time, from 0 to 1, from rest to rest. The trapezoidal law: even speeding up,
-/// even running where the path is long enough, even slowing down.
+/// Limits bound the rate (1/s), acceleration (1/s²) and jerk (1/s³) of a path's fraction, all above 0. The jerk is infinite where
+/// it has no limit.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Limits {
+    /// Greatest rate, 1/s.
+    pub rate: f64,
+    /// Greatest acceleration, 1/s².
+    pub accel: f64,
+    /// Greatest jerk, 1/s³.
+    pub jerk: f64,
+}
+
+impl Limits {
+    /// The limits of the fraction of a part that is `span` of the whole.
+    pub fn of_part(self, span: f64) -> Self {
+        Self { rate: self.rate / span, accel: self.accel / span, jerk: self.jerk / span }
+    }
+
+    /// How long the change from rate `a` to rate `b` takes, s, and how long each of the two ramps of its acceleration.
+    fn change(self, a: f64, b: f64) -> [f64; 2] {
+        let by = (b - a).abs();
+        if self.jerk.is_infinite() {
+            [by / self.accel, 0.0]
+        } else if by * self.jerk >= self.accel * self.accel {
+            [by / self.accel + self.accel / self.jerk, self.accel / self.jerk]
+        } else {
+            let ramp = (by / self.jerk).sqrt();
+            [2.0 * ramp, ramp]
+        }
+    }
+
+    /// How far the fraction runs while its rate changes from `a` to `b`.
+    fn way(self, a: f64, b: f64) -> f64 {
+        0.5 * (a + b) * self.change(a, b)[0]
+    }
+
+    /// The greatest rate that can be reached from rate `a` (or left from, to come down to `a`) within `span` of the fraction.
+    pub(super) fn reached(self, a: f64, span: f64) -> f64 {
+        if !(self.way(a, self.rate) > span) {
+            return self.rate;
+        }
+        bisect(a, self.rate, |rate| self.way(a, rate) <= span)
+    }
+}
+
+/// The last number from `low` on, below `high`, for which something holds that holds at `low`.
+fn bisect(mut low: f64, mut high: f64, holds: impl Fn(f64) -> bool) -> f64 {
+    for _ in 0..HALVINGS {
+        let middle = 0.5 * (low + high);
+        if holds(middle) {
+            low = middle;
+        } else {
+            high = middle;
+        }
+    }
+    low
+}
+
+/// A law says how the fraction of a path runs with time, from 0 to 1: speeding up, even running where the path is long enough,
+/// slowing down. Without a jerk limit both ramps are even; with one they begin and end gently (double-S), in up to seven pieces.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Law {
-    pieces: [Piece; 3],
+    pieces: [Piece; 7],
     count: usize,
 }
 
@@ -62,20 +162,82 @@ impl Law {
         let ramp = top / accel;
         let cruise = if top < rate { 0.0 } else { ((1.0 - ramp * top) / top).max(0.0) };
         let risen = 0.5 * ramp * top;
-        let up = Piece { start: 0.0, duration: ramp, u: 0.0, rate: 0.0, accel };
-        let even = Piece { start: ramp, duration: cruise, u: risen, rate: top, accel: 0.0 };
-        let down = Piece { start: ramp + cruise, duration: ramp, u: 1.0 - risen, rate: top, accel: -accel };
-        if cruise > 0.0 { Self { pieces: [up, even, down], count: 3 } } else { Self { pieces: [up, down, down], count: 2 } }
+        let up = Piece { start: 0.0, duration: ramp, u: 0.0, rate: 0.0, accel, jerk: 0.0 };
+        let even = Piece { start: ramp, duration: cruise, u: risen, rate: top, accel: 0.0, jerk: 0.0 };
+        let down = Piece { start: ramp + cruise, duration: ramp, u: 1.0 - risen, rate: top, accel: -accel, jerk: 0.0 };
+        let none = Self::none().pieces[0];
+        let mut pieces = [none; 7];
+        pieces[..3].copy_from_slice(&if cruise > 0.0 { [up, even, down] } else { [up, down, none] });
+        Self { pieces, count: if cruise > 0.0 { 3 } else { 2 } }
+    }
+
+    /// The fastest law from 0 to 1 that begins at rate `from` and ends at rate `to` (1/s), both reachable from each other within
+    /// the limits.
+    pub fn between(from: f64, to: f64, limits: Limits) -> Self {
+        if limits.jerk.is_infinite() && from == 0.0 && to == 0.0 {
+            return Self::trapezoid(limits.rate, limits.accel);
+        }
+        let top = limits.rate;
+        let [from, to] = [from, to].map(|rate| if (rate - top).abs() <= SAME_RATE * top { top } else { rate });
+        let needs = |top: f64| limits.way(from, top) + limits.way(top, to);
+        let least = from.max(to);
+        let top = if needs(limits.rate) <= 1.0 {
+            limits.rate
+        } else if limits.jerk.is_infinite() {
+            (limits.accel + 0.5 * (from * from + to * to)).sqrt().max(least)
+        } else {
+            bisect(least, limits.rate.max(least), |top| needs(top) <= 1.0)
+        };
+        let top = if top - least <= SAME_RATE * top { least } else { top };
+        let mut law = Self { count: 0, ..Self::none() };
+        let up = limits.way(from, top);
+        let down = 1.0 - limits.way(top, to);
+        law.ramp(0.0, from, top, limits);
+        let cruise = (down - up) / top;
+        // What rounding leaves between two ramps that meet is no piece of its own.
+        if cruise * top > 1e-12 {
+            law.push(Piece { start: law.duration(), duration: cruise, u: up, rate: top, accel: 0.0, jerk: 0.0 });
+        }
+        law.ramp(down, top, to, limits);
+        if law.count == 0 { Self::none() } else { law }
+    }
+
+    /// Even running from 0 to 1 within `duration` s, above 0.
+    pub fn even(duration: f64) -> Self {
+        let piece = Piece { start: 0.0, duration, u: 0.0, rate: 1.0 / duration, accel: 0.0, jerk: 0.0 };
+        Self { pieces: [piece; 7], count: 1 }
+    }
+
+    /// Adds the pieces of a change from rate `a` to rate `b`, beginning at fraction `u`.
+    fn ramp(&mut self, u: f64, a: f64, b: f64, limits: Limits) {
+        let [lasts, ramp] = limits.change(a, b);
+        let sign = if b > a { 1.0 } else { -1.0 };
+        let even = lasts - 2.0 * ramp;
+        let (jerk, top) = if ramp > 0.0 { (limits.jerk, limits.jerk * ramp) } else { (0.0, limits.accel) };
+        let mut piece = Piece { start: self.duration(), duration: 0.0, u, rate: a, accel: 0.0, jerk: 0.0 };
+        for (duration, accel, jerk) in [(ramp, 0.0, jerk), (even, top, 0.0), (ramp, top, -jerk)] {
+            if duration > 1e-12 * lasts {
+                piece = Piece { duration, accel: sign * accel, jerk: sign * jerk, ..piece };
+                self.push(piece);
+                let [u, rate, _] = piece.at(duration);
+                piece = Piece { start: piece.start + duration, u, rate, ..piece };
+            }
+        }
+    }
+
+    fn push(&mut self, piece: Piece) {
+        self.pieces[self.count] = piece;
+        self.count += 1;
     }
 
     /// No motion, no time: for a segment whose ends coincide.
     pub fn none() -> Self {
-        let still = Piece { start: 0.0, duration: 0.0, u: 0.0, rate: 0.0, accel: 0.0 };
-        Self { pieces: [still; 3], count: 1 }
+        let still = Piece { start: 0.0, duration: 0.0, u: 0.0, rate: 0.0, accel: 0.0, jerk: 0.0 };
+        Self { pieces: [still; 7], count: 1 }
     }
 
-    /// The same motion at an override of `k`, above 0: time runs `k` times as fast, so rates scale by `k` and accelerations by
-    /// `k` squared. The path is untouched.
+    /// The same motion at an override of `k`, above 0: time runs `k` times as fast, so rates scale by `k`, accelerations by `k`
+    /// squared and jerks by its cube. The path is untouched.
     #[must_use]
     pub fn scaled(&self, k: f64) -> Self {
         let scaled = |piece: &Piece| Piece {
@@ -84,6 +246,7 @@ impl Law {
             u: piece.u,
             rate: piece.rate * k,
             accel: piece.accel * k * k,
+            jerk: piece.jerk * k * k * k,
         };
         Self { pieces: self.pieces.each_ref().map(scaled), count: self.count }
     }
@@ -95,8 +258,7 @@ impl Law {
 
     /// How long it lasts, s.
     pub fn duration(&self) -> f64 {
-        let last = self.pieces()[self.count - 1];
-        last.start + last.duration
+        self.pieces().last().map_or(0.0, |last| last.start + last.duration)
     }
 
     /// The greatest rate of the fraction, 1/s.
@@ -174,6 +336,46 @@ mod tests {
                 let [slow_u, slow_rate, slow_accel] = slow.at(share * slow.duration(), Side::Before);
                 assert!((u - slow_u).abs() < 1e-12 && (slow_rate - k * rate).abs() < 1e-12);
                 assert!((slow_accel - k * k * accel).abs() < 1e-12, "{k} {share}");
+            }
+        }
+    }
+
+    #[test]
+    fn double_s_laws_have_the_durations_of_the_handbook() {
+        // Biagiotti & Melchiorri, Trajectory Planning for Automatic Machines and Robots, 2008, Ex. 3.9: h = 10, j = 30, v0 = 1,
+        // v = 5, a = 10, from rate 1 to rest: Ta .7333, Tv 1.1433, Td .8333, Tj .3333.
+        let of = |rate: f64, accel: f64| Limits { rate: rate / 10.0, accel: accel / 10.0, jerk: 3.0 };
+        let law = Law::between(0.1, 0.0, of(5.0, 10.0));
+        let lasts: Vec<f64> = law.pieces().iter().map(|piece| piece.duration).collect();
+        for (found, told) in lasts.iter().zip([0.3333, 0.0667, 0.3333, 1.1433, 0.3333, 0.1667, 0.3333]) {
+            assert!((found - told).abs() < 1e-4, "{lasts:?}");
+        }
+        // Ex. 3.13: v0 = 0, v = 10, a = 20: Ta = Td = 1.1006, Tv 0, Tj .5503, reached 9.0856 (the print says 9.0826).
+        let law = Law::between(0.0, 0.0, of(10.0, 20.0));
+        let lasts: Vec<f64> = law.pieces().iter().map(|piece| piece.duration).collect();
+        assert!(lasts.len() == 4 && lasts.iter().all(|t| (t - 0.5503).abs() < 1e-4), "{lasts:?}");
+        assert!((law.top_rate() * 10.0 - 9.0856).abs() < 1e-4);
+    }
+
+    #[test]
+    fn laws_between_rates_join_without_a_jump() {
+        for jerk in [f64::INFINITY, 500.0, 3.0] {
+            for (from, to) in [(0.0, 0.0), (0.3, 0.0), (0.0, 0.2), (0.3, 0.31), (0.4, 0.1)] {
+                let limits = Limits { rate: 0.5, accel: 2.0, jerk };
+                let law = Law::between(from, to, limits);
+                assert!((law.at(0.0, Side::After)[1] - from).abs() < 1e-12);
+                let [u, rate, _] = law.at(law.duration(), Side::Before);
+                assert!((u - 1.0).abs() < 1e-12 && (rate - to).abs() < 1e-9, "{jerk} {from} {to}: {u} {rate}");
+                for pair in law.pieces().windows(2) {
+                    let [u, rate, accel] = pair[0].at(pair[0].duration);
+                    assert!((u - pair[1].u).abs() < 1e-12 && (rate - pair[1].rate).abs() < 1e-11);
+                    assert!(jerk.is_infinite() || (accel - pair[1].accel).abs() < 1e-9);
+                    assert!(rate <= limits.rate * (1.0 + 1e-12) && accel.abs() <= limits.accel * (1.0 + 1e-9));
+                }
+                for k in 0..=1000 {
+                    let u = k as f64 / 1000.0;
+                    assert!((law.at(law.time_of(u), Side::Before)[0] - u).abs() < 1e-12, "{jerk} {from} {to} {u}");
+                }
             }
         }
     }

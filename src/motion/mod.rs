@@ -1,5 +1,7 @@
 //! How the arm moves: the path of each segment, its speed law, the joint values along it, and the timeline of the cycle.
 
+mod blend;
+mod fly_by;
 mod follow;
 mod instant;
 mod law;
@@ -9,9 +11,11 @@ mod resolve;
 mod segment;
 mod track;
 
+pub use blend::{Blend, JointBlend};
+pub use fly_by::{FlyBy, Passed};
 pub use follow::Follower;
 pub use instant::Instant;
-pub use law::{Law, Piece, Side};
+pub use law::{Law, Limits, Piece, Side};
 pub use path::{Path, Target};
 pub use plan::{Cursor, Plan};
 pub use resolve::pose_in_base;

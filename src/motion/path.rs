@@ -1,6 +1,8 @@
 use crate::arm::Joints;
 use crate::geometry::{Pose, V3, turn_about, turn_between};
 
+use super::{Blend, JointBlend};
+
 /// What the tool does on a path at one place: its pose and how that changes with the path's fraction u.
 #[derive(Debug, Clone, Copy)]
 pub struct Target {
@@ -10,8 +12,16 @@ pub struct Target {
     pub velocity: V3,
     /// Second derivative of its position by u, m.
     pub bend: V3,
-    /// Turning by u, rad, base axes. Constant along a path, since the tool turns evenly about one axis.
+    /// At least the size of the third derivative of its position by u anywhere on the path, m.
+    pub third: f64,
+    /// Turning by u, rad, base axes. Constant along a line or arc, since the tool turns evenly about one axis.
     pub turning: V3,
+    /// Derivative of the turning by u, rad; 0 but on a blend.
+    pub swing: V3,
+    /// At least the size of the second derivative of the turning by u anywhere on the path, rad.
+    pub swing_change: f64,
+    /// Whether the size of the velocity is the same all along.
+    pub even: bool,
 }
 
 /// A path is the geometry of a segment, without time: from fraction u = 0 to 1.
@@ -50,6 +60,10 @@ pub enum Path {
         /// Angle of the tool's turn, 0 to pi rad.
         angle: f64,
     },
+    /// The TCP passes a fly-by point between two lines or arcs.
+    Blend(Blend),
+    /// The joints pass a fly-by point, a joint move on one side at least.
+    JointBlend(JointBlend),
 }
 
 impl Path {
@@ -74,10 +88,36 @@ impl Path {
         Self::Arc { start: Pose { axes: start.axes, at: centre }, arm, normal, sweep, axis, angle }
     }
 
+    /// The part of a joint move, line or arc from fraction `from` to `to` as a path of its own; a blend is never cut.
+    #[must_use]
+    pub fn part(&self, [from, to]: [f64; 2]) -> Self {
+        let span = to - from;
+        let there = self.target(from).map(|target| target.pose);
+        match (*self, there) {
+            (Self::Joint { from: p, to: q }, _) => {
+                let at = |u: f64| p.zip(&q, |a, b| if u == 1.0 { b } else { a + u * (b - a) });
+                Self::Joint { from: at(from), to: at(to) }
+            }
+            (Self::Line { along, axis, angle, .. }, Some(start)) => {
+                Self::Line { start, along: along * span, axis, angle: angle * span }
+            }
+            (Self::Arc { start, arm, normal, sweep, axis, angle }, Some(there)) => Self::Arc {
+                start: Pose { axes: there.axes, at: start.at },
+                arm: turn_about(&normal, sweep * from) * arm,
+                normal,
+                sweep: sweep * span,
+                axis,
+                angle: angle * span,
+            },
+            _ => *self,
+        }
+    }
+
     /// Length that the TCP runs on a line or arc, m; 0 for a joint move, whose length depends on the arm.
     pub fn length(&self) -> f64 {
         match self {
-            Self::Joint { .. } => 0.0,
+            Self::Joint { .. } | Self::JointBlend(_) => 0.0,
+            Self::Blend(blend) => blend.length(),
             Self::Line { along, .. } => along.norm(),
             Self::Arc { arm, sweep, .. } => arm.norm() * sweep,
         }
@@ -86,7 +126,8 @@ impl Path {
     /// Angle that the tool turns on a line or arc, rad.
     pub fn turn(&self) -> f64 {
         match self {
-            Self::Joint { .. } => 0.0,
+            Self::Joint { .. } | Self::JointBlend(_) => 0.0,
+            Self::Blend(blend) => blend.turn(),
             Self::Line { angle, .. } | Self::Arc { angle, .. } => *angle,
         }
     }
@@ -95,12 +136,17 @@ impl Path {
     #[inline]
     pub fn target(&self, u: f64) -> Option<Target> {
         match self {
-            Self::Joint { .. } => None,
+            Self::Joint { .. } | Self::JointBlend(_) => None,
+            Self::Blend(blend) => Some(blend.target(u)),
             Self::Line { start, along, axis, angle } => Some(Target {
                 pose: Pose { axes: turned(start, axis, angle * u), at: start.at + along * u },
                 velocity: *along,
                 bend: V3::zeros(),
+                third: 0.0,
                 turning: axis * *angle,
+                swing: V3::zeros(),
+                swing_change: 0.0,
+                even: true,
             }),
             Self::Arc { start, arm, normal, sweep, axis, angle } => {
                 let (s, c) = (sweep * u).sin_cos();
@@ -110,7 +156,11 @@ impl Path {
                     pose: Pose { axes: turned(start, axis, angle * u), at: start.at + out },
                     velocity: normal.cross(&out) * *sweep,
                     bend: out * (-sweep * sweep),
+                    third: arm.norm() * sweep.powi(3),
                     turning: axis * *angle,
+                    swing: V3::zeros(),
+                    swing_change: 0.0,
+                    even: true,
                 })
             }
         }

@@ -5,16 +5,23 @@ use crate::dynamics::gravity_in_base;
 use crate::geometry::{Pose, V3};
 use crate::kinematics::Posture;
 use crate::program::{Arrive, Carried, PathSpeed, PushAxes, Recipe, Taught, Usual, frame_in_base};
-use crate::units::{Share, Speed};
+use crate::units::{Jerk, Share, Speed, TurnJerk};
 
+use super::fly_by::{Run, rounded};
 use super::resolve::{Place, misses_left_out, point_in_base, resolve, wanted_pose};
-use super::{Law, NoPath, Path, Push, Segment, Track};
+use super::{FlyBy, Law, Limits, NoPath, Path, Push, Segment, Track};
 
 /// A plan is a recipe turned into motion: joint values at every waypoint, the path and timing of every segment.
 #[derive(Debug, Clone)]
 pub struct Plan {
-    /// One segment for every waypoint but the first, in order.
+    /// One segment for every waypoint but the first, in order, and after it the blend past that waypoint where it is a fly-by
+    /// point.
     pub segments: Vec<Arc<Segment>>,
+    /// For each segment that a blend cuts something off: the whole of it, from stop to stop, as a controller that stops at the
+    /// fly-by point runs it.
+    pub stops: Vec<Option<Arc<Segment>>>,
+    /// The fly-by points.
+    pub fly_bys: Vec<FlyBy>,
     /// When each segment starts on the cycle, s.
     pub starts: Vec<f64>,
     /// Gravity in base axes, m/s².
@@ -42,13 +49,14 @@ impl Plan {
     pub fn of(arm: &Arm, recipe: &Recipe) -> Self {
         let gravity = gravity_in_base(&recipe.mount);
         let first_dwell = recipe.waypoints.first().map_or(0.0, |w| w.dwell.as_s());
-        let mut plan = Self { segments: Vec::new(), starts: Vec::new(), gravity, first_dwell };
+        let mut plan =
+            Self { segments: Vec::new(), stops: Vec::new(), fly_bys: Vec::new(), starts: Vec::new(), gravity, first_dwell };
         if recipe.waypoints.is_empty() {
             return plan;
         }
         let middle = Joints::from_fn(arm.len(), |j| arm.joints()[j].range.middle());
         let mut places = vec![resolve(arm, recipe, 0, &carried_at(recipe, 0), &middle)];
-        let mut time = first_dwell;
+        let mut stops = Vec::with_capacity(recipe.waypoints.len());
         for to in 1..recipe.waypoints.len() {
             let segment = plan_segment(arm, recipe, to, &places);
             let found = !matches!(segment.trouble, Some(NoPath::OutOfReach { .. } | NoPath::Lost { .. } | NoPath::StartUnknown))
@@ -58,11 +66,36 @@ impl Plan {
             } else {
                 resolve(arm, recipe, to, &segment.carried, &segment.start)
             });
+            stops.push(segment);
+        }
+        let (runs, fly_bys) = rounded(arm, recipe, stops);
+        plan.fly_bys = fly_bys;
+        let mut time = first_dwell;
+        for Run { segment, stop } in runs {
             plan.starts.push(time);
             time += segment.duration() + segment.dwell;
             plan.segments.push(Arc::new(segment));
+            plan.stops.push(stop.map(Arc::new));
         }
         plan
+    }
+
+    /// The segment that arrives at a waypoint (counted from 0), from stop to stop; none for the first.
+    pub fn arriving(&self, waypoint: usize) -> Option<&Arc<Segment>> {
+        let index = self.segments.partition_point(|segment| segment.to < waypoint);
+        let segment = self.segments.get(index).filter(|segment| segment.to == waypoint)?;
+        Some(self.stops[index].as_ref().unwrap_or(segment))
+    }
+
+    /// A segment as it runs on the cycle, or the version of it that stops at both ends where `stop` says so and there is one.
+    pub fn version(&self, index: usize, stop: bool) -> &Arc<Segment> {
+        self.stops[index].as_ref().filter(|_| stop).unwrap_or(&self.segments[index])
+    }
+
+    /// The fraction of a segment on the cycle that is nearest to fraction `u` of its version from stop to stop.
+    pub fn nearest_on_cycle(&self, index: usize, u: f64) -> f64 {
+        let [from, to] = self.segments[index].part;
+        ((u - from) / (to - from)).clamp(0.0, 1.0)
     }
 
     /// Duration of the whole cycle, dwells included, s.
@@ -98,8 +131,11 @@ fn plan_segment(arm: &Arm, recipe: &Recipe, to: usize, places: &[Place]) -> Segm
     let arrive = waypoint.arrive.clone().unwrap_or(Arrive::Joint { share: None, accel_share: None });
     let mut segment = Segment {
         to,
+        blend: false,
+        part: [0.0, 1.0],
         path: Path::Joint { from: start, to: start },
         law: Law::none(),
+        limits: None,
         track: Track::default(),
         start,
         end: start,
@@ -128,7 +164,8 @@ fn plan_segment(arm: &Arm, recipe: &Recipe, to: usize, places: &[Place]) -> Segm
             segment.trouble = place.trouble;
             segment.path = Path::Joint { from: start, to: place.q };
             segment.shares = Some([share, accel_share]);
-            segment.law = joint_law(arm, &start, &place.q, share, accel_share);
+            segment.limits = joint_limits(arm, &start, &place.q, share, accel_share);
+            segment.law = from_rest(segment.limits);
         }
         Arrive::Line(speed) => {
             let from = Posture::at(arm.chain(), &start).tcp(&carried.tcp);
@@ -154,7 +191,8 @@ fn plan_segment(arm: &Arm, recipe: &Recipe, to: usize, places: &[Place]) -> Segm
 
 /// Tracks a line or arc, times it, and compares its end with what was taught there.
 fn follow(arm: &Arm, recipe: &Recipe, segment: &mut Segment, target: &Pose, near: Option<Joints>, speed: &PathSpeed) {
-    segment.law = path_law(&segment.path, speed, &recipe.usual);
+    segment.limits = path_limits(&segment.path, speed, &recipe.usual);
+    segment.law = from_rest(segment.limits);
     segment.track = Track::along(arm, &segment.path, &segment.carried.tcp, &segment.start);
     if let Some(lost) = segment.track.lost {
         let at_limit = crate::kinematics::Reached::at_limit(lost.sigma);
@@ -190,37 +228,43 @@ fn follow(arm: &Arm, recipe: &Recipe, segment: &mut Segment, target: &Pose, near
     segment.trouble = misses_left_out(arm, &segment.carried, target, &arrives, turning_too);
 }
 
-/// The law of a joint move: every joint within its share, all together, the slowest leads.
-fn joint_law(arm: &Arm, from: &Joints, to: &Joints, share: f64, accel_share: f64) -> Law {
-    let (mut rate, mut accel) = (f64::INFINITY, f64::INFINITY);
+/// The law from rest to rest.
+fn from_rest(limits: Option<Limits>) -> Law {
+    limits.map_or_else(Law::none, |limits| Law::between(0.0, 0.0, limits))
+}
+
+/// The limits of a joint move: every joint within its share, all together, the slowest leads. `None` without motion.
+fn joint_limits(arm: &Arm, from: &Joints, to: &Joints, share: f64, accel_share: f64) -> Option<Limits> {
+    let (mut rate, mut accel, mut jerk) = (f64::INFINITY, f64::INFINITY, f64::INFINITY);
     for (j, joint) in arm.joints().iter().enumerate() {
         let way = (to[j] - from[j]).abs();
         rate = rate.min(share * joint.rate / way);
         accel = accel.min(accel_share * joint.accel / way);
+        jerk = jerk.min(joint.jerk.map_or(f64::INFINITY, |jerk| accel_share * jerk / way));
     }
-    if rate.is_finite() && accel.is_finite() && from.zip(to, |a, b| a - b).largest() > NO_LENGTH {
-        Law::trapezoid(rate, accel)
-    } else {
-        Law::none()
-    }
+    let moves = rate.is_finite() && accel.is_finite() && from.zip(to, |a, b| a - b).largest() > NO_LENGTH;
+    moves.then_some(Limits { rate, accel, jerk })
 }
 
-/// The law of a line or arc: of moving and turning, the slower leads, in rate and in acceleration.
-fn path_law(path: &Path, speed: &PathSpeed, usual: &Usual) -> Law {
+/// The limits of a line or arc: of moving and turning, the slower leads, in rate, in acceleration and in jerk. `None` without
+/// motion.
+fn path_limits(path: &Path, speed: &PathSpeed, usual: &Usual) -> Option<Limits> {
     let (length, turn) = (path.length(), path.turn());
     if length <= NO_LENGTH && turn <= NO_LENGTH {
-        return Law::none();
+        return None;
     }
     let moving = speed.speed.or(usual.speed).map_or(f64::INFINITY, Speed::as_m_per_s);
     let moving_accel = speed.accel.unwrap_or(usual.accel).as_m_per_s2();
     let turning = speed.turn_speed.unwrap_or(usual.turn_speed).as_rad_per_s();
     let turning_accel = speed.turn_accel.unwrap_or(usual.turn_accel).as_rad_per_s2();
+    let moving_jerk = speed.jerk.or(usual.jerk).map_or(f64::INFINITY, Jerk::as_m_per_s3);
+    let turning_jerk = speed.turn_jerk.or(usual.turn_jerk).map_or(f64::INFINITY, TurnJerk::as_rad_per_s3);
     let least = |moving: f64, turning: f64| {
         let along = if length > NO_LENGTH { moving / length } else { f64::INFINITY };
         let about = if turn > NO_LENGTH { turning / turn } else { f64::INFINITY };
         along.min(about)
     };
-    Law::trapezoid(least(moving, turning), least(moving_accel, turning_accel))
+    Some(Limits { rate: least(moving, turning), accel: least(moving_accel, turning_accel), jerk: least(moving_jerk, turning_jerk) })
 }
 
 fn push_in_base(recipe: &Recipe, to: usize) -> Option<Push> {

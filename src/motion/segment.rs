@@ -3,7 +3,7 @@ use crate::dynamics::Wrench;
 use crate::geometry::{Pose, V3};
 use crate::program::Carried;
 
-use super::{Law, Path, Track};
+use super::{Law, Limits, Path, Track};
 
 /// Why a segment has no motion, or none that could be found.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -83,10 +83,16 @@ impl Push {
 pub struct Segment {
     /// The waypoint that it arrives at, counted from 0. People read it one higher.
     pub to: usize,
+    /// Whether it is the blend past the fly-by point `to`, between the two segments that meet there.
+    pub blend: bool,
+    /// Which part of the taught path it runs, as fractions: all of it but for what blends cut off at its ends.
+    pub part: [f64; 2],
     /// Its geometry.
     pub path: Path,
     /// How it runs with time.
     pub law: Law,
+    /// Within which limits; none without motion and on a blend.
+    pub limits: Option<Limits>,
     /// Joint values along a line or arc.
     pub track: Track,
     /// Joint values at its start.
@@ -121,6 +127,11 @@ impl Segment {
         Self { law: self.law.scaled(k), shares, ..self.clone() }
     }
 
+    /// How people tell it from others: its number, and that it is a blend, such as `7` or `7, fly-by`.
+    pub fn label(&self) -> String {
+        if self.blend { format!("{}, fly-by", self.number()) } else { self.number().to_string() }
+    }
+
     /// How long it moves, s.
     pub fn duration(&self) -> f64 {
         self.law.duration()
@@ -128,7 +139,7 @@ impl Segment {
 
     /// Whether the TCP follows a given path.
     pub fn follows_path(&self) -> bool {
-        !matches!(self.path, Path::Joint { .. })
+        !matches!(self.path, Path::Joint { .. } | Path::JointBlend(_))
     }
 
     /// The fraction up to which there is a motion to judge.

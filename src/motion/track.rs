@@ -2,7 +2,7 @@ use crate::arm::{Arm, Joints, MAX_JOINTS};
 use crate::geometry::Pose;
 use crate::kinematics::{Jacobian, Lu, Posture, null_rows, smallest_singular_value, stacked};
 
-use super::{Follower, Path};
+use super::{Follower, Instant, Path};
 
 /// A node is one place of a line or arc whose joint values are known; between nodes Newton finds them.
 #[derive(Debug, Clone, PartialEq)]
@@ -98,6 +98,34 @@ impl Track {
         }
         track.nodes.push(node);
         track
+    }
+}
+
+impl Track {
+    /// The part of a track that was followed to its end, from fraction `from` to `to`, with its last node at `end`.
+    pub(super) fn part(&self, [from, to]: [f64; 2], end: &Instant) -> Self {
+        let span = to - from;
+        // At a node itself the cell before it counts, as it does for the blend that ends there.
+        let first = self.nodes.partition_point(|node| node.u < from).saturating_sub(1);
+        let inner = self.nodes[first..].iter().take_while(|node| node.u < to);
+        let mut nodes: Vec<Node> = inner
+            .map(|node| Node {
+                u: (node.u - from) / span,
+                slope: Joints::from_fn(node.q.len(), |j| node.slope[j] * span),
+                bend: Joints::from_fn(node.q.len(), |j| node.bend[j] * span * span),
+                ..node.clone()
+            })
+            .collect();
+        let (null, sense) = nodes.last().map_or((Vec::new(), 1.0), |node| (node.null.clone(), node.sense));
+        nodes.push(Node {
+            u: 1.0,
+            q: end.q,
+            slope: Joints::from_fn(end.q.len(), |j| end.slope[j] * span),
+            bend: Joints::from_fn(end.q.len(), |j| end.bend[j] * span * span),
+            null,
+            sense,
+        });
+        Self { nodes, lost: None }
     }
 }
 

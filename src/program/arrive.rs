@@ -1,4 +1,4 @@
-use crate::units::{Acceleration, Share, Speed, TurnAcceleration, TurnRate};
+use crate::units::{Acceleration, Jerk, Share, Speed, TurnAcceleration, TurnJerk, TurnRate};
 
 use super::Given;
 
@@ -13,6 +13,10 @@ pub struct PathSpeed {
     pub turn_speed: Option<TurnRate>,
     /// Turning acceleration of the tool.
     pub turn_accel: Option<TurnAcceleration>,
+    /// Jerk of the TCP along the path; without one, its ramps are even.
+    pub jerk: Option<Jerk>,
+    /// Turning jerk of the tool; without one, its ramps are even.
+    pub turn_jerk: Option<TurnJerk>,
 }
 
 /// How the arm arrives at a waypoint: the kind of segment that ends there.

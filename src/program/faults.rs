@@ -1,7 +1,9 @@
 use std::collections::HashSet;
 
 use crate::arm::{Arm, Joints};
-use crate::units::{Acceleration, Dimension, Fault, Field, Length, Measure, Speed, TurnAcceleration, TurnRate, nearest_word, tidy};
+use crate::units::{
+    Acceleration, Dimension, Fault, Field, Jerk, Length, Measure, Speed, TurnAcceleration, TurnJerk, TurnRate, nearest_word, tidy,
+};
 
 use super::{Arrive, BASE, Given, PushAxes, Recipe, Taught, Then, WORLD, Waypoint, frame_in_base};
 
@@ -142,6 +144,8 @@ impl Recipe {
             ("accel", Some(u.accel.measure())),
             ("turn-speed", Some(u.turn_speed.measure())),
             ("turn-accel", Some(u.turn_accel.measure())),
+            ("jerk", u.jerk.map(Jerk::measure)),
+            ("turn-jerk", u.turn_jerk.map(TurnJerk::measure)),
         ] {
             faults.extend(value.and_then(|value| not_above_zero(field.key(key), "usual", key, value)));
         }
@@ -246,6 +250,8 @@ impl Recipe {
                     ("accel", speed.accel.map(Acceleration::measure)),
                     ("turn-speed", speed.turn_speed.map(TurnRate::measure)),
                     ("turn-accel", speed.turn_accel.map(TurnAcceleration::measure)),
+                    ("jerk", speed.jerk.map(Jerk::measure)),
+                    ("turn-jerk", speed.turn_jerk.map(TurnJerk::measure)),
                 ] {
                     faults.extend(value.and_then(|value| not_above_zero(field.key(key), thing, key, value)));
                 }

@@ -1,5 +1,5 @@
 use crate::geometry::Pose;
-use crate::units::{Acceleration, Share, Speed, TurnAcceleration, TurnRate};
+use crate::units::{Acceleration, Jerk, Share, Speed, TurnAcceleration, TurnJerk, TurnRate};
 
 use super::{Acceptance, Frame, Load, Then, Tool, Waypoint};
 
@@ -14,6 +14,10 @@ pub struct Usual {
     pub turn_speed: TurnRate,
     /// Turning acceleration of the tool on lines and arcs.
     pub turn_accel: TurnAcceleration,
+    /// Jerk of the TCP on lines and arcs; without one, ramps are even.
+    pub jerk: Option<Jerk>,
+    /// Turning jerk of the tool on lines and arcs; without one, ramps are even.
+    pub turn_jerk: Option<TurnJerk>,
     /// Share of the joints' rates on joint moves.
     pub share: Option<Share>,
     /// Share of the joints' accelerations on joint moves.
@@ -27,6 +31,8 @@ impl Default for Usual {
             accel: Acceleration::mm_per_s2(1000.0),
             turn_speed: TurnRate::deg_per_s(90.0),
             turn_accel: TurnAcceleration::deg_per_s2(360.0),
+            jerk: None,
+            turn_jerk: None,
             share: None,
             accel_share: Share::WHOLE,
         }

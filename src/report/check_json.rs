@@ -38,12 +38,14 @@ struct CycleJson {
     checks: Checks,
 }
 
-/// One segment. `index` is its number as people read it: that of the waypoint it arrives at, counted from 1.
+/// One segment; where `fly_by` is true, the blend past its waypoint. `index` is its number as people read it: that of the waypoint
+/// it arrives at, counted from 1.
 #[derive(Debug, Serialize)]
 struct SegmentJson {
     index: usize,
     from: String,
     to: String,
+    fly_by: bool,
     arrive: &'static str,
     start_s: Option<f64>,
     duration_s: Option<f64>,
@@ -96,6 +98,7 @@ fn segment_json(judged: &Judged, index: usize, segment: &Segment) -> SegmentJson
         index: segment.number(),
         from: waypoints[segment.to - 1].name.clone(),
         to: waypoints[segment.to].name.clone(),
+        fly_by: segment.blend,
         arrive: waypoints[segment.to].arrive.as_ref().map_or("joint", |arrive| arrive.word()),
         start_s: shown(Seconds::s(judged.plan.starts[index]).measure()),
         duration_s: figure(segment.duration()),

@@ -25,6 +25,8 @@ struct Bar {
 #[derive(Debug, Serialize)]
 pub(super) struct FindingJson {
     segment: usize,
+    fly_by: bool,
+    stop_version: bool,
     check: &'static str,
     joint: Option<String>,
     verdict: &'static str,
@@ -44,7 +46,7 @@ pub(super) struct FindingJson {
 
 impl FindingJson {
     pub(super) fn of(judged: &Judged, finding: &Finding) -> Self {
-        let segment = &judged.plan.segments[finding.segment];
+        let segment = judged.plan.version(finding.segment, finding.stop);
         let at = |place| At::of(segment, place);
         let excess = match &finding.kind {
             Kind::Excess(excess) => Some(excess),
@@ -62,6 +64,8 @@ impl FindingJson {
         });
         Self {
             segment: segment.number(),
+            fly_by: segment.blend,
+            stop_version: finding.stop,
             check: finding.check.key(),
             joint: finding.joint.map(|j| judged.arm.joints()[j].name.clone()),
             verdict: finding.verdict.word(),

@@ -28,7 +28,7 @@ pub(super) fn percent(room: Room) -> Option<f64> {
     figure(room.as_percent())
 }
 
-/// An instant of a segment: fraction of its path, time since its start, and way along it (not on joint moves).
+/// An instant of a segment: fraction of its path, time since its start, and way along it (not on joint moves and blends).
 #[derive(Debug, Serialize)]
 pub(super) struct At {
     u: Option<f64>,
@@ -39,7 +39,8 @@ pub(super) struct At {
 impl At {
     pub(super) fn of(segment: &Segment, place: Place) -> Self {
         let length = segment.path.length();
-        let mm = (segment.follows_path() && length > NO_LENGTH).then(|| figure(1000.0 * length * place.u)).flatten();
+        let mm =
+            (segment.follows_path() && !segment.blend && length > NO_LENGTH).then(|| figure(1000.0 * length * place.u)).flatten();
         Self { u: figure(place.u), time_s: figure(place.time), mm }
     }
 }

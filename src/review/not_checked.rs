@@ -50,7 +50,8 @@ fn particular(judged: &Judged) -> Vec<String> {
     }
     told.push("Speeds of flange, elbow, tool corners and part: only that of the TCP is judged.".to_owned());
     if recipe.waypoints.iter().any(|waypoint| waypoint.fly_by.is_some()) {
-        told.push("Fly-by: every waypoint is judged as a stop point; the rounded corner that the cell runs is not.".to_owned());
+        told.push("Fly-by: how the cell's controller rounds the corner. A blend tangent to both segments is judged, and so is a stop at the \
+             waypoint; controllers differ, and what yours does between the two is not.".to_owned());
     }
     if recipe.waypoints.iter().any(|waypoint| waypoint.push.is_some()) {
         told.push("The process force: whether it is what the recipe says, and the contact that makes it.".to_owned());

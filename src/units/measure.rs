@@ -15,6 +15,10 @@ pub enum Dimension {
     TurnAcceleration,
     /// Acceleration: m/s² inside, mm/s² for people.
     Acceleration,
+    /// Turning jerk: rad/s³ inside, deg/s³ for people.
+    TurnJerk,
+    /// Jerk: m/s³ inside, mm/s³ for people.
+    Jerk,
     /// Torque, N·m for both.
     Torque,
     /// Force, N for both.
@@ -33,8 +37,8 @@ impl Dimension {
     /// How many of people's units make one SI unit.
     pub fn per_si(self) -> f64 {
         match self {
-            Self::Angle | Self::TurnRate | Self::TurnAcceleration => 180.0 / std::f64::consts::PI,
-            Self::Length | Self::Speed | Self::Acceleration => 1000.0,
+            Self::Angle | Self::TurnRate | Self::TurnAcceleration | Self::TurnJerk => 180.0 / std::f64::consts::PI,
+            Self::Length | Self::Speed | Self::Acceleration | Self::Jerk => 1000.0,
             Self::Torque | Self::Force | Self::Inertia | Self::Mass | Self::Time | Self::Ratio => 1.0,
         }
     }
@@ -48,6 +52,8 @@ impl Dimension {
             Self::Speed => "mm/s",
             Self::TurnAcceleration => "°/s²",
             Self::Acceleration => "mm/s²",
+            Self::TurnJerk => "°/s³",
+            Self::Jerk => "mm/s³",
             Self::Torque => "N·m",
             Self::Force => "N",
             Self::Inertia => "kg·m²",
@@ -66,6 +72,8 @@ impl Dimension {
             Self::Speed => "mm_s",
             Self::TurnAcceleration => "deg_s2",
             Self::Acceleration => "mm_s2",
+            Self::TurnJerk => "deg_s3",
+            Self::Jerk => "mm_s3",
             Self::Torque => "nm",
             Self::Force => "n",
             Self::Inertia => "kg_m2",

@@ -11,7 +11,9 @@ mod room;
 
 pub use fault::{Fault, Field, Step};
 pub use measure::{Dimension, Measure, tidy};
-pub use named::{Acceleration, Angle, Force, Length, Mass, Seconds, Share, Speed, Torque, TurnAcceleration, TurnRate};
+pub use named::{
+    Acceleration, Angle, Force, Jerk, Length, Mass, Seconds, Share, Speed, Torque, TurnAcceleration, TurnJerk, TurnRate,
+};
 pub use near::nearest_word;
 pub use room::Room;
 

@@ -77,6 +77,10 @@ quantity!(/// A turning acceleration.
     TurnAcceleration, TurnAcceleration, rad_per_s2, as_rad_per_s2, deg_per_s2, as_deg_per_s2, "rad/s²", "deg/s²");
 quantity!(/// An acceleration along a path.
     Acceleration, Acceleration, m_per_s2, as_m_per_s2, mm_per_s2, as_mm_per_s2, "m/s²", "mm/s²");
+quantity!(/// A turning jerk, by which an acceleration changes.
+    TurnJerk, TurnJerk, rad_per_s3, as_rad_per_s3, deg_per_s3, as_deg_per_s3, "rad/s³", "deg/s³");
+quantity!(/// A jerk along a path, by which an acceleration changes.
+    Jerk, Jerk, m_per_s3, as_m_per_s3, mm_per_s3, as_mm_per_s3, "m/s³", "mm/s³");
 quantity!(/// A torque.
     Torque, Torque, nm, as_nm, "N·m");
 quantity!(/// A force.

@@ -35,7 +35,7 @@ pub const ARMS: &[Case] = &[
     (
         "rate = 175",
         "rate = 175\ncolour = \"grey\"",
-        r#"joint J1: unknown key "colour"; the keys here are "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "torque", "brake", "rotor", "friction", "balancer", "stop" and "link" (arm.toml:12:1)"#,
+        r#"joint J1: unknown key "colour"; the keys here are "name", "kind", "dh", "place", "axis", "range", "rate", "accel", "jerk", "torque", "brake", "rotor", "friction", "balancer", "stop" and "link" (arm.toml:12:1)"#,
     ),
     (
         "range = [-170, 170]",

@@ -251,6 +251,6 @@ pub const RECIPES: &[Case] = &[
     (
         r#"name = "down""#,
         "name = \"döwn°\"\nspede = 1",
-        r#"waypoint 3 "döwn°": unknown key "spede"; the keys here are "name", "joints", "pose", "near", "shown", "tool", "arrive", "share", "accel-share", "speed", "accel", "turn-speed", "turn-accel", "via", "fly-by", "dwell", "then" and "push" (recipe.toml:44:1)"#,
+        r#"waypoint 3 "döwn°": unknown key "spede"; the keys here are "name", "joints", "pose", "near", "shown", "tool", "arrive", "share", "accel-share", "speed", "accel", "turn-speed", "turn-accel", "jerk", "turn-jerk", "via", "fly-by", "dwell", "then" and "push" (recipe.toml:44:1)"#,
     ),
 ];

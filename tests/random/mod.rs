@@ -64,6 +64,7 @@ fn turning(name: usize, a: f64, alpha: f64, d: f64, theta: f64) -> Joint {
         range: Range { low: -3.3, high: 3.3 },
         rate: 3.0 + name as f64 * 0.5,
         accel: 12.0 + name as f64 * 6.0,
+        jerk: None,
         torque: None,
         brake: None,
         drive: Drive::default(),
@@ -154,6 +155,15 @@ fn tensor(size: f64, draw: &mut Draw) -> elbowroom::geometry::M3 {
     axes * elbowroom::geometry::M3::from_diagonal(&V3::from(moments)) * axes.transpose()
 }
 
+/// The same arm with a limit of jerk: so many times each joint's acceleration a second.
+#[allow(dead_code, reason = "not every test that draws arms limits jerk")]
+pub fn with_jerk(arm: &Arm, times: f64) -> Arm {
+    let joints = arm.joints().iter().map(|joint| Joint { jerk: Some(joint.accel * times), ..joint.clone() }).collect();
+    let task = (!arm.task().is_whole()).then(|| *arm.task());
+    let data = ArmData { name: arm.name().to_owned(), joints, flange: Flange::default(), characteristic_length: Some(0.5), task };
+    Arm::build(data).expect("a sound arm")
+}
+
 /// A posture well inside the ranges.
 pub fn posture(arm: &Arm, draw: &mut Draw) -> Joints {
     Joints::from_fn(arm.len(), |j| {
@@ -178,6 +188,7 @@ pub fn waypoint(name: &str, taught: Taught, arrive: Option<Arrive>) -> Waypoint 
 }
 
 /// A line from a drawn posture to a drawn pose nearby, or a joint move to a drawn posture.
+#[allow(dead_code, reason = "not every test that draws arms draws single segments")]
 pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
     let start = posture(arm, draw);
     let last = if line {
@@ -217,6 +228,8 @@ pub fn recipe(waypoints: Vec<Waypoint>) -> Recipe {
             accel: Acceleration::m_per_s2(2.0),
             turn_speed: TurnRate::deg_per_s(90.0),
             turn_accel: TurnAcceleration::deg_per_s2(360.0),
+            jerk: None,
+            turn_jerk: None,
             share: None,
             accel_share: Share::fraction(0.8),
         },

@@ -38,6 +38,7 @@ pub fn joint(kind: JointKind, placement: Placement) -> Joint {
         range: Range { low: -most, high: most },
         rate: 1.0,
         accel: 1.0,
+        jerk: None,
         torque: Some(TorqueRating { holding: 100.0, peak: None, grounds: Grounds::Sheet }),
         brake: None,
         drive: elbowroom::arm::Drive::default(),

@@ -8,7 +8,7 @@ use super::Doubt;
 
 /// A speed beyond what the arm has in any posture, on the segment that arrives at waypoint `index`.
 pub(super) fn doubt(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> Option<Doubt> {
-    let segment = plan.segments.get(index.checked_sub(1)?)?;
+    let segment = plan.arriving(index)?;
     let (Arrive::Line(path) | Arrive::Arc { speed: path, .. }) = recipe.waypoints[index].arrive.as_ref()? else { return None };
     let speed = path.speed.or(recipe.usual.speed).map(Speed::as_m_per_s)?;
     let most = fastest(arm, &segment.carried.tcp);

@@ -65,6 +65,18 @@ pub enum Doubt {
         /// Rated load, kg.
         rated: f64,
     },
+    /// A fly-by radius that the segments beside it leave no room for.
+    FlyByCut {
+        /// Which waypoint, counted from 0.
+        waypoint: usize,
+        /// The radius asked for, m.
+        radius: f64,
+    },
+    /// A fly-by point that is judged as a stop point.
+    FlyByStops {
+        /// Which waypoint, counted from 0.
+        waypoint: usize,
+    },
     /// The centre of mass of a tool or load is so far away that it looks like a slip.
     FarCentre {
         /// What hangs there.
@@ -159,6 +171,8 @@ impl Doubt {
             | Self::TakenTwice { waypoint }
             | Self::NothingToRelease { waypoint }
             | Self::NoMotion { waypoint }
+            | Self::FlyByCut { waypoint, .. }
+            | Self::FlyByStops { waypoint }
             | Self::OverRatedLoad { waypoint, .. }
             | Self::SpeedBeyondArm { waypoint, .. }
             | Self::LongWay { waypoint, .. }

@@ -1,7 +1,7 @@
 use crate::arm::Arm;
 use crate::geometry::Pose;
 use crate::kinematics::{Posture, pose_error};
-use crate::motion::{Plan, pose_in_base};
+use crate::motion::{Passed, Plan, pose_in_base};
 use crate::program::{Recipe, Taught, Then};
 
 use super::Doubt;
@@ -20,7 +20,13 @@ pub(super) fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> V
         (Some(Then::Release), None) => found.push(Doubt::NothingToRelease { waypoint: index }),
         _ => {}
     }
-    let Some(segment) = index.checked_sub(1).and_then(|before| plan.segments.get(before)) else { return found };
+    let fly_by = plan.fly_bys.binary_search_by_key(&index, |fly_by| fly_by.waypoint).ok().map(|at| plan.fly_bys[at]);
+    match fly_by.map(|fly_by| (fly_by.passed, fly_by.radius)) {
+        Some((Passed::Cut, radius)) => found.push(Doubt::FlyByCut { waypoint: index, radius }),
+        Some((Passed::Stopped, _)) => found.push(Doubt::FlyByStops { waypoint: index }),
+        Some((Passed::Whole, _)) | None => {}
+    }
+    let Some(segment) = plan.arriving(index) else { return found };
     if segment.trouble.is_none() && segment.duration() == 0.0 {
         found.push(Doubt::NoMotion { waypoint: index });
     }
@@ -34,7 +40,7 @@ pub(super) fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> V
 
 fn shown_gap(arm: &Arm, recipe: &Recipe, plan: &Plan, waypoint: usize) -> Option<Doubt> {
     let shown = recipe.waypoints[waypoint].shown.as_ref()?;
-    let q = match (&recipe.waypoints[waypoint].taught, waypoint.checked_sub(1).and_then(|k| plan.segments.get(k))) {
+    let q = match (&recipe.waypoints[waypoint].taught, plan.arriving(waypoint)) {
         (Taught::Joints(q), _) => *q,
         (_, Some(segment)) => segment.end,
         (_, None) => plan.segments.first()?.start,

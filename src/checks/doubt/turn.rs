@@ -18,7 +18,7 @@ const LOOKS: usize = 32;
 pub(super) fn at_waypoint(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> Vec<Doubt> {
     let Some(q) = joint_values(plan, index) else { return Vec::new() };
     let by_pose = matches!(recipe.waypoints[index].taught, Taught::Pose { .. });
-    let before = index.checked_sub(1).and_then(|k| plan.segments.get(k)).filter(|segment| !segment.follows_path());
+    let before = plan.arriving(index).filter(|segment| !segment.follows_path());
     let mut found = Vec::new();
     for (joint, data) in turning(arm) {
         let long = before.and_then(|segment| shorter_way(data, segment.start[joint], q[joint]));
@@ -40,7 +40,7 @@ fn turning(arm: &Arm) -> impl Iterator<Item = (usize, &Joint)> {
 fn joint_values(plan: &Plan, index: usize) -> Option<Joints> {
     match index.checked_sub(1) {
         None => plan.segments.first().map(|segment| segment.start),
-        Some(before) => plan.segments.get(before).filter(|segment| segment.trouble.is_none()).map(|segment| segment.end),
+        Some(_) => plan.arriving(index).filter(|segment| segment.trouble.is_none()).map(|segment| segment.end),
     }
 }
 

@@ -1,7 +1,8 @@
-use crate::arm::{Arm, MAX_JOINTS};
+use crate::arm::Arm;
 use crate::checks::channel::{CHANNELS, Channel, Scale};
 use crate::checks::{Check, Meter};
 use crate::geometry::V3;
+use crate::motion::Piece;
 
 use super::ball::{Ball, Moving};
 use super::flange;
@@ -10,20 +11,97 @@ use super::newton_euler::Ways;
 use super::torque::{Stretch, Torques};
 use super::view::{Motion, View};
 
-/// How the fraction runs with time over a stretch: on one piece of the law, where its acceleration is constant and its squared
-/// rate runs evenly.
+/// How the fraction runs with time over a stretch, which lies on one piece of the law.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct Pace {
+    /// The piece.
+    pub piece: Piece,
+    /// Fraction in the middle.
+    pub u: f64,
     /// Squared rate in the middle, 1/s².
     pub rate_squared: f64,
-    /// Acceleration, 1/s².
+    /// Acceleration in the middle, 1/s².
     pub accel: f64,
 }
 
+/// Nearer than this to an end of a piece, as a fraction of the path, its end is meant: time is known badly where the fraction
+/// stands still.
+const NEAR_END: f64 = 1e-9;
+
 impl Pace {
+    /// From when to when, s into the piece, the fraction is within `half` of the middle: never too short a time.
+    fn times(self, half: f64) -> [f64; 2] {
+        let Piece { duration, .. } = self.piece;
+        let (from, to) = (self.u - half, self.u + half);
+        let first = if from <= self.piece.u + NEAR_END { 0.0 } else { self.piece.time_of(from) - 1e-9 * duration };
+        let last = if to >= self.piece.end() - NEAR_END { duration } else { self.piece.time_of(to) + 1e-9 * duration };
+        [first.max(0.0), last.min(duration)]
+    }
+
     /// The greatest squared rate over a stretch of half-width `half`.
     pub fn most_squared(self, half: f64) -> f64 {
-        (self.rate_squared + 2.0 * self.accel.abs() * half).max(0.0)
+        if self.piece.jerk == 0.0 {
+            return (self.rate_squared + 2.0 * self.accel.abs() * half).max(0.0);
+        }
+        let [first, last] = self.times(half);
+        let top = -self.piece.accel / self.piece.jerk;
+        let within = (top > first && top < last).then_some(top);
+        [first, last].into_iter().chain(within).map(|t| self.piece.at(t)[1].powi(2)).fold(0.0, f64::max)
+    }
+
+    /// Places s (from the middle), accelerations and squared rates between which a stretch of half-width `half` stays. Without jerk
+    /// the acceleration is constant and the squared rate runs evenly with s, so its two ends are enough; with jerk all three are
+    /// bounded apart from each other.
+    pub fn vertices(self, half: f64) -> impl Iterator<Item = [f64; 3]> {
+        let mut vertices = [[0.0; 3]; 8];
+        if self.piece.jerk == 0.0 {
+            for (vertex, s) in vertices.iter_mut().zip([-half, half]) {
+                *vertex = [s, self.accel, self.rate_squared + 2.0 * self.accel * s];
+            }
+            return vertices.into_iter().take(2);
+        }
+        let times = self.times(half);
+        let slowest = times.map(|t| self.piece.at(t)[1].max(0.0).powi(2)).into_iter().fold(f64::INFINITY, f64::min);
+        // A rate that falls and rises again within the piece is least in between.
+        let turning = -self.piece.accel / self.piece.jerk;
+        let slowest = if turning > times[0] && turning < times[1] {
+            slowest.min(self.piece.at(turning)[1].max(0.0).powi(2))
+        } else {
+            slowest
+        };
+        let accels = times.map(|t| self.piece.at(t)[2]);
+        let squares = [slowest, self.most_squared(half)];
+        for (index, vertex) in vertices.iter_mut().enumerate() {
+            *vertex = [if index < 4 { -half } else { half }, accels[index / 2 % 2], squares[index % 2]];
+        }
+        vertices.into_iter().take(8)
+    }
+
+    /// The greatest size of the acceleration over a stretch of half-width `half`.
+    pub fn most_accel(self, half: f64) -> f64 {
+        if self.piece.jerk == 0.0 {
+            return self.accel.abs();
+        }
+        self.times(half).map(|t| self.piece.at(t)[2].abs()).into_iter().fold(0.0, f64::max)
+    }
+
+    /// The greatest size over a stretch of half-width `half` of the acceleration `a s'² + (u + a (s - m)) s''` of a joint whose
+    /// slope is `u` in the middle m and whose bend is `a` throughout.
+    fn most_joint_accel(self, half: f64, u: f64, a: f64) -> f64 {
+        if self.piece.jerk == 0.0 {
+            let value = u * self.accel + a * self.rate_squared;
+            let change = 3.0 * a * self.accel;
+            return (value + half * change).abs().max((value - half * change).abs());
+        }
+        // A polynomial of time: no farther above its ends than an eighth of its second derivative times the time squared.
+        let [first, last] = self.times(half);
+        let at = |t: f64| {
+            let [s, rate, accel] = self.piece.at(t);
+            (a * rate * rate + (u + a * (s - self.u)) * accel).abs()
+        };
+        let rate = self.most_squared(half).sqrt();
+        let second = a.abs() * (3.0 * self.most_accel(half).powi(2) + 4.0 * rate * self.piece.jerk.abs());
+        at(first).max(at(last)) + 0.125 * (last - first).powi(2) * second
     }
 }
 
@@ -70,10 +148,8 @@ pub(super) fn on_path(meter: &Meter, needs: &[usize], middle: &Middle, leaf: &Le
                 asked_of(channel, most * fastest)
             }
             Check::Accel => {
-                let value = u * pace.accel + a * pace.rate_squared;
-                let change = 3.0 * a * pace.accel;
-                let most = (value + h * change).abs().max((value - h * change).abs());
-                asked_of(channel, most + d * (h * pace.accel.abs() + fastest_squared))
+                let most = pace.most_joint_accel(h, u, a);
+                asked_of(channel, most + d * (h * pace.most_accel(h) + fastest_squared))
             }
             Check::Holding | Check::Moving | Check::Brake => torques.as_ref().map_or(f64::NAN, |t| t.asked(channel, pace)),
             Check::Flange => asked[slot],
@@ -129,20 +205,23 @@ fn speed_left(channel: &Channel, middle: &Middle, leaf: &Leaf) -> f64 {
         + MARGIN
 }
 
-/// A stretch of a joint move: the arm's motion over it, its half-width, and the joints' slopes, which are exact.
+/// A stretch of a joint move or of a blend by joints: the arm's motion over it, its half-width, the joints' slopes and bends in
+/// the middle, and how far both may be from that.
 pub(super) struct Even<'a> {
     pub view: &'a View<'a>,
     pub motion: &'a Motion,
     pub slope: &'a Row,
+    pub slope_spread: &'a Row,
+    pub bend: &'a Row,
+    pub bend_spread: &'a Row,
     pub half: f64,
 }
 
 /// Bounds over a stretch of a joint move: only torques, flange and TCP speed need any; the rest is exact by its ends.
 pub(super) fn on_joint_move(arm: &Arm, meter: &Meter, needs: &[usize], even: &Even, pace: Pace) -> Asked {
     let mut asked = [0.0; CHANNELS];
-    let Even { view, motion, slope, half } = *even;
-    let none = [0.0; MAX_JOINTS];
-    let ways = Ways { slope, slope_spread: &none, bend: &none, bend_spread: &none };
+    let Even { view, motion, slope, slope_spread, bend, bend_spread, half } = *even;
+    let ways = Ways { slope, slope_spread, bend, bend_spread };
     let torques = Torques::over(arm.joints(), meter, needs, Stretch { view, motion, ways, half });
     flange::bound(meter, needs, view, &ways, half, motion.slack, &mut asked);
     for &slot in needs {
@@ -154,8 +233,9 @@ pub(super) fn on_joint_move(arm: &Arm, meter: &Meter, needs: &[usize], even: &Ev
                 let offset = view.tcp_offset(motion);
                 let twist = (0..arm.len()).fold(Moving::zero(), |sum, j| {
                     let column = view.tcp_column(motion, &offset, j);
-                    let scaled = |ball: &Ball| ball.times(slope[j], 0.0);
-                    sum.plus(&Moving { at: scaled(&column.at), change: scaled(&column.change) })
+                    let scaled = |ball: &Ball| ball.times(slope[j], slope_spread[j]);
+                    let change = scaled(&column.change).plus(&column.at.times(bend[j], bend_spread[j]));
+                    sum.plus(&Moving { at: scaled(&column.at), change })
                 });
                 let (v, c) = (twist.at.centre, twist.change.centre * half);
                 let most = (v + c).norm().max((v - c).norm()) + half * twist.change.radius;

@@ -3,36 +3,13 @@ use crate::checks::channel::CHANNELS;
 use crate::checks::{Check, Meter};
 use crate::geometry::V3;
 use crate::kinematics::{SphericalWrist, spherical_wrist};
-use crate::motion::{Follower, Instant, Segment};
+use crate::motion::{Follower, Instant, Path, Segment};
 
 use super::border::{Enclosure, Joined, meet_at};
 use super::bounds::{Asked, Even, Pace, on_joint_move, on_path};
+use super::effort::{Effort, Tally};
 use super::leaf::{Middle, Row};
 use super::view::{Reference, View};
-
-/// How hard a proof may try.
-#[derive(Debug, Clone, Copy)]
-pub struct Effort {
-    /// Postures evaluated on one segment, at most.
-    pub postures: usize,
-    /// Bound trials at one posture, at most.
-    pub trials: usize,
-}
-
-impl Default for Effort {
-    fn default() -> Self {
-        Self { postures: 600, trials: 8 }
-    }
-}
-
-/// How a proof went.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
-pub struct Tally {
-    /// Postures evaluated.
-    pub postures: usize,
-    /// Bound trials made.
-    pub trials: usize,
-}
 
 /// What a cover proved of a segment.
 #[derive(Debug, Clone)]
@@ -112,21 +89,30 @@ struct Run<'a> {
 }
 
 impl Run<'_> {
-    /// On a joint move each joint runs one way, so range, rate and acceleration are exact by ends and corners; without motion
-    /// everything is.
+    /// On a joint move each joint runs one way, so range, rate and acceleration are exact by ends and corners; on a blend by joints,
+    /// which is run evenly, by ends and turning points too; without motion everything is.
     fn take_exact(&mut self) {
         let still = self.segment.duration() == 0.0;
         if !still && self.segment.follows_path() {
             return;
         }
         let Some([start, end]) = self.ends() else { return };
-        let corners: Vec<[f64; 2]> =
-            self.segment.law.pieces().iter().flat_map(|p| [[p.rate, p.accel], [p.at(p.duration)[1], p.accel]]).collect();
+        let corners: Vec<[f64; 2]> = self
+            .segment
+            .law
+            .pieces()
+            .iter()
+            .flat_map(|p| [[p.rate, p.accel], [p.at(p.duration)[1], p.at(p.duration)[2]]])
+            .collect();
         let exact = |slot: &usize| still || matches!(self.meter.channel(*slot).check, Check::Range | Check::Rate | Check::Accel);
         let (taken, left): (Vec<usize>, Vec<usize>) = self.needs.iter().copied().partition(exact);
-        for at in [&start, &end] {
+        let turning_points = match &self.segment.path {
+            Path::JointBlend(blend) => blend.turning_points(),
+            _ => Vec::new(),
+        };
+        for at in turning_points.into_iter().filter_map(|u| self.follower.at(u)).chain([start, end]) {
             for &[rate, accel] in if still { &[[0.0, 0.0]][..] } else { &corners[..] } {
-                let reading = self.meter.read(at, rate.max(0.0), accel);
+                let reading = self.meter.read(&at, rate.max(0.0), accel);
                 for &slot in &taken {
                     let asked = self.meter.channel(slot).asked_in(&reading, reading[slot]);
                     let most = self.out.asked[slot].get_or_insert(0.0);
@@ -185,7 +171,7 @@ impl Run<'_> {
         let piece = self.segment.law.pieces()[piece];
         let instant = self.follower.at(u)?;
         let [_, rate, accel] = piece.at(piece.time_of(u));
-        let pace = Pace { rate_squared: rate * rate, accel };
+        let pace = Pace { piece, u, rate_squared: rate * rate, accel };
         let reading = self.meter.read(&instant, rate.max(0.0), accel);
         let mut flagged = false;
         self.needs.retain(|&slot| {
@@ -211,21 +197,37 @@ impl Run<'_> {
 
     fn try_joint(&mut self, at: &Instant, whole: f64, pace: Pace) -> Option<f64> {
         let mut slope: Row = [0.0; MAX_JOINTS];
+        let mut bend: Row = [0.0; MAX_JOINTS];
+        let mut third: Row = [0.0; MAX_JOINTS];
         slope[..at.slope.len()].copy_from_slice(&at.slope);
-        let none = [0.0; MAX_JOINTS];
+        bend[..at.bend.len()].copy_from_slice(&at.bend);
+        if let Path::JointBlend(blend) = &self.segment.path {
+            third[..at.bend.len()].copy_from_slice(&blend.third());
+        }
         let mut half = whole;
         let view = self.view(at, 0);
         let mut trials = 0;
         let found = loop {
             trials += 1;
-            let motion = view.motion(&slope, &none, half + SEAM, 1e-15);
-            let even = Even { view: &view, motion: &motion, slope: &slope, half: half + SEAM };
+            let reach = half + SEAM;
+            let bend_spread = third.map(|third| reach * third.abs());
+            let slope_spread: Row = std::array::from_fn(|j| reach * (bend[j].abs() + 0.5 * bend_spread[j]));
+            let motion = view.motion(&slope, &slope_spread, reach, 1e-15);
+            let even = Even {
+                view: &view,
+                motion: &motion,
+                slope: &slope,
+                slope_spread: &slope_spread,
+                bend: &bend,
+                bend_spread: &bend_spread,
+                half: reach,
+            };
             let asked = on_joint_move(self.arm, self.meter, &self.needs, &even, pace);
             match self.narrower(&asked, trials) {
                 None => break Some((half, asked)),
                 Some(share) => half *= share,
             }
-            if half < NARROWEST || trials > 3 * self.effort.trials {
+            if half < NARROWEST.min(whole) || trials > 3 * self.effort.trials {
                 break None;
             }
         };
@@ -246,7 +248,7 @@ impl Run<'_> {
         let mut half = whole.min(self.hint * 1.6).min(0.6 * middle.hope());
         let mut trials = 0;
         let (mut best, mut failed_at) = (None, f64::INFINITY);
-        while trials < 3 * self.effort.trials && half >= NARROWEST {
+        while trials < 3 * self.effort.trials && half >= NARROWEST.min(whole) {
             trials += 1;
             let Some(leaf) = middle.prove(half + SEAM) else {
                 failed_at = half;

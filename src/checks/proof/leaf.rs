@@ -227,23 +227,31 @@ impl<'a> Middle<'a> {
 
     /// What the path asks of the twist's derivative, seen from the viewing link: translation and rotation.
     fn target_change(&self, motion: &Motion, half: f64) -> [Ball; 2] {
-        let Target { velocity, bend, turning, .. } = self.target;
+        let Target { velocity, bend, third, turning, swing, swing_change, .. } = self.target;
         let base = &motion.turning[0];
         let rho = -self.view.to_tcp;
         let whole = self.arm.task().is_whole();
         let spin = |v: V3| if whole { turning.cross(&v) } else { V3::zeros() };
         // In the base: y = velocity + turning x rho, and its derivatives.
         let y = velocity + spin(rho);
-        let y1 = bend + spin(spin(rho));
-        let turn = if whole { turning.norm() } else { 0.0 };
-        // A circle's third derivative is its second times its angle by the fraction.
-        let third = if velocity.norm() > 0.0 { bend.norm_squared() / velocity.norm() } else { 0.0 };
-        let y2 = third + turn.powi(3) * rho.norm();
+        let swung = if whole { swing.cross(&rho) } else { V3::zeros() };
+        let y1 = bend + swung + spin(spin(rho));
+        // The most that the tool's turning, its derivative and its second derivative amount to over the stretch.
+        let most_swing = swing.norm() + half * swing_change;
+        let most_turn = turning.norm() + half * most_swing;
+        let turn = most_turn.powi(3) + 3.0 * most_turn * most_swing + swing_change;
+        let y2 = third + if whole { turn * rho.norm() } else { 0.0 };
         let most_y1 = y1.norm() + half * y2;
         let y1_seen = Ball { centre: y1, radius: half * (y2 + base.most() * most_y1) };
         let y_seen = Ball { centre: y, radius: half * (most_y1 + base.most() * (y.norm() + half * most_y1)) };
         let moved = y1_seen.plus(&base.cross(&y_seen));
-        let turned = Moving::fixed(turning, base, half, self.slack_sum).change;
+        // The turning as it is in the middle moves with the base; what it grows by comes on top.
+        let grown = Ball { centre: V3::zeros(), radius: half * most_swing };
+        let growth = half * (swing_change + base.most() * most_swing) + self.slack_sum * most_swing;
+        let turned = Moving::fixed(turning, base, half, self.slack_sum)
+            .change
+            .plus(&Ball { centre: swing, radius: growth })
+            .plus(&base.cross(&grown));
         [moved, turned]
     }
 
@@ -261,7 +269,12 @@ impl Middle<'_> {
     pub fn tcp_speed(&self, leaf: &Leaf) -> f64 {
         if self.arm.task().rows().iter().filter(|row| **row < 3).count() == 3 {
             // The path gives it: constant on a line, and on a circle too.
-            return self.target.velocity.norm();
+            let Target { velocity, bend, third, even, .. } = self.target;
+            if even {
+                return velocity.norm();
+            }
+            let ends = (velocity + bend * leaf.half).norm().max((velocity - bend * leaf.half).norm());
+            return ends + 0.5 * leaf.half * leaf.half * third;
         }
         let offset = self.view.tcp_offset(&leaf.motion);
         let velocity = (0..self.arm.len()).fold(Ball::zero(), |sum, j| {

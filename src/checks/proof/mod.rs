@@ -16,18 +16,22 @@
 //! misfit of Y and the residual of the inverse kinematics enter the bounds themselves ([leaf]), and every bound is told with an
 //! outward margin ([bounds]).
 //!
-//! On a joint move q' is exact, so no theorem is needed and the balls do all the work.
+//! On a joint move q' is exact, so no theorem is needed and the balls do all the work. A blend past a fly-by point is a path like
+//! any other, its third derivatives bounded in closed form; a blend by joints is a joint move whose slopes change by a known
+//! polynomial.
 
 mod ball;
 mod border;
 mod bounds;
 mod closeness;
 mod cover;
+mod effort;
 mod flange;
 mod leaf;
 mod newton_euler;
 mod torque;
 mod view;
 
-pub use cover::Tally;
-pub(super) use cover::{Covered, Effort, cover};
+pub(super) use cover::{Covered, cover};
+pub(super) use effort::Effort;
+pub use effort::Tally;

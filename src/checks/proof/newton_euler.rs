@@ -188,6 +188,7 @@ mod tests {
             brake: None,
             drive: Drive::default(),
             stop: None,
+            jerk: None,
             link,
         };
         let tensor = Body::tensor([1.0, 1.0, 1.0, 0.0, 0.3, 0.0]);

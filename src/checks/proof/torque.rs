@@ -59,8 +59,8 @@ impl<'a> Torques<'a> {
         self.push.as_ref().map_or(self.weights[j], |push| self.weights[j].plus(push[j]))
     }
 
-    /// `still(s) + alpha s'' + beta s'^2`, with the law's acceleration s'' constant and its squared rate running evenly: all parts
-    /// run evenly but for their radii, so both ends are looked at and the radii added.
+    /// `still(s) + alpha s'' + beta s'^2` and the rotor's part, all but for their radii even in each of s, s'' and s'^2: their
+    /// vertices are looked at and the radii added.
     fn moving(&self, channel: &Channel, j: usize, pace: Pace) -> f64 {
         let Some([alpha, beta]) = &self.going else { return f64::NAN };
         let Stretch { ways, half, .. } = &self.stretch;
@@ -70,16 +70,23 @@ impl<'a> Torques<'a> {
         let still = self.still(j);
         let rotor = drive.rotor_inertia();
         let fastest_squared = pace.most_squared(h);
-        let end = |s: f64| {
-            let squared = pace.rate_squared + 2.0 * pace.accel * s;
-            let speeding = u * pace.accel + a * pace.rate_squared + 3.0 * a * pace.accel * s;
-            still.value + s * still.change + alpha[j].0 * pace.accel + beta[j].0 * squared + rotor * speeding
+        let at = |s: f64, accel: f64, squared: f64| {
+            let speeding = (u + a * s) * accel + a * squared;
+            still.value + s * still.change + alpha[j].0 * accel + beta[j].0 * squared + rotor * speeding
         };
+        let (mut low, mut high) = (f64::INFINITY, f64::NEG_INFINITY);
+        for [s, accel, squared] in pace.vertices(h) {
+            let asked = at(s, accel, squared);
+            if asked.is_nan() {
+                return f64::NAN;
+            }
+            (low, high) = (low.min(asked), high.max(asked));
+        }
         // Where the law comes to rest its squared rate is 0 at the end of the stretch, give or take the seam.
-        let unsure = rotor * (d * fastest_squared + (du - h * a.abs()).max(0.0) * pace.accel.abs());
-        let radius = h * still.spread + alpha[j].1 * pace.accel.abs() + beta[j].1 * fastest_squared + unsure;
-        let (one, other) = (end(-h), end(h));
-        let (low, high) = (one.min(other) - radius, one.max(other) + radius);
+        let most_accel = pace.most_accel(h);
+        let unsure = rotor * (d * fastest_squared + (du - h * a.abs()).max(0.0) * most_accel);
+        let radius = h * still.spread + alpha[j].1 * most_accel + beta[j].1 * fastest_squared + unsure;
+        let (low, high) = (low - radius, high + radius);
         let fastest = (u.abs() + du) * fastest_squared.sqrt();
         let friction = drive.friction.map_or(0.0, |friction| friction.asks(1.0, fastest));
         let up = if u + du > 0.0 { friction } else { 0.0 };
@@ -89,7 +96,7 @@ impl<'a> Torques<'a> {
             Scale::CeilingByRate(curve) => Channel { scale: Scale::Ceiling(curve.at(fastest)), ..*channel },
             _ => *channel,
         };
-        if one.is_nan() || other.is_nan() || radius.is_nan() { f64::NAN } else { asked_of(&limited, most) }
+        if radius.is_nan() { f64::NAN } else { asked_of(&limited, most) }
     }
 }
 

@@ -21,10 +21,10 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
         format!("{} follows as long as the data hold; a heavier part or a stiffer grease in the cold takes the rest.", data.name)
     };
     let rests = format!(
-        "The acceleration of {} in the arm file, {}, taken to hold for every load and posture; the speed law, which is taken to \
-         start and end its ramps at once. {}",
+        "The acceleration of {} in the arm file, {}, taken to hold for every load and posture; the speed law{}. {}",
         data.name,
         data.acceleration_of(data.accel),
+        ramps(scene),
         proof_text(scene.survey(), scene.survey().check(Check::Accel))
     );
     [
@@ -33,6 +33,17 @@ pub(super) fn paragraphs(scene: &Scene, joint: usize, excess: &Excess) -> [Parag
         Paragraph::says(Label::LeftAlone, alone),
         Paragraph::says(Label::RestsOn, rests),
     ]
+}
+
+/// What is taken of the ramps of the speed.
+fn ramps(scene: &Scene) -> &'static str {
+    if scene.segment.blend {
+        ", which is taken to run evenly past the fly-by point"
+    } else if scene.segment.limits.is_some_and(|limits| limits.jerk.is_finite()) {
+        ", whose ramps begin and end within the limit of jerk given"
+    } else {
+        ", which is taken to start and end its ramps at once"
+    }
 }
 
 /// The two parts of a joint's acceleration: what the bend of its way asks at this speed, and what the ramp of the speed asks. SI.

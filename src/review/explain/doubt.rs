@@ -34,6 +34,15 @@ pub fn doubt_text(judged: &Judged, doubt: &Doubt) -> String {
             Mass::kg(*carried),
             Mass::kg(*rated)
         ),
+        Doubt::FlyByCut { radius, .. } => format!(
+            "{about} asks for a fly-by radius of {}, which is more than the segments beside it leave room for. The blend is judged \
+             with as much as they do; the cell's controller may do otherwise.",
+            Length::m(*radius).measure().text(0)
+        ),
+        Doubt::FlyByStops { .. } => format!(
+            "{about} is a fly-by point that is judged as a stop point: a segment beside it has no motion, turns on the spot or \
+             could not be followed, or the tool or the process force changes there."
+        ),
         Doubt::SpeedBeyondArm { speed, most, .. } => format!(
             "{about} is approached at {}. No posture lets this arm move its TCP faster than {}. A digit too many, or a figure in \
              another unit, looks like this.",

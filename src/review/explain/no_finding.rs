@@ -7,7 +7,7 @@ use super::{Explanation, Judged, Label, Paragraph, check_words, place, proof_tex
 pub fn no_finding(judged: &Judged, segment: usize) -> Explanation {
     let planned = &judged.plan.segments[segment];
     let survey = &judged.survey.segments[segment];
-    let title = format!("{}: segment {}", survey.verdict.word(), planned.number());
+    let title = format!("{}: segment {}", survey.verdict.word(), planned.label());
     let Some((result, peak)) = survey.nearest() else {
         let text = format!("{}. There is no motion, so nothing is asked.", place::name(judged, segment));
         return Explanation { title, paragraphs: vec![Paragraph::says(Label::What, text)] };

@@ -14,7 +14,7 @@ const NO_LENGTH: f64 = 1e-9;
 /// move.
 pub(super) fn along(segment: &Segment, u: f64) -> String {
     let (length, turn) = (segment.path.length(), segment.path.turn());
-    if !segment.follows_path() {
+    if !segment.follows_path() || segment.blend {
         Share::fraction(u).to_string()
     } else if length > NO_LENGTH {
         Measure::si(length * u, Dimension::Length).text(usize::from(length < SHORT))
@@ -25,7 +25,13 @@ pub(super) fn along(segment: &Segment, u: f64) -> String {
 
 /// The whole of what [`along`] measures: `500 mm`, `the move`.
 pub(super) fn whole(segment: &Segment) -> String {
-    if segment.follows_path() { along(segment, 1.0) } else { "the move".to_owned() }
+    if segment.blend {
+        "the blend".to_owned()
+    } else if segment.follows_path() {
+        along(segment, 1.0)
+    } else {
+        "the move".to_owned()
+    }
 }
 
 /// When a place is on the cycle: `9.32 s into the cycle`.
@@ -33,10 +39,23 @@ pub(super) fn on_cycle(judged: &Judged, segment: usize, place: Place) -> String 
     format!("{} into the cycle", Seconds::s(judged.plan.starts[segment] + place.time))
 }
 
+/// When a place is on its own segment, where that is not run as the cycle has it.
+fn from_start(place: Place) -> String {
+    format!("{} after its start", Seconds::s(place.time))
+}
+
 /// A segment by number, kind and names: `Segment 10, the line from "window in" to "window out"`.
 pub(super) fn name(judged: &Judged, segment: usize) -> String {
     let planned = &judged.plan.segments[segment];
     let waypoints = &judged.recipe.waypoints;
+    if planned.blend {
+        return format!(
+            "Segment {}, the blend past waypoint {} \"{}\"",
+            planned.label(),
+            planned.number(),
+            waypoints[planned.to].name
+        );
+    }
     let kind = match waypoints[planned.to].arrive.as_ref().map(Arrive::word) {
         Some("joint") | None => "joint move",
         Some(word) => word,
@@ -47,30 +66,27 @@ pub(super) fn name(judged: &Judged, segment: usize) -> String {
 
 /// Where a finding is: segment, stretch, worst instant and its time on the cycle.
 pub(super) fn paragraph(judged: &Judged, finding: &Finding) -> Paragraph {
-    let segment = &judged.plan.segments[finding.segment];
+    let segment = judged.plan.version(finding.segment, finding.stop);
     let name = name(judged, finding.segment);
+    let name = if finding.stop { name + ", in the version that stops at its fly-by points" } else { name };
+    let when = |place: Place| if finding.stop { from_start(place) } else { on_cycle(judged, finding.segment, place) };
     let text = match &finding.kind {
         Kind::Excess(excess) if excess.after_stop => {
             let then = match &judged.recipe.waypoints[segment.to].then {
                 Some(Then::Take(load)) => format!("once \"{load}\" is taken"),
                 _ => "once the load is released".to_owned(),
             };
-            format!("{name}: at the stop at its end, {then}, {}.", on_cycle(judged, finding.segment, excess.worst))
+            format!("{name}: at the stop at its end, {then}, {}.", when(excess.worst))
         }
         Kind::Excess(excess) => format!(
             "{name}. {}, worst at {}, {}.",
             stretch(segment, finding, excess),
             along(segment, excess.worst.u),
-            on_cycle(judged, finding.segment, excess.worst)
+            when(excess.worst)
         ),
         _ if finding.to.u >= 1.0 => format!("{name}, all along it."),
         _ if finding.to.u <= 0.0 => format!("{name}, from its start."),
-        _ => format!(
-            "{name}. Followed up to {} of {}, {}.",
-            along(segment, finding.to.u),
-            whole(segment),
-            on_cycle(judged, finding.segment, finding.to)
-        ),
+        _ => format!("{name}. Followed up to {} of {}, {}.", along(segment, finding.to.u), whole(segment), when(finding.to)),
     };
     Paragraph::says(Label::Where, text)
 }

@@ -65,7 +65,7 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, trouble: &NoPath) -
 }
 
 fn out_of_reach(judged: &Judged, finding: &Finding, u: f64, q: &Joints, sigma: f64, gap: f64) -> [String; 2] {
-    let segment = &judged.plan.segments[finding.segment];
+    let segment = judged.plan.version(finding.segment, finding.stop);
     let what = if gap > 0.0 {
         format!(
             "The arm can't get there: the TCP comes within {} of the waypoint and no nearer.",
@@ -95,7 +95,7 @@ fn out_of_reach(judged: &Judged, finding: &Finding, u: f64, q: &Joints, sigma: f
 }
 
 fn lost(judged: &Judged, finding: &Finding, u: f64, sigma: f64) -> [String; 2] {
-    let segment = &judged.plan.segments[finding.segment];
+    let segment = judged.plan.version(finding.segment, finding.stop);
     let what = if segment.follows_path() && u > 0.0 {
         format!(
             "The path could be followed for {} of {}; then the search for joint values failed.",
@@ -114,7 +114,7 @@ fn lost(judged: &Judged, finding: &Finding, u: f64, sigma: f64) -> [String; 2] {
 }
 
 fn other_posture(judged: &Judged, finding: &Finding, arrives: &Joints, taught: &Joints) -> [String; 2] {
-    let segment = &judged.plan.segments[finding.segment];
+    let segment = judged.plan.version(finding.segment, finding.stop);
     let told: Vec<String> = judged
         .arm
         .joints()

@@ -34,7 +34,7 @@ const NOTHING: f64 = 1e-9;
 impl<'a> Scene<'a> {
     /// The worst instant of a finding; `None` where the path can't be followed to it.
     pub fn of(judged: &'a Judged, finding: &Finding, excess: &Excess) -> Option<Self> {
-        let mut scene = Self::at(judged, finding.segment, excess.worst)?;
+        let mut scene = Self::at(judged, finding.segment, finding.stop, excess.worst)?;
         if excess.after_stop {
             scene.carried = scene.segment.carried_after.as_ref()?;
             (scene.rate, scene.accel, scene.push) = (0.0, 0.0, None);
@@ -56,9 +56,9 @@ impl<'a> Scene<'a> {
         Some(scene)
     }
 
-    /// A place of a segment; `None` where the path can't be followed to it.
-    pub fn at(judged: &'a Judged, index: usize, place: Place) -> Option<Self> {
-        let segment: &Segment = &judged.plan.segments[index];
+    /// A place of a segment, or of its version that stops at fly-by points; `None` where the path can't be followed to it.
+    pub fn at(judged: &'a Judged, index: usize, stop: bool, place: Place) -> Option<Self> {
+        let segment: &Segment = judged.plan.version(index, stop);
         let instant = Follower::of(&judged.arm, segment).at(place.u)?;
         let [_, rate, accel] = segment.law.at(place.time, Side::Before);
         let push = segment.push.map(|push| push.in_base(&instant.tcp));
@@ -153,6 +153,9 @@ impl<'a> Scene<'a> {
     /// the joints' rates on a joint move. Rounded to the safe side.
     pub fn asking(&self, rate: f64) -> String {
         let (length, turn) = (self.segment.path.length(), self.segment.path.turn());
+        if self.segment.blend {
+            return self.pace_of_blend(rate / self.segment.law.top_rate());
+        }
         if self.segment.follows_path() {
             return if length > NOTHING {
                 Speed::m_per_s(rate * length).measure().text_down(0)
@@ -167,6 +170,9 @@ impl<'a> Scene<'a> {
     /// The same for the acceleration of the fraction, 1/s².
     pub fn asking_accel(&self, accel: f64) -> String {
         let (length, turn) = (self.segment.path.length(), self.segment.path.turn());
+        if self.segment.blend {
+            return self.pace_of_blend(1.0);
+        }
         if self.segment.follows_path() {
             return if length > NOTHING {
                 Acceleration::m_per_s2(accel * length).measure().text_down(0)
@@ -176,6 +182,11 @@ impl<'a> Scene<'a> {
         }
         let share = self.ways().zip(self.arm().joints()).map(|(way, joint)| accel * way / joint.accel).fold(0.0, f64::max);
         format!("an acceleration share of {}", percent_down(share))
+    }
+
+    /// A share of the pace at which a blend is passed, rounded to the safe side.
+    fn pace_of_blend(&self, share: f64) -> String {
+        format!("{} of the pace at which the fly-by point is passed", percent_down(share.min(1.0)))
     }
 
     /// How far each joint goes on a joint move, SI.
