@@ -53,7 +53,8 @@ impl Piece {
             return self.cubic_time_of(u);
         }
         if self.accel == 0.0 {
-            return (ahead / self.rate).clamp(0.0, self.duration);
+            // A piece that stands still has no time at all.
+            return if self.rate > 0.0 { (ahead / self.rate).clamp(0.0, self.duration) } else { 0.0 };
         }
         // The form of the quadratic's root that does not cancel; both pieces run forwards.
         let root = (self.rate * self.rate + 2.0 * self.accel * ahead).max(0.0).sqrt();
@@ -378,6 +379,12 @@ mod tests {
                 }
             }
         }
+    }
+
+    #[test]
+    fn no_motion_takes_no_time() {
+        assert_eq!(Law::none().duration(), 0.0);
+        assert_eq!([0.0, 0.5, 1.0].map(|u| Law::none().time_of(u)), [0.0; 3]);
     }
 
     #[test]

@@ -82,9 +82,14 @@ impl Plan {
 
     /// The segment that arrives at a waypoint (counted from 0), from stop to stop; none for the first.
     pub fn arriving(&self, waypoint: usize) -> Option<&Arc<Segment>> {
+        let index = self.index_arriving(waypoint)?;
+        Some(self.stops[index].as_ref().unwrap_or(&self.segments[index]))
+    }
+
+    /// The place among all segments of the one that arrives at a waypoint (counted from 0); a blend past it stands one behind.
+    pub fn index_arriving(&self, waypoint: usize) -> Option<usize> {
         let index = self.segments.partition_point(|segment| segment.to < waypoint);
-        let segment = self.segments.get(index).filter(|segment| segment.to == waypoint)?;
-        Some(self.stops[index].as_ref().unwrap_or(segment))
+        self.segments.get(index).is_some_and(|segment| segment.to == waypoint).then_some(index)
     }
 
     /// A segment as it runs on the cycle, or the version of it that stops at both ends where `stop` says so and there is one.

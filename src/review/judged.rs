@@ -1,7 +1,7 @@
 use std::sync::Arc;
 
 use crate::arm::Arm;
-use crate::checks::{Survey, Watch, survey};
+use crate::checks::{Finding, Place, Survey, Watch, survey};
 use crate::motion::Plan;
 use crate::program::Recipe;
 
@@ -19,6 +19,15 @@ pub struct Judged {
 }
 
 impl Judged {
+    /// Where a place of a finding is on the cycle: itself, unless the finding is of the version that stops at fly-by points.
+    pub fn on_cycle(&self, finding: &Finding, place: Place) -> Place {
+        if !finding.stop {
+            return place;
+        }
+        let u = self.plan.nearest_on_cycle(finding.segment, place.u);
+        Place { time: self.plan.segments[finding.segment].law.time_of(u), u }
+    }
+
     /// Plans and surveys a recipe, taking over what `before` judged alike. `None` if the watch stopped it.
     pub fn of(arm: &Arc<Arm>, recipe: &Arc<Recipe>, before: Option<&Self>, watch: &Watch) -> Option<Self> {
         let plan = Plan::of(arm, recipe);

@@ -100,7 +100,7 @@ impl Session {
     fn go_to_finding(&mut self, index: usize) -> bool {
         let Some(finding) = self.judged.survey.findings.get(index) else { return false };
         // A segment without motion has no times to speak of.
-        let time = Some(finding.worst().time).filter(|time| time.is_finite()).unwrap_or(0.0);
+        let time = Some(self.judged.on_cycle(finding, finding.worst()).time).filter(|time| time.is_finite()).unwrap_or(0.0);
         self.cursor = Cursor { segment: finding.segment, time };
         self.finding = Some(index);
         true
@@ -117,6 +117,19 @@ impl Session {
         let nearest = self.judged.survey.segments.get(segment).and_then(|survey| survey.nearest());
         self.cursor = Cursor { segment, time: nearest.map_or(0.0, |(_, peak)| peak.at.time) };
         self.finding = None;
+    }
+
+    /// Goes to the segment that arrives at a waypoint (counted from 0); the first waypoint is the cycle's start.
+    pub fn go_to_waypoint(&mut self, waypoint: usize) {
+        match self.judged.plan.index_arriving(waypoint) {
+            Some(segment) => self.go_to_segment(segment),
+            None => self.go_to_time(0.0),
+        }
+    }
+
+    /// The waypoint that the cursor's segment arrives at or passes, counted from 0.
+    pub fn waypoint(&self) -> usize {
+        self.judged.plan.segments.get(self.cursor.segment).map_or(0, |segment| segment.to)
     }
 
     /// Goes some segments on (or back).

@@ -53,11 +53,11 @@ fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
         session.go_to_time(time);
         return Ok(());
     }
-    let count = session.segments() + 1;
+    let count = app.recipe.waypoints.len();
     match typed.parse::<usize>() {
         Ok(1) => session.go_to_time(0.0),
         Ok(number) if (2..=count).contains(&number) => {
-            session.go_to_segment(number - 2);
+            session.go_to_waypoint(number - 1);
             follow_finding(app);
         }
         Ok(number) => return Err(format!("there is no waypoint {number}; there are {count}")),
@@ -74,14 +74,14 @@ fn find(app: &mut App, text: &str) -> Result<(), String> {
     let session = app.session.as_mut().ok_or("not checked yet")?;
     let wanted = text.to_lowercase();
     let names = &app.recipe.waypoints;
-    let now = session.cursor().segment + 1;
+    let now = session.waypoint();
     let found =
         (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));
     app.found = text.to_owned();
     match found {
         Some(0) => session.go_to_time(0.0),
         Some(index) => {
-            session.go_to_segment(index - 1);
+            session.go_to_waypoint(index);
             follow_finding(app);
         }
         None => return Err(format!("no waypoint has \"{text}\" in its name")),

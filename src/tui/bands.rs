@@ -1,4 +1,4 @@
-use crate::checks::{Check, Finding, Kind, Verdict};
+use crate::checks::{Check, Finding, Kind, Place, Verdict};
 use crate::review::Judged;
 
 use super::phrases::check_word;
@@ -115,6 +115,7 @@ fn paint(cells: &mut [Option<Verdict>], scale: &Scale, judged: &Judged, finding:
     let lasts = segment.duration() + segment.dwell;
     // What is found at a segment's very end belongs to the last cell that is its own.
     let end = scale.cell((start + lasts).next_down());
+    let on_cycle = |place: Place| judged.on_cycle(finding, place).time;
     let mut fill = |from: f64, to: f64, verdict: Verdict| {
         let first = scale.cell(start + from).min(end);
         let last = scale.cell((start + to).next_down()).clamp(first, end.max(first));
@@ -123,15 +124,15 @@ fn paint(cells: &mut [Option<Verdict>], scale: &Scale, judged: &Judged, finding:
     match &finding.kind {
         Kind::Excess(excess) => {
             let outside = if excess.over.is_some() { Verdict::Tight } else { finding.verdict };
-            fill(finding.from.time, finding.to.time, outside);
+            fill(on_cycle(finding.from), on_cycle(finding.to), outside);
             if let Some([from, to]) = excess.over {
-                fill(from.time, to.time, finding.verdict);
+                fill(on_cycle(from), on_cycle(to), finding.verdict);
             }
-            fill(excess.worst.time, excess.worst.time, finding.verdict);
+            fill(on_cycle(excess.worst), on_cycle(excess.worst), finding.verdict);
         }
         // From where it could not be followed on there is no motion.
-        Kind::NoPath(_) => fill(Some(finding.to.time).filter(|time| time.is_finite()).unwrap_or(0.0), lasts, finding.verdict),
-        Kind::Unproved(_) => fill(finding.from.time, finding.to.time, finding.verdict),
+        Kind::NoPath(_) => fill(Some(on_cycle(finding.to)).filter(|time| time.is_finite()).unwrap_or(0.0), lasts, finding.verdict),
+        Kind::Unproved(_) => fill(on_cycle(finding.from), on_cycle(finding.to), finding.verdict),
     }
 }
 

@@ -28,7 +28,7 @@ pub(super) fn click(app: &mut App, column: u16, row: u16) {
             let (_, rows) = app.scene.rows.around(app.segment(), usize::from(area.height) - 1);
             let segment = match rows.get(line) {
                 Some(Row::Segment(segment)) => Some(*segment),
-                Some(Row::Events(waypoint)) => waypoint.checked_sub(1),
+                Some(Row::Events(waypoint)) => app.judged().and_then(|judged| judged.plan.index_arriving(*waypoint)),
                 _ => None,
             };
             if let (Some(segment), Some(session)) = (segment, &mut app.session) {

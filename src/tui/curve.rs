@@ -85,7 +85,7 @@ impl Curve {
         let mut times: Vec<f64> = (0..=looks).map(|k| lasts * k as f64 / looks as f64).collect();
         times.extend(judged.survey.segments[segment].profile.places.iter().map(|place| place.time));
         // Where a path is lost it is worst, and nothing else looks there.
-        times.extend(judged.survey.segments[segment].findings.iter().map(|finding| finding.worst().time));
+        times.extend(judged.survey.segments[segment].findings.iter().map(|finding| judged.on_cycle(finding, finding.worst()).time));
         times.extend(planned.law.pieces().iter().map(|piece| piece.start));
         if planned.dwell > 0.0 || planned.carried_after.is_some() {
             times.extend([lasts + 0.01 * planned.dwell, lasts + 0.99 * planned.dwell, lasts + planned.dwell]);

@@ -117,13 +117,15 @@ fn note(sheet: &mut Sheet, app: &App, columns: Columns, y: usize, told: &str) {
 
 fn draw_segment(sheet: &mut Sheet, app: &App, segment: usize, y: usize, columns: Columns) {
     let theme = app.theme;
-    let waypoint = segment + 1;
+    let planned = app.judged().and_then(|judged| judged.plan.segments.get(segment));
+    let (waypoint, blend) = planned.map_or((segment + 1, false), |planned| (planned.to, planned.blend));
     let selected = app.session.is_some() && segment == app.segment();
     let plain = if selected { theme.strong() } else { Style::new() };
     sheet.put_before(columns.number, y, &(waypoint + 1).to_string(), plain);
-    let name = fit(&app.recipe.waypoints[waypoint].name, columns.how - columns.name - 1, theme);
+    let name = if blend { "  past it" } else { app.recipe.waypoints[waypoint].name.as_str() };
+    let name = fit(name, columns.how - columns.name - 1, theme);
     sheet.put(columns.name, y, &name, plain);
-    let asked = how(&app.recipe, waypoint);
+    let asked = if blend { "fly-by".to_owned() } else { how(&app.recipe, waypoint) };
     let asked = if columns.brief_how { asked.split(' ').next().unwrap_or("").to_owned() } else { asked };
     if columns.how < columns.verdict {
         sheet.put(columns.how, y, &asked, plain);

@@ -44,6 +44,14 @@ impl Rows {
         for (index, waypoint) in recipe.waypoints.iter().enumerate() {
             if index == 0 {
                 list.rows.push(Row::Start);
+            } else if let Some(judged) = judged {
+                // With a blend past a fly-by point two segments belong to one waypoint.
+                let segments = &judged.plan.segments;
+                let first = segments.partition_point(|segment| segment.to < index);
+                for segment in first..segments.partition_point(|segment| segment.to <= index) {
+                    list.of_segment.push(list.rows.len());
+                    list.rows.push(Row::Segment(segment));
+                }
             } else {
                 list.of_segment.push(list.rows.len());
                 list.rows.push(Row::Segment(index - 1));

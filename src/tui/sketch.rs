@@ -57,7 +57,7 @@ impl Sketch {
         let until = segment.followed_to();
         let mut us: Vec<f64> = (0..=places).map(|k| until * k as f64 / places as f64).collect();
         for finding in findings {
-            us.extend([finding.from.u, finding.worst().u, finding.to.u]);
+            us.extend([finding.from, finding.worst(), finding.to].map(|place| judged.on_cycle(finding, place).u));
             if let Kind::Excess(excess) = &finding.kind {
                 us.extend(excess.over.iter().flatten().map(|place| place.u));
             }
@@ -68,14 +68,14 @@ impl Sketch {
         for finding in findings {
             // What is not known is often not known anywhere; marks would hide the path.
             if finding.verdict != Verdict::Unproven {
-                let at = judged.recipe.mount.point(&tcp_at(judged, segment, finding.worst().u));
+                let at = judged.recipe.mount.point(&tcp_at(judged, segment, judged.on_cycle(finding, finding.worst()).u));
                 self.marks.push((at, finding.verdict));
             }
         }
         let points: Vec<V3> = us.iter().map(|u| judged.recipe.mount.point(&tcp_at(judged, segment, *u))).collect();
         points.iter().for_each(|point| self.reach(point));
         for (ends, u) in points.windows(2).zip(us.windows(2)) {
-            let verdict = verdict_at(findings, 0.5 * (u[0] + u[1]));
+            let verdict = verdict_at(judged, findings, 0.5 * (u[0] + u[1]));
             self.strokes.push(Stroke { ends: [ends[0], ends[1]], verdict });
         }
     }
@@ -111,14 +111,18 @@ fn tcp_at(judged: &Judged, segment: &Segment, u: f64) -> V3 {
         (Path::Joint { from, to }, None) => {
             Posture::at(judged.arm.chain(), &from.zip(to, |a, b| a + u * (b - a))).tcp(&segment.carried.tcp).at
         }
+        (Path::JointBlend(blend), None) => {
+            let [q, ..] = blend.at(u);
+            Posture::at(judged.arm.chain(), &q).tcp(&segment.carried.tcp).at
+        }
         _ => Posture::at(judged.arm.chain(), &segment.start).tcp(&segment.carried.tcp).at,
     }
 }
 
-fn verdict_at(findings: &[Finding], u: f64) -> Verdict {
+fn verdict_at(judged: &Judged, findings: &[Finding], u: f64) -> Verdict {
     findings
         .iter()
-        .filter(|finding| finding.from.u <= u && u <= finding.to.u)
+        .filter(|finding| judged.on_cycle(finding, finding.from).u <= u && u <= judged.on_cycle(finding, finding.to).u)
         .map(|finding| match &finding.kind {
             Kind::Excess(excess) if excess.over.is_none_or(|[from, to]| u < from.u || to.u < u) => {
                 finding.verdict.min(Verdict::Tight)
