@@ -42,7 +42,19 @@ fn smallest<const N: usize>(scaled: &Scaled) -> f64 {
 fn gram<const N: usize>(scaled: &Scaled) -> [[f64; N]; N] {
     let mut gram = [[0.0; N]; N];
     let a = &scaled.entries;
-    if scaled.rows <= scaled.columns {
+    if scaled.rows == N && scaled.columns == N {
+        // The common case with a length that is known when compiling, for the sums to be unrolled.
+        for i in 0..N {
+            for j in 0..=i {
+                let mut sum = 0.0;
+                for k in 0..N {
+                    sum += a[i][k] * a[j][k];
+                }
+                gram[i][j] = sum;
+                gram[j][i] = sum;
+            }
+        }
+    } else if scaled.rows <= scaled.columns {
         for i in 0..N {
             for j in 0..=i {
                 let mut sum = 0.0;
@@ -91,27 +103,26 @@ fn tridiagonal<const N: usize>(mut a: [[f64; N]; N]) -> ([f64; N], [f64; N]) {
             v[i] = a[i][k];
         }
         let beta = 2.0 / (below + v[k + 1] * v[k + 1]);
+        // Sums run over whole rows: v and p are zero up to k, and loops of one length are unrolled and run side by side.
         let mut p = [0.0; N];
         for i in k + 1..N {
             let mut sum = 0.0;
-            for j in k + 1..N {
+            for j in 0..N {
                 sum += a[i][j] * v[j];
             }
             p[i] = beta * sum;
         }
         let mut half = 0.0;
-        for i in k + 1..N {
+        for i in 0..N {
             half += p[i] * v[i];
         }
         half *= 0.5 * beta;
-        for i in k + 1..N {
+        for i in 0..N {
             p[i] -= half * v[i];
         }
         for i in k + 1..N {
-            for j in k + 1..=i {
-                let entry = a[i][j] - v[i] * p[j] - p[i] * v[j];
-                a[i][j] = entry;
-                a[j][i] = entry;
+            for j in 0..N {
+                a[i][j] -= v[i] * p[j] + p[i] * v[j];
             }
         }
     }
@@ -157,8 +168,9 @@ fn least_root<const N: usize>(diagonal: &[f64; N], beside_squared: &[f64; N]) ->
             return x;
         }
         // From below the least root, d1/p1 is negative and the step is positive.
-        let g = d1 / p1;
-        let h = g * g - s1 / p1;
+        let inverse = 1.0 / p1;
+        let g = d1 * inverse;
+        let h = g * g - s1 * inverse;
         let root = ((n - 1.0) * (n * h - g * g)).max(0.0).sqrt();
         let step = n / (root - g);
         if !step.is_finite() {
@@ -177,18 +189,19 @@ fn least_root<const N: usize>(diagonal: &[f64; N], beside_squared: &[f64; N]) ->
 /// [`GRAM_IS_GOOD`] lets through stays below.
 const PASSED_OVER: f64 = 1e-8;
 
-/// Whether no eigenvalue is below `x`: no pivot of the matrix less `x` is negative (Sturm's count). Where two eigenvalues are zero at
+/// Whether no eigenvalue is below `x`: no leading minor of the matrix less `x` is negative (Sturm). Where two eigenvalues are zero at
 /// once, value and slope of the characteristic polynomial are both rounding, and Laguerre's iteration jumps over them.
 #[inline]
 fn none_below<const N: usize>(diagonal: &[f64; N], beside_squared: &[f64; N], x: f64) -> bool {
-    let mut pivot = diagonal[0] - x;
+    // By the leading minors rather than by pivots: all of them positive means the same, and nothing is divided.
+    let (mut before, mut minor) = (1.0, diagonal[0] - x);
     for i in 1..N {
-        if pivot <= 0.0 {
+        if minor <= 0.0 {
             return false;
         }
-        pivot = diagonal[i] - x - beside_squared[i - 1] / pivot;
+        (before, minor) = (minor, (diagonal[i] - x) * minor - beside_squared[i - 1] * before);
     }
-    pivot > 0.0
+    minor > 0.0
 }
 
 /// All singular values, the largest first, `min(rows, columns)` of them and zeros behind, by one-sided Jacobi rotations
