@@ -3,6 +3,7 @@
 mod acceptance;
 mod arrive;
 mod carried;
+mod edit;
 mod faults;
 mod frame;
 mod recipe;
@@ -13,6 +14,7 @@ mod waypoint;
 pub use acceptance::Acceptance;
 pub use arrive::{Arrive, PathSpeed};
 pub use carried::Carried;
+pub use edit::{Edit, NoSuchWaypoint};
 pub(crate) use faults::arc_fault;
 pub use frame::{BASE, Frame, WORLD, frame_in_base};
 pub use recipe::{Recipe, Repeat, Usual};
