@@ -5,7 +5,7 @@ use crate::program::Acceptance;
 use crate::units::{Measure, Room, Share};
 
 use super::proof::{Covered, Effort, cover};
-use super::stretch::{finding, stretches, worst_of};
+use super::stretch::{finding, first_largest, stretches, worst_of};
 use super::sweep::{Look, Sweep};
 use super::{
     Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved, Verdict,
@@ -214,11 +214,7 @@ fn peak(meter: &Meter, sweep: &Sweep, after: Option<&Look>, slot: usize) -> Opti
     }
     // A channel without a limit asks nothing, so its largest value is its peak.
     let open = sweep.looks.iter().all(|look| look.asked[slot] == 0.0);
-    let mut worst = if open {
-        sweep.looks.iter().max_by(|a, b| a.reading[slot].abs().total_cmp(&b.reading[slot].abs())).expect("not empty")
-    } else {
-        worst_of(&sweep.looks, slot)
-    };
+    let mut worst = if open { first_largest(&sweep.looks, |look| look.reading[slot].abs()) } else { worst_of(&sweep.looks, slot) };
     if let Some(look) = after.filter(|look| look.asked[slot] > worst.asked[slot]) {
         worst = look;
     }

@@ -2,7 +2,7 @@ use std::sync::Arc;
 
 use crate::arm::{Arm, Joints};
 use crate::motion::{Plan, Segment};
-use crate::program::{Carried, Recipe, Repeat};
+use crate::program::{Recipe, Repeat};
 use crate::units::{Measure, Room};
 
 use super::torque_sum::SETTLED;
@@ -43,7 +43,7 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
     let standing = plan.segments.first().filter(|_| plan.first_dwell > 0.0 && followed).map(|first| {
         let meter = Meter::of(arm, first, &recipe.acceptance, plan.gravity);
         // What is taken at the first waypoint is taken at the end of the dwell.
-        let carried = Carried::of(recipe.tool_at(0), recipe.load_before(0));
+        let carried = recipe.hanging_at(0).arriving();
         TorqueSum::before(arm, first, &meter, &carried, plan.first_dwell)
     });
     let mut shares = Vec::with_capacity(arm.len());
@@ -105,9 +105,10 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
 /// Whether the cycle ends as it began, in the same posture with the same tool and load, so that it may start again.
 pub fn is_closed(recipe: &Recipe, plan: &Plan) -> bool {
     let (Some(first), Some(last)) = (plan.segments.first(), plan.segments.last()) else { return false };
+    let (begins, ends) = (recipe.hanging_at(0), recipe.hanging_at(last.to));
     first.start.zip(&last.end, |a, b| a - b).largest() <= SAME_POSTURE
-        && recipe.tool_at(0).map(|tool| &tool.name) == recipe.tool_at(last.to).map(|tool| &tool.name)
-        && recipe.load_before(0).map(|load| &load.name) == recipe.load_after(last.to).map(|load| &load.name)
+        && begins.tool.map(|tool| &tool.name) == ends.tool.map(|tool| &tool.name)
+        && begins.before.map(|load| &load.name) == ends.after.map(|load| &load.name)
 }
 
 /// The root mean square torque of a joint against its continuous rating; judged where all that it is made of is given.

@@ -31,9 +31,25 @@ pub(super) fn stretches(sweep: &Sweep, meter: &Meter, slot: usize, segment: usiz
         .collect()
 }
 
-/// The look that asks most of a channel.
+/// Two demands count as equal when they differ by less than this share: the last digits must not decide which of two instants is
+/// named.
+const EQUAL: f64 = 1e-9;
+
+/// The first look that asks most of a channel; one without a number is most of all.
 pub(super) fn worst_of(looks: &[Look], slot: usize) -> &Look {
-    looks.iter().max_by(|a, b| a.asked[slot].total_cmp(&b.asked[slot])).expect("a run is not empty")
+    first_largest(looks, |look| look.asked[slot])
+}
+
+/// The first look at which a value is largest but for its last digits; one without a number is largest of all.
+pub(super) fn first_largest(looks: &[Look], value: impl Fn(&Look) -> f64) -> &Look {
+    let mut best = &looks[0];
+    for look in &looks[1..] {
+        let most = value(best);
+        if !most.is_nan() && !(value(look) <= most + EQUAL * most.abs()) {
+            best = look;
+        }
+    }
+    best
 }
 
 /// A finding of one channel with its figures.

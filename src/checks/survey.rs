@@ -4,8 +4,9 @@ use std::sync::atomic::{AtomicBool, AtomicUsize, Ordering};
 use rayon::prelude::*;
 
 use crate::arm::Arm;
+use crate::geometry::V3;
 use crate::motion::{Plan, Segment};
-use crate::program::Recipe;
+use crate::program::{Acceptance, Recipe};
 
 use super::both::worse_of_both;
 use super::judge::judge;
@@ -78,11 +79,23 @@ pub fn each_segment<T: Send>(plan: &Plan, watch: &Watch, work: impl Fn(usize, &S
         .collect()
 }
 
-/// Checks a planned recipe on all cores. Segments that an earlier survey of the same arm and criteria judged alike are taken from
-/// it: `before` is that plan, recipe and survey. `None` if the watch stopped it. The result does not depend on the number of
-/// cores.
-pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<(&Recipe, &Plan, &Survey)>, watch: &Watch) -> Option<Survey> {
-    let before = before.filter(|(old, old_plan, _)| old.acceptance == recipe.acceptance && old_plan.gravity == plan.gravity);
+/// An earlier survey of the same arm, and which of its segments the new plan's are.
+#[derive(Debug, Clone, Copy)]
+pub struct Before<'a> {
+    /// What its recipe was judged by.
+    pub acceptance: &'a Acceptance,
+    /// Gravity in base axes then, m/s².
+    pub gravity: V3,
+    /// What was found.
+    pub survey: &'a Survey,
+    /// For each segment of the new plan the earlier one that is the same but for its number.
+    pub same: &'a [Option<usize>],
+}
+
+/// Checks a planned recipe on all cores. Segments that an earlier survey judged alike are taken from it. `None` if the watch stopped
+/// it. The result depends neither on the number of cores nor on what was taken over.
+pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<Before>, watch: &Watch) -> Option<Survey> {
+    let before = before.filter(|before| *before.acceptance == recipe.acceptance && before.gravity == plan.gravity);
     let segments: Option<Vec<Arc<SegmentSurvey>>> = plan
         .segments
         .par_iter()
@@ -91,19 +104,18 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<(&Recipe, 
             if watch.is_stopped() {
                 return None;
             }
-            let known = before.and_then(|(_, old, survey)| {
-                let same = old.segments.iter().position(|other| Arc::ptr_eq(other, segment) || **other == **segment)?;
-                let known = survey.segments.get(same)?;
-                (known.segment == index && old.stops[same] == plan.stops[index]).then(|| Arc::clone(known))
-            });
+            let known = before.and_then(|before| before.survey.segments.get((*before.same.get(index)?)?));
             let judged = |segment: &Segment| judge(arm, index, segment, &recipe.acceptance, plan.gravity);
-            let result = known.unwrap_or_else(|| {
-                let run = judged(segment);
-                Arc::new(match &plan.stops[index] {
-                    Some(stop) => worse_of_both(plan, run, &judged(stop)),
-                    None => run,
-                })
-            });
+            let result = known.map_or_else(
+                || {
+                    let run = judged(segment);
+                    Arc::new(match &plan.stops[index] {
+                        Some(stop) => worse_of_both(plan, run, &judged(stop)),
+                        None => run,
+                    })
+                },
+                |known| renumbered(known, index),
+            );
             watch.done.fetch_add(1, Ordering::Relaxed);
             Some(result)
         })
@@ -114,4 +126,13 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<(&Recipe, 
     findings.extend(of_cycle);
     findings.sort_by(Finding::order);
     Some(Survey { segments, cycle, findings, doubts: doubts(arm, recipe, plan) })
+}
+
+/// The same result for a segment that stands at another place now.
+fn renumbered(survey: &Arc<SegmentSurvey>, index: usize) -> Arc<SegmentSurvey> {
+    if survey.segment == index {
+        return Arc::clone(survey);
+    }
+    let findings = survey.findings.iter().map(|finding| Finding { segment: index, ..*finding }).collect();
+    Arc::new(SegmentSurvey { segment: index, findings, ..(**survey).clone() })
 }

@@ -28,8 +28,8 @@ mod tests {
         assert_eq!(opened.recipe.waypoints.len(), 14);
         assert_eq!(opened.arm.len(), 6);
         assert!(opened.arm.has_masses());
-        assert_eq!(opened.recipe.load_before(3).map(|load| load.name.as_str()), Some("housing"));
-        assert_eq!(opened.recipe.load_after(11), None);
+        assert_eq!(opened.recipe.hanging_at(3).before.map(|load| load.name.as_str()), Some("housing"));
+        assert_eq!(opened.recipe.hanging_at(11).after, None);
         assert!(matches!(opened.recipe.waypoints[9].arrive, Some(Arrive::Line(_))));
     }
 }

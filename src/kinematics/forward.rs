@@ -1,5 +1,5 @@
 use crate::arm::{Chain, MAX_JOINTS};
-use crate::geometry::{Pose, V3};
+use crate::geometry::{Pose, V3, sin_cos};
 
 /// A posture is the whole arm at one set of joint values: where every joint's axis system and the flange stand in the base.
 ///
@@ -17,11 +17,16 @@ impl Posture {
     pub fn at(chain: &Chain, q: &[f64]) -> Self {
         let mut posture = Self { len: chain.len, frames: [Pose::identity(); MAX_JOINTS], flange: Pose::identity() };
         let mut before = Pose::identity();
+        // All turns first: they do not wait for each other, as the frames do.
+        let mut turns = [(0.0, 1.0); MAX_JOINTS];
+        for (turn, &value) in turns.iter_mut().zip(&q[..chain.len]) {
+            *turn = sin_cos(value);
+        }
         for (j, &value) in q[..chain.len].iter().enumerate() {
             let frame = &mut posture.frames[j];
             *frame = if j > 0 { before.then(&chain.fixed[j]) } else { chain.fixed[j] };
             if chain.turns[j] {
-                let (s, c) = value.sin_cos();
+                let (s, c) = turns[j];
                 let a = &mut frame.axes;
                 (a.m11, a.m12) = (a.m11 * c + a.m12 * s, a.m12 * c - a.m11 * s);
                 (a.m21, a.m22) = (a.m21 * c + a.m22 * s, a.m22 * c - a.m21 * s);

@@ -3,7 +3,7 @@ use std::f64::consts::{FRAC_PI_4, PI};
 use nalgebra::Matrix4;
 
 use crate::arm::{Chain, Joints};
-use crate::geometry::{M3, Pose, V3};
+use crate::geometry::{M3, Pose, V3, sin_cos};
 
 use super::SphericalWrist;
 
@@ -171,7 +171,7 @@ fn roots(h: impl Fn(f64) -> f64) -> Vec<f64> {
 }
 
 fn about_z(angle: f64) -> M3 {
-    let (s, c) = angle.sin_cos();
+    let (s, c) = sin_cos(angle);
     M3::new(c, -s, 0.0, s, c, 0.0, 0.0, 0.0, 1.0)
 }
 

@@ -44,14 +44,12 @@ fn gram<const N: usize>(scaled: &Scaled) -> [[f64; N]; N] {
     let a = &scaled.entries;
     if scaled.rows == N && scaled.columns == N {
         // The common case with a length that is known when compiling, for the sums to be unrolled.
-        for i in 0..N {
-            for j in 0..=i {
-                let mut sum = 0.0;
-                for k in 0..N {
-                    sum += a[i][k] * a[j][k];
+        // Row by row, whose entries do not wait for each other; A^T A has the eigenvalues of A A^T.
+        for row in &a[..N] {
+            for i in 0..N {
+                for j in 0..N {
+                    gram[i][j] += row[i] * row[j];
                 }
-                gram[i][j] = sum;
-                gram[j][i] = sum;
             }
         }
     } else if scaled.rows <= scaled.columns {
@@ -102,15 +100,16 @@ fn tridiagonal<const N: usize>(mut a: [[f64; N]; N]) -> ([f64; N], [f64; N]) {
         for i in k + 2..N {
             v[i] = a[i][k];
         }
-        let beta = 2.0 / (below + v[k + 1] * v[k + 1]);
-        // Sums run over whole rows: v and p are zero up to k, and loops of one length are unrolled and run side by side.
+        let beta = 1.0 / (norm_squared + head.abs() * norm);
+        // Whole rows at a time: v and p are zero up to k, and entries of a row do not wait for each other.
         let mut p = [0.0; N];
-        for i in k + 1..N {
-            let mut sum = 0.0;
-            for j in 0..N {
-                sum += a[i][j] * v[j];
+        for j in k + 1..N {
+            for i in 0..N {
+                p[i] += a[j][i] * v[j];
             }
-            p[i] = beta * sum;
+        }
+        for i in 0..N {
+            p[i] = if i > k { beta * p[i] } else { 0.0 };
         }
         let mut half = 0.0;
         for i in 0..N {
@@ -138,9 +137,12 @@ fn tridiagonal<const N: usize>(mut a: [[f64; N]; N]) -> ([f64; N], [f64; N]) {
 
 /// Laguerre's iteration stops when a step gains less than this share of the root, or of the largest diagonal times 1e-4.
 const ROOT_STEP: f64 = 1e-13;
-/// ... or when a step that shrank a hundredfold gains less than this share: convergence is cubic then, and the next step would
-/// gain less than the last digit.
-const FAST_STEP: f64 = 1e-5;
+/// ... or when a step that shrank at least so much foretells that the next one would gain less than [`NEXT_STEP`] of the root:
+/// convergence is cubic, so after steps a and b comes one of about b (b/a)^3. What is left out is on the safe side, for every step
+/// ends at or below the root.
+const SHRINKS: f64 = 0.03;
+/// See [`SHRINKS`].
+const NEXT_STEP: f64 = 1e-14;
 
 /// The least root of the characteristic polynomial, from 0 upwards. All roots are real, so each step stays at or below it.
 #[inline]
@@ -150,7 +152,7 @@ fn least_root<const N: usize>(diagonal: &[f64; N], beside_squared: &[f64; N]) ->
     }
     let n = N as f64;
     let largest = diagonal.iter().fold(0.0f64, |most, d| most.max(*d));
-    let (mut x, mut last) = (0.0, f64::INFINITY);
+    let (mut x, mut last) = (0.0, 0.0);
     for _ in 0..60 {
         // Values and the first two derivatives of the leading minors by their three-term recurrence.
         let (mut p0, mut d0, mut s0) = (1.0, 0.0, 0.0);
@@ -177,7 +179,9 @@ fn least_root<const N: usize>(diagonal: &[f64; N], beside_squared: &[f64; N]) ->
             return x;
         }
         x += step;
-        if step <= ROOT_STEP * x.max(1e-4 * largest) || (step <= FAST_STEP * x && step <= 1e-2 * last) {
+        let shrinks = step / last;
+        let foretold = step * shrinks * shrinks * shrinks;
+        if step <= ROOT_STEP * x.max(1e-4 * largest) || (last > 0.0 && shrinks <= SHRINKS && foretold <= NEXT_STEP * x) {
             return x;
         }
         last = step;

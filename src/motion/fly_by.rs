@@ -1,8 +1,11 @@
+use std::sync::Arc;
+
 use crate::arm::Arm;
-use crate::kinematics::{Posture, Reached};
+use crate::kinematics::Reached;
 use crate::program::Recipe;
 
-use super::{Blend, Follower, Instant, JointBlend, Law, NoPath, Path, Segment, Track};
+use super::corner::{Corner, Sought, settle, sought};
+use super::{Blend, Follower, Instant, JointBlend, Law, NoPath, Path, Plan, Segment, Track};
 
 /// What became of a fly-by point.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -26,162 +29,119 @@ pub enum Passed {
     Stopped,
 }
 
-/// A blend takes at most this part of a neighbour.
-const MOST: f64 = 0.5;
-/// ... and this part where a blend takes from its other end too, so that some of it stays.
-const MOST_OF_BOTH: f64 = 0.4;
-/// Looks from a corner outwards along a joint move for the place where its TCP is the radius away.
-const LOOKS: usize = 32;
-/// A path shorter than this, m, has no place to leave it at.
-const NO_LENGTH: f64 = 1e-6;
 /// Two sets of joint values count as one posture when no joint differs by more, rad or m.
 const SAME_POSTURE: f64 = 1e-6;
 
-/// A corner that is rounded: which part of the segments before and after the blend takes, and how long each part takes at the pace
-/// at which it is passed, s. A blend lasts twice as long.
-#[derive(Debug, Clone, Copy)]
-struct Corner {
-    ends: [f64; 2],
-    half: f64,
-}
-
-/// The corners between segments that are planned from stop to stop: for each segment the corner at its end, if it is rounded.
-fn corners(arm: &Arm, recipe: &Recipe, stops: &[Segment]) -> (Vec<Option<Corner>>, Vec<FlyBy>) {
-    let asked = |index: usize| recipe.waypoints[index].fly_by.map(crate::units::Length::as_m);
-    let mut fly_bys = Vec::new();
-    let corners = stops
-        .iter()
-        .enumerate()
-        .map(|(index, before)| {
-            let radius = asked(before.to)?;
-            let found = stops.get(index + 1).and_then(|after| {
-                let most = [asked(before.to - 1), asked(after.to)].map(|other| other.map_or(MOST, |_| MOST_OF_BOTH));
-                corner(arm, before, after, radius, most)
-            });
-            let passed = found.map_or(Passed::Stopped, |(_, passed)| passed);
-            fly_bys.push(FlyBy { waypoint: before.to, radius, passed });
-            found.map(|(corner, _)| corner)
-        })
-        .collect();
-    (corners, fly_bys)
-}
-
-fn corner(arm: &Arm, before: &Segment, after: &Segment, radius: f64, most: [f64; 2]) -> Option<(Corner, Passed)> {
-    let moves = |segment: &Segment| segment.trouble.is_none() && segment.limits.is_some();
-    if !moves(before) || !moves(after) || before.carried != after.carried || before.push != after.push {
-        return None;
-    }
-    let sides = [before, after];
-    let mut whole = [0.0; 2];
-    for side in 0..2 {
-        whole[side] = share(arm, sides[side], side == 0, radius, most[side])?;
-    }
-    let mut ends = [whole[0].min(most[0]), whole[1].min(most[1])];
-    let cut = ends != whole;
-    if sides.iter().all(|side| side.follows_path()) {
-        // Both sides are left and joined at one distance, so that the blend is passed at one speed.
-        let distance = (ends[0] * before.path.length()).min(ends[1] * after.path.length());
-        ends = [distance / before.path.length(), distance / after.path.length()];
-    }
-    let half = (0..2).map(|side| ends[side] / sides[side].limits.expect("moves").rate).fold(0.0, f64::max);
-    Some((Corner { ends, half }, if cut { Passed::Cut } else { Passed::Whole }))
-}
-
-/// Which part of a segment lies within `radius` of its end (or start); more than `most` where it is not left before that. `None`
-/// where the TCP has no way.
-fn share(arm: &Arm, segment: &Segment, at_end: bool, radius: f64, most: f64) -> Option<f64> {
-    let length = segment.path.length();
-    if segment.follows_path() {
-        return (length > NO_LENGTH).then(|| radius / length);
-    }
-    let Path::Joint { from, to } = segment.path else { return None };
-    let tcp = |share: f64| {
-        let u = if at_end { 1.0 - share } else { share };
-        Posture::at(arm.chain(), &from.zip(&to, |a, b| a + u * (b - a))).tcp(&segment.carried.tcp).at
-    };
-    let corner = tcp(0.0);
-    let is_out = |share: f64| (tcp(share) - corner).norm() >= radius;
-    let step = most / LOOKS as f64;
-    let Some(first) = (1..=LOOKS).find(|&k| is_out(step * k as f64)) else {
-        return ((tcp(most) - corner).norm() > NO_LENGTH).then_some(2.0 * most);
-    };
-    let (mut inside, mut outside) = (step * (first - 1) as f64, step * first as f64);
-    for _ in 0..50 {
-        let middle = 0.5 * (inside + outside);
-        if is_out(middle) {
-            outside = middle;
-        } else {
-            inside = middle;
-        }
-    }
-    Some(outside)
-}
-
-/// Slows corners down until every segment can get from the pace of the one before it to that of the one after it.
-fn settle(stops: &[Segment], corners: &mut [Option<Corner>]) {
-    let count = stops.len();
-    let span = |corners: &[Option<Corner>], k: usize| {
-        let taken = |corner: Option<Corner>, side: usize| corner.map_or(0.0, |corner| corner.ends[side]);
-        let start = k.checked_sub(1).map_or(0.0, |before| taken(corners[before], 1));
-        1.0 - start - taken(corners[k], 0)
-    };
-    // The rate at which the segment on a side of a corner meets it.
-    let pace = |corner: Option<Corner>, side: usize| corner.map_or(0.0, |corner| corner.ends[side] / corner.half);
-    let slow = |corner: &mut Option<Corner>, side: usize, most: f64| {
-        if let Some(corner) = corner
-            && corner.ends[side] / corner.half > most
-        {
-            corner.half = corner.ends[side] / most;
-        }
-    };
-    for k in 0..count {
-        let Some(limits) = stops[k].limits else { continue };
-        let from = k.checked_sub(1).map_or(0.0, |before| pace(corners[before], 1));
-        let most = limits.reached(from, span(corners, k));
-        slow(&mut corners[k], 0, most);
-    }
-    for k in (1..count).rev() {
-        let Some(limits) = stops[k].limits else { continue };
-        let most = limits.reached(pace(corners[k], 0), span(corners, k));
-        slow(&mut corners[k - 1], 1, most);
-    }
-}
-
 /// A segment of the cycle, with the version of it that stops at both its ends where fly-by points cut something off it.
 pub(super) struct Run {
-    pub segment: Segment,
-    pub stop: Option<Segment>,
+    pub segment: Arc<Segment>,
+    pub stop: Option<Arc<Segment>>,
+    /// Which segment of the earlier plan it is, but for its number.
+    pub same: Option<usize>,
 }
 
-/// The cycle's segments, blends between them, from those planned from stop to stop.
-pub(super) fn rounded(arm: &Arm, recipe: &Recipe, stops: Vec<Segment>) -> (Vec<Run>, Vec<FlyBy>) {
-    let (mut corners, fly_bys) = corners(arm, recipe, &stops);
-    settle(&stops, &mut corners);
-    let ends: Vec<[f64; 2]> = (0..stops.len())
-        .map(|k| {
-            let start = k.checked_sub(1).and_then(|before| corners[before]).map_or(0.0, |corner| corner.ends[1]);
-            [start, corners[k].map_or(1.0, |corner| 1.0 - corner.ends[0])]
-        })
-        .collect();
-    let blends: Vec<Option<Segment>> =
-        (0..stops.len()).map(|k| corners[k].and_then(|corner| blend(arm, &stops[k], stops.get(k + 1)?, corner))).collect();
-    let mut runs = Vec::with_capacity(stops.len());
-    for (k, (stop, blend)) in stops.into_iter().zip(blends).enumerate() {
-        if ends[k] == [0.0, 1.0] {
-            runs.push(Run { segment: stop, stop: None });
-        } else {
-            let from = k.checked_sub(1).and_then(|before| corners[before]).map_or(0.0, |corner| corner.ends[1] / corner.half);
-            let to = corners[k].map_or(0.0, |corner| corner.ends[0] / corner.half);
-            let segment = trimmed(arm, &stop, ends[k], [from, to]);
-            runs.push(Run { segment: segment.unwrap_or_else(|| stop.clone()), stop: Some(stop) });
-        }
-        runs.extend(blend.map(|segment| Run { segment, stop: None }));
+/// How one segment from stop to stop is laid into the cycle.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Laid {
+    /// Which segment of the plan it is.
+    pub at: usize,
+    /// What was found out about its end, if a fly-by is asked for there.
+    sought: Option<Sought>,
+    /// The corner at its end.
+    corner: Option<Corner>,
+    /// Which part of it is run, and the rates of the whole path's fraction at that part's ends, 1/s.
+    cut: Cut,
+}
+
+#[derive(Debug, Clone, Copy, PartialEq)]
+struct Cut {
+    ends: [f64; 2],
+    rates: [f64; 2],
+}
+
+impl Laid {
+    /// What became of the fly-by point at its end, which is `waypoint`.
+    pub(super) fn fly_by(&self, waypoint: usize) -> Option<FlyBy> {
+        self.sought.map(|sought| sought.fly_by(waypoint))
     }
-    (runs, fly_bys)
+}
+
+/// An earlier plan, and which of its segments from stop to stop the new ones are.
+pub(super) struct Earlier<'a> {
+    pub plan: &'a Plan,
+    pub laid: Vec<Laid>,
+    pub same: &'a [Option<usize>],
+}
+
+impl Earlier<'_> {
+    fn of(&self, k: usize) -> Option<&Laid> {
+        self.laid.get((*self.same.get(k)?)?)
+    }
+
+    /// How segment `k` was laid, if the one behind it follows it in both plans.
+    fn of_pair(&self, k: usize) -> Option<&Laid> {
+        let [this, next] = [self.same.get(k)?.as_ref()?, self.same.get(k + 1)?.as_ref()?];
+        (this + 1 == *next).then(|| self.of(k)).flatten()
+    }
+}
+
+/// The same segment under another number.
+pub(super) fn renumbered(segment: &Arc<Segment>, to: usize) -> Arc<Segment> {
+    if segment.to == to { Arc::clone(segment) } else { Arc::new(Segment { to, ..(**segment).clone() }) }
+}
+
+/// The cycle's segments, blends between them, from those planned from stop to stop, and how each of these is laid.
+pub(super) fn rounded(arm: &Arm, recipe: &Recipe, legs: &[Arc<Segment>], earlier: Option<&Earlier>) -> (Vec<Run>, Vec<Laid>) {
+    let sought = sought(arm, recipe, legs, |k| earlier.and_then(|e| e.of_pair(k)).and_then(|laid| laid.sought));
+    let mut corners: Vec<Option<Corner>> = sought.iter().map(|sought| sought.and_then(|sought| sought.corner())).collect();
+    settle(legs, &mut corners);
+    let mut runs = Vec::with_capacity(legs.len());
+    let mut laid = Vec::with_capacity(legs.len());
+    for (k, leg) in legs.iter().enumerate() {
+        let before = k.checked_sub(1).and_then(|before| corners[before]);
+        let cut = Cut {
+            ends: [before.map_or(0.0, |corner| corner.ends[1]), corners[k].map_or(1.0, |corner| 1.0 - corner.ends[0])],
+            rates: [
+                before.map_or(0.0, |corner| corner.ends[1] / corner.half),
+                corners[k].map_or(0.0, |corner| corner.ends[0] / corner.half),
+            ],
+        };
+        laid.push(Laid { at: runs.len(), sought: sought[k], corner: corners[k], cut });
+        runs.push(run(arm, leg, &cut, earlier.and_then(|e| Some((e.plan, e.of(k)?)))));
+        if let Some(corner) = corners[k] {
+            let known = earlier.and_then(|e| Some((e.plan, e.of_pair(k).filter(|laid| laid.corner == Some(corner))?)));
+            runs.extend(bend(arm, [leg, &legs[k + 1]], corner, known));
+        }
+    }
+    (runs, laid)
+}
+
+/// What runs of a segment from stop to stop.
+fn run(arm: &Arm, leg: &Arc<Segment>, cut: &Cut, known: Option<(&Plan, &Laid)>) -> Run {
+    let known = known.filter(|(_, laid)| laid.cut == *cut);
+    let same = known.map(|(_, laid)| laid.at);
+    if cut.ends == [0.0, 1.0] {
+        return Run { segment: Arc::clone(leg), stop: None, same };
+    }
+    let stop = Some(Arc::clone(leg));
+    let segment = match known {
+        Some((plan, laid)) => renumbered(&plan.segments[laid.at], leg.to),
+        None => trimmed(arm, leg, cut).map_or_else(|| Arc::clone(leg), Arc::new),
+    };
+    Run { segment, stop, same }
+}
+
+/// The blend behind a segment from stop to stop.
+fn bend(arm: &Arm, [before, after]: [&Arc<Segment>; 2], corner: Corner, known: Option<(&Plan, &Laid)>) -> Option<Run> {
+    let old = known.and_then(|(plan, laid)| Some((plan.segments.get(laid.at + 1).filter(|old| old.blend)?, laid.at + 1)));
+    match old {
+        Some((old, at)) => Some(Run { segment: renumbered(old, before.to), stop: None, same: Some(at) }),
+        None => blend(arm, before, after, corner).map(|blend| Run { segment: Arc::new(blend), stop: None, same: None }),
+    }
 }
 
 /// What stays of a segment between two fractions, run from one rate of its whole path's fraction to another.
-fn trimmed(arm: &Arm, stop: &Segment, part: [f64; 2], rates: [f64; 2]) -> Option<Segment> {
+fn trimmed(arm: &Arm, stop: &Segment, &Cut { ends: part, rates }: &Cut) -> Option<Segment> {
     let span = part[1] - part[0];
     let follower = Follower::of(arm, stop);
     let [start, end] = [follower.at(part[0])?, follower.at(part[1])?];

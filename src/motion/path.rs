@@ -1,5 +1,5 @@
 use crate::arm::Joints;
-use crate::geometry::{Pose, V3, turn_about, turn_between};
+use crate::geometry::{Pose, V3, sin_cos, turn_about, turn_between};
 
 use super::{Blend, JointBlend};
 
@@ -149,7 +149,7 @@ impl Path {
                 even: true,
             }),
             Self::Arc { start, arm, normal, sweep, axis, angle } => {
-                let (s, c) = (sweep * u).sin_cos();
+                let (s, c) = sin_cos(sweep * u);
                 // `arm` is square to `normal`, so the turn needs no third term.
                 let out = arm * c + normal.cross(arm) * s;
                 Some(Target {

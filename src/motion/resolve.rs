@@ -1,6 +1,6 @@
-use crate::arm::{Arm, Joints};
+use crate::arm::{Arm, Joints, MAX_JOINTS};
 use crate::geometry::{Pose, V3};
-use crate::kinematics::{Posture, Reached, pose_error, reach};
+use crate::kinematics::{Jacobian, Lu, Posture, Reached, pose_error, reach, stacked};
 use crate::program::{Carried, Given, Recipe, Taught, frame_in_base};
 
 use super::NoPath;
@@ -47,7 +47,10 @@ pub(super) fn resolve(arm: &Arm, recipe: &Recipe, index: usize, carried: &Carrie
     };
     let target = wanted_pose(arm, recipe, index, carried, near);
     match reach(arm, &carried.tcp, &target, near) {
-        Reached::Yes { q, .. } => Place { q, trouble: misses_left_out(arm, carried, &target, &q, given.rotation.is_some()) },
+        Reached::Yes { q, .. } => {
+            let q = steadied(arm, &carried.tcp, &target, &q);
+            Place { q, trouble: misses_left_out(arm, carried, &target, &q, given.rotation.is_some()) }
+        }
         Reached::No { nearest, gap, sigma } => {
             let gap = gap[..3].iter().map(|g| g * g).sum::<f64>().sqrt();
             let trouble = if Reached::at_limit(sigma) {
@@ -58,6 +61,37 @@ pub(super) fn resolve(arm: &Arm, recipe: &Recipe, index: usize, carried: &Carrie
             Place { q: nearest, trouble: Some(trouble) }
         }
     }
+}
+
+/// Joint values are found again from the nearest point of a grid this wide, rad or m.
+const GRID: f64 = 1.0 / 1048576.0;
+/// Steps of Newton from there: each squares what is missing, and so few end at rounding.
+const GRID_STEPS: usize = 4;
+/// What is found again may differ by this much, rad or m; near a singular posture it differs by more and is left as it was.
+const SAME_VALUES: f64 = 1e-9;
+
+/// The joint values `q` of a pose (TCP at `tcp` on the flange, `target` in the base), but for their last digits, which depend on the
+/// pose alone and no longer on the way on which they were found. So an edit further up changes nothing behind a pose that it leaves
+/// in place. Of a redundant arm the way there decides where it stands, so its values stay as they are.
+pub(super) fn steadied(arm: &Arm, tcp: &Pose, target: &Pose, q: &Joints) -> Joints {
+    let (task, n) = (arm.task(), arm.len());
+    if arm.is_redundant() {
+        return *q;
+    }
+    let mut found = Joints::from_fn(n, |j| (q[j] / GRID).round() * GRID);
+    for _ in 0..GRID_STEPS {
+        let posture = Posture::at(arm.chain(), &found);
+        let now = posture.tcp(tcp);
+        let jacobian = Jacobian::at(arm.chain(), &posture, &now.at);
+        let gap = pose_error(&now, target);
+        let mut wanted = [0.0; MAX_JOINTS];
+        for (slot, &row) in task.rows().iter().enumerate() {
+            wanted[slot] = gap[row];
+        }
+        let step = Lu::of(stacked(&jacobian, task, &[]), n).solve(&wanted);
+        found = Joints::from_fn(n, |j| found[j] + step[j]);
+    }
+    if found.zip(q, |a, b| a - b).largest() <= SAME_VALUES { found } else { *q }
 }
 
 /// Whether a posture that satisfies the arm's task misses the pose in a direction that the task leaves out.

@@ -1,7 +1,7 @@
 use crate::geometry::Pose;
 use crate::units::{Acceleration, Jerk, Share, Speed, TurnAcceleration, TurnJerk, TurnRate};
 
-use super::{Acceptance, Frame, Load, Then, Tool, Waypoint};
+use super::{Acceptance, Frame, Load, Tool, Waypoint};
 
 /// What segments use where they say nothing themselves.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -77,37 +77,6 @@ pub struct Recipe {
 }
 
 impl Recipe {
-    /// The tool on the flange on the segment that arrives at waypoint `index` (and at the first waypoint for 0); `None` for a bare
-    /// flange.
-    pub fn tool_at(&self, index: usize) -> Option<&Tool> {
-        self.waypoints[..=index]
-            .iter()
-            .rev()
-            .find_map(|waypoint| waypoint.tool.as_deref())
-            .map_or_else(|| self.tools.first(), |name| self.tools.iter().find(|tool| tool.name == name))
-    }
-
-    /// The load in the tool while the segment that arrives at waypoint `index` runs; what is taken there comes after.
-    pub fn load_before(&self, index: usize) -> Option<&Load> {
-        let name = self.waypoints[..index].iter().rev().find_map(|waypoint| waypoint.then.as_ref()).map_or(
-            self.carrying.as_ref(),
-            |then| match then {
-                Then::Take(name) => Some(name),
-                Then::Release => None,
-            },
-        )?;
-        self.loads.iter().find(|load| &load.name == name)
-    }
-
-    /// The load in the tool when waypoint `index` is left.
-    pub fn load_after(&self, index: usize) -> Option<&Load> {
-        match &self.waypoints[index].then {
-            Some(Then::Take(name)) => self.loads.iter().find(|load| &load.name == name),
-            Some(Then::Release) => None,
-            None => self.load_before(index),
-        }
-    }
-
     /// The waypoint of that name, counted from 0.
     pub fn waypoint_named(&self, name: &str) -> Option<usize> {
         self.waypoints.iter().position(|waypoint| waypoint.name == name)

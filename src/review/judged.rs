@@ -1,7 +1,7 @@
 use std::sync::Arc;
 
 use crate::arm::Arm;
-use crate::checks::{Finding, Place, Survey, Watch, survey};
+use crate::checks::{Before, Finding, Place, Survey, Watch, survey};
 use crate::motion::Plan;
 use crate::program::Recipe;
 
@@ -30,11 +30,17 @@ impl Judged {
 
     /// Plans and surveys a recipe, taking over what `before` judged alike. `None` if the watch stopped it.
     pub fn of(arm: &Arc<Arm>, recipe: &Arc<Recipe>, before: Option<&Self>, watch: &Watch) -> Option<Self> {
-        let plan = Plan::of(arm, recipe);
-        let before = before
-            .filter(|old| Arc::ptr_eq(&old.arm, arm))
-            .map(|old| (old.recipe.as_ref(), old.plan.as_ref(), old.survey.as_ref()));
-        let survey = survey(arm, recipe, &plan, before, watch)?;
-        Some(Self { arm: Arc::clone(arm), recipe: Arc::clone(recipe), plan: Arc::new(plan), survey: Arc::new(survey) })
+        let before = before.filter(|old| Arc::ptr_eq(&old.arm, arm));
+        let go_on = || !watch.is_stopped();
+        let replanned = Plan::again(arm, recipe, before.map(|old| (old.recipe.as_ref(), old.plan.as_ref())), &go_on)?;
+        let before = before.map(|old| Before {
+            acceptance: &old.recipe.acceptance,
+            gravity: old.plan.gravity,
+            survey: &old.survey,
+            same: &replanned.same,
+        });
+        let survey = survey(arm, recipe, &replanned.plan, before, watch)?;
+        let (arm, recipe) = (Arc::clone(arm), Arc::clone(recipe));
+        Some(Self { arm, recipe, plan: Arc::new(replanned.plan), survey: Arc::new(survey) })
     }
 }

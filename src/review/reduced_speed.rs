@@ -56,7 +56,7 @@ pub fn reduced_speed(judged: &Judged, watch: &Watch) -> Option<Vec<Reduced>> {
 
 /// Peaks of the speeds of all points that are told on a segment.
 fn peaks(judged: &Judged, segment: &Segment) -> Vec<SpotPeak> {
-    let points = judged.recipe.tool_at(segment.to).map_or(&[][..], |tool| &tool.points);
+    let points = judged.recipe.hanging_at(segment.to).tool.map_or(&[][..], |tool| &tool.points);
     spot_peaks(&judged.arm, segment, points)
 }
 

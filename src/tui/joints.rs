@@ -26,6 +26,8 @@ struct Columns {
 
 /// From this width on accelerations are shown, and everything stands less close.
 const WIDE: usize = 57;
+/// A value in the middle between two columns stands in the right one, whatever its last digits are.
+const STEADY: f64 = 1e-9;
 /// A ruler with fewer columns says nothing.
 const LEAST_RULER: usize = 5;
 
@@ -160,7 +162,7 @@ fn ruler(sheet: &mut Sheet, columns: Columns, y: usize, share: f64) {
         sheet.put(columns.ruler + x, y, sign, Style::new());
     }
     if share.is_finite() {
-        let at = (share.clamp(0.0, 1.0) * (width - 1) as f64).round() as usize;
+        let at = (share.clamp(0.0, 1.0) * (width - 1) as f64 + STEADY).round() as usize;
         sheet.put(columns.ruler + at, y, theme.pick("●", "O"), theme.strong());
     }
 }

@@ -64,7 +64,7 @@ pub fn events(recipe: &Recipe, waypoint: usize) -> Vec<String> {
     match &point.then {
         Some(Then::Take(load)) => told.push(format!("takes {load}")),
         Some(Then::Release) => {
-            let load = recipe.load_before(waypoint).map_or("", |load| load.name.as_str());
+            let load = recipe.hanging_at(waypoint).before.map_or("", |load| load.name.as_str());
             told.push(format!("releases {load}").trim_end().to_owned());
         }
         None => {}

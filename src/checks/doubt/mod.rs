@@ -197,8 +197,8 @@ impl Doubt {
 pub fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
     let mut found = data::doubts(arm, recipe);
     found.extend(motion::doubts(arm, recipe));
-    for index in 0..recipe.waypoints.len() {
-        found.extend(taught::doubts(arm, recipe, plan, index));
+    for (index, hangs) in recipe.hanging().enumerate() {
+        found.extend(taught::doubts(arm, recipe, plan, index, hangs));
         found.extend(turn::at_waypoint(arm, recipe, plan, index));
         found.extend(fast::doubt(arm, recipe, plan, index));
     }

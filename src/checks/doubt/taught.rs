@@ -2,7 +2,7 @@ use crate::arm::Arm;
 use crate::geometry::Pose;
 use crate::kinematics::{Posture, pose_error};
 use crate::motion::{Passed, Plan, pose_in_base};
-use crate::program::{Recipe, Taught, Then};
+use crate::program::{Hanging, Recipe, Taught, Then};
 
 use super::Doubt;
 
@@ -13,9 +13,9 @@ const SHOWN_RAD: f64 = 1.745_33e-3;
 
 /// What is probably wrong with a waypoint as it was taught, and with what is carried on the way to it. The same pose under two
 /// names is none: a cycle often comes back.
-pub(super) fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> Vec<Doubt> {
-    let mut found: Vec<Doubt> = shown_gap(arm, recipe, plan, index).into_iter().collect();
-    match (&recipe.waypoints[index].then, recipe.load_before(index)) {
+pub(super) fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize, hangs: Hanging) -> Vec<Doubt> {
+    let mut found: Vec<Doubt> = shown_gap(arm, recipe, plan, index, hangs).into_iter().collect();
+    match (&recipe.waypoints[index].then, hangs.before) {
         (Some(Then::Take(_)), Some(_)) => found.push(Doubt::TakenTwice { waypoint: index }),
         (Some(Then::Release), None) => found.push(Doubt::NothingToRelease { waypoint: index }),
         _ => {}
@@ -38,14 +38,14 @@ pub(super) fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> V
     found
 }
 
-fn shown_gap(arm: &Arm, recipe: &Recipe, plan: &Plan, waypoint: usize) -> Option<Doubt> {
+fn shown_gap(arm: &Arm, recipe: &Recipe, plan: &Plan, waypoint: usize, hangs: Hanging) -> Option<Doubt> {
     let shown = recipe.waypoints[waypoint].shown.as_ref()?;
     let q = match (&recipe.waypoints[waypoint].taught, plan.arriving(waypoint)) {
         (Taught::Joints(q), _) => *q,
         (_, Some(segment)) => segment.end,
         (_, None) => plan.segments.first()?.start,
     };
-    let tcp = recipe.tool_at(waypoint).map_or_else(Pose::identity, |tool| tool.tcp);
+    let tcp = hangs.tool.map_or_else(Pose::identity, |tool| tool.tcp);
     let now = Posture::at(arm.chain(), &q).tcp(&tcp);
     let error = pose_error(&now, &pose_in_base(recipe, shown, &now));
     let length = |part: &[f64]| part.iter().map(|v| v * v).sum::<f64>().sqrt();

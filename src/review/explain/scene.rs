@@ -143,9 +143,10 @@ impl<'a> Scene<'a> {
     /// The names of tool and load here.
     pub fn carried_names(&self) -> [String; 2] {
         let recipe = &self.judged.recipe;
-        let tool = recipe.tool_at(self.segment.to).map_or("tool".to_owned(), |tool| tool.name.clone());
+        let hangs = recipe.hanging_at(self.segment.to);
+        let tool = hangs.tool.map_or("tool".to_owned(), |tool| tool.name.clone());
         let after = !std::ptr::eq(self.carried, &self.segment.carried);
-        let load = if after { recipe.load_after(self.segment.to) } else { recipe.load_before(self.segment.to) };
+        let load = if after { hangs.after } else { hangs.before };
         [tool, load.map_or("load".to_owned(), |load| load.name.clone())]
     }
 
