@@ -28,13 +28,23 @@ impl Session {
         session
     }
 
+    /// The segment of a newer judgement that arrives at the waypoint of the same name as the cursor's does.
+    fn place_in(&self, newer: &Judged) -> Option<usize> {
+        let segment = self.judged.plan.segments.get(self.cursor.segment)?;
+        let waypoint = newer.recipe.waypoint_named(&self.judged.recipe.waypoints[segment.to].name)?;
+        let index = newer.plan.index_arriving(waypoint)?;
+        let blend = newer.plan.segments.get(index + 1).is_some_and(|next| next.blend && segment.blend);
+        Some(index + usize::from(blend))
+    }
+
     /// Takes over a newer judgement. The cursor stays on its segment at the same share of its time, and on its finding if there
     /// still is one of that check and joint.
     pub fn renew(&mut self, judged: Judged) {
         let before = self.finding().copied();
         let share = self.cursor.time / self.lasts(self.cursor.segment);
+        let segment = self.place_in(&judged).unwrap_or(self.cursor.segment);
         self.judged = judged;
-        let segment = self.cursor.segment.min(self.segments().saturating_sub(1));
+        let segment = segment.min(self.segments().saturating_sub(1));
         let time = if share.is_finite() { share * self.lasts(segment) } else { 0.0 };
         self.cursor = Cursor { segment, time };
         self.finding = before

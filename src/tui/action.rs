@@ -1,4 +1,5 @@
 use crate::checks::Check;
+use crate::program::Edit;
 use crate::review::{Judged, Progress};
 
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
@@ -52,6 +53,12 @@ pub enum Action {
     EveryJoint,
     /// The keys and the signs.
     Help,
+    /// Change the recipe; what it is in words, for the history.
+    Change(Box<Edit>, String),
+    /// Take the last edit back.
+    Undo,
+    /// Make the last edit that was taken back again.
+    Redo,
     /// End the program.
     Quit,
     /// Let the shell have the terminal for a while.

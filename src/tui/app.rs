@@ -9,6 +9,7 @@ use crate::review::{Judged, Progress, Session};
 
 use super::action::Action;
 use super::curve::Subject;
+use super::edits::Edits;
 use super::keys::{Binding, name};
 use super::scene::Scene;
 use super::theme::Theme;
@@ -148,8 +149,12 @@ pub struct ChartSetting {
 pub struct App {
     /// The arm.
     pub arm: Arc<Arm>,
-    /// What was taught.
-    pub recipe: Arc<Recipe>,
+    /// What is taught now, with every edit.
+    pub taught: Arc<Recipe>,
+    /// The edits that led there.
+    pub edits: Edits,
+    /// Whether what is taught now is still to be checked.
+    pub unchecked: bool,
     /// How things look.
     pub theme: Theme,
     /// The screen.
@@ -184,7 +189,9 @@ impl App {
         let progress = Some(Progress { done: 0, of: recipe.waypoints.len().saturating_sub(1) });
         Self {
             arm,
-            recipe,
+            taught: recipe,
+            edits: Edits::default(),
+            unchecked: true,
             theme,
             area,
             session: None,
@@ -199,6 +206,11 @@ impl App {
             wish: Wish::GoOn,
             scene: Scene::default(),
         }
+    }
+
+    /// The recipe that the panes show: the one that was judged last, so that no pane mixes it with a newer one.
+    pub fn recipe(&self) -> &Recipe {
+        self.session.as_ref().map_or(&self.taught, |session| &session.judged().recipe)
     }
 
     /// The judged recipe.

@@ -78,8 +78,8 @@ fn draw_view(sheet: &mut Sheet, app: &App, gauges: &Gauges, view: View) {
             Verdict::Over | Verdict::NoPath => raster.thick(from, to, Ink::Over),
         }
     }
-    foot(&mut raster, &paper, &app.recipe.mount);
-    let mount = &app.recipe.mount;
+    foot(&mut raster, &paper, &app.recipe().mount);
+    let mount = &app.recipe().mount;
     let points: Vec<Dot> = gauges.posture.stick().iter().map(|point| paper.dot(&mount.point(point))).collect();
     for ends in points.windows(2) {
         raster.thick(ends[0], ends[1], Ink::Body);
@@ -149,7 +149,7 @@ impl Paper {
         let sketch = &app.scene.sketch;
         let (mut low, mut high) = (sketch.low, sketch.high);
         let foot = V3::new(FOOT, FOOT, 0.0);
-        let mount = &app.recipe.mount;
+        let mount = &app.recipe().mount;
         let mut all = vec![mount.point(&gauges.tcp.at), mount.at - foot, mount.at + foot];
         all.extend(gauges.posture.stick().iter().map(|point| mount.point(point)));
         for point in all {

@@ -1,3 +1,5 @@
+use std::sync::Arc;
+
 use super::action::Action;
 use super::app::{App, Asking, Mode, Question};
 use super::update::follow_finding;
@@ -53,7 +55,7 @@ fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
         session.go_to_time(time);
         return Ok(());
     }
-    let count = app.recipe.waypoints.len();
+    let count = session.judged().recipe.waypoints.len();
     match typed.parse::<usize>() {
         Ok(1) => session.go_to_time(0.0),
         Ok(number) if (2..=count).contains(&number) => {
@@ -73,7 +75,8 @@ fn find(app: &mut App, text: &str) -> Result<(), String> {
     }
     let session = app.session.as_mut().ok_or("not checked yet")?;
     let wanted = text.to_lowercase();
-    let names = &app.recipe.waypoints;
+    let recipe = Arc::clone(&session.judged().recipe);
+    let names = &recipe.waypoints;
     let now = session.waypoint();
     let found =
         (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));

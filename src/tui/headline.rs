@@ -13,8 +13,8 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     let mut sentence = match (&app.scene.headline, app.progress) {
         (Some((told, _)), None) => told.clone(),
         (Some((told, _)), Some(progress)) => format!("OLD, checking {} of {}: {told}", progress.done, progress.of),
-        (None, Some(progress)) => format!("{}: checking {} of {}", app.recipe.name, progress.done, progress.of),
-        (None, None) => app.recipe.name.clone(),
+        (None, Some(progress)) => format!("{}: checking {} of {}", app.recipe().name, progress.done, progress.of),
+        (None, None) => app.recipe().name.clone(),
     };
     let two_rows = sheet.height() > 1;
     let told_beside = !two_rows && sheet.width() > NO_ARM.width() + 24;

@@ -95,7 +95,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     let y = rows + 1;
     let x = sheet.put(1, y, &fit(&told, sheet.width().saturating_sub(1), theme), Style::new());
     let waypoint = judged.plan.segments.get(app.segment()).map_or(0, |segment| segment.to);
-    let where_at = format!("{}, at {:.0} %", how(&app.recipe, waypoint), 100.0 * gauges.fraction);
+    let where_at = format!("{}, at {:.0} %", how(app.recipe(), waypoint), 100.0 * gauges.fraction);
     if x + where_at.chars().count() + 3 <= sheet.width() {
         sheet.put_before(sheet.width() - 1, y, &where_at, Style::new());
     }

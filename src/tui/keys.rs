@@ -44,6 +44,8 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('z')], Action::Span, "chart: segment or cycle", ""),
     binding(&[KeyCode::Char('t')], Action::NextQuantity, "chart: next quantity", "chart"),
     binding(&[KeyCode::Char('a')], Action::EveryJoint, "chart: all joints, one", ""),
+    binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
+    binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
     binding(&[KeyCode::Char('h'), KeyCode::Char('?')], Action::Help, "help", "help"),
     binding(&[KeyCode::Char('q')], Action::Quit, "quit", "quit"),
 ];

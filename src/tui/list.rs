@@ -30,7 +30,7 @@ const KIND: usize = 5;
 impl Columns {
     fn of(app: &App, width: usize) -> Self {
         let rows = &app.scene.rows;
-        let digits = app.recipe.waypoints.len().to_string().len();
+        let digits = app.recipe().waypoints.len().to_string().len();
         let fixed = 2 + digits + 1 + 1 + 1 + rows.verdict + 2;
         let left = width.saturating_sub(fixed);
         let joint = app.arm.joints().iter().map(|joint| joint.name.chars().count()).max().unwrap_or(0);
@@ -89,7 +89,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         match row {
             Row::Start => {
                 sheet.put_before(columns.number, y, "1", Style::new());
-                let name = fit(&app.recipe.waypoints[0].name, columns.how - columns.name - 1, theme);
+                let name = fit(&app.recipe().waypoints[0].name, columns.how - columns.name - 1, theme);
                 sheet.put(columns.name, y, &name, Style::new());
                 if columns.how < columns.verdict {
                     sheet.put(columns.how, y, "start", Style::new());
@@ -97,7 +97,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
             }
             Row::Segment(segment) => draw_segment(sheet, app, *segment, y, columns),
             Row::Events(waypoint) => {
-                let told = events(&app.recipe, *waypoint).join(", ");
+                let told = events(app.recipe(), *waypoint).join(", ");
                 note(sheet, app, columns, y, &told);
             }
             Row::Doubt(doubt) => {
@@ -122,10 +122,10 @@ fn draw_segment(sheet: &mut Sheet, app: &App, segment: usize, y: usize, columns:
     let selected = app.session.is_some() && segment == app.segment();
     let plain = if selected { theme.strong() } else { Style::new() };
     sheet.put_before(columns.number, y, &(waypoint + 1).to_string(), plain);
-    let name = if blend { "  past it" } else { app.recipe.waypoints[waypoint].name.as_str() };
+    let name = if blend { "  past it" } else { app.recipe().waypoints[waypoint].name.as_str() };
     let name = fit(name, columns.how - columns.name - 1, theme);
     sheet.put(columns.name, y, &name, plain);
-    let asked = if blend { "fly-by".to_owned() } else { how(&app.recipe, waypoint) };
+    let asked = if blend { "fly-by".to_owned() } else { how(app.recipe(), waypoint) };
     let asked = if columns.brief_how { asked.split(' ').next().unwrap_or("").to_owned() } else { asked };
     if columns.how < columns.verdict {
         sheet.put(columns.how, y, &asked, plain);

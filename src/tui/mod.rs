@@ -9,6 +9,7 @@ mod bands;
 mod chart;
 mod click;
 mod curve;
+mod edits;
 mod footer;
 mod gauges;
 mod headline;

@@ -41,7 +41,7 @@ pub struct Scene {
 /// Brings the scene up to what the app shows.
 pub fn refresh(app: &mut App) {
     if app.scene.rows.is_empty() {
-        app.scene.rows = Rows::of(&app.recipe, None);
+        app.scene.rows = Rows::of(&app.taught, None);
     }
     let Some(session) = &app.session else { return };
     let judged = session.judged();
@@ -50,7 +50,7 @@ pub fn refresh(app: &mut App) {
     if scene.survey.as_ref().is_none_or(|known| !Arc::ptr_eq(known, &judged.survey)) {
         *scene = Scene {
             headline: Some((headline(judged), judged.survey.verdict())),
-            rows: Rows::of(&app.recipe, Some(judged)),
+            rows: Rows::of(&judged.recipe, Some(judged)),
             sketch: Sketch::of(judged),
             not_checked: not_checked(judged),
             survey: Some(Arc::clone(&judged.survey)),

@@ -10,7 +10,7 @@ use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, page};
+use super::{click, edits, page};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
@@ -103,6 +103,9 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::Show(check) => app.chart.check = *check,
         Action::NextQuantity => turn_quantity(app, 1),
         Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
+        Action::Change(edit, words) => edits::make(app, edit, words),
+        Action::Undo => edits::undo(app),
+        Action::Redo => edits::redo(app),
         Action::Click(column, row) => click::click(app, *column, *row),
         _ => {}
     }
@@ -204,6 +207,8 @@ fn is_named(action: &Action) -> bool {
             | Action::Find
             | Action::Span
             | Action::EveryJoint
+            | Action::Undo
+            | Action::Redo
             | Action::Help
             | Action::Quit
     )

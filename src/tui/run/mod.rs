@@ -60,12 +60,16 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
     let (width, height) = screen.size()?;
     let mut app = App::new(started.arm, started.recipe, options.theme(), Rect::new(0, 0, width, height));
     let mut recheck = Recheck::start().context("can't start the check")?;
-    recheck.submit(&app.arm, &app.recipe, None);
-    // A small recipe is done before anybody could read that it is being checked.
-    let mut waited = recheck.replies().recv_timeout(FIRST).ok();
+    let mut patience = FIRST;
     loop {
-        if let Some(reply) = waited.take() {
-            accept(&mut app, &mut recheck, reply);
+        if std::mem::take(&mut app.unchecked) {
+            recheck.submit(&app.arm, &app.taught, app.judged().cloned());
+            // What is done before anybody could read that it is being checked is shown at once.
+            if let Ok(reply) = recheck.replies().recv_timeout(std::mem::replace(&mut patience, SOON)) {
+                accept(&mut app, &mut recheck, reply);
+            } else if let Some(progress) = recheck.progress() {
+                update(&mut app, Action::Checking(progress));
+            }
         }
         screen.show(&app)?;
         match wait(&mut app, &mut recheck, &news)? {
@@ -79,6 +83,8 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
 
 /// The first frame waits this long for the check.
 const FIRST: Duration = Duration::from_millis(50);
+/// A frame after an edit waits this long for the check.
+const SOON: Duration = Duration::from_millis(12);
 
 /// What is to be done next.
 #[derive(Debug, PartialEq, Eq)]
