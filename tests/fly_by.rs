@@ -3,7 +3,7 @@
 mod random;
 
 use elbowroom::arm::Arm;
-use elbowroom::checks::{Check, Doubt, Meter, Proof, Unproved, Verdict};
+use elbowroom::checks::{Check, Doubt, Meter, Proof, Verdict};
 use elbowroom::geometry::{Pose, Rotation, turn_about};
 use elbowroom::kinematics::Posture;
 use elbowroom::motion::{Follower, Path, Plan, Side};
@@ -125,7 +125,11 @@ fn hammer(judged: &Judged, looks: usize) -> [usize; 3] {
         }
         all += 1;
         clear += usize::from(survey.verdict == Verdict::Clear);
-        spent += survey.checks.iter().filter(|result| result.judged && result.proof == Proof::Open(Unproved::BudgetSpent)).count();
+        spent += survey
+            .checks
+            .iter()
+            .filter(|result| result.judged && matches!(result.proof, Proof::Open(why) if why.is_of_proof_alone()))
+            .count();
         for stop in [false, true] {
             let segment = judged.plan.version(index, stop);
             let meter = Meter::of(&judged.arm, segment, &judged.recipe.acceptance, judged.plan.gravity);

@@ -6,7 +6,7 @@ use std::time::Duration;
 use elbowroom::checks::{Verdict, Watch};
 use elbowroom::files::{Opened, demo};
 use elbowroom::program::Arrive;
-use elbowroom::review::{Judged, Recheck, Session};
+use elbowroom::review::{Done, Judged, Recheck, Session};
 use elbowroom::units::Speed;
 
 fn judged() -> Judged {
@@ -105,7 +105,7 @@ fn a_recheck_says_the_same_as_the_check_itself() {
     assert!(recheck.progress().is_some());
     let reply = recheck.replies().recv_timeout(Duration::from_secs(60)).expect("a reply");
     assert_eq!(reply.ticket, ticket);
-    let there = recheck.accept(reply).expect("the newest");
+    let Some(Done::Judged(there)) = recheck.accept(reply) else { panic!("not the newest") };
     assert!(there.survey.findings == direct.survey.findings && there.survey.doubts == direct.survey.doubts);
     assert_eq!(recheck.progress(), None);
 }
@@ -123,5 +123,17 @@ fn a_newer_request_stops_the_older_one() {
         let reply = recheck.replies().recv_timeout(Duration::from_secs(60)).expect("a reply");
         accepted.extend(recheck.accept(reply));
     }
-    assert_eq!(accepted[0].recipe, newer);
+    assert!(matches!(&accepted[0], Done::Judged(judged) if judged.recipe == newer));
+}
+
+#[test]
+fn bounds_are_proved_closer_away_from_the_thread_that_asks() {
+    let judged = judged();
+    let mut recheck = Recheck::start().expect("a thread");
+    recheck.tighten(&judged, 3);
+    let reply = recheck.replies().recv_timeout(Duration::from_secs(60)).expect("a reply");
+    let Some(Done::Closer(survey, closer)) = recheck.accept(reply) else { panic!("not what was asked for") };
+    assert!(Arc::ptr_eq(&survey, &judged.survey) && closer.segment == 3);
+    let gap = closer.largest_gap().expect("proved").1;
+    assert!(gap <= 0.005 + 1e-9 && gap < judged.survey.segments[3].largest_gap().expect("proved").1, "{gap}");
 }

@@ -4,7 +4,8 @@ use crate::motion::Segment;
 use crate::program::Acceptance;
 use crate::units::{Measure, Room, Share};
 
-use super::proof::{Covered, Effort, cover};
+use super::channel::CHANNELS;
+use super::proof::{Covered, Effort, Stuck, cover};
 use super::stretch::{finding, first_largest, stretches, worst_of};
 use super::sweep::{Look, Sweep};
 use super::{
@@ -19,6 +20,7 @@ struct Case<'a> {
     segment: &'a Segment,
     meter: &'a Meter<'a>,
     gravity: V3,
+    effort: Effort,
     sweep: Sweep<'a>,
     after: Option<Look>,
 }
@@ -27,18 +29,25 @@ struct Case<'a> {
 const SECOND_LOOKS: usize = 3;
 
 /// Judges one segment by every check.
-pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Acceptance, gravity: V3) -> SegmentSurvey {
+pub(super) fn judge(
+    arm: &Arm,
+    index: usize,
+    segment: &Segment,
+    criteria: &Acceptance,
+    gravity: V3,
+    effort: Effort,
+) -> SegmentSurvey {
     let meter = Meter::of(arm, segment, criteria, gravity);
     let sweep = Sweep::of(arm, &meter, segment);
     let after = look_after_stop(&sweep, &meter, segment);
-    let mut case = Case { arm, index, segment, meter: &meter, gravity, sweep, after };
+    let mut case = Case { arm, index, segment, meter: &meter, gravity, effort, sweep, after };
     let (mut checks, mut findings) = case.look();
     let mut tally = Tally::default();
-    for _ in 0..=SECOND_LOOKS {
+    for round in 0..=SECOND_LOOKS {
         let covered = case.prove(&checks);
         tally.postures += covered.tally.postures;
         tally.trials += covered.tally.trials;
-        if case.sweep.add(&covered.witnesses) {
+        if round < SECOND_LOOKS && case.sweep.add(&covered.witnesses) {
             // The proof came upon an instant that the sweep had missed.
             (checks, findings) = case.look();
             continue;
@@ -65,7 +74,7 @@ pub(super) fn judge(arm: &Arm, index: usize, segment: &Segment, criteria: &Accep
 /// Judges one segment at an override (above 0, at most 1): rates scale by it and accelerations by its square. Everything is
 /// looked at and proved anew, since not every demand grows with speed.
 pub fn judge_at(arm: &Arm, index: usize, segment: &Segment, criteria: &Acceptance, gravity: V3, run_at: Share) -> SegmentSurvey {
-    judge(arm, index, &segment.at_override(run_at.as_fraction()), criteria, gravity)
+    judge(arm, index, &segment.at_override(run_at.as_fraction()), criteria, gravity, Effort::default())
 }
 
 impl Case<'_> {
@@ -90,7 +99,20 @@ impl Case<'_> {
         let open = checks.iter().filter(|result| result.judged && result.proof == Proof::Open(Unproved::SamplesOnly));
         let needs: Vec<usize> =
             open.flat_map(|result| self.meter.slots(result.check)).filter(|&slot| self.meter.channel(slot).judged).collect();
-        cover(self.arm, self.segment, self.meter, self.gravity, &needs, Effort::default())
+        cover(self.arm, self.segment, self.meter, self.gravity, &needs, &self.allowed(), self.effort)
+    }
+
+    /// What every channel may ask for the proof to close.
+    fn allowed(&self) -> [f64; CHANNELS] {
+        let seen = |slot: usize| self.sweep.looks.iter().map(|look| look.asked[slot]).fold(0.0, f64::max);
+        std::array::from_fn(|slot| {
+            let channel = self.meter.channel(slot);
+            match self.effort.within {
+                // Closeness is proved as a yes or no.
+                Some(within) if channel.check != Check::Singular => channel.flagged_above().min(seen(slot) + within),
+                _ => channel.flagged_above(),
+            }
+        })
     }
 
     /// Writes what was proved into the results.
@@ -106,8 +128,10 @@ impl Case<'_> {
                 Some(asked) => result.proof = Proof::Proved(Room::fraction(1.0 - asked)),
                 None => {
                     result.verdict = Verdict::Unproven;
-                    result.proof = Proof::Open(Unproved::BudgetSpent);
-                    findings.push(self.unproved(result.check, Unproved::BudgetSpent));
+                    let stuck = covered.stuck.unwrap_or(Stuck { why: Unproved::BudgetSpent, from: 0.0, to: 1.0 });
+                    result.proof = Proof::Open(stuck.why);
+                    let [from, to] = [stuck.from, stuck.to].map(|u| Place { time: self.segment.law.time_of(u), u });
+                    findings.push(Finding { from, to, ..self.unproved(result.check, stuck.why) });
                 }
             }
         }

@@ -144,7 +144,7 @@ impl<'a> Meter<'a> {
 }
 
 /// A joint whose way along the whole segment would be shorter than this at the slope of an instant stands still there, rad or m.
-const STANDS: f64 = 1e-9;
+pub(super) const STANDS: f64 = 1e-9;
 
 /// Which way a joint moves, or is about to move at the ends of a segment: -1, 0 or 1.
 pub fn direction(slope: f64, rate: f64, accel: f64) -> f64 {

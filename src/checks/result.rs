@@ -35,8 +35,12 @@ pub struct Peak {
 pub enum Unproved {
     /// Only samples were looked at; the proof was not tried.
     SamplesOnly,
-    /// The proof did not close within its budget.
+    /// The proof's budget of postures ended before the whole segment was covered.
     BudgetSpent,
+    /// There is an instant around which even the narrowest stretch could not be proved: too near to a limit, or to a singular posture.
+    TooNarrow,
+    /// Every stretch was proved, but not that the arm goes from one into the next in one posture.
+    NotOneBranch,
     /// The path could not be followed to its end.
     NotFollowed,
     /// The arm file rates no holding torque.
@@ -45,6 +49,13 @@ pub enum Unproved {
     NoMasses,
     /// It rests on a guess.
     Guess,
+}
+
+impl Unproved {
+    /// Whether only the proof between the samples is missing, and no data.
+    pub fn is_of_proof_alone(self) -> bool {
+        matches!(self, Self::SamplesOnly | Self::BudgetSpent | Self::TooNarrow | Self::NotOneBranch)
+    }
 }
 
 /// How far a result is proved.
@@ -121,6 +132,19 @@ impl SegmentSurvey {
     /// The result of one check.
     pub fn check(&self, check: Check) -> &CheckResult {
         self.checks.iter().find(|result| result.check == check).expect("every check has a result")
+    }
+
+    /// The largest gap between what was seen and what is proved, as a share of the limit, and the check it is of. Closeness to
+    /// singularity is left out, since it is proved as a yes or no.
+    pub fn largest_gap(&self) -> Option<(Check, f64)> {
+        let gap = |result: &CheckResult| {
+            let Proof::Proved(proved) = result.proof else { return None };
+            let rooms = result.peaks.iter().filter(|peak| peak.judged).map(|peak| peak.room.as_fraction());
+            let seen = rooms.reduce(|least, room| if room >= least { least } else { room })?;
+            let shown = result.judged && !matches!(result.check, Check::Singular | Check::Reach);
+            shown.then(|| (result.check, seen - proved.as_fraction()))
+        };
+        self.checks.iter().filter_map(gap).max_by(|a, b| a.1.total_cmp(&b.1))
     }
 
     /// The judged check that is nearest to its reserve, with its worst peak: the worse verdict first. Rate and acceleration of a

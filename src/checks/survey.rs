@@ -10,8 +10,9 @@ use crate::program::{Acceptance, Recipe};
 
 use super::both::worse_of_both;
 use super::judge::judge;
+use super::proof::Effort;
 use super::rms::cycle;
-use super::{Cycle, Doubt, Finding, SegmentSurvey, Verdict, doubts};
+use super::{Check, Cycle, Doubt, Finding, Proof, SegmentSurvey, Tally, Verdict, doubts};
 
 /// A survey is the result of checking a whole recipe.
 #[derive(Debug, Clone, PartialEq)]
@@ -34,6 +35,21 @@ impl Survey {
             .map(|segment| segment.verdict)
             .max()
             .map_or(Verdict::Unproven, |worst| worst.max(self.cycle.rms.verdict))
+    }
+
+    /// What the proofs of all segments took.
+    pub fn tally(&self) -> Tally {
+        self.segments.iter().fold(Tally::default(), |sum, segment| Tally {
+            postures: sum.postures + segment.tally.postures,
+            trials: sum.trials + segment.tally.trials,
+        })
+    }
+
+    /// The largest gap between what was seen and what is proved, as a share of the limit: on which segment, and of which check.
+    pub fn largest_gap(&self) -> Option<(usize, Check, f64)> {
+        let gaps =
+            self.segments.iter().filter_map(|segment| segment.largest_gap().map(|(check, gap)| (segment.segment, check, gap)));
+        gaps.max_by(|a, b| a.2.total_cmp(&b.2).then(b.0.cmp(&a.0)))
     }
 
     /// How many segments have a verdict.
@@ -100,22 +116,13 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<Before>, w
         .segments
         .par_iter()
         .enumerate()
-        .map(|(index, segment)| {
+        .map(|(index, _)| {
             if watch.is_stopped() {
                 return None;
             }
             let known = before.and_then(|before| before.survey.segments.get((*before.same.get(index)?)?));
-            let judged = |segment: &Segment| judge(arm, index, segment, &recipe.acceptance, plan.gravity);
-            let result = known.map_or_else(
-                || {
-                    let run = judged(segment);
-                    Arc::new(match &plan.stops[index] {
-                        Some(stop) => worse_of_both(plan, run, &judged(stop)),
-                        None => run,
-                    })
-                },
-                |known| renumbered(known, index),
-            );
+            let result =
+                known.map_or_else(|| Arc::new(one(arm, recipe, plan, index, Effort::default())), |known| renumbered(known, index));
             watch.done.fetch_add(1, Ordering::Relaxed);
             Some(result)
         })
@@ -126,6 +133,25 @@ pub fn survey(arm: &Arm, recipe: &Recipe, plan: &Plan, before: Option<Before>, w
     findings.extend(of_cycle);
     findings.sort_by(Finding::order);
     Some(Survey { segments, cycle, findings, doubts: doubts(arm, recipe, plan) })
+}
+
+/// Judges segment `index` of a plan (counted from 0) with bounds proved as near to what was seen as half a percent of each limit,
+/// whatever that costs. Where that does not close, the result is that of [`survey`].
+pub fn tightened(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> SegmentSurvey {
+    let tight = one(arm, recipe, plan, index, Effort::tight());
+    let open = |survey: &SegmentSurvey| survey.checks.iter().filter(|result| matches!(result.proof, Proof::Open(_))).count();
+    let plain = one(arm, recipe, plan, index, Effort::default());
+    if open(&tight) <= open(&plain) { tight } else { plain }
+}
+
+/// The worse of the versions in which a segment may run.
+fn one(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize, effort: Effort) -> SegmentSurvey {
+    let judged = |segment: &Segment| judge(arm, index, segment, &recipe.acceptance, plan.gravity, effort);
+    let run = judged(&plan.segments[index]);
+    match &plan.stops[index] {
+        Some(stop) => worse_of_both(plan, run, &judged(stop)),
+        None => run,
+    }
 }
 
 /// The same result for a segment that stands at another place now.

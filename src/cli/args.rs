@@ -11,9 +11,8 @@ use super::step::step;
 #[command(
     name = "elbowroom",
     version,
-    about = "Reviews a taught robot-arm program before its first run: what happens between the taught points, at speed, with the \
-        real \
-             tool and part.",
+    about = "Reviews a taught robot-arm program before its first run: what happens between the taught points, at speed, with \
+             the real tool and part.",
     after_help = "Without a command the review opens on the screen; without a recipe, on the built-in demonstration cell.\n\
                   It computes from data that people typed. It moves nothing and replaces no risk assessment, no safeguard and no \
                   reduced-speed trial.",
@@ -53,8 +52,8 @@ pub(super) struct ScreenArgs {
 pub(super) enum Command {
     /// Judge recipes and print what was found
     #[command(
-        after_help = "Exit codes: 0 every recipe is clear, 1 something is not clear, 2 something could not be judged (a file that \
-                            can't be taken, a mistake in the arguments). With several recipes the worst of them; one that can't be \
+        after_help = "Exit codes: 0 every recipe is clear, 1 something is not clear, 2 something could not be judged (a file \
+                            that can't be taken, a mistake in the arguments). With several recipes the worst of them; one that can't be \
                             judged does not stop the others.\n\
                             With --json every recipe is one JSON object on one line."
     )]
@@ -108,6 +107,9 @@ pub(super) struct ExplainArgs {
     /// Tell only of this segment: the number of the waypoint that it arrives at
     #[arg(long, value_name = "NUMBER")]
     pub segment: Option<usize>,
+    /// Prove the bounds of that segment closer, and print what was seen and what is proved of every check
+    #[arg(long, requires = "segment")]
+    pub tighten: bool,
     /// Columns to wrap text at
     #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
     pub width: u16,

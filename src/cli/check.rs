@@ -2,7 +2,7 @@ use std::path::Path;
 
 use crate::checks::Watch;
 use crate::report::check_json;
-use crate::review::{Judged, headline, reduced_speed, reduced_speed_text};
+use crate::review::{Judged, headline, proof_summary, reduced_speed, reduced_speed_text};
 
 use super::args::CheckArgs;
 use super::chosen::{Chosen, chosen};
@@ -54,6 +54,7 @@ fn told(args: &CheckArgs, chosen: &Chosen, before: bool) -> String {
         findings_text(judged, width),
         doubts_text(judged, width),
         reduced_text(judged, width),
+        hanging("proof: ", &proof_summary(judged), width),
         not_checked_text(judged, width),
         crate::review::wrap(CAUTION, width).join("\n") + "\n",
     ];

@@ -1,11 +1,11 @@
-use crate::checks::Finding;
-use crate::review::{explain, headline, no_finding};
+use crate::checks::{Finding, tightened};
+use crate::review::{Judged, bounds_text, explain, headline, no_finding};
 
 use super::args::ExplainArgs;
 use super::chosen::chosen;
 use super::code::Code;
 use super::findings_text::explanation_text;
-use super::not_checked_text::doubts_text;
+use super::not_checked_text::{doubts_text, hanging};
 use super::out;
 
 /// Tells all findings of a recipe at length, or all about one segment.
@@ -28,12 +28,23 @@ pub(super) fn run(args: &ExplainArgs) -> anyhow::Result<Code> {
     parts.extend(judged.survey.findings.iter().filter(is_meant).map(|finding| explanation_text(&explain(&judged, finding), width)));
     match wanted {
         Some(meant) => {
-            let quiet = meant.into_iter().filter(|&index| judged.survey.segments[index].findings.is_empty());
+            let quiet = meant.iter().copied().filter(|&index| judged.survey.segments[index].findings.is_empty());
             parts.extend(quiet.map(|index| explanation_text(&no_finding(&judged, index), width)));
+            if args.tighten {
+                parts.extend(meant.into_iter().map(|index| closer(&judged, index, width)));
+            }
         }
         None if judged.survey.doubts.is_empty() => {}
         None => parts.push(doubts_text(&judged, width)),
     }
     out::print(&parts.join("\n"))?;
     Ok(Code::Clear)
+}
+
+/// What was seen and what is proved of a segment, its bounds proved closer.
+fn closer(judged: &Judged, index: usize, width: usize) -> String {
+    let survey = tightened(&judged.arm, &judged.recipe, &judged.plan, index);
+    let title = format!("proved closer: segment {}, {} postures\n", judged.plan.segments[index].label(), survey.tally.postures);
+    let lines = bounds_text(judged, &survey);
+    title + &lines.iter().map(|line| hanging("  ", line, width)).collect::<String>()
 }

@@ -26,6 +26,7 @@ struct Report {
     cycle: CycleJson,
     findings: Vec<FindingJson>,
     doubts: Vec<DoubtJson>,
+    proof: ProofJson,
     reduced_speed: ReducedJson,
     not_checked: Vec<String>,
 }
@@ -36,6 +37,31 @@ struct CycleJson {
     verdict: &'static str,
     closed: bool,
     checks: Checks,
+}
+
+/// How the proof went: postures evaluated, bound trials, and the largest gap between what was seen and what is proved, in percent of
+/// the limit, with its segment and check.
+#[derive(Debug, Serialize)]
+struct ProofJson {
+    postures: usize,
+    trials: usize,
+    largest_gap: Option<f64>,
+    segment: Option<usize>,
+    check: Option<&'static str>,
+}
+
+impl ProofJson {
+    fn of(judged: &Judged) -> Self {
+        let tally = judged.survey.tally();
+        let gap = judged.survey.largest_gap();
+        Self {
+            postures: tally.postures,
+            trials: tally.trials,
+            largest_gap: gap.and_then(|(_, _, gap)| figure(100.0 * gap)),
+            segment: gap.map(|(segment, ..)| judged.plan.segments[segment].number()),
+            check: gap.map(|(_, check, _)| check.key()),
+        }
+    }
 }
 
 /// One segment; where `fly_by` is true, the blend past its waypoint. `index` is its number as people read it: that of the waypoint
@@ -76,6 +102,7 @@ pub fn check_json(judged: &Judged, recipe_file: &str, arm_file: &str) -> String 
         findings: judged.survey.findings.iter().map(|finding| FindingJson::of(judged, finding)).collect(),
         doubts: judged.survey.doubts.iter().map(|doubt| DoubtJson::of(judged, doubt)).collect(),
         reduced_speed: ReducedJson::of(judged, &reduced),
+        proof: ProofJson::of(judged),
         not_checked: not_checked(judged),
     };
     serde_json::to_string(&report).expect("names are text, and figures are finite or null")

@@ -137,6 +137,8 @@ pub(super) fn unproved(why: Unproved) -> &'static str {
     match why {
         Unproved::SamplesOnly => "samples_only",
         Unproved::BudgetSpent => "budget_spent",
+        Unproved::TooNarrow => "too_narrow",
+        Unproved::NotOneBranch => "not_one_branch",
         Unproved::NotFollowed => "not_followed",
         Unproved::NoRating => "no_rating",
         Unproved::NoMasses => "no_masses",

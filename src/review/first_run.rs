@@ -1,6 +1,6 @@
 use std::collections::BTreeMap;
 
-use crate::checks::{Check, Finding, Kind, SegmentSurvey, Unproved, Verdict, Watch, each_segment, judge_at};
+use crate::checks::{Check, Finding, Kind, SegmentSurvey, Verdict, Watch, each_segment, judge_at};
 use crate::motion::Segment;
 use crate::units::Share;
 
@@ -183,7 +183,7 @@ fn step_down(mut is_clear: impl FnMut(usize) -> bool) -> (Option<usize>, Vec<usi
 
 /// Whether a finding at full speed is one at every override. A proof that merely did not close may close at another.
 fn holds_at_any_speed(finding: &Finding) -> bool {
-    let open = matches!(finding.kind, Kind::Unproved(Unproved::BudgetSpent | Unproved::SamplesOnly));
+    let open = matches!(finding.kind, Kind::Unproved(why) if why.is_of_proof_alone());
     finding.check.is_of_posture_alone() && !open
 }
 

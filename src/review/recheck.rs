@@ -4,7 +4,7 @@ use std::thread;
 use crossbeam_channel::{Receiver, Sender, unbounded};
 
 use crate::arm::Arm;
-use crate::checks::Watch;
+use crate::checks::{SegmentSurvey, Survey, Watch, tightened};
 use crate::program::Recipe;
 
 use super::Judged;
@@ -13,13 +13,22 @@ use super::Judged;
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
 pub struct Ticket(u64);
 
-/// A reply is a finished check with the ticket of its request.
+/// A reply is finished work with the ticket of its request.
 #[derive(Debug, Clone)]
 pub struct Reply {
     /// Which request it answers.
     pub ticket: Ticket,
     /// What became of it.
-    pub judged: Judged,
+    pub done: Done,
+}
+
+/// What a worker has done.
+#[derive(Debug, Clone)]
+pub enum Done {
+    /// A recipe judged.
+    Judged(Judged),
+    /// One segment with its bounds proved closer, and the survey whose segment it is.
+    Closer(Arc<Survey>, Box<SegmentSurvey>),
 }
 
 /// How far the newest request is.
@@ -32,12 +41,9 @@ pub struct Progress {
 }
 
 #[derive(Debug)]
-struct Job {
-    ticket: Ticket,
-    arm: Arc<Arm>,
-    recipe: Arc<Recipe>,
-    before: Option<Judged>,
-    watch: Arc<Watch>,
+enum Job {
+    Judge { ticket: Ticket, arm: Arc<Arm>, recipe: Arc<Recipe>, before: Option<Judged>, watch: Arc<Watch> },
+    Tighten { ticket: Ticket, judged: Judged, segment: usize },
 }
 
 #[derive(Debug)]
@@ -76,8 +82,13 @@ impl Recheck {
         self.running = Some(Running { watch: Arc::clone(&watch), of: recipe.waypoints.len().saturating_sub(1) });
         let (arm, recipe) = (Arc::clone(arm), Arc::clone(recipe));
         // A worker that is gone shows as a closed channel of replies.
-        let _ = self.jobs.send(Job { ticket: self.newest, arm, recipe, before, watch });
+        let _ = self.jobs.send(Job::Judge { ticket: self.newest, arm, recipe, before, watch });
         self.newest
+    }
+
+    /// Asks for the bounds of one segment (counted from 0) of what was judged last to be proved closer.
+    pub fn tighten(&mut self, judged: &Judged, segment: usize) {
+        let _ = self.jobs.send(Job::Tighten { ticket: self.newest, judged: judged.clone(), segment });
     }
 
     /// Where replies arrive, to be waited for together with other news. Hand each to [`Recheck::accept`].
@@ -85,11 +96,13 @@ impl Recheck {
         &self.replies
     }
 
-    /// What a reply judged, if it answers the newest request.
-    pub fn accept(&mut self, reply: Reply) -> Option<Judged> {
+    /// What a reply brings, if it belongs to the newest request.
+    pub fn accept(&mut self, reply: Reply) -> Option<Done> {
         (reply.ticket == self.newest).then(|| {
-            self.running = None;
-            reply.judged
+            if matches!(reply.done, Done::Judged(_)) {
+                self.running = None;
+            }
+            reply.done
         })
     }
 
@@ -114,12 +127,19 @@ impl Drop for Recheck {
 
 fn work(jobs: &Receiver<Job>, answer: &Sender<Reply>) {
     while let Ok(job) = jobs.recv() {
-        // Stopped while it waited: a newer one stands behind it.
-        if job.watch.is_stopped() {
-            continue;
-        }
-        if let Some(judged) = Judged::of(&job.arm, &job.recipe, job.before.as_ref(), &job.watch)
-            && answer.send(Reply { ticket: job.ticket, judged }).is_err()
+        let reply = match job {
+            // Stopped while it waited: a newer one stands behind it.
+            Job::Judge { watch, .. } if watch.is_stopped() => None,
+            Job::Judge { ticket, arm, recipe, before, watch } => {
+                Judged::of(&arm, &recipe, before.as_ref(), &watch).map(|judged| Reply { ticket, done: Done::Judged(judged) })
+            }
+            Job::Tighten { ticket, judged, segment } => {
+                let closer = tightened(&judged.arm, &judged.recipe, &judged.plan, segment);
+                Some(Reply { ticket, done: Done::Closer(judged.survey, Box::new(closer)) })
+            }
+        };
+        if let Some(reply) = reply
+            && answer.send(reply).is_err()
         {
             return;
         }

@@ -1,4 +1,6 @@
-use crate::checks::Check;
+use std::sync::Arc;
+
+use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Edit;
 use crate::review::{Judged, Progress};
 
@@ -51,6 +53,8 @@ pub enum Action {
     Show(Check),
     /// The chart shows the worst of all joints, or the selected one.
     EveryJoint,
+    /// What was seen and what is proved of the segment, and its bounds proved closer.
+    Bounds,
     /// The keys and the signs.
     Help,
     /// Change the recipe; what it is in words, for the history.
@@ -75,4 +79,6 @@ pub enum Action {
     Checking(Progress),
     /// The check is done.
     Judged(Box<Judged>),
+    /// A segment of this survey with its bounds proved closer.
+    Closer(Arc<Survey>, Box<SegmentSurvey>),
 }

@@ -3,7 +3,7 @@ use std::sync::Arc;
 use ratatui::layout::Rect;
 
 use crate::arm::Arm;
-use crate::checks::Check;
+use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Recipe;
 use crate::review::{Judged, Progress, Session};
 
@@ -55,6 +55,8 @@ impl Pane {
 pub enum Page {
     /// The explanation of what is selected.
     Why,
+    /// What is proved of the segment.
+    Bounds,
     /// What was not checked, and the doubts.
     NotChecked,
     /// Keys and signs.
@@ -171,6 +173,10 @@ pub struct App {
     pub joint: usize,
     /// What the chart is set to.
     pub chart: ChartSetting,
+    /// The segment whose bounds are to be proved closer.
+    pub tighten: Option<usize>,
+    /// A segment with its bounds proved closer, and the survey that it belongs to.
+    pub closer: Option<(Arc<Survey>, Box<SegmentSurvey>)>,
     /// Lines that the explanation is scrolled down.
     pub why_scroll: usize,
     /// What was looked for last.
@@ -200,6 +206,8 @@ impl App {
             pane: Pane::List,
             joint: 0,
             chart: ChartSetting { check: Check::Rate, every_joint: false, cycle: false },
+            tighten: None,
+            closer: None,
             why_scroll: 0,
             found: String::new(),
             message: None,

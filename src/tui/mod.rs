@@ -6,6 +6,7 @@ mod app;
 mod arm;
 mod ask;
 mod bands;
+mod bounds;
 mod chart;
 mod click;
 mod curve;

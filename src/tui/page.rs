@@ -5,7 +5,7 @@ use super::layout::Layout;
 use super::sheet::{Sheet, wrap};
 use super::update::layout;
 use super::why::Spacing;
-use super::{help, not_checked, why};
+use super::{bounds, help, not_checked, why};
 
 /// A line of a text: pieces, each with its style.
 pub type Line = Vec<(String, Style)>;
@@ -24,6 +24,7 @@ fn text(app: &App, page: Page, width: usize) -> (String, Vec<Line>) {
     let width = width.saturating_sub(2).clamp(1, WIDEST);
     match page {
         Page::Why => (why::title(app, width), why::lines(app, width, Spacing::Airy)),
+        Page::Bounds => (bounds::title(app), bounds::lines(app, width)),
         Page::NotChecked => ("Not checked".to_owned(), not_checked::lines(app, width)),
         Page::Help => ("Help".to_owned(), help::lines(app.theme, width)),
     }

@@ -120,7 +120,7 @@ fn no_path(trouble: &NoPath) -> &'static str {
 fn why_open(why: Unproved) -> &'static str {
     match why {
         Unproved::SamplesOnly => "samples only",
-        Unproved::BudgetSpent => "not settled",
+        Unproved::BudgetSpent | Unproved::TooNarrow | Unproved::NotOneBranch => "not settled",
         Unproved::NotFollowed => "not followed",
         Unproved::NoRating => "no rating",
         Unproved::NoMasses => "no masses",

@@ -30,6 +30,7 @@ pub fn update(app: &mut App, action: Action) {
                 }
             }
         }
+        Action::Closer(survey, closer) => app.closer = Some((survey, closer)),
         asked => {
             app.message = None;
             by_mode(app, asked);
@@ -61,6 +62,7 @@ fn by_mode(app: &mut App, action: Action) {
         (Mode::Page(_, scroll), Action::ToEnd) => *scroll = usize::MAX / 2,
         (Mode::Page(..) | Mode::Menu(_), Action::Back) => app.mode = Mode::Panes,
         (Mode::Page(Page::Why, _), Action::ReadWhy)
+        | (Mode::Page(Page::Bounds, _), Action::Bounds)
         | (Mode::Page(Page::Help, _), Action::Help)
         | (Mode::Page(Page::NotChecked, _), Action::NotChecked)
         | (Mode::Page(..), Action::Enter) => app.mode = Mode::Panes,
@@ -94,6 +96,10 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::NextFinding => find(app, Session::go_to_next_finding),
         Action::PreviousFinding => find(app, Session::go_to_previous_finding),
         Action::ReadWhy => app.mode = Mode::Page(Page::Why, 0),
+        Action::Bounds => {
+            app.tighten = Some(app.segment());
+            app.mode = Mode::Page(Page::Bounds, 0);
+        }
         Action::NotChecked => app.mode = Mode::Page(Page::NotChecked, 0),
         Action::Help => app.mode = Mode::Page(Page::Help, 0),
         Action::GoTo => app.mode = Mode::Asking(Asking { question: Question::GoTo, typed: String::new() }),
@@ -202,6 +208,7 @@ fn is_named(action: &Action) -> bool {
             | Action::NextFinding
             | Action::PreviousFinding
             | Action::ReadWhy
+            | Action::Bounds
             | Action::NotChecked
             | Action::GoTo
             | Action::Find

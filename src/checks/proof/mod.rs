@@ -23,6 +23,7 @@
 mod ball;
 mod border;
 mod bounds;
+mod branch;
 mod closeness;
 mod cover;
 mod effort;
@@ -32,6 +33,6 @@ mod newton_euler;
 mod torque;
 mod view;
 
-pub(super) use cover::{Covered, cover};
+pub(super) use cover::{Covered, Stuck, cover};
 pub(super) use effort::Effort;
 pub use effort::Tally;

@@ -1,5 +1,6 @@
 use crate::arm::{Joint, MAX_JOINTS};
 use crate::checks::channel::{Channel, Scale};
+use crate::checks::meter::STANDS;
 use crate::checks::{Check, Meter};
 
 use super::ball::Slope;
@@ -89,6 +90,8 @@ impl<'a> Torques<'a> {
         let (low, high) = (low - radius, high + radius);
         let fastest = (u.abs() + du) * fastest_squared.sqrt();
         let friction = drive.friction.map_or(0.0, |friction| friction.asks(1.0, fastest));
+        // A joint that stands still all along has no friction to overcome, as the meter reads it.
+        let friction = if u.abs() + du <= STANDS { 0.0 } else { friction };
         let up = if u + du > 0.0 { friction } else { 0.0 };
         let down = if u - du < 0.0 { friction } else { 0.0 };
         let most = (high + up).max(down - low);

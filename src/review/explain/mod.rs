@@ -1,6 +1,7 @@
 //! The words in which findings, doubts and whole recipes are told. Screen, command line and reports share them.
 
 mod accel;
+mod bounds;
 mod brake;
 mod direction;
 mod doubt;
@@ -27,6 +28,7 @@ mod tcp_speed;
 mod unproved;
 mod wrap;
 
+pub use bounds::{bounds_text, proof_summary};
 pub use doubt::doubt_text;
 pub use explanation::{Bar, Explanation, Label, Paragraph};
 pub use first_run::{FIRST_RUN_CAUTIONS, first_run_text, held_back_words, stage_words};

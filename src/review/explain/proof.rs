@@ -14,8 +14,8 @@ pub fn proof_text(survey: &SegmentSurvey, result: &CheckResult) -> String {
         Proof::Witness => {
             format!("It was found by looking at {looked}, closer where it rises; the instant told here is enough to show it.")
         }
-        Proof::Open(Unproved::BudgetSpent) => {
-            format!("{looked} were looked at, and the proof for those between did not close within its budget.")
+        Proof::Open(Unproved::BudgetSpent | Unproved::TooNarrow | Unproved::NotOneBranch) => {
+            format!("{looked} were looked at, and the proof for those between did not close.")
         }
         Proof::Open(Unproved::NotFollowed) => format!("{looked} were looked at, up to where the path was lost."),
         Proof::Open(_) => format!("{looked} were looked at, closer where it rises; what lies between them is not proved."),

@@ -8,7 +8,9 @@ use super::{Judged, Label, Paragraph, check_words, place};
 pub(super) fn in_brief(why: Unproved) -> &'static str {
     match why {
         Unproved::SamplesOnly => "not proved between the instants looked at",
-        Unproved::BudgetSpent => "the proof did not close",
+        Unproved::BudgetSpent => "the proof's budget ended",
+        Unproved::TooNarrow => "the proof did not close",
+        Unproved::NotOneBranch => "one posture not shown",
         Unproved::NotFollowed => "not followed to its end",
         Unproved::NoRating => "no rating to hold it against",
         Unproved::NoMasses => "no link masses",
@@ -57,11 +59,24 @@ pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> V
         ),
         Unproved::BudgetSpent => (
             format!(
-                "{} instants were looked at and all were good, but the proof for those between did not close within its budget, \
-                 mostly because something changes very quickly there.",
+                "{} instants were looked at and all were good, but the proof for those between had used up its budget of postures when \
+                 it came to the stretch named here. Something changes very quickly on this segment.",
                 survey.looked_at
             ),
             "Where it was looked at nothing bad was seen; a narrow peak in between is possible all the same.",
+        ),
+        Unproved::TooNarrow => (
+            format!(
+                "{} instants were looked at and all were good, but in the middle of the stretch named here not even the narrowest \
+                 surroundings could be proved: it comes too near to a limit there, or to a singular posture.",
+                survey.looked_at
+            ),
+            "Where it was looked at nothing bad was seen; a narrow peak in between is possible all the same.",
+        ),
+        Unproved::NotOneBranch => (
+            "Every stretch of the path was proved by itself, but not that the arm goes from one into the next in one posture."
+                .to_owned(),
+            "The arm may change its posture on the way, as it does when it passes through a singular one.",
         ),
         Unproved::SamplesOnly => (
             format!("{} instants were looked at and all were good; those between were not proved.", survey.looked_at),

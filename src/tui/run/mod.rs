@@ -13,7 +13,7 @@ use ratatui::layout::Rect;
 
 use crate::arm::Arm;
 use crate::program::Recipe;
-use crate::review::{Recheck, Reply};
+use crate::review::{Done, Recheck, Reply};
 
 use crate::tui::action::Action;
 use crate::tui::app::{App, Wish};
@@ -71,6 +71,9 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
                 update(&mut app, Action::Checking(progress));
             }
         }
+        if let (Some(segment), Some(judged)) = (app.tighten.take(), app.judged()) {
+            recheck.tighten(judged, segment);
+        }
         screen.show(&app)?;
         match wait(&mut app, &mut recheck, &news)? {
             Turn::Draw => {}
@@ -121,8 +124,10 @@ fn wait(app: &mut App, recheck: &mut Recheck, news: &Receiver<News>) -> anyhow::
 }
 
 fn accept(app: &mut App, recheck: &mut Recheck, reply: Reply) {
-    if let Some(judged) = recheck.accept(reply) {
-        update(app, Action::Judged(Box::new(judged)));
+    match recheck.accept(reply) {
+        Some(Done::Judged(judged)) => update(app, Action::Judged(Box::new(judged))),
+        Some(Done::Closer(survey, closer)) => update(app, Action::Closer(survey, closer)),
+        None => {}
     }
 }
 
