@@ -29,7 +29,8 @@ const COARSE: usize = 4;
 const FINEST: usize = 9;
 
 /// Writes the motion over the whole cycle as CSV, quoted as RFC 4180 has it: a row at every multiple of `every` from the start
-/// of the cycle, and at every waypoint and corner of a speed law, one for each side where values differ. Poses are those of the
+/// of the cycle, and at every waypoint and corner of a speed law, one for each side where values differ. Of each joint value, rate,
+/// acceleration, holding torque, and the torque in motion with rotor, friction and balancer. Poses are those of the
 /// TCP in the base, angles roll, pitch, yaw about the fixed x, then y, then z axis. Beyond the place where a path is lost cells
 /// are empty.
 ///
@@ -56,7 +57,7 @@ fn headings(arm: &Arm) -> Vec<String> {
         let kind = joint.kind;
         let name = &joint.name;
         headings.extend([kind.value(), kind.rate(), kind.acceleration()].map(|of| format!("{name}_{}", of.ascii())));
-        headings.push(format!("{name}_hold_{}", kind.effort().ascii()));
+        headings.extend(["hold", "motion"].map(|what| format!("{name}_{what}_{}", kind.effort().ascii())));
     }
     headings.extend(
         [
@@ -88,7 +89,7 @@ fn cells(judged: &Judged, segment: &Segment, meter: &Meter, follower: &Follower,
     let followed = if u <= segment.followed_to() { follower.at(u) } else { None };
     match followed {
         Some(instant) => motion(judged, segment, meter, &instant, [rate, accel], row.doing, &mut cells),
-        None => cells.resize(3 + 4 * judged.arm.len() + 10, String::new()),
+        None => cells.resize(3 + 5 * judged.arm.len() + 10, String::new()),
     }
     cells
 }
@@ -115,7 +116,8 @@ fn motion(
         let values =
             [joint.value(reading[j]), joint.rate_of(reading[MAX_JOINTS + j]), joint.acceleration_of(reading[2 * MAX_JOINTS + j])];
         cells.extend(values.map(|value| value.number(FINE)));
-        cells.push(joint.effort_of(reading[3 * MAX_JOINTS + j]).number(COARSE));
+        let moving = reading[meter.slots(Check::Moving).start + j];
+        cells.extend([reading[3 * MAX_JOINTS + j], moving].map(|effort| joint.effort_of(effort).number(COARSE)));
     }
     let single = |check: Check| reading[meter.slots(check).start];
     let scaled = instant.jacobian.scaled_rows(arm.task(), arm.characteristic_length().m);
