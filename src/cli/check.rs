@@ -49,7 +49,8 @@ fn told(args: &CheckArgs, chosen: &Chosen, before: bool) -> String {
     let width = usize::from(args.width);
     let apart = if before { "\n" } else { "" };
     let parts = [
-        format!("{}\nno arm connected; {} on {}\n", headline(judged), chosen.recipe_file, judged.arm.name()),
+        told_in(&headline(judged), width)
+            + &told_in(&format!("no arm connected; {} on {}", chosen.recipe_file, judged.arm.name()), width),
         table(judged, width.min(80)),
         findings_text(judged, width),
         doubts_text(judged, width),
@@ -60,6 +61,10 @@ fn told(args: &CheckArgs, chosen: &Chosen, before: bool) -> String {
     ];
     let parts: Vec<String> = parts.into_iter().filter(|part| !part.is_empty()).collect();
     apart.to_owned() + &parts.join("\n")
+}
+
+fn told_in(text: &str, width: usize) -> String {
+    crate::review::wrap(text, width).join("\n") + "\n"
 }
 
 /// The second judgement, in manual mode at reduced speed.

@@ -9,25 +9,45 @@ use crate::units::{Measure, Share};
 /// Names are not cut shorter than this.
 const SHORTEST_NAME: usize = 8;
 
+/// Columns that a narrow table leaves out, those that go first in front: what is asked, then how; the room goes before either.
+const LEFT_OUT: [&[usize]; 3] = [&[], &[3], &[2, 3]];
+
 /// The segments in a table, a line each: number, name of the waypoint it arrives at, kind, what is asked, verdict, and what is
-/// nearest to its reserve. Names are cut where a line would be longer than `width`.
+/// nearest to its reserve. Where lines would be longer than `width`, names are cut, then columns are left out.
 pub(super) fn table(judged: &Judged, width: usize) -> String {
     let mut rows = vec![["#", "to", "how", "asked", "verdict", "nearest to its reserve"].map(str::to_owned)];
     rows.extend(judged.plan.segments.iter().enumerate().map(|(index, segment)| row(judged, index, segment)));
-    let widest = |column: usize| rows.iter().map(|row| row[column].width()).max().unwrap_or(0);
-    let mut widths = [0, 1, 2, 3, 4, 5].map(widest);
-    let gaps = widths.len() - 1;
-    let others = widths.iter().sum::<usize>() - widths[1] + gaps;
-    widths[1] = widths[1].min(width.saturating_sub(others).max(SHORTEST_NAME));
+    let whole = widths(&rows);
+    let others = |left_out: &[usize], widths: &[usize; 6]| {
+        let kept = (0..6).filter(|column| *column != 1 && !left_out.contains(column));
+        kept.map(|column| widths[column] + 1).sum::<usize>()
+    };
+    if others(&[], &whole) + SHORTEST_NAME > width {
+        for row in &mut rows {
+            if let Some((_, brief)) = row[5].split_once(", ").filter(|(room, _)| room.starts_with("room ")) {
+                row[5] = brief.replace(", asks ", " ");
+            }
+        }
+        "nearest".clone_into(&mut rows[0][5]);
+    }
+    let mut widths = widths(&rows);
+    let fits = |left_out: &&[usize]| others(left_out, &widths) + SHORTEST_NAME <= width;
+    let left_out = LEFT_OUT.into_iter().find(fits).unwrap_or(LEFT_OUT[2]);
+    widths[1] = widths[1].min(width.saturating_sub(others(left_out, &widths)).max(SHORTEST_NAME));
     let lines = rows.iter().map(|row| {
-        let cells = row.iter().zip(widths).enumerate().map(|(column, (cell, columns))| {
-            let cell = cut(cell, columns);
-            let gap = " ".repeat(columns - cell.width());
-            if column == 0 || column == 3 { gap + &cell } else { cell + &gap }
-        });
-        cells.collect::<Vec<_>>().join(" ").trim_end().to_owned() + "\n"
+        let cells =
+            row.iter().zip(widths).enumerate().filter(|(column, _)| !left_out.contains(column)).map(|(column, (cell, columns))| {
+                let cell = cut(cell, columns);
+                let gap = " ".repeat(columns - cell.width());
+                if column == 0 || column == 3 { gap + &cell } else { cell + &gap }
+            });
+        cut(cells.collect::<Vec<_>>().join(" ").trim_end(), width) + "\n"
     });
     lines.collect()
+}
+
+fn widths(rows: &[[String; 6]]) -> [usize; 6] {
+    [0, 1, 2, 3, 4, 5].map(|column| rows.iter().map(|row| row[column].width()).max().unwrap_or(0))
 }
 
 fn row(judged: &Judged, index: usize, segment: &Segment) -> [String; 6] {
