@@ -1,0 +1,89 @@
+//! Remedies: what would settle a finding. Each is tried, judged and proved again with the whole recipe, and only then offered; the
+//! words are made in `explain`.
+
+mod acceleration;
+mod desk;
+mod greatest;
+mod kinds;
+mod remedy;
+mod size;
+mod slower;
+mod trial;
+
+pub use desk::{Desk, Errand, News};
+pub use kinds::kinds_for;
+pub use remedy::{Change, Effect, Ends, Remedy, RemedyKind, Short, Told, Tried};
+
+use crate::checks::{Finding, Watch};
+use crate::units::Room;
+
+use super::Judged;
+use trial::Trial;
+
+/// What came of trying one kind.
+struct Outcome {
+    found: Vec<Remedy>,
+    short: Short,
+}
+
+impl Outcome {
+    fn nothing() -> Self {
+        Self::short(Short::Nearest(None))
+    }
+
+    fn short(short: Short) -> Self {
+        Self { found: Vec::new(), short }
+    }
+
+    fn of(offered: Result<Remedy, Short>) -> Self {
+        match offered {
+            Ok(remedy) => Self { found: vec![remedy], short: Short::Nearest(None) },
+            Err(short) => Self::short(short),
+        }
+    }
+}
+
+/// The greater of two rooms that were come to.
+fn nearer(one: Option<Room>, other: Option<Room>) -> Option<Room> {
+    match (one, other) {
+        (Some(one), Some(other)) => Some(if other.as_fraction() > one.as_fraction() { other } else { one }),
+        (one, other) => one.or(other),
+    }
+}
+
+/// Looks for remedies of a finding, kind by kind, and tells of each as soon as it is known; in an order that does not depend on the
+/// number of cores. Ends early, with what was told so far, when the watch stops it.
+pub fn search(judged: &Judged, finding: &Finding, watch: &Watch, mut tell: impl FnMut(Told)) {
+    let trial = Trial { judged, finding, watch };
+    for kind in kinds_for(judged, finding) {
+        let outcome = try_kind(&trial, kind);
+        if watch.is_stopped() {
+            return;
+        }
+        if outcome.found.is_empty() {
+            tell(Told::Tried(Tried { kind, short: outcome.short }));
+        }
+        for remedy in outcome.found {
+            tell(Told::Found(Box::new(remedy)));
+        }
+    }
+}
+
+/// All remedies of a finding, the least change first, and what was tried without success.
+pub fn found_by(judged: &Judged, finding: &Finding, watch: &Watch) -> (Vec<Remedy>, Vec<Tried>) {
+    let (mut remedies, mut tried) = (Vec::new(), Vec::new());
+    search(judged, finding, watch, |told| match told {
+        Told::Found(remedy) => remedies.push(*remedy),
+        Told::Tried(without) => tried.push(without),
+    });
+    remedies.sort_by(Remedy::order);
+    (remedies, tried)
+}
+
+fn try_kind(trial: &Trial, kind: RemedyKind) -> Outcome {
+    match kind {
+        RemedyKind::Slower => slower::slower(trial),
+        RemedyKind::Acceleration => acceleration::acceleration(trial),
+        _ => Outcome::nothing(),
+    }
+}

@@ -1,0 +1,231 @@
+use std::sync::Arc;
+
+use crate::checks::{Check, Finding, Kind, SegmentSurvey, Verdict, Watch, judge_at};
+use crate::motion::{Plan, Segment};
+use crate::program::{Edit, Recipe};
+use crate::units::{Room, Seconds, Share};
+
+use super::{Change, Effect, Judged, Remedy, Short};
+
+/// Two rooms that differ by less are told as the same.
+const SAME_ROOM: f64 = 0.005;
+
+/// What a change must bring about on the segment concerned.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Aim {
+    /// Everything that depends on how fast it runs is clear; what doesn't is no worse than it was.
+    Speeds,
+    /// Everything is clear.
+    All,
+    /// The check of the finding is clear; others are no worse than they were.
+    Check,
+}
+
+/// What was seen of the finding with a change.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Seen {
+    /// Whether the aim is met and nothing else is worse than before.
+    pub clear: bool,
+    /// The room of the finding's check and joint, if there is one to tell.
+    pub room: Option<Room>,
+}
+
+impl Seen {
+    const NOTHING: Self = Self { clear: false, room: None };
+}
+
+/// A trial of changes against one finding.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Trial<'a> {
+    pub judged: &'a Judged,
+    pub finding: &'a Finding,
+    pub watch: &'a Watch,
+}
+
+impl<'a> Trial<'a> {
+    /// The segment that the finding is of, in the version that it is of.
+    pub fn segment(&self) -> &'a Segment {
+        self.judged.plan.version(self.finding.segment, self.finding.stop)
+    }
+
+    /// The waypoint that the segment arrives at, counted from 0.
+    pub fn to(&self) -> usize {
+        self.segment().to
+    }
+
+    pub fn recipe(&self) -> &'a Recipe {
+        &self.judged.recipe
+    }
+
+    /// The edit of the waypoint that the segment arrives at.
+    pub fn change(&self, how: impl FnOnce(&mut crate::program::Waypoint)) -> Edit {
+        Edit::change(self.recipe(), self.to(), how)
+    }
+
+    /// What a change does to the segment concerned and, if that is as it should be, to all others that it touches. Each is judged
+    /// and proved by itself.
+    pub fn look(&self, edit: &Edit, aim: Aim) -> Seen {
+        let mut recipe = self.recipe().clone();
+        if edit.apply(&mut recipe).is_err() {
+            return Seen::NOTHING;
+        }
+        self.look_at(&recipe, inserted(edit), aim)
+    }
+
+    /// The same of a changed recipe, in which a waypoint may have been inserted.
+    pub fn look_at(&self, recipe: &Recipe, inserted: Option<usize>, aim: Aim) -> Seen {
+        let judged = self.judged;
+        let before = Some((judged.recipe.as_ref(), judged.plan.as_ref()));
+        let Some(replanned) = Plan::again(&judged.arm, recipe, before, &|| !self.watch.is_stopped()) else { return Seen::NOTHING };
+        let plan = &replanned.plan;
+        let to = self.to();
+        let same_rules = recipe.acceptance == judged.recipe.acceptance && plan.gravity == judged.plan.gravity;
+        let changed: Vec<usize> = (0..plan.segments.len()).filter(|&i| !same_rules || replanned.same[i].is_none()).collect();
+        let is_meant = |i: &usize| origin(plan.segments[*i].to, inserted) == to;
+        let (meant, others): (Vec<usize>, Vec<usize>) = changed.into_iter().partition(is_meant);
+        let mut seen = Seen { clear: !meant.is_empty(), room: None };
+        for (own, index) in meant.into_iter().map(|i| (true, i)).chain(others.into_iter().map(|i| (false, i))) {
+            if !own && !seen.clear || self.watch.is_stopped() {
+                break;
+            }
+            for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
+                let survey = judge_at(&judged.arm, index, segment, &recipe.acceptance, plan.gravity, Share::WHOLE);
+                seen.clear &= self.is_met(&survey, own.then_some(aim), origin(segment.to, inserted));
+                if own {
+                    seen.room = least(seen.room, self.room_in(&survey));
+                }
+                // A segment that cannot be followed shows no room worth telling.
+                if own && survey.verdict == Verdict::NoPath {
+                    return Seen { clear: false, room: None };
+                }
+            }
+        }
+        Seen { clear: seen.clear && !self.watch.is_stopped(), ..seen }
+    }
+
+    /// What an override does to the segment concerned.
+    pub fn look_at_override(&self, share: Share) -> Seen {
+        let (judged, index) = (self.judged, self.finding.segment);
+        let survey = judge_at(&judged.arm, index, self.segment(), &judged.recipe.acceptance, judged.plan.gravity, share);
+        Seen { clear: self.is_met(&survey, Some(Aim::Speeds), self.to()), room: self.room_in(&survey) }
+    }
+
+    /// Whether a survey of the segment that arrived at `to` meets an aim; without one, whether it is no worse than it was.
+    fn is_met(&self, survey: &SegmentSurvey, aim: Option<Aim>, to: usize) -> bool {
+        survey.findings.iter().all(|finding| {
+            let wanted = match aim {
+                Some(Aim::All) => true,
+                Some(Aim::Speeds) => !finding.check.is_of_posture_alone() || finding.check == self.finding.check,
+                Some(Aim::Check) => finding.check == self.finding.check,
+                None => false,
+            };
+            !wanted && self.was_as_bad(finding, to)
+        })
+    }
+
+    /// Whether a finding of the segment that arrived at `to` was there before, and was no better.
+    fn was_as_bad(&self, finding: &Finding, to: usize) -> bool {
+        let plan = &self.judged.plan;
+        self.judged.survey.findings.iter().any(|known| {
+            (known.check, known.joint) == (finding.check, finding.joint)
+                && (finding.check == Check::Rms || plan.segments[known.segment].to == to)
+                && known.verdict >= finding.verdict
+                && spare(known) <= spare(finding) + SAME_ROOM
+        })
+    }
+
+    /// The room of the finding's check and joint in a survey.
+    pub fn room_in(&self, survey: &SegmentSurvey) -> Option<Room> {
+        let result = survey.check(self.finding.check);
+        let peaks = result.peaks.iter().filter(|peak| peak.joint == self.finding.joint);
+        peaks.map(|peak| peak.room).reduce(Room::least)
+    }
+
+    /// The remedy that a change is: judged and proved with the whole recipe. An edit that is `only_told` is not offered to be
+    /// applied.
+    ///
+    /// # Errors
+    /// Why it is none.
+    pub fn offer(&self, change: Change, edit: Edit, size: f64, only_told: bool) -> Result<Remedy, Short> {
+        let before = self.judged;
+        let mut recipe = self.recipe().clone();
+        let nothing = Short::Nearest(None);
+        edit.apply(&mut recipe).map_err(|_| nothing)?;
+        if !recipe.faults(&before.arm).is_empty() {
+            return Err(nothing);
+        }
+        let after = Judged::of(&before.arm, &Arc::new(recipe), Some(before), self.watch).ok_or(nothing)?;
+        let inserted = inserted(&edit);
+        let effect = self.effect(&after, inserted);
+        let room = [self.room_of(before, None), self.room_of(&after, inserted)];
+        let is_settled = !effect.remains.iter().any(|f| (f.check, f.joint) == (self.finding.check, self.finding.joint));
+        if !is_settled {
+            return Err(Short::Nearest(room[1]));
+        }
+        if let Some(spoilt) = effect.worsens.iter().find(|finding| finding.verdict >= self.finding.verdict) {
+            return Err(Short::Spoils(*spoilt));
+        }
+        let costs = Seconds::s(after.plan.duration() - before.plan.duration());
+        Ok(Remedy { change, edit: (!only_told).then_some(edit), after, effect, room, costs, size })
+    }
+
+    fn effect(&self, after: &Judged, inserted: Option<usize>) -> Effect {
+        let to_of = |finding: &Finding| origin(after.plan.segments[finding.segment].to, inserted);
+        let is_left = |old: &Finding| {
+            let to = self.judged.plan.segments[old.segment].to;
+            after
+                .survey
+                .findings
+                .iter()
+                .any(|new| (new.check, new.joint) == (old.check, old.joint) && (new.check == Check::Rms || to_of(new) == to))
+        };
+        let own = |new: &&Finding| to_of(new) == self.to() || (new.check == Check::Rms && self.finding.check == Check::Rms);
+        Effect {
+            settles: self.judged.survey.findings.iter().filter(|old| !is_left(old)).copied().collect(),
+            remains: after.survey.findings.iter().filter(own).copied().collect(),
+            worsens: after.survey.findings.iter().filter(|new| !self.was_as_bad(new, to_of(new))).copied().collect(),
+        }
+    }
+
+    fn room_of(&self, judged: &Judged, inserted: Option<usize>) -> Option<Room> {
+        if self.finding.check == Check::Rms {
+            let peaks = judged.survey.cycle.rms.peaks.iter().filter(|peak| peak.joint == self.finding.joint);
+            return peaks.map(|peak| peak.room).reduce(Room::least);
+        }
+        let own = judged.survey.segments.iter().filter(|s| origin(judged.plan.segments[s.segment].to, inserted) == self.to());
+        own.filter_map(|survey| self.room_in(survey)).reduce(Room::least)
+    }
+}
+
+/// What is left over the reserve.
+fn spare(finding: &Finding) -> f64 {
+    match &finding.kind {
+        Kind::Excess(excess) => excess.room.as_fraction() - excess.reserve.as_fraction(),
+        Kind::NoPath(_) => f64::NEG_INFINITY,
+        Kind::Unproved(_) => 0.0,
+    }
+}
+
+fn least(one: Option<Room>, other: Option<Room>) -> Option<Room> {
+    match (one, other) {
+        (Some(one), Some(other)) => Some(one.least(other)),
+        (one, other) => one.or(other),
+    }
+}
+
+/// The waypoint of the unchanged recipe whose segment the one that arrives at `to` is, or is a part of.
+fn origin(to: usize, inserted: Option<usize>) -> usize {
+    match inserted {
+        Some(index) if to > index => to - 1,
+        _ => to,
+    }
+}
+
+/// Where an edit inserts a waypoint.
+fn inserted(edit: &Edit) -> Option<usize> {
+    match edit {
+        Edit::Insert { index, .. } => Some(*index),
+        Edit::Together(edits) => edits.iter().find_map(inserted),
+        _ => None,
+    }
+}
