@@ -2,13 +2,26 @@
 //! words are made in `explain`.
 
 mod acceleration;
+mod at_override;
 mod desk;
+mod dwell;
+mod fly_by;
 mod greatest;
+mod joint_move;
 mod kinds;
+mod least;
+mod leaves;
+mod load;
+mod mount;
+mod moved;
+mod posture;
 mod remedy;
+mod shift;
 mod size;
 mod slower;
 mod trial;
+mod turn;
+mod via;
 
 pub use desk::{Desk, Errand, News};
 pub use kinds::kinds_for;
@@ -84,6 +97,19 @@ fn try_kind(trial: &Trial, kind: RemedyKind) -> Outcome {
     match kind {
         RemedyKind::Slower => slower::slower(trial),
         RemedyKind::Acceleration => acceleration::acceleration(trial),
-        _ => Outcome::nothing(),
+        RemedyKind::FlyBy => fly_by::fly_by(trial),
+        RemedyKind::Dwell => dwell::dwell(trial),
+        RemedyKind::Turn => turn::turn(trial),
+        RemedyKind::Tilt => shift::tilt(trial),
+        RemedyKind::Shift => shift::shift(trial),
+        RemedyKind::Via => via::via(trial),
+        RemedyKind::JointMove => joint_move::joint_move(trial),
+        RemedyKind::Posture => posture::posture(trial),
+        RemedyKind::Override => at_override::at_override(trial),
+        RemedyKind::Load => load::heaviest(trial),
+        RemedyKind::Centre => load::nearest_centre(trial),
+        RemedyKind::Grip => load::grip(trial),
+        RemedyKind::MountHeight => mount::height(trial),
+        RemedyKind::MountTilt => mount::lean(trial),
     }
 }

@@ -75,6 +75,9 @@ impl<'a> Trial<'a> {
     /// The same of a changed recipe, in which a waypoint may have been inserted.
     pub fn look_at(&self, recipe: &Recipe, inserted: Option<usize>, aim: Aim) -> Seen {
         let judged = self.judged;
+        if self.finding.check == Check::Rms {
+            return self.look_at_cycle(recipe, inserted);
+        }
         let before = Some((judged.recipe.as_ref(), judged.plan.as_ref()));
         let Some(replanned) = Plan::again(&judged.arm, recipe, before, &|| !self.watch.is_stopped()) else { return Seen::NOTHING };
         let plan = &replanned.plan;
@@ -101,6 +104,15 @@ impl<'a> Trial<'a> {
             }
         }
         Seen { clear: seen.clear && !self.watch.is_stopped(), ..seen }
+    }
+
+    /// The same of what is judged for the cycle as a whole.
+    fn look_at_cycle(&self, recipe: &Recipe, inserted: Option<usize>) -> Seen {
+        let recipe = Arc::new(recipe.clone());
+        let Some(after) = Judged::of(&self.judged.arm, &recipe, Some(self.judged), self.watch) else { return Seen::NOTHING };
+        let effect = self.effect(&after, inserted);
+        let is_settled = !effect.remains.iter().any(|finding| finding.check == Check::Rms && finding.joint == self.finding.joint);
+        Seen { clear: is_settled && effect.worsens.is_empty(), room: self.room_of(&after, inserted) }
     }
 
     /// What an override does to the segment concerned.
@@ -167,6 +179,21 @@ impl<'a> Trial<'a> {
         }
         let costs = Seconds::s(after.plan.duration() - before.plan.duration());
         Ok(Remedy { change, edit: (!only_told).then_some(edit), after, effect, room, costs, size })
+    }
+
+    /// What an override of the whole program does to the segment, for information.
+    pub fn told_of_override(&self, share: Share, size: f64) -> Remedy {
+        let (judged, index) = (self.judged, self.finding.segment);
+        let own = || judged.survey.findings.iter().filter(|finding| finding.segment == index && finding.check != Check::Rms);
+        let effect = Effect {
+            settles: own().filter(|finding| !finding.check.is_of_posture_alone()).copied().collect(),
+            remains: own().filter(|finding| finding.check.is_of_posture_alone()).copied().collect(),
+            worsens: Vec::new(),
+        };
+        let moves: f64 = judged.plan.segments.iter().map(|segment| segment.duration()).sum();
+        let costs = Seconds::s(moves * (1.0 / share.as_fraction() - 1.0));
+        let room = [self.room_of(judged, None), self.look_at_override(share).room];
+        Remedy { change: Change::Override { share }, edit: None, after: judged.clone(), effect, room, costs, size }
     }
 
     fn effect(&self, after: &Judged, inserted: Option<usize>) -> Effect {
