@@ -251,8 +251,14 @@ fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<Str
             let words = kind_words(one.kind);
             match one.short {
                 Short::Nearest(Some(room)) => format!("{words} ({})", near(room)),
-                Short::Nearest(None) => format!("{words} (no motion came of it)"),
-                Short::Spoils(other) => format!("{words} (it makes {} no better)", subject(judged, &other)),
+                Short::Nearest(None) => format!("{words} (nothing to try it on)"),
+                Short::Spoils(other) => {
+                    format!(
+                        "{words} ({} is in the way on segment {})",
+                        subject(judged, &other),
+                        judged.plan.segments[other.segment].label()
+                    )
+                }
                 Short::Fixed => format!("{words} (the work fixes the points)"),
             }
         })

@@ -1,8 +1,8 @@
 use crate::program::Edit;
 use crate::units::Length;
 
-use super::trial::{Aim, Trial};
-use super::{Change, Outcome, Short, nearer, size};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Outcome, size};
 
 /// Radii that are tried, as parts of the one given; none is a stop.
 const PARTS: [f64; 8] = [0.8, 1.25, 0.6, 1.6, 0.4, 2.0, 0.2, 3.0];
@@ -18,11 +18,11 @@ pub(super) fn fly_by(trial: &Trial) -> Outcome {
         PARTS.iter().map(|part| (from.as_mm() * part / STEP).round() * STEP).filter(|mm| *mm >= STEP).collect();
     tried.dedup();
     let radii = tried.into_iter().map(|mm| Some(Length::mm(mm))).chain([None]);
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     for to in radii {
         // With a stop there the blend is gone, and with it what it asks; the whole recipe tells whether that settles it.
         let seen = trial.look(&edit(to), Aim::Check);
-        nearest = nearer(nearest, seen.room);
+        nearest.note(seen);
         if !seen.clear {
             continue;
         }
@@ -31,5 +31,5 @@ pub(super) fn fly_by(trial: &Trial) -> Outcome {
             return Outcome::of(Ok(remedy));
         }
     }
-    Outcome::short(Short::Nearest(nearest))
+    Outcome::short(nearest.short())
 }

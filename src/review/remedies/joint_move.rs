@@ -3,8 +3,8 @@ use crate::units::{Length, Share};
 
 use super::greatest::greatest_from_above;
 use super::leaves::leaves;
-use super::trial::{Aim, Trial};
-use super::{Change, Outcome, Short, nearer, size};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Outcome, size};
 
 /// A joint move instead of the line or arc, no faster than that is.
 pub(super) fn joint_move(trial: &Trial) -> Outcome {
@@ -17,19 +17,18 @@ pub(super) fn joint_move(trial: &Trial) -> Outcome {
     };
     let most = recipe.usual.share.map_or(100.0, Share::as_percent).clamp(1.0, 100.0);
     let above = shares_below(trial, segment.duration(), most as u32);
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     let mut found = None;
     for aim in [Aim::All, Aim::Check] {
         found = greatest_from_above(above + 1, above, |percent| {
             let seen = trial.look(&edit(percent), aim);
-            nearest = nearer(nearest, seen.room);
-            seen.clear
+            nearest.note(seen)
         });
         if found.is_some() {
             break;
         }
     }
-    let Some(percent) = found else { return Outcome::short(Short::Nearest(nearest)) };
+    let Some(percent) = found else { return Outcome::short(nearest.short()) };
     // The end may be reached in another posture by a joint move, so its joint values are those of the new plan.
     let Some(new) = planned(trial, &edit(percent)) else { return Outcome::nothing() };
     let bound = leaves(&trial.judged.arm, &new.start, &new.end, &segment.carried.tcp, &segment.path);

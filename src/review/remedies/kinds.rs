@@ -11,13 +11,13 @@ pub fn kinds_for(judged: &Judged, finding: &Finding) -> Vec<RemedyKind> {
     };
     let segment = judged.plan.version(finding.segment, finding.stop);
     let mut kinds: Vec<RemedyKind> = match finding.check {
-        Check::Rate => vec![Slower, FlyBy, JointMove, Posture, Turn, Tilt, Shift, Via, Override],
-        Check::Accel => vec![Slower, Acceleration, FlyBy, JointMove, Posture, Turn, Tilt, Shift, Via, Override],
-        Check::Moving => vec![Slower, Acceleration, FlyBy, Posture, Turn, Tilt, Shift, Override, Load, Centre, Grip],
-        Check::Holding | Check::Brake => vec![Posture, Turn, Tilt, Shift, Load, Centre, Grip, MountHeight, MountTilt],
+        Check::Rate => vec![Slower, FlyBy, JointMove, Posture, Via, Override, Turn, Tilt, Shift],
+        Check::Accel => vec![Slower, Acceleration, FlyBy, JointMove, Posture, Via, Override, Turn, Tilt, Shift],
+        Check::Moving => vec![Slower, Acceleration, FlyBy, Posture, Override, Load, Centre, Grip, Turn, Tilt, Shift],
+        Check::Holding | Check::Brake => vec![Load, Centre, Grip, Posture, MountHeight, MountTilt, Turn, Tilt, Shift],
         Check::Flange => vec![Load, Centre, Grip],
         Check::Rms => vec![Dwell, Slower, Acceleration, Load],
-        Check::Singular | Check::SpeedLeft => vec![JointMove, FlyBy, Posture, Turn, Tilt, Shift, Via],
+        Check::Singular | Check::SpeedLeft => vec![JointMove, FlyBy, Posture, Via, Turn, Tilt, Shift],
         Check::TcpSpeed => vec![Slower, Override],
         Check::Range => vec![Posture, JointMove, Turn, Tilt, Shift, Via],
         Check::Reach => match &finding.kind {

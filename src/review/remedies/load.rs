@@ -4,8 +4,8 @@ use crate::program::{Edit, Load};
 use crate::units::{Angle, Mass};
 
 use super::greatest::greatest;
-use super::trial::{Aim, Trial};
-use super::{Change, Outcome, Short, nearer};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Outcome};
 
 /// Masses are told in steps of this, kg.
 const STEP: f64 = 0.1;
@@ -48,14 +48,13 @@ pub(super) fn heaviest(trial: &Trial) -> Outcome {
     let now = load.body.mass;
     let above = (now / STEP - 1e-6).ceil().max(1.0) as u32;
     let mass = |steps: u32| crate::units::tidy(f64::from(steps) * STEP);
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     let guess = guess(trial, load).map_or(above / 2, |kg| (kg / STEP).floor().max(0.0) as u32);
     let found = greatest(above, guess, |steps| {
         let seen = trial.look(&of_mass(trial, load, mass(steps)), Aim::Check);
-        nearest = nearer(nearest, seen.room);
-        seen.clear
+        nearest.note(seen)
     });
-    let Some(steps) = found else { return Outcome::short(Short::Nearest(nearest)) };
+    let Some(steps) = found else { return Outcome::short(nearest.short()) };
     let to = mass(steps);
     let change = Change::Load { from: Mass::kg(now), to: Mass::kg(to) };
     Outcome::of(trial.offer(change, of_mass(trial, load, to), (now - to) / now, true))
@@ -81,11 +80,11 @@ pub(super) fn nearest_centre(trial: &Trial) -> Outcome {
     };
     let Kind::Excess(excess) = &trial.finding.kind else { return Outcome::nothing() };
     let reserve = excess.reserve.as_fraction();
-    let (mut by, mut nearest) = (V3::zeros(), None);
+    let (mut by, mut nearest) = (V3::zeros(), Nearest::default());
     for _ in 0..CORRECTIONS {
         let room = |by: &V3| trial.look(&moved(by), Aim::Check);
         let here = room(&by);
-        nearest = nearer(nearest, here.room);
+        nearest.note(here);
         if here.clear {
             return Outcome::of(trial.offer(Change::Centre { by }, moved(&by), by.norm(), true));
         }
@@ -105,13 +104,13 @@ pub(super) fn nearest_centre(trial: &Trial) -> Outcome {
             break;
         }
     }
-    Outcome::short(Short::Nearest(nearest))
+    Outcome::short(nearest.short())
 }
 
 /// The load turned in the grip by quarter turns about the axes of the TCP, the least turn that is clear.
 pub(super) fn grip(trial: &Trial) -> Outcome {
     let Some(load) = load(trial) else { return Outcome::nothing() };
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     for degrees in [90.0, -90.0, 180.0] {
         for axis in [2, 0, 1] {
             let angle = Angle::deg(degrees);
@@ -124,7 +123,7 @@ pub(super) fn grip(trial: &Trial) -> Outcome {
                 other.body.inertia = load.body.inertia.map(|tensor| turn * tensor * turn.transpose());
             });
             let seen = trial.look(&edit, Aim::Check);
-            nearest = nearer(nearest, seen.room);
+            nearest.note(seen);
             if seen.clear
                 && let Ok(remedy) = trial.offer(Change::Grip { axis, angle }, edit, angle.as_rad().abs(), true)
             {
@@ -132,5 +131,5 @@ pub(super) fn grip(trial: &Trial) -> Outcome {
             }
         }
     }
-    Outcome::short(Short::Nearest(nearest))
+    Outcome::short(nearest.short())
 }

@@ -27,8 +27,7 @@ pub use desk::{Desk, Errand, News};
 pub use kinds::kinds_for;
 pub use remedy::{Change, Effect, Ends, Remedy, RemedyKind, Short, Told, Tried};
 
-use crate::checks::{Finding, Watch};
-use crate::units::Room;
+use crate::checks::{Finding, Watch, in_order};
 
 use super::Judged;
 use trial::Trial;
@@ -56,30 +55,21 @@ impl Outcome {
     }
 }
 
-/// The greater of two rooms that were come to.
-fn nearer(one: Option<Room>, other: Option<Room>) -> Option<Room> {
-    match (one, other) {
-        (Some(one), Some(other)) => Some(if other.as_fraction() > one.as_fraction() { other } else { one }),
-        (one, other) => one.or(other),
-    }
-}
-
 /// Looks for remedies of a finding, kind by kind, and tells of each as soon as it is known; in an order that does not depend on the
 /// number of cores. Ends early, with what was told so far, when the watch stops it.
 pub fn search(judged: &Judged, finding: &Finding, watch: &Watch, mut tell: impl FnMut(Told)) {
     let trial = Trial { judged, finding, watch };
-    for kind in kinds_for(judged, finding) {
-        let outcome = try_kind(&trial, kind);
-        if watch.is_stopped() {
-            return;
-        }
+    let kinds = kinds_for(judged, finding);
+    let tried = |kind: &RemedyKind| (!watch.is_stopped()).then(|| (*kind, try_kind(&trial, *kind)));
+    in_order(&kinds, tried, |done| {
+        let Some((kind, outcome)) = done.filter(|_| !watch.is_stopped()) else { return };
         if outcome.found.is_empty() {
             tell(Told::Tried(Tried { kind, short: outcome.short }));
         }
         for remedy in outcome.found {
             tell(Told::Found(Box::new(remedy)));
         }
-    }
+    });
 }
 
 /// All remedies of a finding, the least change first, and what was tried without success.

@@ -2,8 +2,8 @@ use crate::geometry::{Pose, V3, turn_about};
 use crate::program::Edit;
 use crate::units::{Angle, Length};
 
-use super::trial::{Aim, Trial};
-use super::{Change, Outcome, Short, nearer};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Outcome};
 
 /// Heights that are tried, mm, the nearest first.
 const HEIGHTS: [f64; 10] = [50.0, -50.0, 100.0, -100.0, 150.0, -150.0, 200.0, -200.0, 300.0, -300.0];
@@ -31,7 +31,7 @@ pub(super) fn lean(trial: &Trial) -> Outcome {
 }
 
 fn first_clear<T: Copy>(trial: &Trial, tries: impl Iterator<Item = T>, told: impl Fn(T) -> (Change, Pose, f64)) -> Outcome {
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     for one in tries {
         if trial.watch.is_stopped() {
             break;
@@ -39,12 +39,12 @@ fn first_clear<T: Copy>(trial: &Trial, tries: impl Iterator<Item = T>, told: imp
         let (change, mount, size) = told(one);
         let edit = Edit::Mount(mount);
         let seen = trial.look(&edit, Aim::Check);
-        nearest = nearer(nearest, seen.room);
+        nearest.note(seen);
         if seen.clear
             && let Ok(remedy) = trial.offer(change, edit, size, true)
         {
             return Outcome::of(Ok(remedy));
         }
     }
-    Outcome::short(Short::Nearest(nearest))
+    Outcome::short(nearest.short())
 }

@@ -6,8 +6,8 @@ use crate::motion::{Plan, Segment};
 use crate::program::{Arrive, Edit, Given, Recipe, Taught};
 
 use super::moved::{tcp_at, typed};
-use super::trial::{Aim, Trial};
-use super::{Change, Outcome, Short, nearer, size};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Outcome, size};
 
 /// Postures are offered at most.
 const MOST_OFFERED: usize = 2;
@@ -39,7 +39,7 @@ pub(super) fn posture(trial: &Trial) -> Outcome {
     }
     let arm = &trial.judged.arm;
     tries.sort_by(|a, b| size::posed(arm, &a.1, &a.2).total_cmp(&size::posed(arm, &b.1, &b.2)));
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     let mut short = None;
     let mut found = Vec::new();
     for (run, now, other) in tries {
@@ -48,7 +48,7 @@ pub(super) fn posture(trial: &Trial) -> Outcome {
         }
         let Some(edit) = posed(trial, &run, &other) else { continue };
         let seen = trial.look(&edit, Aim::Check);
-        nearest = nearer(nearest, seen.room);
+        nearest.note(seen);
         if !seen.clear {
             continue;
         }
@@ -58,7 +58,7 @@ pub(super) fn posture(trial: &Trial) -> Outcome {
             Err(why) => short = Some(why),
         }
     }
-    Outcome { found, short: short.unwrap_or(Short::Nearest(nearest)) }
+    Outcome { found, short: short.unwrap_or(nearest.short()) }
 }
 
 fn run(trial: &Trial, waypoint: usize) -> Run {

@@ -6,8 +6,8 @@ use crate::units::{Angle, Length};
 
 use super::least::{Reach, shortest};
 use super::moved::{Displacement, displaced, free_ends, tcp_at};
-use super::trial::{Aim, Trial};
-use super::{Change, Ends, Outcome, Short, nearer, size};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Ends, Outcome, Short, size};
 
 /// Displacements that are tried, m.
 const SHIFTS: Reach = Reach { first: 0.002, most: 0.128 };
@@ -48,7 +48,7 @@ fn at_ends(
     if ends.is_empty() {
         return Outcome::short(Short::Fixed);
     }
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     let mut found: Vec<(Ends, V3)> = Vec::new();
     for aim in [Aim::All, Aim::Check] {
         let mut most = reach.most;
@@ -56,8 +56,7 @@ fn at_ends(
             let edit = |by: &V3| displaced(trial, ends, displacement(*by));
             let least = shortest(directions, Reach { most, ..reach }, |by| {
                 let seen = edit(by).map(|edit| trial.look(&edit, aim));
-                nearest = nearer(nearest, seen.and_then(|seen| seen.room));
-                seen.is_some_and(|seen| seen.clear)
+                seen.is_some_and(|seen| nearest.note(seen))
             });
             if let Some(by) = least {
                 most = most.min(by.norm());
@@ -69,7 +68,7 @@ fn at_ends(
         }
     }
     found.sort_by(|a, b| a.1.norm().total_cmp(&b.1.norm()));
-    let mut short = Short::Nearest(nearest);
+    let mut short = nearest.short();
     for (ends, by) in found {
         match grown(trial, by, |by| displaced(trial, ends, displacement(*by)), |by| told(ends, by)) {
             Ok(remedy) => return Outcome::of(Ok(remedy)),

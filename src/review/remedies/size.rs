@@ -5,9 +5,9 @@ use crate::arm::{Arm, JointKind, Joints};
 use crate::units::{Angle, Length};
 
 /// A waypoint moved this far counts 1, m.
-const FAR: f64 = 0.100;
-/// A tool turned this far where it matters counts 1, rad (15 degrees).
-const TILTED: f64 = 0.262;
+const FAR: f64 = 0.030;
+/// A tool turned this far where it matters counts 1, rad (10 degrees).
+const TILTED: f64 = 0.175;
 /// A tool turned this far where it does not matter counts 1, rad (180 degrees).
 const TURNED: f64 = std::f64::consts::PI;
 /// A speed brought down to this share counts 1.

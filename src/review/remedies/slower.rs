@@ -3,7 +3,7 @@ use crate::program::{Arrive, Edit, Waypoint};
 use crate::units::{Acceleration, Share, Speed, TurnAcceleration, TurnRate};
 
 use super::greatest::{greatest, greatest_from_above};
-use super::trial::{Aim, Trial};
+use super::trial::{Aim, Nearest, Trial};
 use super::{Change, Outcome, Short, size};
 
 /// A quantity below this many steps is told in tenths of a step.
@@ -51,11 +51,10 @@ pub(super) fn turn_down(trial: &Trial, dial: &Dial, size: fn(f64) -> f64) -> Out
 
 /// The greatest number of steps that is clear, by an order of search that suits the finding.
 fn lowered(trial: &Trial, above: u32, guess: u32, edit: impl Fn(u32) -> Edit) -> Result<u32, Short> {
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     let mut clear = |steps: u32, aim: Aim| {
         let seen = trial.look(&edit(steps), aim);
-        nearest = super::nearer(nearest, seen.room);
-        seen.clear
+        nearest.note(seen)
     };
     for aim in [Aim::Speeds, Aim::Check] {
         let found = if trial.finding.check.grows_with_speed() {
@@ -67,7 +66,7 @@ fn lowered(trial: &Trial, above: u32, guess: u32, edit: impl Fn(u32) -> Edit) ->
             return Ok(steps);
         }
     }
-    Err(Short::Nearest(nearest))
+    Err(nearest.short())
 }
 
 /// By which share the figure must fall by the scaling law: rates fall with the speed, accelerations with its square where the

@@ -1,6 +1,6 @@
 use std::sync::Arc;
 
-use crate::checks::{Check, Finding, Kind, SegmentSurvey, Verdict, Watch, judge_at};
+use crate::checks::{Check, Finding, Kind, SegmentSurvey, Watch, judge_at};
 use crate::motion::{Plan, Segment};
 use crate::program::{Edit, Recipe};
 use crate::units::{Room, Seconds, Share};
@@ -28,10 +28,36 @@ pub(super) struct Seen {
     pub clear: bool,
     /// The room of the finding's check and joint, if there is one to tell.
     pub room: Option<Room>,
+    /// Where that is as it should be: what else is not.
+    pub spoilt: Option<Finding>,
 }
 
 impl Seen {
-    const NOTHING: Self = Self { clear: false, room: None };
+    const NOTHING: Self = Self { clear: false, room: None, spoilt: None };
+}
+
+/// What came nearest of all that was tried of one kind.
+#[derive(Debug, Clone, Copy, Default)]
+pub(super) struct Nearest {
+    room: Option<Room>,
+    spoilt: Option<Finding>,
+}
+
+impl Nearest {
+    /// Takes note of what was seen, and yields whether it is clear.
+    pub fn note(&mut self, seen: Seen) -> bool {
+        let nearer = |room: Room| self.room.is_none_or(|known| room.as_fraction() > known.as_fraction());
+        if let Some(room) = seen.room.filter(|room| nearer(*room)) {
+            self.room = Some(room);
+        }
+        self.spoilt = self.spoilt.or(seen.spoilt);
+        seen.clear
+    }
+
+    /// Why nothing came of it.
+    pub fn short(&self) -> Short {
+        self.spoilt.map_or(Short::Nearest(self.room), Short::Spoils)
+    }
 }
 
 /// A trial of changes against one finding.
@@ -86,20 +112,18 @@ impl<'a> Trial<'a> {
         let changed: Vec<usize> = (0..plan.segments.len()).filter(|&i| !same_rules || replanned.same[i].is_none()).collect();
         let is_meant = |i: &usize| origin(plan.segments[*i].to, inserted) == to;
         let (meant, others): (Vec<usize>, Vec<usize>) = changed.into_iter().partition(is_meant);
-        let mut seen = Seen { clear: !meant.is_empty(), room: None };
+        let mut seen = Seen { clear: !meant.is_empty(), ..Seen::NOTHING };
         for (own, index) in meant.into_iter().map(|i| (true, i)).chain(others.into_iter().map(|i| (false, i))) {
             if !own && !seen.clear || self.watch.is_stopped() {
                 break;
             }
             for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
                 let survey = judge_at(&judged.arm, index, segment, &recipe.acceptance, plan.gravity, Share::WHOLE);
-                seen.clear &= self.is_met(&survey, own.then_some(aim), origin(segment.to, inserted));
+                let amiss = self.amiss(&survey, own.then_some(aim), origin(segment.to, inserted));
+                seen.clear &= amiss.is_none();
+                seen.spoilt = seen.spoilt.or(amiss.filter(|amiss| !(own && self.is_same(amiss))));
                 if own {
                     seen.room = least(seen.room, self.room_in(&survey));
-                }
-                // A segment that cannot be followed shows no room worth telling.
-                if own && survey.verdict == Verdict::NoPath {
-                    return Seen { clear: false, room: None };
                 }
             }
         }
@@ -112,27 +136,37 @@ impl<'a> Trial<'a> {
         let Some(after) = Judged::of(&self.judged.arm, &recipe, Some(self.judged), self.watch) else { return Seen::NOTHING };
         let effect = self.effect(&after, inserted);
         let is_settled = !effect.remains.iter().any(|finding| finding.check == Check::Rms && finding.joint == self.finding.joint);
-        Seen { clear: is_settled && effect.worsens.is_empty(), room: self.room_of(&after, inserted) }
+        let spoilt = effect.worsens.first().copied();
+        Seen { clear: is_settled && spoilt.is_none(), room: self.room_of(&after, inserted), spoilt: spoilt.filter(|_| is_settled) }
     }
 
     /// What an override does to the segment concerned.
     pub fn look_at_override(&self, share: Share) -> Seen {
         let (judged, index) = (self.judged, self.finding.segment);
         let survey = judge_at(&judged.arm, index, self.segment(), &judged.recipe.acceptance, judged.plan.gravity, share);
-        Seen { clear: self.is_met(&survey, Some(Aim::Speeds), self.to()), room: self.room_in(&survey) }
+        let amiss = self.amiss(&survey, Some(Aim::Speeds), self.to());
+        Seen { clear: amiss.is_none(), room: self.room_in(&survey), spoilt: amiss.filter(|amiss| !self.is_same(amiss)) }
     }
 
-    /// Whether a survey of the segment that arrived at `to` meets an aim; without one, whether it is no worse than it was.
-    fn is_met(&self, survey: &SegmentSurvey, aim: Option<Aim>, to: usize) -> bool {
-        survey.findings.iter().all(|finding| {
-            let wanted = match aim {
-                Some(Aim::All) => true,
-                Some(Aim::Speeds) => !finding.check.is_of_posture_alone() || finding.check == self.finding.check,
-                Some(Aim::Check) => finding.check == self.finding.check,
-                None => false,
-            };
-            !wanted && self.was_as_bad(finding, to)
-        })
+    /// A finding that stands against an aim on the segment that arrived at `to`; without an aim, one that is new or worse. The
+    /// finding that is to be settled is told before others.
+    fn amiss(&self, survey: &SegmentSurvey, aim: Option<Aim>, to: usize) -> Option<Finding> {
+        let is_wanted = |finding: &Finding| match aim {
+            Some(Aim::All) => true,
+            Some(Aim::Speeds) => !finding.check.is_of_posture_alone() || finding.check == self.finding.check,
+            Some(Aim::Check) => finding.check == self.finding.check,
+            None => false,
+        };
+        let against = survey.findings.iter().filter(|finding| is_wanted(finding) || !self.was_as_bad(finding, to));
+        let found = against.min_by_key(|finding| (aim.is_none() || !self.is_same(finding), finding.check != Check::Reach))?;
+        // Told by the number that its segment has in the unchanged plan.
+        let segment = self.judged.plan.index_arriving(to).unwrap_or(found.segment);
+        Some(Finding { segment, ..*found })
+    }
+
+    /// Whether a finding of the segment concerned is of the check and joint that are to be settled.
+    fn is_same(&self, finding: &Finding) -> bool {
+        (finding.check, finding.joint) == (self.finding.check, self.finding.joint)
     }
 
     /// Whether a finding of the segment that arrived at `to` was there before, and was no better.

@@ -4,8 +4,8 @@ use crate::units::{Angle, Length, Seconds};
 
 use super::least::{Reach, shortest};
 use super::shift::{directions, grown};
-use super::trial::{Aim, Trial};
-use super::{Change, Outcome, Short, nearer, size};
+use super::trial::{Aim, Nearest, Trial};
+use super::{Change, Outcome, size};
 
 /// How far beside the line a point is tried, m.
 const BESIDE: Reach = Reach { first: 0.004, most: 0.128 };
@@ -44,19 +44,18 @@ pub(super) fn via(trial: &Trial) -> Outcome {
         Edit::Insert { index: trial.to(), waypoint: Box::new(waypoint) }
     };
     let told = |by: V3| (Change::Via { u, by }, size::added(Length::m(by.norm())));
-    let mut nearest = None;
+    let mut nearest = Nearest::default();
     for aim in [Aim::All, Aim::Check] {
         let mut clear = |by: &V3| {
             let seen = trial.look(&edit(by), aim);
-            nearest = nearer(nearest, seen.room);
-            seen.clear
+            nearest.note(seen)
         };
         let found = if clear(&V3::zeros()) { Some(V3::zeros()) } else { shortest(&directions(trial, false), BESIDE, clear) };
         if let Some(by) = found {
             return Outcome::of(grown(trial, by, |by| Some(edit(by)), told));
         }
     }
-    Outcome::short(Short::Nearest(nearest))
+    Outcome::short(nearest.short())
 }
 
 /// Whether the arm's waypoints say how the tool is turned.
