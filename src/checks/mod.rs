@@ -44,6 +44,6 @@ pub use proof::Tally;
 pub use result::{CheckResult, Peak, Place, Profile, Proof, SegmentSurvey, Unproved};
 pub use rms::{Cycle, RmsShare, is_closed};
 pub use stopping::{JointStop, Stopping, stopping};
-pub use survey::{Before, Survey, Watch, each_segment, survey, tightened};
+pub use survey::{Before, Survey, Watch, each_segment, in_order, survey, tightened};
 pub use torque_sum::TorqueSum;
 pub use verdict::Verdict;

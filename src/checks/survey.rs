@@ -95,6 +95,30 @@ pub fn each_segment<T: Send>(plan: &Plan, watch: &Watch, work: impl Fn(usize, &S
         .collect()
 }
 
+/// Does some work for every item on all cores and hands the results on in the items' order, each as soon as it and all before it
+/// are done. Not to be called from work that itself runs so.
+pub fn in_order<I: Sync, T: Send>(items: &[I], work: impl Fn(&I) -> T + Sync, mut hand_on: impl FnMut(T)) {
+    let (send, receive) = std::sync::mpsc::channel();
+    let work = &work;
+    rayon::in_place_scope(|scope| {
+        for (index, item) in items.iter().enumerate() {
+            let send = send.clone();
+            // Whoever waits for results stays until the last.
+            scope.spawn(move |_| drop(send.send((index, work(item)))));
+        }
+        drop(send);
+        let mut waiting = std::collections::BTreeMap::new();
+        let mut next = 0;
+        for (index, result) in receive {
+            waiting.insert(index, result);
+            while let Some(result) = waiting.remove(&next) {
+                hand_on(result);
+                next += 1;
+            }
+        }
+    });
+}
+
 /// An earlier survey of the same arm, and which of its segments the new plan's are.
 #[derive(Debug, Clone, Copy)]
 pub struct Before<'a> {

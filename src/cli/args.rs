@@ -58,7 +58,8 @@ pub(super) enum Command {
                             With --json every recipe is one JSON object on one line."
     )]
     Check(CheckArgs),
-    /// Tell findings at length: what, where, why, what happens if it is left alone, what the verdict rests on
+    /// Tell findings at length: what, where, why, what happens if it is left alone, what the verdict rests on,
+    /// what would settle it
     #[command(after_help = "Exit codes: 0 told, 2 the recipe could not be judged or has no such segment.")]
     Explain(ExplainArgs),
     /// Plan the first run: at which overrides everything is clear, stage by stage and segment by segment
@@ -110,6 +111,9 @@ pub(super) struct ExplainArgs {
     /// Prove the bounds of that segment closer, and print what was seen and what is proved of every check
     #[arg(long, requires = "segment")]
     pub tighten: bool,
+    /// Leave out the remedies, which take a while to try
+    #[arg(long)]
+    pub no_remedies: bool,
     /// Columns to wrap text at
     #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
     pub width: u16,

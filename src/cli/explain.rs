@@ -1,5 +1,5 @@
-use crate::checks::{Finding, tightened};
-use crate::review::{Judged, bounds_text, explain, headline, no_finding};
+use crate::checks::{Finding, Watch, tightened};
+use crate::review::{Explanation, Judged, bounds_text, explain, found_by, headline, no_finding, remedies_text};
 
 use super::args::ExplainArgs;
 use super::chosen::chosen;
@@ -25,7 +25,8 @@ pub(super) fn run(args: &ExplainArgs) -> anyhow::Result<Code> {
     };
     let is_meant = |finding: &&Finding| wanted.as_ref().is_none_or(|meant| meant.contains(&finding.segment));
     let mut parts = vec![headline(&judged) + "\n"];
-    parts.extend(judged.survey.findings.iter().filter(is_meant).map(|finding| explanation_text(&explain(&judged, finding), width)));
+    let told = |finding: &Finding| if args.no_remedies { explain(&judged, finding) } else { with_remedies(&judged, finding) };
+    parts.extend(judged.survey.findings.iter().filter(is_meant).map(|finding| explanation_text(&told(finding), width)));
     match wanted {
         Some(meant) => {
             let quiet = meant.iter().copied().filter(|&index| judged.survey.segments[index].findings.is_empty());
@@ -47,4 +48,12 @@ fn closer(judged: &Judged, index: usize, width: usize) -> String {
     let title = format!("proved closer: segment {}, {} postures\n", judged.plan.segments[index].label(), survey.tally.postures);
     let lines = bounds_text(judged, &survey);
     title + &lines.iter().map(|line| hanging("  ", line, width)).collect::<String>()
+}
+
+/// A finding told together with what would settle it.
+fn with_remedies(judged: &Judged, finding: &Finding) -> Explanation {
+    let mut told = explain(judged, finding);
+    let (remedies, tried) = found_by(judged, finding, &Watch::default());
+    told.paragraphs.extend(remedies_text(judged, finding, &remedies, &tried));
+    told
 }

@@ -81,13 +81,13 @@ pub(super) fn usual(top: &Table<'_>) -> Usual {
 /// The tables `tool`.
 pub(super) fn tools(top: &Table<'_>) -> Vec<Tool> {
     each(top, "tool", |table| {
-        table.only(&["name", "tcp", "mass", "com", "inertia", "grounds", "points"]);
+        table.only(&["name", "tcp", "mass", "com", "inertia", "grounds", "points", "turns-freely"]);
         let name = name(table);
         if !table.has("tcp") {
             table.missing("tcp", "it must be a table { xyz, rpy }: where the TCP stands on the flange");
         }
         let tcp = table.table("tcp").map_or_else(Pose::identity, |tcp| own_pose(&tcp));
-        Tool { name, tcp, body: maybe_body(table), points: points(table) }
+        Tool { name, tcp, body: maybe_body(table), points: points(table), turns_freely: table.is_true("turns-freely") }
     })
 }
 

@@ -12,6 +12,9 @@ pub struct Tool {
     pub body: Option<Body>,
     /// Points of it whose speed is told besides that of the TCP.
     pub points: Vec<ToolPoint>,
+    /// Whether the work does not care how the tool is turned about its own axis (z of the TCP system), as with a suction cup in
+    /// its middle or a round nozzle. A remedy may then turn it.
+    pub turns_freely: bool,
 }
 
 /// A named point of a tool, such as the far end of a grip.

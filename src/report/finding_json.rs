@@ -92,6 +92,7 @@ fn key(label: Label) -> &'static str {
         Label::Why => "why",
         Label::LeftAlone => "left_alone",
         Label::RestsOn => "rests_on",
+        Label::Remedies => "remedies",
     }
 }
 

@@ -11,6 +11,8 @@ pub enum Label {
     LeftAlone,
     /// What the verdict rests on.
     RestsOn,
+    /// What would settle it, tried.
+    Remedies,
 }
 
 impl Label {
@@ -22,6 +24,7 @@ impl Label {
             Self::Why => "Why",
             Self::LeftAlone => "Left alone",
             Self::RestsOn => "Rests on",
+            Self::Remedies => "Remedies",
         }
     }
 }

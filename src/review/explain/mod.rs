@@ -20,6 +20,7 @@ mod range;
 mod rate;
 mod reach;
 mod reduced_speed;
+mod remedy;
 mod rms;
 mod scene;
 mod singular;
@@ -36,6 +37,7 @@ pub use headline::{check_words, headline};
 pub use no_finding::no_finding;
 pub use proof::proof_text;
 pub use reduced_speed::{fastest_text, reduced_speed_text};
+pub use remedy::{kind_words, remedies_text, remedy_text, remedy_title};
 pub use stopping::{joint_stop_words, stopping_text};
 pub use wrap::wrap;
 
