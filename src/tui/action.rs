@@ -2,7 +2,7 @@ use std::sync::Arc;
 
 use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Edit;
-use crate::review::{Judged, Progress};
+use crate::review::{Judged, Progress, Told};
 
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
 #[derive(Debug, Clone)]
@@ -53,6 +53,8 @@ pub enum Action {
     Show(Check),
     /// The chart shows the worst of all joints, or the selected one.
     EveryJoint,
+    /// The remedies of the finding.
+    Remedies,
     /// What was seen and what is proved of the segment, and its bounds proved closer.
     Bounds,
     /// The keys and the signs.
@@ -79,6 +81,8 @@ pub enum Action {
     Checking(Progress),
     /// The check is done.
     Judged(Box<Judged>),
+    /// What a search for remedies tells, and how far it is; nothing told when it has ended.
+    Told(Option<Told>, Option<[usize; 2]>),
     /// A segment of this survey with its bounds proved closer.
     Closer(Arc<Survey>, Box<SegmentSurvey>),
 }

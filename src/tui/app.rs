@@ -11,6 +11,7 @@ use super::action::Action;
 use super::curve::Subject;
 use super::edits::Edits;
 use super::keys::{Binding, name};
+use super::remedies::Remedies;
 use super::scene::Scene;
 use super::theme::Theme;
 
@@ -120,6 +121,8 @@ pub enum Mode {
     Page(Page, usize),
     /// A menu over the panes.
     Menu(Menu),
+    /// The remedies of the finding, one of them chosen.
+    Remedies,
     /// A question in the lowest row.
     Asking(Asking),
 }
@@ -177,6 +180,8 @@ pub struct App {
     pub tighten: Option<usize>,
     /// A segment with its bounds proved closer, and the survey that it belongs to.
     pub closer: Option<(Arc<Survey>, Box<SegmentSurvey>)>,
+    /// What is known of the remedies of the finding that is looked at.
+    pub remedies: Remedies,
     /// Lines that the explanation is scrolled down.
     pub why_scroll: usize,
     /// What was looked for last.
@@ -208,6 +213,7 @@ impl App {
             chart: ChartSetting { check: Check::Rate, every_joint: false, cycle: false },
             tighten: None,
             closer: None,
+            remedies: Remedies::default(),
             why_scroll: 0,
             found: String::new(),
             message: None,

@@ -46,6 +46,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
     let wanted = |action: &Action| match (&app.mode, action) {
         (_, Action::Help | Action::Quit) => true,
         (Mode::Menu(_), action) => matches!(action, Action::Up | Action::Enter),
+        (Mode::Remedies, action) => matches!(action, Action::Up | Action::Enter | Action::NextFinding | Action::Undo),
         (Mode::Page(Page::Why, _), action) => matches!(action, Action::Up | Action::Worst | Action::NextFinding),
         (Mode::Page(..), action) => matches!(action, Action::Up),
         _ => true,
@@ -61,7 +62,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
                 "scroll".clone_into(word);
             }
             if key == "Enter" {
-                "choose".clone_into(word);
+                if matches!(app.mode, Mode::Remedies) { "make this change" } else { "choose" }.clone_into(word);
             }
         }
         hints.insert(0, (false, ("Esc".to_owned(), "back".to_owned())));

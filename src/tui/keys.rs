@@ -38,6 +38,7 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('n')], Action::NextFinding, "next finding", "next"),
     binding(&[KeyCode::Char('p')], Action::PreviousFinding, "previous finding", ""),
     binding(&[KeyCode::Char('y')], Action::ReadWhy, "why, on a whole page", "why"),
+    binding(&[KeyCode::Char('o')], Action::Remedies, "remedies that were tried", "remedies"),
     binding(&[KeyCode::Char('b')], Action::Bounds, "what is proved, closer", ""),
     binding(&[KeyCode::Char('c')], Action::NotChecked, "not checked, and doubts", "not checked"),
     binding(&[KeyCode::Char('g')], Action::GoTo, "go to waypoint or time", "go to"),

@@ -25,6 +25,7 @@ mod options;
 mod page;
 mod phrases;
 mod raster;
+mod remedies;
 mod ribbon;
 mod rows;
 mod run;
@@ -42,6 +43,7 @@ pub use action::Action;
 pub use app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
+pub use remedies::wanted as remedies_wanted;
 pub use run::{Screen, Started, restore, run};
 pub use theme::Theme;
 pub use update::update;
@@ -58,6 +60,12 @@ pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
         let height = area.height - layout.headline.height - layout.footer.height;
         let whole = Rect { y: layout.headline.bottom(), height, ..area };
         page::draw(&mut Sheet::new(buffer, whole, theme), app, page, scroll);
+        return;
+    }
+    if matches!(app.mode, Mode::Remedies) {
+        let height = area.height - layout.headline.height - layout.footer.height;
+        let whole = Rect { y: layout.headline.bottom(), height, ..area };
+        remedies::draw(&mut Sheet::new(buffer, whole, theme), app);
         return;
     }
     let mut pane = |area: Rect, draw: fn(&mut Sheet, &App)| {

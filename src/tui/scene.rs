@@ -2,13 +2,14 @@ use std::sync::Arc;
 
 use crate::checks::{Survey, Verdict};
 use crate::motion::Cursor;
-use crate::review::{Explanation, explain, headline, no_finding, not_checked};
+use crate::review::{Explanation, Label, Paragraph, explain, headline, no_finding, not_checked};
 
 use super::app::App;
 use super::bands::Bands;
 use super::curve::{Curve, Subject};
 use super::gauges::Gauges;
 use super::layout::Layout;
+use super::remedies;
 use super::rows::Rows;
 use super::sketch::Sketch;
 
@@ -35,7 +36,7 @@ pub struct Scene {
     width: Option<usize>,
     cursor: Option<Cursor>,
     subject: Option<Subject>,
-    told: Option<(usize, Option<usize>)>,
+    told: Option<(usize, Option<usize>, usize)>,
 }
 
 /// Brings the scene up to what the app shows.
@@ -70,14 +71,26 @@ pub fn refresh(app: &mut App) {
         scene.curve = Curve::of(judged, subject);
         scene.subject = Some(subject);
     }
-    let told = (session.cursor().segment, session.finding_number());
-    if scene.told != Some(told) {
-        scene.why = match session.finding() {
-            Some(finding) => Some(explain(judged, finding)),
-            None if told.0 < session.segments() => Some(no_finding(judged, told.0)),
-            None => None,
-        };
-        scene.told = Some(told);
+    let told = (session.cursor().segment, session.finding_number(), app.remedies.count());
+    if scene.told == Some(told) {
+        return;
+    }
+    let mut why = match session.finding() {
+        Some(finding) => Some(explain(judged, finding)),
+        None if told.0 < session.segments() => Some(no_finding(judged, told.0)),
+        None => None,
+    };
+    if let Some(why) = &mut why {
+        // In brief where it is seen at once, in full at the end.
+        let brief = remedies::in_brief(app).map(|text| Paragraph { label: Label::Remedies, text, bars: Vec::new() });
+        let after_what = why.paragraphs.len().min(1);
+        why.paragraphs.splice(after_what..after_what, brief);
+        why.paragraphs.extend(remedies::in_full(app));
+    }
+    let scene = &mut app.scene;
+    scene.why = why;
+    if scene.told.is_none_or(|(segment, finding, _)| (segment, finding) != (told.0, told.1)) {
         app.why_scroll = 0;
     }
+    scene.told = Some(told);
 }

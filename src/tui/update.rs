@@ -10,7 +10,7 @@ use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, edits, page};
+use super::{click, edits, page, remedies};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
@@ -30,6 +30,7 @@ pub fn update(app: &mut App, action: Action) {
                 }
             }
         }
+        Action::Told(told, progress) => remedies::hear(app, told, progress),
         Action::Closer(survey, closer) => app.closer = Some((survey, closer)),
         asked => {
             app.message = None;
@@ -45,6 +46,18 @@ fn by_mode(app: &mut App, action: Action) {
         (_, Action::Quit) => app.wish = Wish::Quit,
         (_, Action::Suspend) => app.wish = Wish::Suspend,
         (Mode::Asking(_), action) => ask::answer(app, &action),
+        (
+            Mode::Remedies,
+            action
+            @ (Action::Up | Action::Down | Action::ToStart | Action::ToEnd | Action::Back | Action::Enter | Action::Remedies),
+        ) => {
+            remedies::choose(app, &action);
+        }
+        (Mode::Remedies, Action::Left | Action::Right | Action::LeapBack | Action::LeapOn | Action::Click(..)) => {}
+        (Mode::Remedies, action @ (Action::Worst | Action::NextFinding | Action::PreviousFinding)) => {
+            in_panes(app, &action);
+            app.mode = Mode::Remedies;
+        }
         (Mode::Menu(menu), Action::Up) => menu.chosen = menu.chosen.checked_sub(1).unwrap_or(menu.items.len() - 1),
         (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
         (Mode::Menu(menu), Action::Enter) => {
@@ -96,6 +109,7 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::NextFinding => find(app, Session::go_to_next_finding),
         Action::PreviousFinding => find(app, Session::go_to_previous_finding),
         Action::ReadWhy => app.mode = Mode::Page(Page::Why, 0),
+        Action::Remedies => app.mode = Mode::Remedies,
         Action::Bounds => {
             app.tighten = Some(app.segment());
             app.mode = Mode::Page(Page::Bounds, 0);
@@ -208,6 +222,7 @@ fn is_named(action: &Action) -> bool {
             | Action::NextFinding
             | Action::PreviousFinding
             | Action::ReadWhy
+            | Action::Remedies
             | Action::Bounds
             | Action::NotChecked
             | Action::GoTo

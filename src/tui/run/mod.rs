@@ -13,12 +13,13 @@ use ratatui::layout::Rect;
 
 use crate::arm::Arm;
 use crate::program::Recipe;
-use crate::review::{Done, Recheck, Reply};
+use crate::review::{Desk, Done, Recheck, Reply};
 
 use crate::tui::action::Action;
 use crate::tui::app::{App, Wish};
 use crate::tui::keys::action_of;
 use crate::tui::options::Options;
+use crate::tui::remedies::wanted;
 use crate::tui::update::update;
 
 use news::{News, listen};
@@ -60,6 +61,7 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
     let (width, height) = screen.size()?;
     let mut app = App::new(started.arm, started.recipe, options.theme(), Rect::new(0, 0, width, height));
     let mut recheck = Recheck::start().context("can't start the check")?;
+    let mut desk = Desk::start().context("can't start the search for remedies")?;
     let mut patience = FIRST;
     loop {
         if std::mem::take(&mut app.unchecked) {
@@ -74,8 +76,11 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
         if let (Some(segment), Some(judged)) = (app.tighten.take(), app.judged()) {
             recheck.tighten(judged, segment);
         }
+        if let Some((judged, finding)) = wanted(&mut app) {
+            desk.submit(&judged, &finding);
+        }
         screen.show(&app)?;
-        match wait(&mut app, &mut recheck, &news)? {
+        match wait(&mut app, &mut recheck, &mut desk, &news)? {
             Turn::Draw => {}
             Turn::Quit => return Ok(None),
             Turn::End(signal) => return Ok(Some(signal)),
@@ -99,9 +104,10 @@ enum Turn {
 }
 
 /// Waits for something to happen, then takes all that waits, so that many keys make one frame.
-fn wait(app: &mut App, recheck: &mut Recheck, news: &Receiver<News>) -> anyhow::Result<Turn> {
+fn wait(app: &mut App, recheck: &mut Recheck, desk: &mut Desk, news: &Receiver<News>) -> anyhow::Result<Turn> {
     let timer = if app.progress.is_some() { crossbeam_channel::after(LOOK) } else { never() };
     let replies = recheck.replies().clone();
+    let remedies = desk.news().clone();
     select! {
         recv(news) -> told => {
             let mut told = Some(told.context("the terminal can't be listened to any more")?);
@@ -114,6 +120,14 @@ fn wait(app: &mut App, recheck: &mut Recheck, news: &Receiver<News>) -> anyhow::
             }
         }
         recv(replies) -> reply => accept(app, recheck, reply.context("the check came to an unexpected end")?),
+        recv(remedies) -> told => {
+            let told = told.context("the search for remedies came to an unexpected end")?;
+            if let Some(told) = desk.accept(told) {
+                update(app, Action::Told(Some(told), desk.progress().or(Some([0, 0]))));
+            } else if desk.progress().is_none() {
+                update(app, Action::Told(None, None));
+            }
+        }
         recv(timer) -> _ => {
             if let Some(progress) = recheck.progress() {
                 update(app, Action::Checking(progress));
