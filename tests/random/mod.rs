@@ -212,7 +212,8 @@ pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
     }
     let com = V3::new(draw.between(-0.1, 0.1), draw.between(-0.1, 0.1), draw.between(0.0, 0.15));
     let body = Body { mass: draw.between(0.5, 6.0), com, inertia: Some(tensor(0.05, draw)), grounds: Grounds::Sheet };
-    recipe.tools = vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body), points: vec![], turns_freely: false }];
+    recipe.tools =
+        vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body), points: vec![], turns_freely: false }];
     recipe
 }
 
