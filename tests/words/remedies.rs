@@ -67,7 +67,7 @@ fn remedies_of_torques_and_loads_are_told() {
     "#;
     snapshot("remedies_moving", &judged(FULL, "[acceptance]\nmoving-reserve = 45", dip), Check::Moving);
     let back = "[[waypoint]]\nname = \"back\"\njoints = [-22, 28, -33, 0, 55, 0]\narrive = \"joint\"\nshare = 90\n";
-    let closed = judged(FULL, "[acceptance]\nholding-reserve = 5\nrms-reserve = 45", &format!("{STRETCH}dwell = 2\n{back}"));
+    let closed = judged(FULL, "[acceptance]\nholding-reserve = 5\nrms-reserve = 12", &format!("{STRETCH}dwell = 2\n{back}"));
     snapshot("remedies_rms", &closed, Check::Rms);
 }
 
@@ -90,6 +90,43 @@ fn remedies_of_places_are_told() {
     speed = 250
     "#;
     snapshot("remedies_reach", &judged(SIX, "", &format!("{READY}{far}")), Check::Reach);
+}
+
+#[test]
+fn a_tool_that_the_work_lets_turn_is_turned() {
+    let end = "[[waypoint]]\nname = \"end\"\njoints = [0, -20, -20, 0, 60, 349]\narrive = \"joint\"\nshare = 40\n";
+    let judged = crate::cases::judged_freely(SIX, &format!("{READY}{end}"));
+    snapshot("remedies_turn", &judged, Check::Range);
+}
+
+#[test]
+fn remedies_at_a_fly_by_point_are_told() {
+    let corner = r#"
+    [[waypoint]]
+    name = "from"
+    pose = { xyz = [800, -200, 500], rpy = [180, 0, 0] }
+    arrive = "joint"
+    share = 40
+    [[waypoint]]
+    name = "corner"
+    pose = { xyz = [800, 200, 500], rpy = [180, 0, 0] }
+    arrive = "line"
+    speed = 900
+    accel = 4000
+    fly-by = 20
+    [[waypoint]]
+    name = "to"
+    pose = { xyz = [1000, 200, 500], rpy = [180, 0, 0] }
+    arrive = "line"
+    speed = 900
+    accel = 4000
+    "#;
+    let judged = judged(SIX, "", &format!("{READY}{corner}"));
+    let of_blend = |finding: &&Finding| judged.plan.segments[finding.segment].blend;
+    let finding = judged.survey.findings.iter().find(of_blend).unwrap_or_else(|| panic!("{:?}", judged.survey.findings));
+    let (remedies, tried) = all(&judged, finding);
+    let told = remedies_text(&judged, finding, &remedies, &tried);
+    insta::assert_snapshot!("remedies_fly_by", shown(&Explanation { title: explain(&judged, finding).title, paragraphs: told }));
 }
 
 #[test]
