@@ -162,9 +162,9 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
         ),
         Change::Posture { waypoint, last, from, to } => {
             let span = if waypoint == last {
-                format!("at {}", name(*waypoint))
+                format!("at {}:", name(*waypoint))
             } else {
-                format!("from {} to {}", name(*waypoint), name(*last))
+                format!("from {} to {}: at {}", name(*waypoint), name(*last), name(*waypoint))
             };
             let moves: Vec<String> = (0..from.len())
                 .filter(|&j| (to[j] - from[j]).abs() > 1e-3)
@@ -173,7 +173,7 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
                     format!("{} {} instead of {}", joint.name, joint.value(to[j]).signed(), joint.value(from[j]).signed())
                 })
                 .collect();
-            format!("take another posture {span}: at {} {}", name(*waypoint), all_of(&moves))
+            format!("take another posture {span} {}", all_of(&moves))
         }
         Change::Override { share } => {
             format!("at an override of {share} it would be settled on {number}, for information; that slows down everything")
