@@ -81,6 +81,15 @@ pub fn judged(arm: &str, criteria: &str, waypoints: &str) -> Judged {
     Judged::of(&arm, &recipe, None, &Watch::default()).expect("nobody stops it")
 }
 
+/// The same with a tool that the work lets turn about its own axis.
+pub fn judged_freely(arm: &str, waypoints: &str) -> Judged {
+    let mut judged = judged(arm, "", waypoints);
+    let mut recipe = (*judged.recipe).clone();
+    recipe.tools[0].turns_freely = true;
+    judged = Judged::of(&judged.arm, &Arc::new(recipe), None, &Watch::default()).expect("nobody stops it");
+    judged
+}
+
 /// The worst finding of a check on the last segment that has one.
 pub fn found(judged: &Judged, check: Check) -> Finding {
     let of = |finding: &&Finding| finding.check == check;

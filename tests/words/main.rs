@@ -4,3 +4,4 @@ mod cases;
 mod doubts;
 mod figures;
 mod kinds;
+mod remedies;

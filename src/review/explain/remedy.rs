@@ -1,4 +1,4 @@
-use crate::checks::{Check, Finding};
+use crate::checks::{Check, Finding, Kind};
 use crate::geometry::V3;
 use crate::review::{Change, Ends, Remedy, RemedyKind, Short, Tried};
 use crate::units::{Angle, Dimension, Length, Measure, Room, Seconds};
@@ -28,7 +28,7 @@ pub fn remedies_text(judged: &Judged, finding: &Finding, remedies: &[Remedy], tr
 
 fn nothing_to_try(finding: &Finding) -> &'static str {
     match finding.kind {
-        crate::checks::Kind::Unproved(_) => "Nothing in the program settles this; the data that are missing do.",
+        Kind::Unproved(_) => "Nothing in the program settles this; the data that are missing do.",
         _ => "No change of this segment alone settles this; look at the waypoint and at the segment before it.",
     }
 }
@@ -41,14 +41,25 @@ pub fn remedy_title(judged: &Judged, remedy: &Remedy) -> String {
 /// A remedy in a few sentences: what to change, what it settles and leaves, what it makes worse, what it costs.
 pub fn remedy_text(judged: &Judged, finding: &Finding, remedy: &Remedy) -> String {
     let mut told = vec![format!("{}.", capital(&advice(judged, finding, &remedy.change)))];
-    if let [Some(before), Some(after)] = remedy.room {
-        told.push(format!("{} then leaves room of {after}, where it is {before} now.", capital(&subject(judged, finding))));
-    }
+    told.extend(rooms(judged, finding, remedy));
     told.extend(also_settled(judged, finding, remedy));
     told.extend(left_over(remedy));
     told.extend(worse(remedy));
-    told.push(costs(remedy));
+    told.extend(costs(remedy));
     told.join(" ")
+}
+
+/// The room of the finding's check and joint, before and after.
+fn rooms(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Option<String> {
+    let [before, after] = [remedy.room[0]?, remedy.room[1]?];
+    let joint = finding.joint.map(|j| &judged.arm.joints()[j]);
+    Some(match joint.filter(|_| finding.check == Check::Range) {
+        Some(joint) => {
+            let [now, then] = [before, after].map(|room| joint.value(room.as_fraction() * joint.range.half()).text_down(1));
+            format!("{} then stands {then} from its end at the least, where it is {now} now.", joint.name)
+        }
+        None => format!("{} then leaves room of {after}, where it is {before} now.", capital(&subject(judged, finding))),
+    })
 }
 
 /// A kind of remedy in words.
@@ -151,9 +162,9 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
         ),
         Change::Posture { waypoint, last, from, to } => {
             let span = if waypoint == last {
-                format!("at {}", name(*waypoint))
+                format!("at {}:", name(*waypoint))
             } else {
-                format!("from {} to {}", name(*waypoint), name(*last))
+                format!("from {} to {}: at {}", name(*waypoint), name(*last), name(*waypoint))
             };
             let moves: Vec<String> = (0..from.len())
                 .filter(|&j| (to[j] - from[j]).abs() > 1e-3)
@@ -162,10 +173,10 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
                     format!("{} {} instead of {}", joint.name, joint.value(to[j]).signed(), joint.value(from[j]).signed())
                 })
                 .collect();
-            format!("take another posture {span}: at {} {}", name(*waypoint), all_of(&moves))
+            format!("take another posture {span} {}", all_of(&moves))
         }
         Change::Override { share } => {
-            format!("at an override of {share} {number} is clear, for information; it slows down everything")
+            format!("at an override of {share} it would be settled on {number}, for information; that slows down everything")
         }
         Change::Load { from, to } => format!(
             "with its centre of mass where it is, the heaviest load that leaves the reserve is {} of {from}, for information",
@@ -173,19 +184,19 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
         ),
         Change::Centre { by } => {
             format!(
-                "with the centre of mass of the load {} nearer, {} in TCP axes, it would be clear, for information",
+                "with the centre of mass of the load {} nearer, {} in TCP axes, it would be settled, for information",
                 length(by),
                 tool_parts(by)
             )
         }
         Change::Grip { axis, angle } => format!(
-            "with the load turned {} in the grip about tool {} it would be clear, for information",
+            "with the load turned {} in the grip about tool {} it would be settled, for information",
             angle.measure().text(0),
             ["x", "y", "z"][*axis]
         ),
-        Change::MountHeight { by } => format!("with the base {} it would be clear, for information", higher(*by)),
+        Change::MountHeight { by } => format!("with the base {} it would be settled, for information", higher(*by)),
         Change::MountTilt { axis, angle } => format!(
-            "with the base leaning {} about its {} axis it would be clear, for information",
+            "with the base leaning {} about its {} axis it would be settled, for information",
             signed(*angle),
             ["x", "y", "z"][*axis]
         ),
@@ -202,7 +213,8 @@ fn also_settled(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Option<S
         } else {
             format!("{} on segment {}", subject(judged, other), judged.plan.segments[other.segment].label())
         };
-        if !same && !others.contains(&words) {
+        // What could not be judged before is no finding that a remedy settles.
+        if !same && !matches!(other.kind, Kind::Unproved(_)) && !others.contains(&words) {
             others.push(words);
         }
     }
@@ -231,14 +243,14 @@ fn worse(remedy: &Remedy) -> Option<String> {
     (!worse.is_empty()).then(|| format!("But it makes worse: {}.", first_of(&worse).join("; ")))
 }
 
-fn costs(remedy: &Remedy) -> String {
+fn costs(remedy: &Remedy) -> Option<String> {
     let by = remedy.costs.as_s();
     if by >= SAME_TIME {
-        format!("It costs {} on the cycle.", remedy.costs.measure().text_up(2))
+        Some(format!("It costs {} on the cycle.", remedy.costs.measure().text_up(2)))
     } else if by <= -SAME_TIME {
-        format!("It saves {} on the cycle.", Seconds::s(-by).measure().text_down(2))
+        Some(format!("It saves {} on the cycle.", Seconds::s(-by).measure().text_down(2)))
     } else {
-        "The cycle takes as long as before.".to_owned()
+        remedy.edit.is_some().then(|| "The cycle takes as long as before.".to_owned())
     }
 }
 
@@ -251,7 +263,8 @@ fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<Str
             let words = kind_words(one.kind);
             match one.short {
                 Short::Nearest(Some(room)) => format!("{words} ({})", near(room)),
-                Short::Nearest(None) => format!("{words} (nothing to try it on)"),
+                Short::Nearest(None) if finding.check == Check::Reach => format!("{words} (still no path)"),
+                Short::Nearest(None) => format!("{words} (it comes to nothing)"),
                 Short::Spoils(other) => {
                     format!(
                         "{words} ({} is in the way on segment {})",

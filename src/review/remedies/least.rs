@@ -21,21 +21,21 @@ pub(super) struct Reach {
 /// The shortest displacement that is clear, looked for along the given unit directions in shells of twice the size, then along
 /// those beside the best. `None` if none is.
 pub(super) fn shortest(directions: &[V3], reach: Reach, mut clear: impl FnMut(&V3) -> bool) -> Option<V3> {
-    let mut size = reach.first;
-    while size <= reach.most {
+    let mut inner = 0.0;
+    while inner < reach.most {
+        let shell = if inner == 0.0 { reach.first } else { 2.0 * inner }.min(reach.most);
         let mut best: Option<(V3, f64)> = None;
         for direction in directions {
-            let most = best.map_or(size, |(_, most)| BETTER * most);
-            if clear(&(direction * most)) {
-                let low = if size > reach.first { 0.5 * size } else { 0.0 };
-                best = Some((*direction, along(direction, low, most, &mut clear)));
+            let most = best.map_or(shell, |(_, most)| BETTER * most);
+            if most > inner && clear(&(direction * most)) {
+                best = Some((*direction, along(direction, inner, most, &mut clear)));
             }
         }
         if let Some((direction, size)) = best {
             let bent = if directions.len() > 2 { beside(direction, size, &mut clear) } else { (direction, size) };
             return Some(bent.0 * bent.1);
         }
-        size *= 2.0;
+        inner = shell;
     }
     None
 }

@@ -111,7 +111,7 @@ pub(super) fn free_ends(trial: &Trial) -> Vec<Ends> {
     let pushes = |index: usize| recipe.waypoints.get(index).is_some_and(|waypoint: &Waypoint| waypoint.push.is_some());
     let free = |index: usize| recipe.waypoints[index].then.is_none() && !pushes(index) && !pushes(index + 1);
     match (free(to - 1), free(to)) {
-        (true, true) => vec![Ends::Both, Ends::End, Ends::Start],
+        (true, true) => vec![Ends::End, Ends::Start, Ends::Both],
         (true, false) => vec![Ends::Start],
         (false, true) => vec![Ends::End],
         (false, false) => Vec::new(),

@@ -7,7 +7,7 @@ use crate::program::{Arrive, Edit, Given, Recipe, Taught};
 
 use super::moved::{tcp_at, typed};
 use super::trial::{Aim, Nearest, Trial};
-use super::{Change, Outcome, size};
+use super::{Change, Outcome, Remedy, size};
 
 /// Postures are offered at most.
 const MOST_OFFERED: usize = 2;
@@ -45,6 +45,14 @@ pub(super) fn posture(trial: &Trial) -> Outcome {
     for (run, now, other) in tries {
         if found.len() >= MOST_OFFERED || trial.watch.is_stopped() {
             break;
+        }
+        // Whole turns more are another way to the same posture.
+        let known = found.iter().any(|remedy: &Remedy| match &remedy.change {
+            Change::Posture { to, .. } => to.zip(&other, |a, b| (0.5 * (a - b)).sin()).largest() < SAME,
+            _ => false,
+        });
+        if known {
+            continue;
         }
         let Some(edit) = posed(trial, &run, &other) else { continue };
         let seen = trial.look(&edit, Aim::Check);

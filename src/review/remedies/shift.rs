@@ -13,6 +13,8 @@ use super::{Change, Ends, Outcome, Short, size};
 const SHIFTS: Reach = Reach { first: 0.002, most: 0.128 };
 /// Tilts that are tried, rad: half a degree to 16 degrees.
 const TILTS: Reach = Reach { first: 0.008_73, most: 0.28 };
+/// Another choice of ends is taken only if it needs no more than this share of what the first needs: one point rather than two.
+const FEWER: f64 = 0.985;
 /// A found displacement grows by this share at a time where rounding it to what people type has spoilt it.
 const ROUNDED_UP: f64 = 0.01;
 /// How often it may grow.
@@ -55,11 +57,11 @@ fn at_ends(
         for &ends in &ends {
             let edit = |by: &V3| displaced(trial, ends, displacement(*by));
             let least = shortest(directions, Reach { most, ..reach }, |by| {
-                let seen = edit(by).map(|edit| trial.look(&edit, aim));
+                let seen = edit(by).map(|edit| trial.look(&edit, aim).in_posture(by.norm()));
                 seen.is_some_and(|seen| nearest.note(seen))
             });
             if let Some(by) = least {
-                most = most.min(by.norm());
+                most = FEWER * by.norm();
                 found.push((ends, by));
             }
         }

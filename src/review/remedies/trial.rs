@@ -10,6 +10,9 @@ use super::{Change, Effect, Judged, Remedy, Short};
 /// Two rooms that differ by less are told as the same.
 const SAME_ROOM: f64 = 0.005;
 
+/// A joint that stands farther from where it stood than this, and than the tool was turned, stands in another posture, rad or m.
+const JUMP: f64 = 0.8;
+
 /// What a change must bring about on the segment concerned.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(super) enum Aim {
@@ -30,10 +33,18 @@ pub(super) struct Seen {
     pub room: Option<Room>,
     /// Where that is as it should be: what else is not.
     pub spoilt: Option<Finding>,
+    /// How far a joint stands at an end of the segment from where it stood, at most, rad or m.
+    pub jump: f64,
 }
 
 impl Seen {
-    const NOTHING: Self = Self { clear: false, room: None, spoilt: None };
+    const NOTHING: Self = Self { clear: false, room: None, spoilt: None, jump: 0.0 };
+
+    /// The same where a posture must be kept: not clear if a joint jumps farther than a displacement that turns the tool by `turn`
+    /// (rad) takes it. To take another posture is another remedy.
+    pub fn in_posture(self, turn: f64) -> Self {
+        Self { clear: self.clear && self.jump <= JUMP + turn.abs(), ..self }
+    }
 }
 
 /// What came nearest of all that was tried of one kind.
@@ -124,10 +135,22 @@ impl<'a> Trial<'a> {
                 seen.spoilt = seen.spoilt.or(amiss.filter(|amiss| !(own && self.is_same(amiss))));
                 if own {
                     seen.room = least(seen.room, self.room_in(&survey));
+                    seen.jump = seen.jump.max(self.jump(segment));
                 }
             }
         }
         Seen { clear: seen.clear && !self.watch.is_stopped(), ..seen }
+    }
+
+    /// How far the ends of a segment's version are from where they were.
+    fn jump(&self, segment: &Segment) -> f64 {
+        let Some(old) = self.judged.plan.arriving(self.to()).filter(|_| !segment.blend && self.finding.check != Check::Reach)
+        else {
+            return 0.0;
+        };
+        let far = |new: &crate::arm::Joints, old: &crate::arm::Joints| new.zip(old, |a, b| a - b).largest();
+        let at_start = if segment.part[0] == 0.0 { far(&segment.start, &old.start) } else { 0.0 };
+        at_start.max(if segment.part[1] == 1.0 { far(&segment.end, &old.end) } else { 0.0 })
     }
 
     /// The same of what is judged for the cycle as a whole.
@@ -137,7 +160,12 @@ impl<'a> Trial<'a> {
         let effect = self.effect(&after, inserted);
         let is_settled = !effect.remains.iter().any(|finding| finding.check == Check::Rms && finding.joint == self.finding.joint);
         let spoilt = effect.worsens.first().copied();
-        Seen { clear: is_settled && spoilt.is_none(), room: self.room_of(&after, inserted), spoilt: spoilt.filter(|_| is_settled) }
+        Seen {
+            clear: is_settled && spoilt.is_none(),
+            room: self.room_of(&after, inserted),
+            spoilt: spoilt.filter(|_| is_settled),
+            jump: 0.0,
+        }
     }
 
     /// What an override does to the segment concerned.
@@ -145,7 +173,7 @@ impl<'a> Trial<'a> {
         let (judged, index) = (self.judged, self.finding.segment);
         let survey = judge_at(&judged.arm, index, self.segment(), &judged.recipe.acceptance, judged.plan.gravity, share);
         let amiss = self.amiss(&survey, Some(Aim::Speeds), self.to());
-        Seen { clear: amiss.is_none(), room: self.room_in(&survey), spoilt: amiss.filter(|amiss| !self.is_same(amiss)) }
+        Seen { clear: amiss.is_none(), room: self.room_in(&survey), spoilt: amiss.filter(|amiss| !self.is_same(amiss)), jump: 0.0 }
     }
 
     /// A finding that stands against an aim on the segment that arrived at `to`; without an aim, one that is new or worse. The

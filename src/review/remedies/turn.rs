@@ -17,11 +17,11 @@ pub(super) fn turn(trial: &Trial) -> Outcome {
     let mut nearest = Nearest::default();
     let mut found: Vec<(Ends, f64)> = Vec::new();
     for aim in [Aim::All, Aim::Check] {
-        for ends in [Ends::Both, Ends::End, Ends::Start] {
+        for ends in [Ends::End, Ends::Start, Ends::Both] {
             let edit = |angle: f64| displaced(trial, ends, Displacement::Own(angle));
             // Along or against one axis: a search in one dimension.
             let least = shortest(&[V3::x(), -V3::x()], TURNS, |by| {
-                let seen = edit(by.x).map(|edit| trial.look(&edit, aim));
+                let seen = edit(by.x).map(|edit| trial.look(&edit, aim).in_posture(by.x));
                 seen.is_some_and(|seen| nearest.note(seen))
             });
             found.extend(least.map(|by| (ends, by.x)));
