@@ -3,19 +3,24 @@
 
 mod explain;
 mod first_run;
+mod history;
 mod judged;
 mod not_checked;
 mod recheck;
 mod reduced_speed;
 mod session;
+mod shift;
 
 pub use explain::{
-    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, check_words, doubt_text, explain, fastest_text, first_run_text,
-    headline, held_back_words, joint_stop_words, no_finding, proof_text, reduced_speed_text, stage_words, stopping_text, wrap,
+    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, check_words, difference_words, doubt_text, edit_words, explain,
+    fastest_text, first_run_text, headline, held_back_words, joint_stop_words, no_finding, proof_text, reduced_speed_text,
+    stage_words, stopping_text, wrap,
 };
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
+pub use history::{History, Step};
 pub use judged::Judged;
 pub use not_checked::not_checked;
 pub use recheck::{Progress, Recheck, Reply, Ticket};
 pub use reduced_speed::{REDUCED_SPEED, Reduced, reduced_speed};
 pub use session::Session;
+pub use shift::shift;

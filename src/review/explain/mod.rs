@@ -4,6 +4,7 @@ mod accel;
 mod brake;
 mod direction;
 mod doubt;
+mod edit;
 mod explanation;
 mod fight;
 mod first_run;
@@ -28,6 +29,7 @@ mod unproved;
 mod wrap;
 
 pub use doubt::doubt_text;
+pub use edit::{difference_words, edit_words};
 pub use explanation::{Bar, Explanation, Label, Paragraph};
 pub use first_run::{FIRST_RUN_CAUTIONS, first_run_text, held_back_words, stage_words};
 pub use headline::{check_words, headline};
