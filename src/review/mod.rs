@@ -3,22 +3,26 @@
 
 mod explain;
 mod first_run;
+mod history;
 mod judged;
 mod not_checked;
 mod recheck;
 mod reduced_speed;
 mod remedies;
 mod session;
+mod shift;
 
 pub use explain::{
-    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, bounds_text, check_words, doubt_text, explain, fastest_text,
-    first_run_text, headline, held_back_words, joint_stop_words, kind_words, no_finding, proof_summary, proof_text,
-    reduced_speed_text, remedies_text, remedy_text, remedy_title, stage_words, stopping_text, wrap,
+    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, bounds_text, check_words, difference_words, doubt_text, edit_words,
+    explain, fastest_text, first_run_text, headline, held_back_words, joint_stop_words, kind_words, no_finding, proof_summary,
+    proof_text, reduced_speed_text, remedies_text, remedy_text, remedy_title, stage_words, stopping_text, wrap,
 };
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
+pub use history::{History, Step};
 pub use judged::Judged;
 pub use not_checked::not_checked;
 pub use recheck::{Done, Progress, Recheck, Reply, Ticket};
 pub use reduced_speed::{REDUCED_SPEED, Reduced, reduced_speed};
 pub use remedies::{Change, Desk, Effect, Ends, Errand, News, Remedy, RemedyKind, Short, Told, Tried, found_by, kinds_for, search};
 pub use session::Session;
+pub use shift::shift;

@@ -8,6 +8,7 @@ mod measure;
 mod named;
 mod near;
 mod room;
+mod typed;
 
 pub use fault::{Fault, Field, Step};
 pub use measure::{Dimension, Measure, tidy};
@@ -16,6 +17,7 @@ pub use named::{
 };
 pub use near::nearest_word;
 pub use room::Room;
+pub use typed::{typed, typed_share};
 
 /// Standard gravity, m/s². Exact by definition (3rd CGPM, 1901).
 pub const STANDARD_GRAVITY: f64 = 9.806_65;
