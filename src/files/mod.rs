@@ -5,19 +5,24 @@
 //! [`Recipe::faults`](crate::program::Recipe::faults) can add what they find without repeating it.
 
 mod arm_file;
+mod aside;
 mod body;
 mod cell;
 mod complaint;
 mod demo;
 mod drive;
 mod heading;
+mod holder;
 mod joint;
+mod journal;
+mod lock;
 mod opened;
 mod page;
 mod placed;
 mod position;
 mod raw;
 mod recipe_file;
+mod save;
 mod source;
 mod stand_in;
 mod table;
@@ -25,8 +30,13 @@ mod value;
 mod waypoint;
 
 pub use arm_file::read_arm;
+pub use aside::Aside;
 pub use complaint::{Complaint, Rejected};
 pub use demo::demo;
+pub use holder::{Holder, Runs};
+pub use journal::{Journal, Recovered, left_behind};
+pub use lock::{Lock, NotLocked};
 pub use opened::{Opened, open};
 pub use recipe_file::read_recipe;
+pub use save::{Content, NewText, NotSaved, Saved, text_of_edited, text_of_new, write, write_anyway};
 pub use source::Source;

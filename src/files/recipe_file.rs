@@ -31,6 +31,15 @@ pub(super) fn read_with(text: &str, source: &str, arm: Option<&Arm>) -> Result<R
     }
 }
 
+/// The recipe that a text gives, without judging whether it can be; `None` if something in it can't be taken as it stands.
+pub(super) fn walked(text: &str, arm: &Arm) -> Option<Recipe> {
+    let text = without_mark(text);
+    let root = parse(text, "").ok()?;
+    let page = Page::new(text, "", root.get_ref());
+    let recipe = recipe(&page.top("recipe"), Some(arm));
+    page.rejection().is_none().then_some(recipe)
+}
+
 /// The arm file that a recipe names and where it says so, as a field; `None` if the recipe has no such text.
 pub(super) fn arm_named(text: &str) -> Option<String> {
     let root = DeTable::parse(without_mark(text)).ok()?;

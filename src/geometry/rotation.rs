@@ -33,6 +33,18 @@ impl Rotation {
         (norm.is_finite() && norm > 1e-9).then(|| Self(UnitQuaternion::from_quaternion(q)))
     }
 
+    /// Its four elements w, x, y, z as they are kept, of which [`Self::from_kept`] makes the very same rotation.
+    pub fn kept(self) -> [f64; 4] {
+        let q = self.0.quaternion();
+        [q.w, q.i, q.j, q.k]
+    }
+
+    /// From elements that [`Self::kept`] gave, taken as they are; `None` if they are no rotation's.
+    pub fn from_kept([w, x, y, z]: [f64; 4]) -> Option<Self> {
+        let q = nalgebra::Quaternion::new(w, x, y, z);
+        ((q.norm() - 1.0).abs() < 1e-9).then(|| Self(UnitQuaternion::new_unchecked(q)))
+    }
+
     /// From a rotation matrix.
     pub fn from_matrix(axes: &M3) -> Self {
         Self(UnitQuaternion::from_rotation_matrix(&Rotation3::from_matrix_unchecked(*axes)))
