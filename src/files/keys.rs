@@ -79,9 +79,11 @@ impl KeyName {
             // The sign + itself may stand last.
             match rest.split_once('+') {
                 Some((held, after)) if !after.is_empty() && held.eq_ignore_ascii_case("ctrl") && !control => {
-                    (control, rest) = (true, after)
+                    (control, rest) = (true, after);
                 }
-                Some((held, after)) if !after.is_empty() && held.eq_ignore_ascii_case("alt") && !alt => (alt, rest) = (true, after),
+                Some((held, after)) if !after.is_empty() && held.eq_ignore_ascii_case("alt") && !alt => {
+                    (alt, rest) = (true, after);
+                }
                 _ => break,
             }
         }

@@ -65,19 +65,26 @@ pub(super) struct ToolJson {
     tcp: PoseJson,
     body: Option<BodyJson>,
     points: Vec<(String, [f64; 3])>,
+    turns_freely: bool,
 }
 
 impl From<&Tool> for ToolJson {
     fn from(tool: &Tool) -> Self {
         let points = tool.points.iter().map(|point| (point.name.clone(), point.at.into())).collect();
-        Self { name: tool.name.clone(), tcp: (&tool.tcp).into(), body: tool.body.as_ref().map(BodyJson::from), points }
+        Self {
+            name: tool.name.clone(),
+            tcp: (&tool.tcp).into(),
+            body: tool.body.as_ref().map(BodyJson::from),
+            points,
+            turns_freely: tool.turns_freely,
+        }
     }
 }
 
 impl From<ToolJson> for Tool {
     fn from(tool: ToolJson) -> Self {
         let points = tool.points.into_iter().map(|(name, at)| ToolPoint { name, at: V3::from(at) }).collect();
-        Self { name: tool.name, tcp: tool.tcp.into(), body: tool.body.map(Body::from), points }
+        Self { name: tool.name, tcp: tool.tcp.into(), body: tool.body.map(Body::from), points, turns_freely: tool.turns_freely }
     }
 }
 

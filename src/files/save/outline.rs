@@ -160,12 +160,13 @@ fn body(body: Option<&Body>) -> Outline {
 }
 
 fn tool(tool: &Tool) -> Outline {
-    let Tool { name: _, tcp: _, body: _, points: _ } = tool;
+    let Tool { name: _, tcp: _, body: _, points: _, turns_freely: _ } = tool;
     let points: Vec<Outline> =
         tool.points.iter().map(|point| vec![("name", text(&point.name)), ("xyz", self::point(&point.at))]).collect();
     let mut outline = vec![("name", text(&tool.name)), ("tcp", Some(Value::Table(pose(&tool.tcp))))];
     outline.extend(body(tool.body.as_ref()));
     outline.push(("points", (!points.is_empty()).then_some(Value::Tables(points))));
+    outline.push(("turns-freely", tool.turns_freely.then_some(Value::True)));
     outline
 }
 
