@@ -74,6 +74,35 @@ pub(super) enum Command {
                             for each side where values differ. Exit codes: 0 written, 2 not."
     )]
     Trace(TraceArgs),
+    /// Write a starting file with comments: an arm, or a recipe for an arm
+    #[command(after_help = "A file that is there already is never written over. Exit codes: 0 written, 2 not.")]
+    New(NewArgs),
+}
+
+/// Arguments of `new`.
+#[derive(Debug, ClapArgs)]
+pub(super) struct NewArgs {
+    /// What to write
+    #[command(subcommand)]
+    pub kind: NewKind,
+}
+
+/// What `new` writes.
+#[derive(Debug, Subcommand)]
+pub(super) enum NewKind {
+    /// An arm file, its figures to be replaced by those of the arm's sheet
+    Arm {
+        /// Write to this file instead of standard output
+        file: Option<PathBuf>,
+    },
+    /// A recipe of two waypoints for an arm
+    Recipe {
+        /// The arm file
+        #[arg(long, value_name = "FILE")]
+        arm: PathBuf,
+        /// Write to this file instead of standard output
+        file: Option<PathBuf>,
+    },
 }
 
 /// Arguments of `check`.

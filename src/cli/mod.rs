@@ -8,6 +8,7 @@ mod code;
 mod columns;
 mod explain;
 mod findings_text;
+mod new;
 mod not_checked_text;
 mod out;
 mod plan;
@@ -39,6 +40,7 @@ pub fn run() -> ExitCode {
         Some(Command::Explain(explain)) => explain::run(&explain),
         Some(Command::Plan(plan)) => plan::run(&plan),
         Some(Command::Trace(trace)) => trace::run(&trace),
+        Some(Command::New(new)) => new::run(&new),
     };
     match done {
         Ok(code) => code.into(),

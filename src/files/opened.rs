@@ -42,6 +42,15 @@ pub fn open(path: &Path) -> Result<Opened, Rejected> {
     }
 }
 
+/// Reads an arm file by itself.
+///
+/// # Errors
+/// Everything that is wrong with it.
+pub fn open_arm(path: &Path) -> Result<Arm, Rejected> {
+    let source = raw::read(path)?;
+    read_arm(&source.text, &source.path)
+}
+
 /// The arm that a recipe names; `None` if it names none.
 fn arm_of(recipe_path: &Path, recipe: &Source) -> Result<Option<(Source, Arm)>, Rejected> {
     let Some(named) = arm_named(&recipe.text) else { return Ok(None) };

@@ -228,6 +228,22 @@ impl<'a> Table<'a> {
         Some(text.as_ref())
     }
 
+    /// A text, or an array of at most `most`, each with its byte offset; none where it can't be taken. `wanted` says what it must be.
+    pub(super) fn texts(&self, key: &str, most: usize, wanted: &str) -> Vec<(usize, &'a str)> {
+        let Some(value) = self.get(key) else { return Vec::new() };
+        let texts: Option<Vec<(usize, &str)>> = match value.get_ref() {
+            DeValue::String(text) => Some(vec![(value.span().start, text.as_ref())]),
+            DeValue::Array(items) if items.len() <= most => {
+                items.iter().map(|item| Some((item.span().start, item.get_ref().as_str()?))).collect()
+            }
+            _ => None,
+        };
+        texts.unwrap_or_else(|| {
+            self.complain(key, format_args!("{key} is {}; it must be {wanted}", describe(value.get_ref())));
+            Vec::new()
+        })
+    }
+
     /// One of a few words that may be there; `None` also where it can't be taken.
     pub(super) fn word<T: Copy>(&self, key: &str, words: &[(&str, T)]) -> Option<T> {
         let value = self.get(key)?;

@@ -2,7 +2,7 @@ use std::fs;
 use std::path::{Path, PathBuf};
 use std::time::SystemTime;
 
-use elbowroom::files::{Aside, Content, Lock, NotLocked, NotSaved, write, write_anyway};
+use elbowroom::files::{Aside, Content, Lock, NotLocked, NotSaved, changes_on_disk, demo, write, write_anyway};
 
 fn folder() -> tempfile::TempDir {
     tempfile::tempdir().expect("a folder")
@@ -52,6 +52,26 @@ fn a_file_that_changed_meanwhile_is_not_written_over() {
     assert!(matches!(write(&path, "ours", None), Err(NotSaved::Exists { .. })));
     write_anyway(&path, "ours").expect("saved");
     assert_eq!(fs::read_to_string(folder.path().join("a.toml~")).expect("read"), "theirs", "not lost");
+}
+
+#[test]
+fn what_somebody_else_changed_is_told_waypoint_by_waypoint() {
+    let opened = demo();
+    let told = |text: Option<&str>| changes_on_disk(text, "a.toml", &opened.recipe, &opened.arm);
+    let text = &opened.recipe_source.text;
+    let theirs =
+        text.replace("share  = 70", "share  = 75").replace("\"off wheel\"", "\"wheel free\"").replace("mass    = 6.5", "mass = 7");
+    assert_eq!(
+        told(Some(&theirs)),
+        [
+            "load 1 \"housing\": mass 6.5 kg -> 7 kg",
+            "waypoint 2 \"above rack\": share 70 % -> 75 %",
+            "waypoint 8 \"off wheel\": name off wheel -> wheel free",
+        ]
+    );
+    assert_eq!(told(Some(&text.replace("# slow", "#"))).len(), 1);
+    assert_eq!(told(None), ["the file is gone"]);
+    assert!(told(Some("elbowroom-recipe = 1")).iter().any(|line| line.contains("name is missing")));
 }
 
 #[test]

@@ -134,7 +134,8 @@ pub fn edit(recipe: &Recipe, draw: &mut Draw, fresh: &mut usize) -> Edit {
         11 if !recipe.tools.is_empty() => {
             let mut tools = recipe.tools.clone();
             let at = draw.below(tools.len());
-            match draw.below(4) {
+            match draw.below(5) {
+                4 => tools[at].turns_freely = !tools[at].turns_freely,
                 0 => tools[at].tcp = Pose::new(point(draw), turn(draw)),
                 1 => tools[at].body = Some(Body { mass: draw.typed(9), com: point(draw), inertia: None, grounds: Grounds::Guess }),
                 2 => tools[at].points.push(ToolPoint { name: format!("p{fresh}"), at: point(draw) }),

@@ -6,4 +6,6 @@ mod fields;
 mod history;
 mod journal;
 mod layouts;
+mod starters;
+mod stretches;
 mod text;

@@ -18,10 +18,11 @@ mod splice;
 
 use crate::arm::Arm;
 use crate::program::Recipe;
+use crate::review::difference_words;
 
 use super::heading::RECIPE;
 use super::page::without_mark;
-use super::recipe_file::walked;
+use super::recipe_file::{read_recipe, walked};
 
 pub use content::Content;
 pub(super) use disk::beside;
@@ -68,4 +69,15 @@ fn reads_as(text: &str, recipe: &Recipe, arm: &Arm) -> bool {
     walked(text, arm).is_some_and(|read| {
         read == *recipe || outline::same(&outline::recipe(&read, arm), &outline::recipe(recipe, arm), READS_SAME)
     })
+}
+
+/// What somebody changed in a recipe's file since it was opened as `before`, a sentence each, waypoint by waypoint. Where their text
+/// can't be taken as a recipe, what is wrong with it. `text` is what [`NotSaved::Changed`] tells.
+pub fn changes_on_disk(text: Option<&str>, source: &str, before: &Recipe, arm: &Arm) -> Vec<String> {
+    let Some(text) = text else { return vec!["the file is gone".to_owned()] };
+    match read_recipe(text, source, arm) {
+        Ok(theirs) if theirs == *before => vec!["only what stands around the figures: comments, blanks or order".to_owned()],
+        Ok(theirs) => difference_words(before, &theirs, arm),
+        Err(rejected) => rejected.complaints.iter().map(ToString::to_string).collect(),
+    }
 }

@@ -26,6 +26,20 @@ pub(super) type Outline = Vec<(&'static str, Option<Value>)>;
 
 /// A recipe as its file has it.
 pub(super) fn recipe(recipe: &Recipe, arm: &Arm) -> Outline {
+    // Every field is named here and below, so that the compiler points here when there is a new one.
+    let Recipe {
+        name: _,
+        arm: _,
+        mount: _,
+        acceptance: _,
+        usual: _,
+        tools: _,
+        loads: _,
+        frames: _,
+        repeat: _,
+        carrying: _,
+        waypoints: _,
+    } = recipe;
     let tables = |all: Vec<Outline>| Some(Value::Tables(all));
     vec![
         ("name", text(&recipe.name)),
@@ -80,6 +94,21 @@ fn pose(pose: &Pose) -> Outline {
 }
 
 fn acceptance(a: &Acceptance) -> Outline {
+    let Acceptance {
+        rate_reserve: _,
+        accel_reserve: _,
+        holding_reserve: _,
+        moving_reserve: _,
+        brake_reserve: _,
+        rms_reserve: _,
+        range_least: _,
+        slide_least: _,
+        singular_least: _,
+        tool_speed_left: _,
+        tcp_speed: _,
+        wind_up: _,
+        stages: _,
+    } = a;
     let stages: Vec<f64> = a.stages.shares().iter().map(|share| share.as_fraction()).collect();
     vec![
         ("rate-reserve", share(a.rate_reserve)),
@@ -99,6 +128,7 @@ fn acceptance(a: &Acceptance) -> Outline {
 }
 
 fn usual(u: &Usual) -> Outline {
+    let Usual { speed: _, accel: _, turn_speed: _, turn_accel: _, jerk: _, turn_jerk: _, share: _, accel_share: _ } = u;
     vec![
         ("speed", u.speed.and_then(|v| measure(v.measure()))),
         ("accel", measure(u.accel.measure())),
@@ -130,6 +160,7 @@ fn body(body: Option<&Body>) -> Outline {
 }
 
 fn tool(tool: &Tool) -> Outline {
+    let Tool { name: _, tcp: _, body: _, points: _, turns_freely: _ } = tool;
     let points: Vec<Outline> =
         tool.points.iter().map(|point| vec![("name", text(&point.name)), ("xyz", self::point(&point.at))]).collect();
     let mut outline = vec![("name", text(&tool.name)), ("tcp", Some(Value::Table(pose(&tool.tcp))))];
@@ -140,12 +171,14 @@ fn tool(tool: &Tool) -> Outline {
 }
 
 fn load(load: &Load) -> Outline {
+    let Load { name: _, body: _ } = load;
     let mut outline = vec![("name", text(&load.name))];
     outline.extend(body(Some(&load.body)));
     outline
 }
 
 fn given(given: &Given) -> Outline {
+    let Given { at: _, rotation: _, frame: _ } = given;
     vec![
         ("xyz", point(&given.at)),
         ("rpy", given.rotation.map(|rotation| Value::Turn(Turn::Rotation(rotation)))),
@@ -154,6 +187,7 @@ fn given(given: &Given) -> Outline {
 }
 
 fn waypoint(waypoint: &Waypoint, arm: &Arm) -> Outline {
+    let Waypoint { name: _, taught: _, shown: _, arrive: _, tool: _, fly_by: _, dwell: _, then: _, push: _ } = waypoint;
     let (joints, pose, near) = match &waypoint.taught {
         Taught::Joints(values) => {
             let of = |j: usize| arm.joints().get(j).map_or(Dimension::Angle, |joint| joint.kind.value());
@@ -163,6 +197,7 @@ fn waypoint(waypoint: &Waypoint, arm: &Arm) -> Outline {
         Taught::Pose { pose, near } => (None, Some(Value::Table(given(pose))), near.as_deref().and_then(text)),
     };
     let none = PathSpeed::default();
+    let PathSpeed { speed: _, accel: _, turn_speed: _, turn_accel: _, jerk: _, turn_jerk: _ } = none;
     let (joint, path, via) = match &waypoint.arrive {
         Some(Arrive::Joint { share, accel_share }) => ((*share, *accel_share), &none, None),
         Some(Arrive::Line(speed)) => ((None, None), speed, None),

@@ -139,7 +139,7 @@ impl Rework<'_> {
     fn remove(&mut self, home: Home, table: &dyn TableLike, key: &str, way: &Way) {
         match table.get(key) {
             Some(Item::Table(inner)) if inner.is_dotted() => {
-                self.remove_leaves(home, leaves(inner).iter().map(|leaf| leaf.range.clone()))
+                self.remove_leaves(home, leaves(inner).iter().map(|leaf| leaf.range.clone()));
             }
             Some(Item::Value(Node::InlineTable(inner))) if inner.is_dotted() => {
                 self.remove_leaves(home, leaves(inner).iter().map(|leaf| leaf.range.clone()));

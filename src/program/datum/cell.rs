@@ -6,6 +6,8 @@ use crate::units::{Dimension, Measure};
 use super::Datum;
 use super::sheet::{Sheet, one_of, or_nothing, words};
 
+/// What stands where a tool may turn about its own axis as it likes.
+const FREELY: &str = "yes";
 const REPEATS: [(&str, Repeat); 2] = [("start", Repeat::Start), ("never", Repeat::Never)];
 const GROUNDS: [(&str, Grounds); 3] = [("sheet", Grounds::Sheet), ("weighed", Grounds::Weighed), ("guess", Grounds::Guess)];
 /// The elements of a tensor in the order of a file, with their row and column.
@@ -76,6 +78,15 @@ pub(super) fn tool(recipe: &Recipe, index: usize) -> Vec<Datum> {
             &mut tool.points[k].at
         });
     }
+    let freely = if tool.turns_freely { FREELY.to_owned() } else { String::new() };
+    sheet.choice("turns-freely", freely, vec![FREELY.to_owned()], |tool, text| {
+        tool.turns_freely = match text {
+            "" => false,
+            FREELY => true,
+            _ => return Err(format!("it must be \"{FREELY}\" or nothing")),
+        };
+        Ok(())
+    });
     let mut data = naming(recipe, &tool.name, move |recipe, name| rename::tool(recipe, index, name));
     data.extend(sheet.listed());
     data
