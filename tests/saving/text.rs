@@ -1,5 +1,5 @@
 use elbowroom::arm::Arm;
-use elbowroom::files::{demo, read_recipe, text_of_edited, text_of_new};
+use elbowroom::files::{demo, open, read_recipe, text_of_edited, text_of_new};
 use elbowroom::program::{Edit, Recipe};
 
 use super::drawn::{Draw, altered, edit};
@@ -176,7 +176,9 @@ fn comments_in_front_of_a_waypoint_go_with_it_and_those_alone_stay() {
 
 #[test]
 fn a_recipe_without_a_text_is_written_whole() {
-    for opened in [demo()] {
+    for name in ["housing-transfer", "lid-placing", "sealant-ring", "tray-feed"] {
+        let path = format!("{}/recipes/{name}.toml", env!("CARGO_MANIFEST_DIR"));
+        let opened = open(std::path::Path::new(&path)).expect("it opens");
         let text = text_of_new(&opened.recipe, &opened.arm);
         assert_same(&read(&text, &opened.arm).expect("it reads"), &opened.recipe, &text);
     }
