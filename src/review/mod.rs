@@ -4,9 +4,11 @@
 mod explain;
 mod first_run;
 mod history;
+pub mod jog;
 mod judged;
 mod not_checked;
 mod recheck;
+pub mod record;
 mod reduced_speed;
 mod remedies;
 mod session;
