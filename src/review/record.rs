@@ -1,3 +1,5 @@
+//! Recording where the model stands as waypoints of the recipe.
+
 use crate::arm::{Arm, JointKind, Joints};
 use crate::geometry::{Pose, Rotation, V3};
 use crate::kinematics::{Posture, Reached, reach};

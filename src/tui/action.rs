@@ -4,6 +4,8 @@ use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Edit;
 use crate::review::{Judged, Progress, Told};
 
+use super::jog::Deed;
+
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
 #[derive(Debug, Clone)]
 pub enum Action {
@@ -57,6 +59,12 @@ pub enum Action {
     Remedies,
     /// What was seen and what is proved of the segment, and its bounds proved closer.
     Bounds,
+    /// Jog the model from where the cursor is, or end that.
+    Jog,
+    /// The next step size of jogging.
+    StepSize,
+    /// Something done where the model was jogged to.
+    Deed(Deed),
     /// The keys and the signs.
     Help,
     /// Change the recipe; what it is in words, for the history.

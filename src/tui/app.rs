@@ -10,6 +10,7 @@ use crate::review::{Judged, Progress, Session};
 use super::action::Action;
 use super::curve::Subject;
 use super::edits::Edits;
+use super::jog::Jogging;
 use super::keys::{Binding, name};
 use super::remedies::Remedies;
 use super::scene::Scene;
@@ -71,6 +72,15 @@ pub enum Question {
     GoTo,
     /// A part of a waypoint's name.
     Find,
+    /// The value of the row that is jogged.
+    JogValue,
+    /// The waypoint whose posture is jogged from.
+    JogWaypoint,
+    /// The name of the waypoint that is recorded.
+    RecordName {
+        /// As a pose rather than as joint values.
+        as_pose: bool,
+    },
 }
 
 /// What is typed in answer to a question.
@@ -123,6 +133,8 @@ pub enum Mode {
     Menu(Menu),
     /// The remedies of the finding, one of them chosen.
     Remedies,
+    /// The model jogged by hand.
+    Jog,
     /// A question in the lowest row.
     Asking(Asking),
 }
@@ -170,6 +182,8 @@ pub struct App {
     pub progress: Option<Progress>,
     /// What the screen is doing.
     pub mode: Mode,
+    /// Where the model was jogged to, while it is; menus, pages and questions may stand over it.
+    pub jog: Option<Jogging>,
     /// The pane that is worked in.
     pub pane: Pane,
     /// The selected joint.
@@ -208,6 +222,7 @@ impl App {
             session: None,
             progress,
             mode: Mode::Panes,
+            jog: None,
             pane: Pane::List,
             joint: 0,
             chart: ChartSetting { check: Check::Rate, every_joint: false, cycle: false },

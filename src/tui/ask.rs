@@ -2,6 +2,7 @@ use std::sync::Arc;
 
 use super::action::Action;
 use super::app::{App, Asking, Mode, Question};
+use super::jog;
 use super::update::follow_finding;
 
 /// The question as it stands in the lowest row.
@@ -9,6 +10,9 @@ pub fn prompt(question: Question) -> &'static str {
     match question {
         Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
         Question::Find => "Find waypoint: ",
+        Question::JogValue => "Value (mm or degrees, or with its unit): ",
+        Question::JogWaypoint => "Jog from waypoint (number or name): ",
+        Question::RecordName { .. } => "Name of the new waypoint: ",
     }
 }
 
@@ -23,7 +27,9 @@ pub(super) fn answer(app: &mut App, action: &Action) {
         Action::Enter => {
             let asking = asking.clone();
             app.mode = Mode::Panes;
-            app.message = settle(app, &asking).err();
+            if let Err(why) = settle(app, &asking) {
+                app.message = Some(why);
+            }
         }
         _ => {}
     }
@@ -38,6 +44,9 @@ fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
             let looked_for = if typed.is_empty() { app.found.clone() } else { typed };
             find(app, &looked_for)
         }
+        Question::JogValue => jog::settle_value(app, &typed),
+        Question::JogWaypoint => jog::settle_waypoint(app, &typed),
+        Question::RecordName { as_pose } => jog::record(app, &typed, as_pose),
     }
 }
 

@@ -45,6 +45,10 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
     };
     let wanted = |action: &Action| match (&app.mode, action) {
         (_, Action::Help | Action::Quit) => true,
+        (Mode::Jog, action) => {
+            matches!(action, Action::Up | Action::Left | Action::Enter | Action::NextPane | Action::StepSize)
+        }
+        (_, Action::StepSize) => false,
         (Mode::Menu(_), action) => matches!(action, Action::Up | Action::Enter),
         (Mode::Remedies, action) => matches!(action, Action::Up | Action::Enter | Action::NextFinding | Action::Undo),
         (Mode::Page(Page::Why, _), action) => matches!(action, Action::Up | Action::Worst | Action::NextFinding),
@@ -61,7 +65,13 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
             if word == "select" && matches!(app.mode, Mode::Page(..)) {
                 "scroll".clone_into(word);
             }
-            if key == "Enter" {
+            if matches!(app.mode, Mode::Jog) {
+                match word.as_str() {
+                    "time" => "step".clone_into(word),
+                    "pane" => "axes".clone_into(word),
+                    _ => {}
+                }
+            } else if key == "Enter" {
                 if matches!(app.mode, Mode::Remedies) { "make this change" } else { "choose" }.clone_into(word);
             }
         }

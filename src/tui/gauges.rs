@@ -1,8 +1,9 @@
 use crate::arm::Joints;
 use crate::checks::{Check, Meter, Reading, Verdict};
 use crate::geometry::Pose;
-use crate::kinematics::Posture;
+use crate::kinematics::{Jacobian, Posture};
 use crate::motion::{Cursor, Follower, Instant, Segment, Side};
+use crate::program::Carried;
 use crate::review::Judged;
 use crate::units::{Measure, Room};
 
@@ -132,6 +133,20 @@ impl Gauges {
         let posture = Posture::at(judged.arm.chain(), &q);
         let tcp = posture.tcp(&segment.carried.tcp);
         Some(Self { fraction: segment.followed_to(), q, posture, tcp, load, all: Vec::new() })
+    }
+
+    /// The gauges at rest at joint values that need not be on the segment, with this tool and load; limits and reserves as on the
+    /// segment, without its process force.
+    pub fn jogged(judged: &Judged, segment: usize, q: &Joints, carried: &Carried) -> Option<Self> {
+        let probe = Probe::of(judged, segment)?;
+        let posture = Posture::at(judged.arm.chain(), q);
+        let tcp = posture.tcp(&carried.tcp);
+        let jacobian = Jacobian::at(judged.arm.chain(), &posture, &tcp.at);
+        let still = Joints::zeros(q.len());
+        let instant = Instant { u: 0.0, q: *q, slope: still, bend: still, posture, tcp, jacobian, lu: None };
+        let reading = probe.meter.read_with(&instant, 0.0, 0.0, carried);
+        let all = Check::ALL.into_iter().flat_map(|check| probe.gauges(&reading, check).collect::<Vec<_>>()).collect();
+        Some(Self { fraction: 0.0, q: *q, posture, tcp, load: carried.load_mass, all })
     }
 
     /// One quantity.

@@ -1,6 +1,7 @@
 use unicode_width::UnicodeWidthStr;
 
 use super::app::App;
+use super::jog;
 use super::sheet::{Sheet, fit, wrap};
 use crate::checks::Verdict;
 
@@ -10,6 +11,12 @@ const NO_ARM: &str = "no arm connected";
 /// Draws the sentence on the whole recipe, and that no arm is connected.
 pub fn draw(sheet: &mut Sheet, app: &App) {
     let theme = app.theme;
+    if let Some(jog) = &app.jog {
+        for (y, line) in wrap(&jog::headline(app, jog), sheet.width()).iter().enumerate() {
+            sheet.put(0, y, line, theme.strong());
+        }
+        return;
+    }
     let mut sentence = match (&app.scene.headline, app.progress) {
         (Some((told, _)), None) => told.clone(),
         (Some((told, _)), Some(progress)) => format!("OLD, checking {} of {}: {told}", progress.done, progress.of),

@@ -15,6 +15,7 @@ mod footer;
 mod gauges;
 mod headline;
 mod help;
+mod jog;
 mod joints;
 mod keys;
 mod layout;
@@ -41,6 +42,7 @@ use ratatui::layout::Rect;
 
 pub use action::Action;
 pub use app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
+pub use jog::{Deed, Jogging};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use remedies::wanted as remedies_wanted;
@@ -66,6 +68,15 @@ pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
         let height = area.height - layout.headline.height - layout.footer.height;
         let whole = Rect { y: layout.headline.bottom(), height, ..area };
         remedies::draw(&mut Sheet::new(buffer, whole, theme), app);
+        return;
+    }
+    if app.jog.is_some() {
+        let height = area.height - layout.headline.height - layout.footer.height;
+        let whole = Rect { y: layout.headline.bottom(), height, ..area };
+        jog::draw(&mut Sheet::new(buffer, whole, theme), app);
+        if let Mode::Menu(menu) = &app.mode {
+            menu::draw(&mut Sheet::new(buffer, area, theme), menu);
+        }
         return;
     }
     let mut pane = |area: Rect, draw: fn(&mut Sheet, &App)| {

@@ -39,6 +39,14 @@ pub struct Scene {
     told: Option<(usize, Option<usize>, usize)>,
 }
 
+impl Scene {
+    /// Shows the arm elsewhere than at the cursor, until the next refresh.
+    pub(super) fn stand_at(&mut self, gauges: Option<Gauges>) {
+        self.gauges = gauges;
+        self.cursor = None;
+    }
+}
+
 /// Brings the scene up to what the app shows.
 pub fn refresh(app: &mut App) {
     if app.scene.rows.is_empty() {

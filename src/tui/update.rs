@@ -10,7 +10,7 @@ use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, edits, page, remedies};
+use super::{click, edits, jog, page, remedies};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
@@ -38,6 +38,7 @@ pub fn update(app: &mut App, action: Action) {
         }
     }
     refresh(app);
+    jog::follow(app);
     page::hold_scroll(app);
 }
 
@@ -46,6 +47,7 @@ fn by_mode(app: &mut App, action: Action) {
         (_, Action::Quit) => app.wish = Wish::Quit,
         (_, Action::Suspend) => app.wish = Wish::Suspend,
         (Mode::Asking(_), action) => ask::answer(app, &action),
+        (Mode::Jog, action) => jog::act(app, &action),
         (
             Mode::Remedies,
             action
@@ -62,7 +64,7 @@ fn by_mode(app: &mut App, action: Action) {
         (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
         (Mode::Menu(menu), Action::Enter) => {
             let action = menu.items.get(menu.chosen).map(|item| item.action.clone());
-            app.mode = Mode::Panes;
+            app.mode = if app.jog.is_some() { Mode::Jog } else { Mode::Panes };
             if let Some(action) = action {
                 by_mode(app, action);
             }
@@ -85,6 +87,10 @@ fn by_mode(app: &mut App, action: Action) {
             app.mode = Mode::Page(Page::Why, 0);
         }
         (Mode::Page(..) | Mode::Menu(_), Action::Left | Action::Right | Action::Click(..)) => {}
+        (_, action) if app.jog.is_some() => {
+            app.mode = Mode::Jog;
+            jog::act(app, &action);
+        }
         (_, action) => {
             app.mode = Mode::Panes;
             in_panes(app, &action);
@@ -124,6 +130,8 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::NextQuantity => turn_quantity(app, 1),
         Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
         Action::Change(edit, words) => edits::make(app, edit, words),
+        Action::Jog => jog::open(app),
+        Action::StepSize => app.message = Some("the step size is that of jogging; j opens it".to_owned()),
         Action::Undo => edits::undo(app),
         Action::Redo => edits::redo(app),
         Action::Click(column, row) => click::click(app, *column, *row),
@@ -229,6 +237,7 @@ fn is_named(action: &Action) -> bool {
             | Action::Find
             | Action::Span
             | Action::EveryJoint
+            | Action::Jog
             | Action::Undo
             | Action::Redo
             | Action::Help

@@ -19,7 +19,7 @@ pub(super) fn heading(recipe: &Recipe, vector: &V3) -> String {
 }
 
 /// Along which line a vector in base axes lies, either way: `left and right (along base y)`.
-pub(super) fn line(recipe: &Recipe, vector: &V3) -> String {
+pub fn line(recipe: &Recipe, vector: &V3) -> String {
     const WAYS: [&str; 3] = ["forward and back", "left and right", "up and down"];
     let turned = if largest(vector) < 0.0 { -vector } else { *vector };
     told(recipe, &turned, |axis, _| WAYS[axis], true)
