@@ -13,8 +13,7 @@ use elbowroom::review::jog::{
 use elbowroom::review::record::{Form, Stood, insert_after, rounded, suggested_name, teach_again};
 use random::{Draw, Family, arm, posture};
 
-const FAMILIES: [Family; 5] =
-    [Family::SphericalWrist, Family::OffsetWrist, Family::Seven, Family::FourSlide, Family::ThreeSlide];
+const FAMILIES: [Family; 5] = [Family::SphericalWrist, Family::OffsetWrist, Family::Seven, Family::FourSlide, Family::ThreeSlide];
 
 /// What counts as landed, m and rad.
 const LANDED: f64 = 1e-9;

@@ -151,6 +151,30 @@ fn it_stops_and_goes_on() {
 }
 
 #[test]
+fn the_model_is_jogged_a_waypoint_recorded_and_that_undone() {
+    let mut running = Running::program();
+    running.press("j");
+    running.until("JOG of the model, no arm connected: joint by joint");
+    running.press("\x1b[C\x1b[C\t");
+    running.until("base axes");
+    running.press("\x1b[B\x1b[C");
+    running.until("TCP in base axes");
+    // The first entry of the menu, and the name as suggested.
+    running.press("\r");
+    running.until("insert a waypoint after it");
+    running.press("\r");
+    running.until("Name of the new waypoint: after ");
+    running.press("\r");
+    running.until("recorded as joint values; u undoes it");
+    running.press("u");
+    running.until("undone: waypoint");
+    running.press("j");
+    running.until("NOT READY");
+    running.press("q");
+    assert!(running.end().success());
+}
+
+#[test]
 fn nothing_is_written_while_nothing_happens() {
     let mut running = Running::program();
     std::thread::sleep(Duration::from_millis(800));

@@ -47,7 +47,7 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('t')], Action::NextQuantity, "chart: next quantity", "chart"),
     binding(&[KeyCode::Char('a')], Action::EveryJoint, "chart: all joints, one", ""),
     binding(&[KeyCode::Char('j')], Action::Jog, "jog the model, end that", "jog"),
-    binding(&[KeyCode::Char('i')], Action::StepSize, "jog: next step size", "step size"),
+    binding(&[KeyCode::Char('i')], Action::StepSize, "jog: next step size", "size"),
     binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
     binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
     binding(&[KeyCode::Char('h'), KeyCode::Char('?')], Action::Help, "help", "help"),

@@ -31,8 +31,8 @@ mod unproved;
 mod wrap;
 
 pub use bounds::{bounds_text, proof_summary};
-pub use doubt::doubt_text;
 pub use direction::line as line_words;
+pub use doubt::doubt_text;
 pub use edit::{difference_words, edit_words};
 pub use explanation::{Bar, Explanation, Label, Paragraph};
 pub use first_run::{FIRST_RUN_CAUTIONS, first_run_text, held_back_words, stage_words};

@@ -59,8 +59,7 @@ pub enum Direction {
 
 impl Direction {
     /// All six: x, y, z, then the turns.
-    pub const ALL: [Self; 6] =
-        [Self::Along(0), Self::Along(1), Self::Along(2), Self::About(0), Self::About(1), Self::About(2)];
+    pub const ALL: [Self; 6] = [Self::Along(0), Self::Along(1), Self::Along(2), Self::About(0), Self::About(1), Self::About(2)];
 
     /// Its name: `x` or `turn x`.
     pub fn name(self) -> &'static str {

@@ -31,11 +31,8 @@ impl Readings {
         let posture = Posture::at(arm.chain(), &q);
         let tcp = posture.tcp(&carried.tcp);
         let jacobian = Jacobian::at(arm.chain(), &posture, &tcp.at);
-        let null = if arm.is_redundant() {
-            null_rows(&jacobian, arm.task(), arm.joints())
-        } else {
-            [[0.0; MAX_JOINTS]; MAX_JOINTS]
-        };
+        let null =
+            if arm.is_redundant() { null_rows(&jacobian, arm.task(), arm.joints()) } else { [[0.0; MAX_JOINTS]; MAX_JOINTS] };
         let lu = Lu::of(stacked(&jacobian, arm.task(), &null), arm.len());
         let torque = holding_torque(arm.chain(), &posture, carried, gravity, None);
         Self {

@@ -3,13 +3,13 @@ use crate::geometry::{Pose, V3, turn_about};
 use crate::kinematics::{Jacobian, Lu, Posture, pose_error, smallest_singular_value, within};
 use crate::program::Carried;
 
-/// Below this smallest singular value steps are damped (lengths divided by the characteristic length). There a joint must turn some
-/// twenty times as far as the tool; common practice, no source.
-pub const DAMPED_BELOW: f64 = 0.05;
+/// Below this smallest singular value steps are damped (lengths divided by the characteristic length): where joints must turn some
+/// fifty times as far as the tool. It is what recipes usually allow on lines and arcs at the least; common practice, no source.
+pub const DAMPED_BELOW: f64 = 0.02;
 /// The damping at a singular posture itself. From [`DAMPED_BELOW`] on it grows as `λ² = λ0² (1 - (σ / σ0)²)`, the rule for damped
 /// least squares of Nakamura and Hanafusa (1986) in the form with singular values (from memory). It bounds what any part of a
 /// gap asks of the joints to `1 / (2 λ)` of it.
-pub const GREATEST_DAMPING: f64 = 0.04;
+pub const GREATEST_DAMPING: f64 = 0.02;
 /// No joint turns farther than this in one step, rad (30 degrees): a hand that steps the tool expects no other posture.
 pub const MOST_TURN: f64 = std::f64::consts::PI / 6.0;
 /// No joint slides farther than this in one step, m.
@@ -157,8 +157,7 @@ impl<'a> Walk<'a> {
         let unit = |j: usize| if arm.joints()[j].kind == JointKind::Prismatic { length } else { 1.0 };
         let fastest = (0..arm.len()).map(|j| arm.joints()[j].rate / unit(j)).fold(0.0, f64::max);
         // Rates weigh only where there is a choice, so that the damping means the same for every other arm.
-        let weights =
-            Joints::from_fn(arm.len(), |j| if arm.is_redundant() { arm.joints()[j].rate / fastest } else { unit(j) });
+        let weights = Joints::from_fn(arm.len(), |j| if arm.is_redundant() { arm.joints()[j].rate / fastest } else { unit(j) });
         let from = Posture::at(arm.chain(), &q).tcp(&carried.tcp);
         Self { arm, carried, start: q, from, direction: *direction, by, weights }
     }

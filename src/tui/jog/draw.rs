@@ -15,7 +15,7 @@ use super::{Jogging, system, tcp, words};
 /// From this width on the arm stands beside the rulers.
 const BESIDE: usize = 100;
 /// Columns behind the rulers of joints, for the way to the range's end and what holding asks.
-const BEHIND: usize = 25;
+const BEHIND: usize = 27;
 
 /// Draws rulers, limits and the arm.
 pub fn draw(sheet: &mut Sheet, app: &App) {

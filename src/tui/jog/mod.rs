@@ -151,7 +151,7 @@ fn step(app: &mut App, sign: f64, count: usize) {
     for _ in 0..count {
         let Some(jog) = &app.jog else { return };
         let by = sign * size(app, jog).si;
-        let (q, told) = match (&jog.axes, jog.direction()) {
+        let (q, told, stopped) = match (&jog.axes, jog.direction()) {
             (Some(axes), Some(direction)) => {
                 let stand = Stand { arm: &app.arm, carried: &jog.carried, q: jog.q };
                 let Some(system) = axes.in_base(&app.taught, &tcp(app, jog, &jog.q)) else {
@@ -159,20 +159,21 @@ fn step(app: &mut App, sign: f64, count: usize) {
                     return;
                 };
                 match cartesian_step(&stand, &direction.twist(&system), by) {
-                    Ok(step) => (step.q, words::step(&app.arm, &step)),
-                    Err(refused) => (jog.q, Some(words::refused(&app.arm, &refused))),
+                    Ok(step) => (step.q, words::step(&app.arm, &step), step.stop.is_some()),
+                    Err(refused) => (jog.q, Some(words::refused(&app.arm, &refused)), true),
                 }
             }
             _ => {
                 let (q, stop) = joint_step(&app.arm, &jog.q, jog.row, by);
-                (q, stop.map(|stop| words::stop(&app.arm, stop)))
+                (q, stop.map(|stop| words::stop(&app.arm, stop)), stop.is_some())
             }
         };
         if let Some(jog) = &mut app.jog {
             jog.q = q;
         }
-        if told.is_some() {
-            app.message = told;
+        // What the last of several steps said stays, and of those before it what was not as asked.
+        app.message = told.or(app.message.take());
+        if stopped {
             return;
         }
     }

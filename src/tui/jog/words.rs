@@ -55,17 +55,20 @@ pub(super) fn step(arm: &Arm, step: &Step) -> Option<String> {
     let turn = Angle::rad(step.missing[3..].iter().map(|m| m * m).sum::<f64>().sqrt()).measure();
     let missing = format!("{} and {} missing", way.text_up(2), turn.text_up(2));
     // Down and not below 0: 99.9 % done is not done.
-    let share = format!("{:.0} %", (100.0 * step.done).floor().max(0.0));
+    let share = format!("{:.0} %", (100.0 * step.done + ROUNDING).floor().max(0.0));
     match step.stop {
         Some(why) => Some(format!("{}; {share} of the step done", stop(arm, why))),
         None if step.damping > 0.0 => {
             let near = Measure::si(step.smallest, Dimension::Ratio).text(3);
-            Some(format!("damped near a singular posture ({near}): {share} of the step done, {missing}"))
+            Some(format!("damped, singular {near}: {share} of the step done, {missing}"))
         }
         None if step.missing.iter().any(|m| !(m.abs() <= LANDED)) => Some(format!("{share} of the step done, {missing}")),
         None => None,
     }
 }
+
+/// Rounding of a share that was done in full, percent.
+const ROUNDING: f64 = 1e-6;
 
 /// What is missing less than this counts as nothing, m and rad.
 const LANDED: f64 = 1e-9;
