@@ -12,8 +12,10 @@ use crate::units::{Angle, Dimension, Length, Measure};
 use super::rulers::{self, Ruler};
 use super::{Jogging, system, tcp, words};
 
-/// From this width on the arm stands beside the rulers.
+/// From this width on the arm can stand beside the rulers.
 const BESIDE: usize = 100;
+/// From this height on it stands below them, where it is larger.
+const TALL: usize = 30;
 /// Columns behind the rulers of joints, for the way to the range's end and what holding asks.
 const BEHIND: usize = 27;
 
@@ -21,7 +23,7 @@ const BEHIND: usize = 27;
 pub fn draw(sheet: &mut Sheet, app: &App) {
     let (Some(jog), Some(gauges)) = (&app.jog, &app.scene.gauges) else { return };
     let (width, height) = (sheet.width(), sheet.height());
-    if width >= BESIDE {
+    if width >= BESIDE && height < TALL {
         let left = width * 6 / 11;
         rows(&mut sheet.part(0, 0, left, height), app, jog, gauges);
         arm::draw(&mut sheet.part(left + 1, 0, width - left - 1, height), app);
