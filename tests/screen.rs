@@ -21,7 +21,7 @@ fn unchecked(width: u16, height: u16, theme: Theme) -> App {
 
 fn opened_with(width: u16, height: u16, theme: Theme) -> App {
     let mut app = unchecked(width, height, theme);
-    let judged = Judged::of(&app.arm, &app.taught, None, &Watch::default()).expect("nobody stops it");
+    let judged = Judged::of(&app.arm, app.taught(), None, &Watch::default()).expect("nobody stops it");
     update(&mut app, Action::Judged(Box::new(judged)));
     app
 }

@@ -19,8 +19,10 @@ pub(super) fn run(recipe: Option<&Path>, asked: ScreenArgs) -> anyhow::Result<Co
     let started = Started {
         arm: Arc::new(opened.arm),
         recipe: Arc::new(opened.recipe),
+        path: recipe.map(Path::to_owned),
         recipe_path: opened.recipe_source.path,
-        arm_path: opened.arm_source.path,
+        recipe_text: opened.recipe_source.text,
+        arm_text: opened.arm_source.text,
     };
     crate::tui::run(started, options)?;
     Ok(Code::Clear)

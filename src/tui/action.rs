@@ -4,6 +4,8 @@ use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Edit;
 use crate::review::{Judged, Progress, Told};
 
+use super::app::FileWish;
+
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
 #[derive(Debug, Clone)]
 pub enum Action {
@@ -59,14 +61,28 @@ pub enum Action {
     Bounds,
     /// The keys and the signs.
     Help,
-    /// Change the recipe; what it is in words, for the history.
-    Change(Box<Edit>, String),
+    /// Change the recipe.
+    Change(Box<Edit>),
     /// Take the last edit back.
     Undo,
     /// Make the last edit that was taken back again.
     Redo,
-    /// End the program.
+    /// Write what is taught to its file.
+    Save,
+    /// Ask for the name of another file to write it to.
+    SaveAs,
+    /// Do this with the recipe's file.
+    File(FileWish),
+    /// Look at the recipe and edit nothing, for this reason.
+    LookOnly(String),
+    /// Copy the selected finding, or what is told of the segment, as text.
+    Copy,
+    /// Close what is open and change nothing.
+    Stay,
+    /// End the program; with edits that are not saved, ask first.
     Quit,
+    /// End it and give up the edits.
+    QuitAnyway,
     /// Let the shell have the terminal for a while.
     Suspend,
     /// A character typed where text is asked for.

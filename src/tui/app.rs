@@ -4,12 +4,11 @@ use ratatui::layout::Rect;
 
 use crate::arm::Arm;
 use crate::checks::{Check, SegmentSurvey, Survey};
-use crate::program::Recipe;
-use crate::review::{Judged, Progress, Session};
+use crate::program::{Edit, Recipe};
+use crate::review::{History, Judged, Progress, Session};
 
 use super::action::Action;
 use super::curve::Subject;
-use super::edits::Edits;
 use super::keys::{Binding, name};
 use super::remedies::Remedies;
 use super::scene::Scene;
@@ -71,6 +70,8 @@ pub enum Question {
     GoTo,
     /// A part of a waypoint's name.
     Find,
+    /// A file's name.
+    SaveAs,
 }
 
 /// What is typed in answer to a question.
@@ -96,7 +97,7 @@ pub struct Item {
 impl Item {
     /// The item of a key.
     pub fn of(binding: &Binding, theme: Theme) -> Self {
-        let key = name(binding.keys[0], theme.ascii);
+        let key = binding.keys.first().map_or_else(String::new, |key| name(*key, theme.ascii));
         Self { name: binding.hint.to_owned(), key, action: binding.action.clone() }
     }
 }
@@ -128,7 +129,7 @@ pub enum Mode {
 }
 
 /// What is to become of the program.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, PartialEq, Eq)]
 pub enum Wish {
     /// Go on.
     GoOn,
@@ -136,6 +137,32 @@ pub enum Wish {
     Quit,
     /// Give the terminal back for a while.
     Suspend,
+    /// Do something with the recipe's file.
+    File(FileWish),
+    /// Copy a text to the clipboard of the person's own terminal.
+    Copy(String),
+}
+
+/// What is to be done with the recipe's file.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub enum FileWish {
+    /// Write what is taught, and end if so.
+    Save {
+        /// Whether to end the program when it is written.
+        then_quit: bool,
+    },
+    /// Write it over what somebody else has written meanwhile.
+    SaveOver,
+    /// Write it to a file of this name.
+    SaveAs(String),
+    /// Read the file again and give the edits up.
+    Reload,
+    /// Make the edits again that an earlier run left behind.
+    TakeUp,
+    /// Throw them away.
+    Forget,
+    /// Open the recipe although somebody else has it open.
+    OpenAllTheSame,
 }
 
 /// What the chart is set to.
@@ -154,10 +181,12 @@ pub struct ChartSetting {
 pub struct App {
     /// The arm.
     pub arm: Arc<Arm>,
-    /// What is taught now, with every edit.
-    pub taught: Arc<Recipe>,
-    /// The edits that led there.
-    pub edits: Edits,
+    /// What is taught now, with every edit that led there.
+    pub history: History,
+    /// Edits that are still to be noted down.
+    pub made: Vec<Edit>,
+    /// Why nothing may be edited, if so.
+    pub look_only: Option<String>,
     /// Whether what is taught now is still to be checked.
     pub unchecked: bool,
     /// How things look.
@@ -200,8 +229,9 @@ impl App {
         let progress = Some(Progress { done: 0, of: recipe.waypoints.len().saturating_sub(1) });
         Self {
             arm,
-            taught: recipe,
-            edits: Edits::default(),
+            history: History::of((*recipe).clone()),
+            made: Vec::new(),
+            look_only: None,
             unchecked: true,
             theme,
             area,
@@ -224,7 +254,12 @@ impl App {
 
     /// The recipe that the panes show: the one that was judged last, so that no pane mixes it with a newer one.
     pub fn recipe(&self) -> &Recipe {
-        self.session.as_ref().map_or(&self.taught, |session| &session.judged().recipe)
+        self.session.as_ref().map_or(self.history.recipe(), |session| &session.judged().recipe)
+    }
+
+    /// What is taught now, with every edit, judged or not.
+    pub fn taught(&self) -> &Arc<Recipe> {
+        self.history.recipe()
     }
 
     /// The judged recipe.

@@ -1,7 +1,7 @@
 use std::sync::Arc;
 
 use super::action::Action;
-use super::app::{App, Asking, Mode, Question};
+use super::app::{App, Asking, FileWish, Mode, Question, Wish};
 use super::update::follow_finding;
 
 /// The question as it stands in the lowest row.
@@ -9,6 +9,7 @@ pub fn prompt(question: Question) -> &'static str {
     match question {
         Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
         Question::Find => "Find waypoint: ",
+        Question::SaveAs => "Save as: ",
     }
 }
 
@@ -33,6 +34,11 @@ pub(super) fn answer(app: &mut App, action: &Action) {
 fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
     let typed = asking.typed.trim().to_owned();
     match asking.question {
+        Question::SaveAs if typed.is_empty() => Ok(()),
+        Question::SaveAs => {
+            app.wish = Wish::File(FileWish::SaveAs(typed));
+            Ok(())
+        }
         Question::GoTo => go_to(app, &typed),
         Question::Find => {
             let looked_for = if typed.is_empty() { app.found.clone() } else { typed };

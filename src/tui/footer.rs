@@ -39,7 +39,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         let key = match binding.action {
             Action::Left => if ascii { "Left/Right" } else { "←→" }.to_owned(),
             Action::Up => if ascii { "Up/Down" } else { "↑↓" }.to_owned(),
-            _ => name(binding.keys[0], ascii),
+            _ => binding.keys.first().map_or_else(String::new, |key| name(*key, ascii)),
         };
         (key, binding.short.to_owned())
     };

@@ -48,6 +48,9 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('a')], Action::EveryJoint, "chart: all joints, one", ""),
     binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
     binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
+    binding(&[KeyCode::Char('s')], Action::Save, "save", ""),
+    binding(&[], Action::SaveAs, "save elsewhere", ""),
+    binding(&[KeyCode::Char('k')], Action::Copy, "copy what is told", ""),
     binding(&[KeyCode::Char('h'), KeyCode::Char('?')], Action::Help, "help", "help"),
     binding(&[KeyCode::Char('q')], Action::Quit, "quit", "quit"),
 ];

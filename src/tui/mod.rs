@@ -11,6 +11,7 @@ mod chart;
 mod click;
 mod curve;
 mod edits;
+mod file;
 mod footer;
 mod gauges;
 mod headline;
@@ -40,7 +41,7 @@ use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
 pub use action::Action;
-pub use app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
+pub use app::{App, Asking, FileWish, Item, Menu, Mode, Page, Pane, Question, Wish};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use remedies::wanted as remedies_wanted;

@@ -10,7 +10,7 @@ use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, edits, page, remedies};
+use super::{click, edits, file, page, remedies};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
@@ -43,7 +43,11 @@ pub fn update(app: &mut App, action: Action) {
 
 fn by_mode(app: &mut App, action: Action) {
     match (&mut app.mode, action) {
-        (_, Action::Quit) => app.wish = Wish::Quit,
+        (_, Action::Quit) if app.history.is_unsaved() => app.mode = Mode::Menu(file::unsaved(app)),
+        (_, Action::Quit | Action::QuitAnyway) => app.wish = Wish::Quit,
+        (_, Action::File(wish)) => app.wish = Wish::File(wish),
+        (_, Action::LookOnly(why)) => app.look_only = Some(why),
+        (_, Action::Stay) => app.mode = Mode::Panes,
         (_, Action::Suspend) => app.wish = Wish::Suspend,
         (Mode::Asking(_), action) => ask::answer(app, &action),
         (
@@ -123,9 +127,12 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::Show(check) => app.chart.check = *check,
         Action::NextQuantity => turn_quantity(app, 1),
         Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
-        Action::Change(edit, words) => edits::make(app, edit, words),
+        Action::Change(edit) => edits::make(app, edit),
         Action::Undo => edits::undo(app),
         Action::Redo => edits::redo(app),
+        Action::Save => file::save(app),
+        Action::SaveAs => app.mode = Mode::Asking(Asking { question: Question::SaveAs, typed: String::new() }),
+        Action::Copy => file::copy(app),
         Action::Click(column, row) => click::click(app, *column, *row),
         _ => {}
     }
@@ -231,6 +238,9 @@ fn is_named(action: &Action) -> bool {
             | Action::EveryJoint
             | Action::Undo
             | Action::Redo
+            | Action::Save
+            | Action::SaveAs
+            | Action::Copy
             | Action::Help
             | Action::Quit
     )

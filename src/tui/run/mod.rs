@@ -1,8 +1,10 @@
 //! The only place that knows threads, the terminal and its signals.
 
+mod keeper;
 mod news;
 mod screen;
 
+use std::path::PathBuf;
 use std::sync::Arc;
 use std::time::Duration;
 
@@ -16,12 +18,13 @@ use crate::program::Recipe;
 use crate::review::{Desk, Done, Recheck, Reply};
 
 use crate::tui::action::Action;
-use crate::tui::app::{App, Wish};
+use crate::tui::app::{App, FileWish, Wish};
 use crate::tui::keys::action_of;
 use crate::tui::options::Options;
 use crate::tui::remedies::wanted;
 use crate::tui::update::update;
 
+use keeper::Keeper;
 use news::{News, listen};
 
 pub use screen::{Screen, restore};
@@ -33,10 +36,14 @@ pub struct Started {
     pub arm: Arc<Arm>,
     /// What was taught.
     pub recipe: Arc<Recipe>,
-    /// Where the recipe came from.
+    /// The recipe's file; none for the built-in demonstration.
+    pub path: Option<PathBuf>,
+    /// Where the recipe came from, as it is told.
     pub recipe_path: String,
-    /// Where the arm came from.
-    pub arm_path: String,
+    /// Its text.
+    pub recipe_text: String,
+    /// The text of the arm file.
+    pub arm_text: String,
 }
 
 /// A running check is looked at this often: four times a second.
@@ -59,13 +66,16 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
     let mut screen = Screen::take(options.mouse)?;
     let news = listen().context("can't listen to the terminal")?;
     let (width, height) = screen.size()?;
-    let mut app = App::new(started.arm, started.recipe, options.theme(), Rect::new(0, 0, width, height));
+    let area = Rect::new(0, 0, width, height);
+    let mut app = App::new(Arc::clone(&started.arm), Arc::clone(&started.recipe), options.theme(), area);
+    let mut keeper = Keeper::of(&started, &mut app);
     let mut recheck = Recheck::start().context("can't start the check")?;
     let mut desk = Desk::start().context("can't start the search for remedies")?;
     let mut patience = FIRST;
     loop {
+        keeper.note(&mut app);
         if std::mem::take(&mut app.unchecked) {
-            recheck.submit(&app.arm, &app.taught, app.judged().cloned());
+            recheck.submit(&app.arm, app.taught(), app.judged().cloned());
             // What is done before anybody could read that it is being checked is shown at once.
             if let Ok(reply) = recheck.replies().recv_timeout(std::mem::replace(&mut patience, SOON)) {
                 accept(&mut app, &mut recheck, reply);
@@ -82,7 +92,20 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
         screen.show(&app)?;
         match wait(&mut app, &mut recheck, &mut desk, &news)? {
             Turn::Draw => {}
-            Turn::Quit => return Ok(None),
+            Turn::File(wish) => {
+                keeper.note(&mut app);
+                keeper.act(&mut app, &wish);
+                // Saving may end in quitting.
+                if std::mem::replace(&mut app.wish, Wish::GoOn) == Wish::Quit {
+                    keeper.end();
+                    return Ok(None);
+                }
+            }
+            Turn::Copy(text) => screen.copy(&text)?,
+            Turn::Quit => {
+                keeper.end();
+                return Ok(None);
+            }
             Turn::End(signal) => return Ok(Some(signal)),
             Turn::Suspend => suspend(&mut screen, &mut app)?,
         }
@@ -101,6 +124,8 @@ enum Turn {
     Quit,
     End(i32),
     Suspend,
+    File(FileWish),
+    Copy(String),
 }
 
 /// Waits for something to happen, then takes all that waits, so that many keys make one frame.
@@ -167,6 +192,8 @@ fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
         Wish::GoOn => Turn::Draw,
         Wish::Quit => Turn::Quit,
         Wish::Suspend => Turn::Suspend,
+        Wish::File(wish) => Turn::File(wish),
+        Wish::Copy(text) => Turn::Copy(text),
     })
 }
 
