@@ -86,8 +86,12 @@ pub fn kind_words(kind: RemedyKind) -> &'static str {
 
 /// What of a finding a room is of: `J4 rate`.
 fn subject(judged: &Judged, finding: &Finding) -> String {
-    let joint = finding.joint.map_or(String::new(), |j| format!("{} ", judged.arm.joints()[j].name));
-    format!("{joint}{}", check_words(finding.check))
+    subject_of(judged, finding.check, finding.joint)
+}
+
+fn subject_of(judged: &Judged, check: Check, joint: Option<usize>) -> String {
+    let joint = joint.map_or(String::new(), |j| format!("{} ", judged.arm.joints()[j].name));
+    format!("{joint}{}", check_words(check))
 }
 
 fn figures(judged: &Judged, change: &Change) -> String {
@@ -265,12 +269,9 @@ fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<Str
                 Short::Nearest(Some(room)) => format!("{words} ({})", near(room)),
                 Short::Nearest(None) if finding.check == Check::Reach => format!("{words} (still no path)"),
                 Short::Nearest(None) => format!("{words} (it comes to nothing)"),
-                Short::Spoils(other) => {
-                    format!(
-                        "{words} ({} is in the way on segment {})",
-                        subject(judged, &other),
-                        judged.plan.segments[other.segment].label()
-                    )
+                Short::Spoils { segment, check, joint } => {
+                    let label = judged.plan.segments[segment].label();
+                    format!("{words} ({} is in the way on segment {label})", subject_of(judged, check, joint))
                 }
                 Short::Fixed => format!("{words} (the work fixes the points)"),
             }

@@ -67,7 +67,7 @@ impl Nearest {
 
     /// Why nothing came of it.
     pub fn short(&self) -> Short {
-        self.spoilt.map_or(Short::Nearest(self.room), Short::Spoils)
+        self.spoilt.as_ref().map_or(Short::Nearest(self.room), Short::spoils)
     }
 }
 
@@ -237,7 +237,9 @@ impl<'a> Trial<'a> {
             return Err(Short::Nearest(room[1]));
         }
         if let Some(spoilt) = effect.worsens.iter().find(|finding| finding.verdict >= self.finding.verdict) {
-            return Err(Short::Spoils(*spoilt));
+            let to = origin(after.plan.segments[spoilt.segment].to, inserted);
+            let segment = before.plan.index_arriving(to).unwrap_or(spoilt.segment);
+            return Err(Short::spoils(&Finding { segment, ..*spoilt }));
         }
         let costs = Seconds::s(after.plan.duration() - before.plan.duration());
         Ok(Remedy { change, edit: (!only_told).then_some(edit), after, effect, room, costs, size })
