@@ -258,7 +258,7 @@ pub struct Remedy {
     pub room: [Option<Room>; 2],
     /// What it costs on the cycle; below 0 where it saves time.
     pub costs: Seconds,
-    /// How much it changes of what the person taught; remedies are ranked by it, the least first. See [`super::size`].
+    /// How much it changes of what the person taught; remedies are ranked by it, the least first.
     pub size: f64,
 }
 
