@@ -46,7 +46,15 @@ pub fn remedy_text(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Strin
     told.extend(left_over(remedy));
     told.extend(worse(remedy));
     told.extend(costs(remedy));
+    if remedy.edit.is_some() && moves_elsewhere(remedy.kind()) {
+        told.push("Whether the new way is free is not judged.".to_owned());
+    }
     told.join(" ")
+}
+
+/// Whether arm or tool then pass where they did not pass before, so that they may meet something.
+fn moves_elsewhere(kind: RemedyKind) -> bool {
+    !matches!(kind, RemedyKind::Slower | RemedyKind::Acceleration | RemedyKind::Dwell)
 }
 
 /// The room of the finding's check and joint, before and after.
