@@ -5,6 +5,7 @@ use crate::motion::{Plan, Segment};
 use crate::program::{Edit, Recipe};
 use crate::units::{Room, Seconds, Share};
 
+use super::glance::still_flagged;
 use super::{Change, Effect, Judged, Remedy, Short};
 
 /// Two rooms that differ by less are told as the same.
@@ -129,6 +130,12 @@ impl<'a> Trial<'a> {
                 break;
             }
             for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
+                if own
+                    && plan.gravity == judged.plan.gravity
+                    && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance)
+                {
+                    return Seen { clear: false, room: Some(room), ..seen };
+                }
                 let survey = judge_at(&judged.arm, index, segment, &recipe.acceptance, plan.gravity, Share::WHOLE);
                 let amiss = self.amiss(&survey, own.then_some(aim), origin(segment.to, inserted));
                 seen.clear &= amiss.is_none();
