@@ -18,7 +18,7 @@ fn check(app: &mut App) {
 
 fn opened(width: u16, height: u16) -> App {
     let Opened { arm, recipe, .. } = demo();
-    let mut app = App::new(Arc::new(arm), Arc::new(recipe), Theme::default(), Rect::new(0, 0, width, height));
+    let mut app = App::new(Arc::new(arm), recipe, Theme::default(), Rect::new(0, 0, width, height));
     check(&mut app);
     app
 }

@@ -24,6 +24,6 @@ pub(super) fn run(recipe: Option<&Path>, asked: ScreenArgs) -> anyhow::Result<Co
         recipe_text: opened.recipe_source.text,
         arm_text: opened.arm_source.text,
     };
-    crate::tui::run(started, options)?;
+    crate::tui::run(&started, options)?;
     Ok(Code::Clear)
 }

@@ -225,11 +225,11 @@ pub struct App {
 
 impl App {
     /// The screen before anything was checked.
-    pub fn new(arm: Arc<Arm>, recipe: Arc<Recipe>, theme: Theme, area: Rect) -> Self {
+    pub fn new(arm: Arc<Arm>, recipe: Recipe, theme: Theme, area: Rect) -> Self {
         let progress = Some(Progress { done: 0, of: recipe.waypoints.len().saturating_sub(1) });
         Self {
             arm,
-            history: History::of((*recipe).clone()),
+            history: History::of(recipe),
             made: Vec::new(),
             look_only: None,
             unchecked: true,

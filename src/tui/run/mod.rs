@@ -53,7 +53,7 @@ const LOOK: Duration = Duration::from_millis(250);
 ///
 /// # Errors
 /// Where there is no terminal, it is gone, or the check came to an unexpected end.
-pub fn run(started: Started, options: Options) -> anyhow::Result<()> {
+pub fn run(started: &Started, options: Options) -> anyhow::Result<()> {
     let ended = watched(started, options)?;
     if let Some(signal) = ended {
         end_by(signal)?;
@@ -62,13 +62,13 @@ pub fn run(started: Started, options: Options) -> anyhow::Result<()> {
 }
 
 /// Runs the screen; tells the signal that ended it, if one did. The terminal is given back when this returns.
-fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
+fn watched(started: &Started, options: Options) -> anyhow::Result<Option<i32>> {
     let mut screen = Screen::take(options.mouse)?;
     let news = listen().context("can't listen to the terminal")?;
     let (width, height) = screen.size()?;
     let area = Rect::new(0, 0, width, height);
-    let mut app = App::new(Arc::clone(&started.arm), Arc::clone(&started.recipe), options.theme(), area);
-    let mut keeper = Keeper::of(&started, &mut app);
+    let mut app = App::new(Arc::clone(&started.arm), (*started.recipe).clone(), options.theme(), area);
+    let mut keeper = Keeper::of(started, &mut app);
     let mut recheck = Recheck::start().context("can't start the check")?;
     let mut desk = Desk::start().context("can't start the search for remedies")?;
     let mut patience = FIRST;
