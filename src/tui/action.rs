@@ -5,6 +5,7 @@ use crate::program::Edit;
 use crate::review::{Judged, Progress, Told};
 
 use super::app::FileWish;
+use super::stretch::OnStretch;
 
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
 #[derive(Debug, Clone)]
@@ -67,6 +68,14 @@ pub enum Action {
     Undo,
     /// Make the last edit that was taken back again.
     Redo,
+    /// Edit the data of the selected waypoint and all else.
+    Edit,
+    /// The edits of a stretch of waypoints.
+    EditStretch,
+    /// Do this with the stretch.
+    OnStretch(OnStretch),
+    /// What a typed text would make of the recipe, judged.
+    Previewed(Box<Judged>),
     /// Write what is taught to its file.
     Save,
     /// Ask for the name of another file to write it to.

@@ -9,6 +9,7 @@ use crate::review::{History, Judged, Progress, Session};
 
 use super::action::Action;
 use super::curve::Subject;
+use super::editing::{Editing, Preview};
 use super::keys::{Binding, name};
 use super::remedies::Remedies;
 use super::scene::Scene;
@@ -72,6 +73,8 @@ pub enum Question {
     Find,
     /// A file's name.
     SaveAs,
+    /// Three lengths by which a stretch is shifted.
+    ShiftBy,
 }
 
 /// What is typed in answer to a question.
@@ -124,6 +127,8 @@ pub enum Mode {
     Menu(Menu),
     /// The remedies of the finding, one of them chosen.
     Remedies,
+    /// Data that can be edited.
+    Editing(Editing),
     /// A question in the lowest row.
     Asking(Asking),
 }
@@ -185,6 +190,10 @@ pub struct App {
     pub history: History,
     /// Edits that are still to be noted down.
     pub made: Vec<Edit>,
+    /// Where a stretch of waypoints to be edited begins, counted from 0.
+    pub mark: Option<usize>,
+    /// What a typed text would make of the recipe.
+    pub preview: Option<Preview>,
     /// Why nothing may be edited, if so.
     pub look_only: Option<String>,
     /// Whether what is taught now is still to be checked.
@@ -231,6 +240,8 @@ impl App {
             arm,
             history: History::of(recipe),
             made: Vec::new(),
+            mark: None,
+            preview: None,
             look_only: None,
             unchecked: true,
             theme,

@@ -2,6 +2,7 @@ use std::sync::Arc;
 
 use super::action::Action;
 use super::app::{App, Asking, FileWish, Mode, Question, Wish};
+use super::stretch;
 use super::update::follow_finding;
 
 /// The question as it stands in the lowest row.
@@ -10,6 +11,7 @@ pub fn prompt(question: Question) -> &'static str {
         Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
         Question::Find => "Find waypoint: ",
         Question::SaveAs => "Save as: ",
+        Question::ShiftBy => "Shift by x y z in mm (0 0 12.5): ",
     }
 }
 
@@ -24,7 +26,9 @@ pub(super) fn answer(app: &mut App, action: &Action) {
         Action::Enter => {
             let asking = asking.clone();
             app.mode = Mode::Panes;
-            app.message = settle(app, &asking).err();
+            if let Err(why) = settle(app, &asking) {
+                app.message = Some(why);
+            }
         }
         _ => {}
     }
@@ -34,7 +38,11 @@ pub(super) fn answer(app: &mut App, action: &Action) {
 fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
     let typed = asking.typed.trim().to_owned();
     match asking.question {
-        Question::SaveAs if typed.is_empty() => Ok(()),
+        Question::SaveAs | Question::ShiftBy if typed.is_empty() => Ok(()),
+        Question::ShiftBy => {
+            stretch::act(app, &stretch::OnStretch::Shift(typed));
+            Ok(())
+        }
         Question::SaveAs => {
             app.wish = Wish::File(FileWish::SaveAs(typed));
             Ok(())

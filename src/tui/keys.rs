@@ -46,6 +46,8 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('z')], Action::Span, "chart: segment or cycle", ""),
     binding(&[KeyCode::Char('t')], Action::NextQuantity, "chart: next quantity", "chart"),
     binding(&[KeyCode::Char('a')], Action::EveryJoint, "chart: all joints, one", ""),
+    binding(&[KeyCode::Char('e')], Action::Edit, "edit the data", "edit"),
+    binding(&[KeyCode::Char('x')], Action::EditStretch, "edit a stretch of waypoints", ""),
     binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
     binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
     binding(&[KeyCode::Char('s')], Action::Save, "save", ""),
@@ -62,8 +64,8 @@ pub fn action_of(key: KeyEvent, mode: &Mode) -> Option<Action> {
         KeyCode::Char('c') if control => return Some(Action::Quit),
         KeyCode::Char('z') if control => return Some(Action::Suspend),
         _ if key.modifiers.intersects(KeyModifiers::CONTROL | KeyModifiers::ALT) => return None,
-        KeyCode::Char(sign) if matches!(mode, Mode::Asking(_)) => return Some(Action::Type(sign)),
-        KeyCode::Backspace if matches!(mode, Mode::Asking(_)) => return Some(Action::Erase),
+        KeyCode::Char(sign) if is_typing(mode) => return Some(Action::Type(sign)),
+        KeyCode::Backspace if is_typing(mode) => return Some(Action::Erase),
         _ => {}
     }
     let code = match key.code {
@@ -71,6 +73,15 @@ pub fn action_of(key: KeyEvent, mode: &Mode) -> Option<Action> {
         code => code,
     };
     BINDINGS.iter().find(|binding| binding.keys.contains(&code)).map(|binding| binding.action.clone())
+}
+
+/// Whether signs are text now and no keys.
+fn is_typing(mode: &Mode) -> bool {
+    match mode {
+        Mode::Asking(_) => true,
+        Mode::Editing(editing) => editing.typing.is_some(),
+        _ => false,
+    }
 }
 
 /// A key's name as the footer and the help write it.

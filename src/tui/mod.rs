@@ -10,6 +10,8 @@ mod bounds;
 mod chart;
 mod click;
 mod curve;
+mod edit_page;
+mod editing;
 mod edits;
 mod file;
 mod footer;
@@ -33,6 +35,7 @@ mod run;
 mod scene;
 mod sheet;
 mod sketch;
+mod stretch;
 mod theme;
 mod update;
 mod why;
@@ -46,6 +49,7 @@ pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use remedies::wanted as remedies_wanted;
 pub use run::{Screen, Started, restore, run};
+pub use stretch::OnStretch;
 pub use theme::Theme;
 pub use update::update;
 
@@ -61,6 +65,12 @@ pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
         let height = area.height - layout.headline.height - layout.footer.height;
         let whole = Rect { y: layout.headline.bottom(), height, ..area };
         page::draw(&mut Sheet::new(buffer, whole, theme), app, page, scroll);
+        return;
+    }
+    if let Mode::Editing(editing) = &app.mode {
+        let height = area.height - layout.headline.height - layout.footer.height;
+        let whole = Rect { y: layout.headline.bottom(), height, ..area };
+        edit_page::draw(&mut Sheet::new(buffer, whole, theme), app, editing);
         return;
     }
     if matches!(app.mode, Mode::Remedies) {

@@ -83,6 +83,15 @@ fn watched(started: &Started, options: Options) -> anyhow::Result<Option<i32>> {
                 update(&mut app, Action::Checking(progress));
             }
         }
+        let idle = app.progress.is_none();
+        if let (Some(preview), Some(judged)) = (app.preview.as_mut().filter(|preview| idle && !preview.asked), app.session.as_ref())
+        {
+            preview.asked = true;
+            recheck.submit(&app.arm, &preview.recipe, Some(judged.judged().clone()));
+            if let Ok(reply) = recheck.replies().recv_timeout(SOON) {
+                accept(&mut app, &mut recheck, reply);
+            }
+        }
         if let (Some(segment), Some(judged)) = (app.tighten.take(), app.judged()) {
             recheck.tighten(judged, segment);
         }
@@ -164,7 +173,11 @@ fn wait(app: &mut App, recheck: &mut Recheck, desk: &mut Desk, news: &Receiver<N
 
 fn accept(app: &mut App, recheck: &mut Recheck, reply: Reply) {
     match recheck.accept(reply) {
-        Some(Done::Judged(judged)) => update(app, Action::Judged(Box::new(judged))),
+        // What answers a preview is not what is taught.
+        Some(Done::Judged(judged)) if Arc::ptr_eq(&judged.recipe, app.taught()) => {
+            update(app, Action::Judged(Box::new(judged)));
+        }
+        Some(Done::Judged(judged)) => update(app, Action::Previewed(Box::new(judged))),
         Some(Done::Closer(survey, closer)) => update(app, Action::Closer(survey, closer)),
         None => {}
     }
