@@ -10,7 +10,8 @@ use crate::review::{History, Judged, Progress, Session};
 use super::action::Action;
 use super::curve::Subject;
 use super::editing::{Editing, Preview};
-use super::keys::{Binding, name};
+use super::keymap::Keymap;
+use super::keys::Binding;
 use super::remedies::Remedies;
 use super::scene::Scene;
 use super::theme::Theme;
@@ -99,8 +100,8 @@ pub struct Item {
 
 impl Item {
     /// The item of a key.
-    pub fn of(binding: &Binding, theme: Theme) -> Self {
-        let key = binding.keys.first().map_or_else(String::new, |key| name(*key, theme.ascii));
+    pub fn of(binding: &Binding, keymap: &Keymap, theme: Theme) -> Self {
+        let key = keymap.names(binding, theme.ascii).into_iter().next().unwrap_or_default();
         Self { name: binding.hint.to_owned(), key, action: binding.action.clone() }
     }
 }
@@ -198,6 +199,8 @@ pub struct App {
     pub look_only: Option<String>,
     /// Whether what is taught now is still to be checked.
     pub unchecked: bool,
+    /// Which keys ask for what.
+    pub keymap: Keymap,
     /// How things look.
     pub theme: Theme,
     /// The screen.
@@ -244,6 +247,7 @@ impl App {
             preview: None,
             look_only: None,
             unchecked: true,
+            keymap: Keymap::default(),
             theme,
             area,
             session: None,

@@ -4,7 +4,7 @@ use unicode_width::UnicodeWidthStr;
 use super::action::Action;
 use super::app::{App, Mode, Page};
 use super::ask;
-use super::keys::{BINDINGS, Binding, name};
+use super::keys::{BINDINGS, Binding};
 use super::sheet::{Sheet, fit};
 
 /// Draws the lowest row: a question, a message, or the keys.
@@ -39,7 +39,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         let key = match binding.action {
             Action::Left => if ascii { "Left/Right" } else { "←→" }.to_owned(),
             Action::Up => if ascii { "Up/Down" } else { "↑↓" }.to_owned(),
-            _ => binding.keys.first().map_or_else(String::new, |key| name(*key, ascii)),
+            _ => app.keymap.names(binding, ascii).into_iter().next().unwrap_or_default(),
         };
         (key, binding.short.to_owned())
     };

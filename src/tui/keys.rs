@@ -2,6 +2,7 @@ use ratatui::crossterm::event::{KeyCode, KeyEvent, KeyModifiers};
 
 use super::action::Action;
 use super::app::Mode;
+use super::keymap::Keymap;
 
 /// A binding says which keys ask for which action, and how the footer and the help tell it. A key that is in no binding does
 /// nothing.
@@ -58,21 +59,19 @@ pub static BINDINGS: &[Binding] = &[
 ];
 
 /// The action that a key asks for.
-pub fn action_of(key: KeyEvent, mode: &Mode) -> Option<Action> {
+pub fn action_of(key: KeyEvent, mode: &Mode, keymap: &Keymap) -> Option<Action> {
     let control = key.modifiers.contains(KeyModifiers::CONTROL);
     match key.code {
         KeyCode::Char('c') if control => return Some(Action::Quit),
         KeyCode::Char('z') if control => return Some(Action::Suspend),
-        _ if key.modifiers.intersects(KeyModifiers::CONTROL | KeyModifiers::ALT) => return None,
-        KeyCode::Char(sign) if is_typing(mode) => return Some(Action::Type(sign)),
+        KeyCode::Char(sign) if is_typing(mode) => {
+            let held = key.modifiers.intersects(KeyModifiers::CONTROL | KeyModifiers::ALT);
+            return (!held).then_some(Action::Type(sign));
+        }
         KeyCode::Backspace if is_typing(mode) => return Some(Action::Erase),
         _ => {}
     }
-    let code = match key.code {
-        KeyCode::Char(sign) => KeyCode::Char(sign.to_ascii_lowercase()),
-        code => code,
-    };
-    BINDINGS.iter().find(|binding| binding.keys.contains(&code)).map(|binding| binding.action.clone())
+    keymap.action(key)
 }
 
 /// Whether signs are text now and no keys.
@@ -101,6 +100,7 @@ pub fn name(key: KeyCode, ascii: bool) -> String {
         KeyCode::Esc => "Esc".to_owned(),
         KeyCode::Backspace => "Backspace".to_owned(),
         KeyCode::Char(sign) => sign.to_string(),
+        KeyCode::F(number) => format!("F{number}"),
         other => format!("{other:?}"),
     }
 }
@@ -119,7 +119,7 @@ mod tests {
 
     #[test]
     fn capitals_count_as_small_letters_and_control_does_not_count() {
-        let of = |code, modifiers| action_of(KeyEvent::new(code, modifiers), &Mode::Panes);
+        let of = |code, modifiers| action_of(KeyEvent::new(code, modifiers), &Mode::Panes, &Keymap::default());
         assert!(matches!(of(KeyCode::Char('W'), KeyModifiers::SHIFT), Some(Action::Worst)));
         assert!(of(KeyCode::Char('w'), KeyModifiers::CONTROL).is_none());
         assert!(of(KeyCode::F(1), KeyModifiers::NONE).is_none());

@@ -19,6 +19,7 @@ mod gauges;
 mod headline;
 mod help;
 mod joints;
+mod keymap;
 mod keys;
 mod layout;
 mod list;
@@ -45,6 +46,7 @@ use ratatui::layout::Rect;
 
 pub use action::Action;
 pub use app::{App, Asking, FileWish, Item, Menu, Mode, Page, Pane, Question, Wish};
+pub use keymap::{Keymap, action_name, changeable, kept};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use remedies::wanted as remedies_wanted;

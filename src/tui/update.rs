@@ -218,7 +218,7 @@ pub(super) fn follow_finding(app: &mut App) {
 fn actions(app: &App) -> Menu {
     let choose = Item { name: "chart: choose quantity".to_owned(), key: String::new(), action: Action::ChooseQuantity };
     let mut items: Vec<Item> =
-        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, app.theme)).collect();
+        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, &app.keymap, app.theme)).collect();
     items.push(choose);
     let charting = matches!(app.pane, Pane::Chart | Pane::Joints);
     items.sort_by_key(|item| match item.action {

@@ -19,6 +19,7 @@ use crate::review::{Desk, Done, Recheck, Reply};
 
 use crate::tui::action::Action;
 use crate::tui::app::{App, FileWish, Wish};
+use crate::tui::keymap::Keymap;
 use crate::tui::keys::action_of;
 use crate::tui::options::Options;
 use crate::tui::remedies::wanted;
@@ -44,6 +45,8 @@ pub struct Started {
     pub recipe_text: String,
     /// The text of the arm file.
     pub arm_text: String,
+    /// The keys that the person chose.
+    pub keymap: Keymap,
 }
 
 /// A running check is looked at this often: four times a second.
@@ -68,6 +71,7 @@ fn watched(started: &Started, options: Options) -> anyhow::Result<Option<i32>> {
     let (width, height) = screen.size()?;
     let area = Rect::new(0, 0, width, height);
     let mut app = App::new(Arc::clone(&started.arm), (*started.recipe).clone(), options.theme(), area);
+    app.keymap = started.keymap.clone();
     let mut keeper = Keeper::of(started, &mut app);
     let mut recheck = Recheck::start().context("can't start the check")?;
     let mut desk = Desk::start().context("can't start the search for remedies")?;
@@ -188,7 +192,7 @@ fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
         News::End(signal) => return Ok(Turn::End(*signal)),
         News::Suspend => return Ok(Turn::Suspend),
         News::Gone => anyhow::bail!("the terminal is gone"),
-        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(*key, &app.mode),
+        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(*key, &app.mode, &app.keymap),
         News::Terminal(Event::Resize(width, height)) => Some(Action::Resize(*width, *height)),
         News::Terminal(Event::Mouse(mouse)) => match mouse.kind {
             MouseEventKind::Down(MouseButton::Left) => Some(Action::Click(mouse.column, mouse.row)),
