@@ -12,8 +12,8 @@ use ratatui::layout::Rect;
 
 fn opened_with(width: u16, height: u16, theme: Theme) -> App {
     let Opened { arm, recipe, .. } = demo();
-    let mut app = App::new(Arc::new(arm), Arc::new(recipe), theme, Rect::new(0, 0, width, height));
-    let judged = Judged::of(&app.arm, &app.taught, None, &Watch::default()).expect("nobody stops it");
+    let mut app = App::new(Arc::new(arm), recipe, theme, Rect::new(0, 0, width, height));
+    let judged = Judged::of(&app.arm, app.taught(), None, &Watch::default()).expect("nobody stops it");
     update(&mut app, Action::Judged(Box::new(judged)));
     app
 }
@@ -142,32 +142,32 @@ fn values_are_typed_with_comma_and_unit_and_refused_with_the_bound() {
 #[test]
 fn a_waypoint_is_recorded_under_the_suggested_name_and_undone() {
     let mut app = jogging(80, 24);
-    let before = Arc::clone(&app.taught);
+    let before = Arc::clone(app.taught());
     let at = app.jog.as_ref().expect("jogging").waypoint;
     // By arrows and Enter alone: the first entry of the menu, the name as suggested.
     keys(&mut app, [Action::Right, Action::Enter, Action::Enter, Action::Enter]);
     let jog = app.jog.as_ref().expect("jogging");
-    assert_eq!((app.taught.waypoints.len(), jog.waypoint), (before.waypoints.len() + 1, at + 1), "{:?}", app.message);
-    let new = &app.taught.waypoints[at + 1];
+    assert_eq!((app.taught().waypoints.len(), jog.waypoint), (before.waypoints.len() + 1, at + 1), "{:?}", app.message);
+    let new = &app.taught().waypoints[at + 1];
     assert_eq!(new.name, format!("after {}", before.waypoints[at].name));
     assert_eq!(new.taught, Taught::Joints(jog.q));
     assert!(app.unchecked);
     update(&mut app, Action::Undo);
-    assert_eq!(*app.taught, *before);
+    assert_eq!(**app.taught(), *before);
     assert!(matches!(app.mode, Mode::Jog));
     update(&mut app, Action::Redo);
-    assert_eq!(app.taught.waypoints.len(), before.waypoints.len() + 1);
+    assert_eq!(app.taught().waypoints.len(), before.waypoints.len() + 1);
 }
 
 #[test]
 fn a_waypoint_is_taught_again_as_a_pose() {
     let mut app = jogging(80, 24);
-    let before = Arc::clone(&app.taught);
+    let before = Arc::clone(app.taught());
     keys(&mut app, [Action::Deed(Deed::GoTo)]);
     keys(&mut app, typed("4"));
     keys(&mut app, [Action::NextPane, Action::Down, Action::Down, Action::Right]);
     update(&mut app, Action::Deed(Deed::TeachAgain { as_pose: true }));
-    let (old, new) = (&before.waypoints[3], &app.taught.waypoints[3]);
+    let (old, new) = (&before.waypoints[3], &app.taught().waypoints[3]);
     assert!(matches!(new.taught, Taught::Pose { .. }), "{:?}", app.message);
     assert_ne!(old.taught, new.taught);
     assert_eq!((&old.name, &old.arrive), (&new.name, &new.arrive));

@@ -12,13 +12,13 @@ use ratatui::layout::Rect;
 fn check(app: &mut App) {
     let before = app.judged().cloned();
     app.unchecked = false;
-    let judged = Judged::of(&app.arm, &app.taught, before.as_ref(), &Watch::default()).expect("nobody stops it");
+    let judged = Judged::of(&app.arm, app.taught(), before.as_ref(), &Watch::default()).expect("nobody stops it");
     update(app, Action::Judged(Box::new(judged)));
 }
 
 fn opened(width: u16, height: u16) -> App {
     let Opened { arm, recipe, .. } = demo();
-    let mut app = App::new(Arc::new(arm), Arc::new(recipe), Theme::default(), Rect::new(0, 0, width, height));
+    let mut app = App::new(Arc::new(arm), recipe, Theme::default(), Rect::new(0, 0, width, height));
     check(&mut app);
     app
 }
@@ -59,20 +59,20 @@ fn the_explanation_names_remedies_in_brief() {
 fn a_remedy_is_made_by_enter_and_taken_back_by_undo() {
     let mut app = opened(80, 24);
     seek(&mut app);
-    let taught = Arc::clone(&app.taught);
+    let taught = Arc::clone(app.taught());
     let findings = app.judged().expect("checked").survey.findings.len();
     update(&mut app, Action::Remedies);
     update(&mut app, Action::Enter);
-    assert!(matches!(app.mode, Mode::Panes) && app.unchecked && app.taught != taught, "{:?}", app.message);
+    assert!(matches!(app.mode, Mode::Panes) && app.unchecked && *app.taught() != taught, "{:?}", app.message);
     assert!(remedies_wanted(&mut app).is_none(), "what is not checked has no remedies yet");
     check(&mut app);
     assert!(app.judged().expect("checked").survey.findings.len() < findings);
     update(&mut app, Action::Undo);
-    assert_eq!(*app.taught, *taught);
+    assert_eq!(**app.taught(), *taught);
     check(&mut app);
     assert_eq!(app.judged().expect("checked").survey.findings.len(), findings);
     update(&mut app, Action::Redo);
-    assert_ne!(*app.taught, *taught);
+    assert_ne!(**app.taught(), *taught);
 }
 
 #[test]
@@ -80,10 +80,10 @@ fn what_is_for_information_changes_nothing() {
     let mut app = opened(80, 24);
     update(&mut app, Action::PreviousFinding);
     seek(&mut app);
-    let taught = Arc::clone(&app.taught);
+    let taught = Arc::clone(app.taught());
     update(&mut app, Action::Remedies);
     update(&mut app, Action::Enter);
-    assert_eq!(*app.taught, *taught);
+    assert_eq!(**app.taught(), *taught);
     assert!(app.message.as_ref().is_some_and(|told| told.contains("information")), "{:?}", app.message);
 }
 

@@ -14,14 +14,14 @@ use ratatui::layout::Rect;
 
 fn unchecked(width: u16, height: u16, theme: Theme) -> App {
     let Opened { arm, recipe, .. } = demo();
-    let mut app = App::new(Arc::new(arm), Arc::new(recipe), theme, Rect::new(0, 0, width, height));
+    let mut app = App::new(Arc::new(arm), recipe, theme, Rect::new(0, 0, width, height));
     update(&mut app, Action::Resize(width, height));
     app
 }
 
 fn opened_with(width: u16, height: u16, theme: Theme) -> App {
     let mut app = unchecked(width, height, theme);
-    let judged = Judged::of(&app.arm, &app.taught, None, &Watch::default()).expect("nobody stops it");
+    let judged = Judged::of(&app.arm, app.taught(), None, &Watch::default()).expect("nobody stops it");
     update(&mut app, Action::Judged(Box::new(judged)));
     app
 }
@@ -103,7 +103,7 @@ fn hanging(width: u16, height: u16) -> App {
     }
     let (arm, recipe) = (Arc::new(Arm::build(data).expect("still an arm")), Arc::new(recipe));
     let judged = Judged::of(&arm, &recipe, None, &Watch::default()).expect("nobody stops it");
-    let mut app = App::new(arm, recipe, Theme::default(), Rect::new(0, 0, width, height));
+    let mut app = App::new(arm, (*recipe).clone(), Theme::default(), Rect::new(0, 0, width, height));
     update(&mut app, Action::Judged(Box::new(judged)));
     app
 }

@@ -165,7 +165,7 @@ fn the_model_is_jogged_a_waypoint_recorded_and_that_undone() {
     running.press("\r");
     running.until("Name of the new waypoint: after ");
     running.press("\r");
-    running.until("recorded as joint values; u undoes it");
+    running.until("inserted; u undoes it");
     running.press("u");
     running.until("undone: waypoint");
     running.press("j");

@@ -41,6 +41,6 @@ pub use keys::{ChosenKeys, KeyName, NamedKey, PlainKey, keys_file, open_keys, re
 pub use lock::{Lock, NotLocked};
 pub use opened::{Opened, open, open_arm};
 pub use recipe_file::read_recipe;
-pub use save::{Content, NewText, NotSaved, Saved, changes_on_disk, text_of_edited, text_of_new, write, write_anyway};
+pub use save::{Content, NewText, NotSaved, Saved, changes_on_disk, make_folder, text_of_edited, text_of_new, write, write_anyway};
 pub use source::Source;
 pub use starter::{starting_arm, starting_postures, starting_recipe};

@@ -5,6 +5,8 @@ use crate::program::Edit;
 use crate::review::{Judged, Progress, Told};
 
 use super::jog::Deed;
+use super::app::FileWish;
+use super::stretch::OnStretch;
 
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
 #[derive(Debug, Clone)]
@@ -67,14 +69,36 @@ pub enum Action {
     Deed(Deed),
     /// The keys and the signs.
     Help,
-    /// Change the recipe; what it is in words, for the history.
-    Change(Box<Edit>, String),
+    /// Change the recipe.
+    Change(Box<Edit>),
     /// Take the last edit back.
     Undo,
     /// Make the last edit that was taken back again.
     Redo,
-    /// End the program.
+    /// Edit the data of the selected waypoint and all else.
+    Edit,
+    /// The edits of a stretch of waypoints.
+    EditStretch,
+    /// Do this with the stretch.
+    OnStretch(OnStretch),
+    /// What a typed text would make of the recipe, judged.
+    Previewed(Box<Judged>),
+    /// Write what is taught to its file.
+    Save,
+    /// Ask for the name of another file to write it to.
+    SaveAs,
+    /// Do this with the recipe's file.
+    File(FileWish),
+    /// Look at the recipe and edit nothing, for this reason.
+    LookOnly(String),
+    /// Copy the selected finding, or what is told of the segment, as text.
+    Copy,
+    /// Close what is open and change nothing.
+    Stay,
+    /// End the program; with edits that are not saved, ask first.
     Quit,
+    /// End it and give up the edits.
+    QuitAnyway,
     /// Let the shell have the terminal for a while.
     Suspend,
     /// A character typed where text is asked for.

@@ -4,14 +4,15 @@ use ratatui::layout::Rect;
 
 use crate::arm::Arm;
 use crate::checks::{Check, SegmentSurvey, Survey};
-use crate::program::Recipe;
-use crate::review::{Judged, Progress, Session};
+use crate::program::{Edit, Recipe};
+use crate::review::{History, Judged, Progress, Session};
 
 use super::action::Action;
 use super::curve::Subject;
-use super::edits::Edits;
+use super::editing::{Editing, Preview};
 use super::jog::Jogging;
-use super::keys::{Binding, name};
+use super::keymap::Keymap;
+use super::keys::Binding;
 use super::remedies::Remedies;
 use super::scene::Scene;
 use super::theme::Theme;
@@ -81,6 +82,10 @@ pub enum Question {
         /// As a pose rather than as joint values.
         as_pose: bool,
     },
+    /// A file's name.
+    SaveAs,
+    /// Three lengths by which a stretch is shifted.
+    ShiftBy,
 }
 
 /// What is typed in answer to a question.
@@ -105,8 +110,8 @@ pub struct Item {
 
 impl Item {
     /// The item of a key.
-    pub fn of(binding: &Binding, theme: Theme) -> Self {
-        let key = name(binding.keys[0], theme.ascii);
+    pub fn of(binding: &Binding, keymap: &Keymap, theme: Theme) -> Self {
+        let key = keymap.names(binding, theme.ascii).into_iter().next().unwrap_or_default();
         Self { name: binding.hint.to_owned(), key, action: binding.action.clone() }
     }
 }
@@ -135,12 +140,14 @@ pub enum Mode {
     Remedies,
     /// The model jogged by hand.
     Jog,
+    /// Data that can be edited.
+    Editing(Editing),
     /// A question in the lowest row.
     Asking(Asking),
 }
 
 /// What is to become of the program.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, PartialEq, Eq)]
 pub enum Wish {
     /// Go on.
     GoOn,
@@ -148,6 +155,32 @@ pub enum Wish {
     Quit,
     /// Give the terminal back for a while.
     Suspend,
+    /// Do something with the recipe's file.
+    File(FileWish),
+    /// Copy a text to the clipboard of the person's own terminal.
+    Copy(String),
+}
+
+/// What is to be done with the recipe's file.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub enum FileWish {
+    /// Write what is taught, and end if so.
+    Save {
+        /// Whether to end the program when it is written.
+        then_quit: bool,
+    },
+    /// Write it over what somebody else has written meanwhile.
+    SaveOver,
+    /// Write it to a file of this name.
+    SaveAs(String),
+    /// Read the file again and give the edits up.
+    Reload,
+    /// Make the edits again that an earlier run left behind.
+    TakeUp,
+    /// Throw them away.
+    Forget,
+    /// Open the recipe although somebody else has it open.
+    OpenAllTheSame,
 }
 
 /// What the chart is set to.
@@ -166,12 +199,20 @@ pub struct ChartSetting {
 pub struct App {
     /// The arm.
     pub arm: Arc<Arm>,
-    /// What is taught now, with every edit.
-    pub taught: Arc<Recipe>,
-    /// The edits that led there.
-    pub edits: Edits,
+    /// What is taught now, with every edit that led there.
+    pub history: History,
+    /// Edits that are still to be noted down.
+    pub made: Vec<Edit>,
+    /// Where a stretch of waypoints to be edited begins, counted from 0.
+    pub mark: Option<usize>,
+    /// What a typed text would make of the recipe.
+    pub preview: Option<Preview>,
+    /// Why nothing may be edited, if so.
+    pub look_only: Option<String>,
     /// Whether what is taught now is still to be checked.
     pub unchecked: bool,
+    /// Which keys ask for what.
+    pub keymap: Keymap,
     /// How things look.
     pub theme: Theme,
     /// The screen.
@@ -210,13 +251,17 @@ pub struct App {
 
 impl App {
     /// The screen before anything was checked.
-    pub fn new(arm: Arc<Arm>, recipe: Arc<Recipe>, theme: Theme, area: Rect) -> Self {
+    pub fn new(arm: Arc<Arm>, recipe: Recipe, theme: Theme, area: Rect) -> Self {
         let progress = Some(Progress { done: 0, of: recipe.waypoints.len().saturating_sub(1) });
         Self {
             arm,
-            taught: recipe,
-            edits: Edits::default(),
+            history: History::of(recipe),
+            made: Vec::new(),
+            mark: None,
+            preview: None,
+            look_only: None,
             unchecked: true,
+            keymap: Keymap::default(),
             theme,
             area,
             session: None,
@@ -239,7 +284,12 @@ impl App {
 
     /// The recipe that the panes show: the one that was judged last, so that no pane mixes it with a newer one.
     pub fn recipe(&self) -> &Recipe {
-        self.session.as_ref().map_or(&self.taught, |session| &session.judged().recipe)
+        self.session.as_ref().map_or(self.history.recipe(), |session| &session.judged().recipe)
+    }
+
+    /// What is taught now, with every edit, judged or not.
+    pub fn taught(&self) -> &Arc<Recipe> {
+        self.history.recipe()
     }
 
     /// The judged recipe.

@@ -1,15 +1,19 @@
-use std::sync::Arc;
+use crate::checks::Check;
+use crate::review::{Judged, check_words};
 
 use super::action::Action;
-use super::app::{App, Asking, Mode, Question};
+use super::app::{App, Asking, FileWish, Mode, Question, Wish};
 use super::jog;
+use super::stretch;
 use super::update::follow_finding;
 
 /// The question as it stands in the lowest row.
 pub fn prompt(question: Question) -> &'static str {
     match question {
         Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
-        Question::Find => "Find waypoint: ",
+        Question::Find => "Find a name, verdict or check: ",
+        Question::SaveAs => "Save as: ",
+        Question::ShiftBy => "Shift by x y z in mm (0 0 12.5): ",
         Question::JogValue => "Value (mm or degrees, or with its unit): ",
         Question::JogWaypoint => "Jog from waypoint (number or name): ",
         Question::RecordName { .. } => "Name of the new waypoint: ",
@@ -39,6 +43,15 @@ pub(super) fn answer(app: &mut App, action: &Action) {
 fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
     let typed = asking.typed.trim().to_owned();
     match asking.question {
+        Question::SaveAs | Question::ShiftBy if typed.is_empty() => Ok(()),
+        Question::ShiftBy => {
+            stretch::act(app, &stretch::OnStretch::Shift(typed));
+            Ok(())
+        }
+        Question::SaveAs => {
+            app.wish = Wish::File(FileWish::SaveAs(typed));
+            Ok(())
+        }
         Question::GoTo => go_to(app, &typed),
         Question::Find => {
             let looked_for = if typed.is_empty() { app.found.clone() } else { typed };
@@ -77,26 +90,40 @@ fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
     Ok(())
 }
 
-/// The next waypoint after the cursor's whose name has the text in it, from the last on to the first.
+/// The next waypoint after the cursor's that has the text in its name, or whose segment has that verdict or a finding or nearest
+/// limit of such a check; from the last on to the first.
 fn find(app: &mut App, text: &str) -> Result<(), String> {
     if text.is_empty() {
         return Ok(());
     }
     let session = app.session.as_mut().ok_or("not checked yet")?;
     let wanted = text.to_lowercase();
-    let recipe = Arc::clone(&session.judged().recipe);
-    let names = &recipe.waypoints;
+    let judged = session.judged().clone();
+    let count = judged.recipe.waypoints.len();
     let now = session.waypoint();
-    let found =
-        (1..=names.len()).map(|on| (now + on) % names.len()).find(|index| names[*index].name.to_lowercase().contains(&wanted));
+    let fits: Vec<usize> = (1..=count).map(|on| (now + on) % count).filter(|&index| is_meant(&judged, index, &wanted)).collect();
     app.found = text.to_owned();
-    match found {
+    match fits.first() {
         Some(0) => session.go_to_time(0.0),
-        Some(index) => {
+        Some(&index) => {
             session.go_to_waypoint(index);
             follow_finding(app);
         }
-        None => return Err(format!("no waypoint has \"{text}\" in its name")),
+        None => return Err(format!("no waypoint has \"{text}\" in its name, and no segment such a verdict or check")),
+    }
+    if fits.len() > 1 {
+        app.message = Some(format!("{} fit \"{text}\"; f and Enter go to the next", fits.len()));
     }
     Ok(())
+}
+
+fn is_meant(judged: &Judged, waypoint: usize, wanted: &str) -> bool {
+    if judged.recipe.waypoints[waypoint].name.to_lowercase().contains(wanted) {
+        return true;
+    }
+    let Some(survey) = judged.plan.index_arriving(waypoint).map(|index| &judged.survey.segments[index]) else { return false };
+    let is_check = |check: Check| check_words(check).to_lowercase().contains(wanted);
+    survey.verdict.word() == wanted
+        || survey.findings.iter().any(|finding| is_check(finding.check))
+        || survey.nearest().is_some_and(|(result, _)| is_check(result.check))
 }

@@ -1,31 +1,19 @@
-use std::sync::Arc;
-
-use crate::program::Edit;
+use crate::program::{Edit, refuse_new_faults};
 
 use super::app::App;
 
-/// Edits made on this screen, the newest last, and those taken back.
-#[derive(Debug, Default)]
-pub struct Edits {
-    done: Vec<Step>,
-    undone: Vec<Step>,
-}
-
-/// One step: what it was in words, and the edit that takes it back (or makes it again).
-#[derive(Debug)]
-struct Step {
-    words: String,
-    other_way: Edit,
-}
-
 /// Changes what is taught, unless the result could not be planned; then the first reason is told and nothing changes.
-pub(super) fn make(app: &mut App, edit: &Edit, words: &str) {
-    let words = words.to_owned();
-    match change(app, edit) {
-        Ok(other_way) => {
+pub(super) fn make(app: &mut App, edit: &Edit) {
+    if let Some(why) = &app.look_only {
+        app.message = Some(format!("not done: {why}"));
+        return;
+    }
+    let made = refuse_new_faults(app.taught(), &app.arm, edit)
+        .and_then(|()| app.history.make(&app.arm, edit.clone()).map(str::to_owned).map_err(|fault| fault.to_string()));
+    match made {
+        Ok(words) => {
             app.message = Some(format!("{words}; u undoes it"));
-            app.edits.done.push(Step { words, other_way });
-            app.edits.undone.clear();
+            changed(app, edit.clone());
         }
         Err(why) => app.message = Some(format!("not done: {why}")),
     }
@@ -33,42 +21,30 @@ pub(super) fn make(app: &mut App, edit: &Edit, words: &str) {
 
 /// Takes the last edit back.
 pub(super) fn undo(app: &mut App) {
-    let Some(step) = app.edits.done.pop() else {
-        app.message = Some("nothing to undo".to_owned());
-        return;
-    };
-    match change(app, &step.other_way) {
-        Ok(other_way) => {
-            app.message = Some(format!("undone: {}", step.words));
-            app.edits.undone.push(Step { words: step.words, other_way });
+    let undone = app.history.undo().map(|(words, edit)| (words.to_owned(), edit.clone()));
+    match undone {
+        Some((words, edit)) => {
+            app.message = Some(format!("undone: {words}"));
+            changed(app, edit);
         }
-        Err(why) => app.message = Some(format!("not undone: {why}")),
+        None => app.message = Some("nothing to undo".to_owned()),
     }
 }
 
 /// Makes the last edit that was taken back again.
 pub(super) fn redo(app: &mut App) {
-    let Some(step) = app.edits.undone.pop() else {
-        app.message = Some("nothing to redo".to_owned());
-        return;
-    };
-    match change(app, &step.other_way) {
-        Ok(other_way) => {
-            app.message = Some(format!("done again: {}", step.words));
-            app.edits.done.push(Step { words: step.words, other_way });
+    let done = app.history.redo().map(|(words, edit)| (words.to_owned(), edit.clone()));
+    match done {
+        Some((words, edit)) => {
+            app.message = Some(format!("done again: {words}"));
+            changed(app, edit);
         }
-        Err(why) => app.message = Some(format!("not done again: {why}")),
+        None => app.message = Some("nothing to redo".to_owned()),
     }
 }
 
-/// Applies an edit and asks for a check; yields the edit that goes the other way.
-fn change(app: &mut App, edit: &Edit) -> Result<Edit, String> {
-    let mut recipe = (*app.taught).clone();
-    let other_way = edit.apply(&mut recipe).map_err(|fault| fault.to_string())?;
-    if let Some(fault) = recipe.faults(&app.arm).first() {
-        return Err(fault.to_string());
-    }
-    app.taught = Arc::new(recipe);
+/// What is taught now is to be checked, and the edit to be noted down.
+fn changed(app: &mut App, edit: Edit) {
     app.unchecked = true;
-    Ok(other_way)
+    app.made.push(edit);
 }

@@ -4,7 +4,7 @@ use unicode_width::UnicodeWidthStr;
 use super::action::Action;
 use super::app::{App, Mode, Page};
 use super::ask;
-use super::keys::{BINDINGS, Binding, name};
+use super::keys::{BINDINGS, Binding};
 use super::sheet::{Sheet, fit};
 
 /// Draws the lowest row: a question, a message, or the keys.
@@ -39,17 +39,20 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         let key = match binding.action {
             Action::Left => if ascii { "Left/Right" } else { "←→" }.to_owned(),
             Action::Up => if ascii { "Up/Down" } else { "↑↓" }.to_owned(),
-            _ => name(binding.keys[0], ascii),
+            _ => app.keymap.names(binding, ascii).into_iter().next().unwrap_or_default(),
         };
         (key, binding.short.to_owned())
     };
     let wanted = |action: &Action| match (&app.mode, action) {
+        (Mode::Editing(editing), Action::Help | Action::Quit) => editing.typing.is_none(),
         (_, Action::Help | Action::Quit) => true,
         (Mode::Jog, action) => {
             matches!(action, Action::Up | Action::Left | Action::Enter | Action::NextPane | Action::StepSize)
         }
         (_, Action::StepSize) => false,
         (Mode::Menu(_), action) => matches!(action, Action::Up | Action::Enter),
+        (Mode::Editing(editing), _) if editing.typing.is_some() => false,
+        (Mode::Editing(_), action) => matches!(action, Action::Up | Action::Left | Action::Enter | Action::NextPane | Action::Undo),
         (Mode::Remedies, action) => matches!(action, Action::Up | Action::Enter | Action::NextFinding | Action::Undo),
         (Mode::Page(Page::Why, _), action) => matches!(action, Action::Up | Action::Worst | Action::NextFinding),
         (Mode::Page(..), action) => matches!(action, Action::Up),
@@ -62,6 +65,13 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         .collect();
     if !matches!(app.mode, Mode::Panes) {
         for (_, (key, word)) in &mut hints {
+            if let Mode::Editing(_) = app.mode {
+                match word.as_str() {
+                    "time" => "waypoint".clone_into(word),
+                    "pane" => "group".clone_into(word),
+                    _ => {}
+                }
+            }
             if word == "select" && matches!(app.mode, Mode::Page(..)) {
                 "scroll".clone_into(word);
             }
@@ -72,8 +82,18 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
                     _ => {}
                 }
             } else if key == "Enter" {
-                if matches!(app.mode, Mode::Remedies) { "make this change" } else { "choose" }.clone_into(word);
+                let does = match app.mode {
+                    Mode::Remedies => "make this change",
+                    Mode::Editing(_) => "edit",
+                    _ => "choose",
+                };
+                does.clone_into(word);
             }
+        }
+        if let Mode::Editing(editing) = &app.mode
+            && editing.typing.is_some()
+        {
+            hints.insert(0, (true, ("Enter".to_owned(), "take it".to_owned())));
         }
         hints.insert(0, (false, ("Esc".to_owned(), "back".to_owned())));
     }

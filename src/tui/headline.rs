@@ -32,8 +32,11 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         1 => "; 1 doubt".to_owned(),
         count => format!("; {count} doubts"),
     };
-    if two_rows || sentence.width() + doubts.width() <= left {
-        sentence += &doubts;
+    // What is not saved goes before the doubts, which stand in the list too.
+    let unsaved = if app.history.is_unsaved() { "; not saved" } else { "" };
+    let whole = format!("{doubts}{unsaved}");
+    if let Some(more) = [whole.as_str(), unsaved].into_iter().find(|more| two_rows || sentence.width() + more.width() <= left) {
+        sentence += more;
     }
     let (sentence, more) = if two_rows {
         let mut lines = wrap(&sentence, left).into_iter();

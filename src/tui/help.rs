@@ -3,16 +3,17 @@ use unicode_width::UnicodeWidthStr;
 
 use crate::checks::Verdict;
 
-use super::keys::{BINDINGS, name};
+use super::keymap::Keymap;
+use super::keys::BINDINGS;
 use super::page::{Line, paragraph};
 use super::theme::Theme;
 
 /// Keys and signs in lines of at most `width` columns.
-pub fn lines(theme: Theme, width: usize) -> Vec<Line> {
+pub fn lines(theme: Theme, keymap: &Keymap, width: usize) -> Vec<Line> {
     let entries: Vec<(String, &str)> = BINDINGS
         .iter()
         .map(|binding| {
-            let names: Vec<String> = binding.keys.iter().map(|key| name(*key, theme.ascii)).collect();
+            let names = keymap.names(binding, theme.ascii);
             (names.join(" "), binding.hint)
         })
         .collect();

@@ -2,6 +2,7 @@ use ratatui::crossterm::event::{KeyCode, KeyEvent, KeyModifiers};
 
 use super::action::Action;
 use super::app::Mode;
+use super::keymap::Keymap;
 
 /// A binding says which keys ask for which action, and how the footer and the help tell it. A key that is in no binding does
 /// nothing.
@@ -46,30 +47,42 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('z')], Action::Span, "chart: segment or cycle", ""),
     binding(&[KeyCode::Char('t')], Action::NextQuantity, "chart: next quantity", "chart"),
     binding(&[KeyCode::Char('a')], Action::EveryJoint, "chart: all joints, one", ""),
+    binding(&[KeyCode::Char('e')], Action::Edit, "edit the data", "edit"),
+    binding(&[KeyCode::Char('x')], Action::EditStretch, "edit a stretch of waypoints", ""),
     binding(&[KeyCode::Char('j')], Action::Jog, "jog the model, end that", "jog"),
     binding(&[KeyCode::Char('i')], Action::StepSize, "jog: next step size", "size"),
     binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
     binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
+    binding(&[KeyCode::Char('s')], Action::Save, "save", ""),
+    binding(&[], Action::SaveAs, "save elsewhere", ""),
+    binding(&[KeyCode::Char('k')], Action::Copy, "copy what is told", ""),
     binding(&[KeyCode::Char('h'), KeyCode::Char('?')], Action::Help, "help", "help"),
     binding(&[KeyCode::Char('q')], Action::Quit, "quit", "quit"),
 ];
 
 /// The action that a key asks for.
-pub fn action_of(key: KeyEvent, mode: &Mode) -> Option<Action> {
+pub fn action_of(key: KeyEvent, mode: &Mode, keymap: &Keymap) -> Option<Action> {
     let control = key.modifiers.contains(KeyModifiers::CONTROL);
     match key.code {
         KeyCode::Char('c') if control => return Some(Action::Quit),
         KeyCode::Char('z') if control => return Some(Action::Suspend),
-        _ if key.modifiers.intersects(KeyModifiers::CONTROL | KeyModifiers::ALT) => return None,
-        KeyCode::Char(sign) if matches!(mode, Mode::Asking(_)) => return Some(Action::Type(sign)),
-        KeyCode::Backspace if matches!(mode, Mode::Asking(_)) => return Some(Action::Erase),
+        KeyCode::Char(sign) if is_typing(mode) => {
+            let held = key.modifiers.intersects(KeyModifiers::CONTROL | KeyModifiers::ALT);
+            return (!held).then_some(Action::Type(sign));
+        }
+        KeyCode::Backspace if is_typing(mode) => return Some(Action::Erase),
         _ => {}
     }
-    let code = match key.code {
-        KeyCode::Char(sign) => KeyCode::Char(sign.to_ascii_lowercase()),
-        code => code,
-    };
-    BINDINGS.iter().find(|binding| binding.keys.contains(&code)).map(|binding| binding.action.clone())
+    keymap.action(key)
+}
+
+/// Whether signs are text now and no keys.
+fn is_typing(mode: &Mode) -> bool {
+    match mode {
+        Mode::Asking(_) => true,
+        Mode::Editing(editing) => editing.typing.is_some(),
+        _ => false,
+    }
 }
 
 /// A key's name as the footer and the help write it.
@@ -89,6 +102,7 @@ pub fn name(key: KeyCode, ascii: bool) -> String {
         KeyCode::Esc => "Esc".to_owned(),
         KeyCode::Backspace => "Backspace".to_owned(),
         KeyCode::Char(sign) => sign.to_string(),
+        KeyCode::F(number) => format!("F{number}"),
         other => format!("{other:?}"),
     }
 }
@@ -107,7 +121,7 @@ mod tests {
 
     #[test]
     fn capitals_count_as_small_letters_and_control_does_not_count() {
-        let of = |code, modifiers| action_of(KeyEvent::new(code, modifiers), &Mode::Panes);
+        let of = |code, modifiers| action_of(KeyEvent::new(code, modifiers), &Mode::Panes, &Keymap::default());
         assert!(matches!(of(KeyCode::Char('W'), KeyModifiers::SHIFT), Some(Action::Worst)));
         assert!(of(KeyCode::Char('w'), KeyModifiers::CONTROL).is_none());
         assert!(of(KeyCode::F(1), KeyModifiers::NONE).is_none());

@@ -71,7 +71,8 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     let theme = app.theme;
     let columns = Columns::of(app, sheet.width());
     let focused = app.pane == Pane::List;
-    let title_end = sheet.rule(0, Pane::List.name(), focused);
+    let marked = app.mark.map_or(String::new(), |mark| format!(", marked from {}", mark + 1));
+    let title_end = sheet.rule(0, &format!("{}{marked}", Pane::List.name()), focused);
     for (x, word) in [
         (columns.how, "how"),
         (columns.verdict, "is"),

@@ -10,13 +10,17 @@ mod bounds;
 mod chart;
 mod click;
 mod curve;
+mod edit_page;
+mod editing;
 mod edits;
+mod file;
 mod footer;
 mod gauges;
 mod headline;
 mod help;
 mod jog;
 mod joints;
+mod keymap;
 mod keys;
 mod layout;
 mod list;
@@ -33,6 +37,7 @@ mod run;
 mod scene;
 mod sheet;
 mod sketch;
+mod stretch;
 mod theme;
 mod update;
 mod why;
@@ -41,12 +46,14 @@ use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
 pub use action::Action;
-pub use app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
+pub use app::{App, Asking, FileWish, Item, Menu, Mode, Page, Pane, Question, Wish};
 pub use jog::{Deed, Jogging};
+pub use keymap::{Keymap, action_name, changeable, kept};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use remedies::wanted as remedies_wanted;
 pub use run::{Screen, Started, restore, run};
+pub use stretch::OnStretch;
 pub use theme::Theme;
 pub use update::update;
 
@@ -62,6 +69,12 @@ pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
         let height = area.height - layout.headline.height - layout.footer.height;
         let whole = Rect { y: layout.headline.bottom(), height, ..area };
         page::draw(&mut Sheet::new(buffer, whole, theme), app, page, scroll);
+        return;
+    }
+    if let Mode::Editing(editing) = &app.mode {
+        let height = area.height - layout.headline.height - layout.footer.height;
+        let whole = Rect { y: layout.headline.bottom(), height, ..area };
+        edit_page::draw(&mut Sheet::new(buffer, whole, theme), app, editing);
         return;
     }
     if matches!(app.mode, Mode::Remedies) {

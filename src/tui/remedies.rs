@@ -87,17 +87,16 @@ pub(super) fn choose(app: &mut App, action: &Action) {
 }
 
 fn apply(app: &mut App) {
-    let Some((remedy, judged)) = app.remedies.found.get(app.remedies.chosen).zip(app.judged()) else {
+    let Some(remedy) = app.remedies.found.get(app.remedies.chosen) else {
         app.mode = Mode::Panes;
         return;
     };
-    let words = remedy_title(judged, remedy);
     let Some(edit) = remedy.edit.clone() else {
         app.message = Some("that one is for information: it can't be made in the program".to_owned());
         return;
     };
     app.mode = Mode::Panes;
-    edits::make(app, &edit, &words);
+    edits::make(app, &edit);
 }
 
 /// The titles of the remedies that the program can make, for the explanation; none while nothing is known.

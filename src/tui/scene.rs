@@ -50,7 +50,7 @@ impl Scene {
 /// Brings the scene up to what the app shows.
 pub fn refresh(app: &mut App) {
     if app.scene.rows.is_empty() {
-        app.scene.rows = Rows::of(&app.taught, None);
+        app.scene.rows = Rows::of(app.taught(), None);
     }
     let Some(session) = &app.session else { return };
     let judged = session.judged();

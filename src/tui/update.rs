@@ -6,11 +6,12 @@ use crate::review::Session;
 use super::action::Action;
 use super::app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
 use super::ask;
+use super::editing::{self, Editing};
 use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, edits, jog, page, remedies};
+use super::{click, edits, file, jog, page, remedies, stretch};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
@@ -30,6 +31,13 @@ pub fn update(app: &mut App, action: Action) {
                 }
             }
         }
+        Action::Previewed(judged) => {
+            if let Some(preview) = &mut app.preview
+                && std::sync::Arc::ptr_eq(&preview.recipe, &judged.recipe)
+            {
+                preview.judged = Some(*judged);
+            }
+        }
         Action::Told(told, progress) => remedies::hear(app, told, progress),
         Action::Closer(survey, closer) => app.closer = Some((survey, closer)),
         asked => {
@@ -44,7 +52,12 @@ pub fn update(app: &mut App, action: Action) {
 
 fn by_mode(app: &mut App, action: Action) {
     match (&mut app.mode, action) {
-        (_, Action::Quit) => app.wish = Wish::Quit,
+        (_, Action::Quit) if app.history.is_unsaved() => app.mode = Mode::Menu(file::unsaved(app)),
+        (_, Action::Quit | Action::QuitAnyway) => app.wish = Wish::Quit,
+        (Mode::Editing(_), action) => editing::handle(app, &action),
+        (_, Action::File(wish)) => app.wish = Wish::File(wish),
+        (_, Action::LookOnly(why)) => app.look_only = Some(why),
+        (_, Action::Stay) => app.mode = Mode::Panes,
         (_, Action::Suspend) => app.wish = Wish::Suspend,
         (Mode::Asking(_), action) => ask::answer(app, &action),
         (Mode::Jog, action) => jog::act(app, &action),
@@ -129,13 +142,26 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::Show(check) => app.chart.check = *check,
         Action::NextQuantity => turn_quantity(app, 1),
         Action::ChooseQuantity => app.mode = Mode::Menu(quantities(app)),
-        Action::Change(edit, words) => edits::make(app, edit, words),
         Action::Jog => jog::open(app),
-        Action::StepSize => app.message = Some("the step size is that of jogging; j opens it".to_owned()),
+        Action::StepSize => app.message = Some("the step size is that of jogging; jog first".to_owned()),
+        Action::Change(edit) => edits::make(app, edit),
         Action::Undo => edits::undo(app),
         Action::Redo => edits::redo(app),
+        Action::Edit => edit(app),
+        Action::EditStretch => app.mode = Mode::Menu(stretch::menu(app)),
+        Action::OnStretch(what) => stretch::act(app, what),
+        Action::Save => file::save(app),
+        Action::SaveAs => app.mode = Mode::Asking(Asking { question: Question::SaveAs, typed: String::new() }),
+        Action::Copy => file::copy(app),
         Action::Click(column, row) => click::click(app, *column, *row),
         _ => {}
+    }
+}
+
+fn edit(app: &mut App) {
+    match &app.look_only {
+        Some(why) => app.message = Some(format!("opened to look only: {why}")),
+        None => app.mode = Mode::Editing(Editing::of(app.session.as_ref().map_or(0, Session::waypoint))),
     }
 }
 
@@ -200,7 +226,7 @@ pub(super) fn follow_finding(app: &mut App) {
 fn actions(app: &App) -> Menu {
     let choose = Item { name: "chart: choose quantity".to_owned(), key: String::new(), action: Action::ChooseQuantity };
     let mut items: Vec<Item> =
-        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, app.theme)).collect();
+        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, &app.keymap, app.theme)).collect();
     items.push(choose);
     let charting = matches!(app.pane, Pane::Chart | Pane::Joints);
     items.sort_by_key(|item| match item.action {
@@ -238,8 +264,13 @@ fn is_named(action: &Action) -> bool {
             | Action::Span
             | Action::EveryJoint
             | Action::Jog
+            | Action::Edit
+            | Action::EditStretch
             | Action::Undo
             | Action::Redo
+            | Action::Save
+            | Action::SaveAs
+            | Action::Copy
             | Action::Help
             | Action::Quit
     )

@@ -40,6 +40,11 @@ pub const RECIPES: &[Case] = &[
         r#"tool "gripper": com is given without mass; give the mass (kg) too, or leave both out (recipe.toml:17:7)"#,
     ),
     ("com = [0, 0, 60]\n", "", r#"tool "gripper": com is missing; it must be an array of 3 numbers (mm) (recipe.toml:14:1)"#),
+    (
+        "com = [0, 0, 60]\n",
+        "com = [0, 0, 60]\nturns-freely = 1\n",
+        r#"tool "gripper": turns-freely is the number 1; it must be true, or not be there (recipe.toml:19:16)"#,
+    ),
     ("mass = 6.5", "mass = -1", r#"load "part": mass is -1 kg; it must be 0 or more (recipe.toml:22:8)"#),
     ("mass = 6.5\n", "", r#"load "part": mass is missing; it must be a number (kg) (recipe.toml:20:1)"#),
     (r#"name = "gripper""#, r#"nam = "gripper""#, r#"tool 1: unknown key "nam"; did you mean "name"? (recipe.toml:15:1)"#),

@@ -61,7 +61,7 @@ fn no_shift_of_a_dense_search_is_shorter_by_a_twentieth() {
             for share in SHORTER {
                 let moved = direction * (share * by.norm());
                 let clear = shifted(which, moved);
-                assert!(!clear, "{which:?} by {moved:?}, {} of {by:?}", share);
+                assert!(!clear, "{which:?} by {moved:?}, {share} of {by:?}");
             }
         }
     }

@@ -60,7 +60,7 @@ fn every_remedy_of_the_demonstration_holds_when_it_is_judged_afresh() {
 fn every_remedy_of_a_random_segment_holds_when_it_is_judged_afresh() {
     let mut draw = Draw(41);
     let mut offered = 0;
-    for k in 0..40 {
+    for k in 0..24 {
         let family = [Family::SphericalWrist, Family::OffsetWrist, Family::FourSlide, Family::ThreeSlide][k % 4];
         let arm = random::arm(family, &mut draw);
         let recipe = random::segment(&arm, k % 3 != 0, &mut draw);
@@ -70,7 +70,7 @@ fn every_remedy_of_a_random_segment_holds_when_it_is_judged_afresh() {
         offered += remedies.len();
         remedies.iter().for_each(|remedy| holds(&judged, finding, remedy));
     }
-    assert!(offered > 20, "only {offered} remedies were offered");
+    assert!(offered > 12, "only {offered} remedies were offered");
 }
 
 #[test]

@@ -98,6 +98,15 @@ pub fn write_anyway(path: &Path, text: &str) -> Result<Saved, NotSaved> {
     write_over(&target, text)
 }
 
+/// Makes the folder that a file is to stand in, if it is not there.
+///
+/// # Errors
+/// [`NotSaved`].
+pub fn make_folder(file: &Path) -> Result<(), NotSaved> {
+    let folder = folder_of(file);
+    fs::create_dir_all(folder).map_err(|error| told(file, error))
+}
+
 fn write_over(target: &Path, text: &str) -> Result<Saved, NotSaved> {
     let fault = |error| told(target, error);
     let before = match fs::metadata(target) {

@@ -26,7 +26,7 @@ use super::recipe_file::{read_recipe, walked};
 
 pub use content::Content;
 pub(super) use disk::beside;
-pub use disk::{NotSaved, Saved, write, write_anyway};
+pub use disk::{NotSaved, Saved, make_folder, write, write_anyway};
 
 /// How far a number may be off, as a share of itself, after it was written and read again: one last digit of a double, and for the
 /// elements of an orientation a few. See [`figure`].

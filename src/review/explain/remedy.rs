@@ -46,7 +46,15 @@ pub fn remedy_text(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Strin
     told.extend(left_over(remedy));
     told.extend(worse(remedy));
     told.extend(costs(remedy));
+    if remedy.edit.is_some() && moves_elsewhere(remedy.kind()) {
+        told.push("Whether the new way is free is not judged.".to_owned());
+    }
     told.join(" ")
+}
+
+/// Whether arm or tool then pass where they did not pass before, so that they may meet something.
+fn moves_elsewhere(kind: RemedyKind) -> bool {
+    !matches!(kind, RemedyKind::Slower | RemedyKind::Acceleration | RemedyKind::Dwell)
 }
 
 /// The room of the finding's check and joint, before and after.
@@ -86,8 +94,12 @@ pub fn kind_words(kind: RemedyKind) -> &'static str {
 
 /// What of a finding a room is of: `J4 rate`.
 fn subject(judged: &Judged, finding: &Finding) -> String {
-    let joint = finding.joint.map_or(String::new(), |j| format!("{} ", judged.arm.joints()[j].name));
-    format!("{joint}{}", check_words(finding.check))
+    subject_of(judged, finding.check, finding.joint)
+}
+
+fn subject_of(judged: &Judged, check: Check, joint: Option<usize>) -> String {
+    let joint = joint.map_or(String::new(), |j| format!("{} ", judged.arm.joints()[j].name));
+    format!("{joint}{}", check_words(check))
 }
 
 fn figures(judged: &Judged, change: &Change) -> String {
@@ -265,12 +277,9 @@ fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<Str
                 Short::Nearest(Some(room)) => format!("{words} ({})", near(room)),
                 Short::Nearest(None) if finding.check == Check::Reach => format!("{words} (still no path)"),
                 Short::Nearest(None) => format!("{words} (it comes to nothing)"),
-                Short::Spoils(other) => {
-                    format!(
-                        "{words} ({} is in the way on segment {})",
-                        subject(judged, &other),
-                        judged.plan.segments[other.segment].label()
-                    )
+                Short::Spoils { segment, check, joint } => {
+                    let label = judged.plan.segments[segment].label();
+                    format!("{words} ({} is in the way on segment {label})", subject_of(judged, check, joint))
                 }
                 Short::Fixed => format!("{words} (the work fixes the points)"),
             }

@@ -6,6 +6,7 @@ mod at_override;
 mod desk;
 mod dwell;
 mod fly_by;
+mod glance;
 mod greatest;
 mod joint_move;
 mod kinds;

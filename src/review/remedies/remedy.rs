@@ -1,5 +1,5 @@
 use crate::arm::Joints;
-use crate::checks::Finding;
+use crate::checks::{Check, Finding};
 use crate::geometry::V3;
 use crate::program::Edit;
 use crate::units::{Acceleration, Angle, Length, Mass, Room, Seconds, Share, Speed, TurnAcceleration, TurnRate};
@@ -258,7 +258,7 @@ pub struct Remedy {
     pub room: [Option<Room>; 2],
     /// What it costs on the cycle; below 0 where it saves time.
     pub costs: Seconds,
-    /// How much it changes of what the person taught; remedies are ranked by it, the least first. See [`super::size`].
+    /// How much it changes of what the person taught; remedies are ranked by it, the least first.
     pub size: f64,
 }
 
@@ -283,7 +283,14 @@ pub enum Short {
     /// Nothing that was tried settles it. The room of the finding's check and joint where it came nearest, if there is one to tell.
     Nearest(Option<Room>),
     /// It settles the finding but makes something else as bad or worse.
-    Spoils(Finding),
+    Spoils {
+        /// On which segment of the plan as it is, counted from 0.
+        segment: usize,
+        /// What.
+        check: Check,
+        /// Of which joint, for checks with a channel a joint.
+        joint: Option<usize>,
+    },
     /// The work fixes the points: something is taken, released or pushed there.
     Fixed,
 }
@@ -295,6 +302,12 @@ pub struct Tried {
     pub kind: RemedyKind,
     /// Why it yields nothing.
     pub short: Short,
+}
+
+impl Short {
+    pub(super) fn spoils(finding: &Finding) -> Self {
+        Self::Spoils { segment: finding.segment, check: finding.check, joint: finding.joint }
+    }
 }
 
 /// News of a search.

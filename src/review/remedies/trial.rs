@@ -5,6 +5,7 @@ use crate::motion::{Plan, Segment};
 use crate::program::{Edit, Recipe};
 use crate::units::{Room, Seconds, Share};
 
+use super::glance::still_flagged;
 use super::{Change, Effect, Judged, Remedy, Short};
 
 /// Two rooms that differ by less are told as the same.
@@ -67,7 +68,7 @@ impl Nearest {
 
     /// Why nothing came of it.
     pub fn short(&self) -> Short {
-        self.spoilt.map_or(Short::Nearest(self.room), Short::Spoils)
+        self.spoilt.as_ref().map_or(Short::Nearest(self.room), Short::spoils)
     }
 }
 
@@ -129,6 +130,12 @@ impl<'a> Trial<'a> {
                 break;
             }
             for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
+                if own
+                    && plan.gravity == judged.plan.gravity
+                    && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance)
+                {
+                    return Seen { clear: false, room: Some(room), ..seen };
+                }
                 let survey = judge_at(&judged.arm, index, segment, &recipe.acceptance, plan.gravity, Share::WHOLE);
                 let amiss = self.amiss(&survey, own.then_some(aim), origin(segment.to, inserted));
                 seen.clear &= amiss.is_none();
@@ -237,7 +244,9 @@ impl<'a> Trial<'a> {
             return Err(Short::Nearest(room[1]));
         }
         if let Some(spoilt) = effect.worsens.iter().find(|finding| finding.verdict >= self.finding.verdict) {
-            return Err(Short::Spoils(*spoilt));
+            let to = origin(after.plan.segments[spoilt.segment].to, inserted);
+            let segment = before.plan.index_arriving(to).unwrap_or(spoilt.segment);
+            return Err(Short::spoils(&Finding { segment, ..*spoilt }));
         }
         let costs = Seconds::s(after.plan.duration() - before.plan.duration());
         Ok(Remedy { change, edit: (!only_told).then_some(edit), after, effect, room, costs, size })

@@ -9,6 +9,7 @@ use super::{Jogging, known, next_axes, next_size, step_of, system, tcp, words};
 use crate::tui::action::Action;
 use crate::tui::app::{App, Asking, Item, Menu, Mode, Question};
 use crate::tui::edits;
+use crate::tui::keys::BINDINGS;
 
 /// A deed is what can be done where the model stands, besides moving it.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -38,9 +39,18 @@ pub enum Deed {
 /// The deeds by name.
 pub(super) fn menu(app: &App) -> Menu {
     let Some(jog) = &app.jog else { return Menu { title: String::new(), items: Vec::new(), chosen: 0 } };
-    let name = &app.taught.waypoints[jog.waypoint].name;
+    let name = &app.taught().waypoints[jog.waypoint].name;
     let frame = words::posed_in(jog);
     let item = |name: String, key: &str, deed: Deed| Item { name, key: key.to_owned(), action: Action::Deed(deed) };
+    let key = |wanted: fn(&Action) -> bool| {
+        let binding = BINDINGS.iter().find(|binding| wanted(&binding.action));
+        binding.map(|binding| Item::of(binding, &app.keymap, app.theme).key).unwrap_or_default()
+    };
+    let [size, axes, end] = [
+        key(|action| matches!(action, Action::StepSize)),
+        key(|action| matches!(action, Action::NextPane)),
+        key(|action| matches!(action, Action::Jog)),
+    ];
     let items = vec![
         item("insert a waypoint after it, as joint values".to_owned(), "", Deed::Insert { as_pose: false }),
         item(format!("insert a waypoint after it, as a pose in {frame}"), "", Deed::Insert { as_pose: true }),
@@ -48,9 +58,9 @@ pub(super) fn menu(app: &App) -> Menu {
         item(format!("teach it again here, as a pose in {frame}"), "", Deed::TeachAgain { as_pose: true }),
         item(format!("type a value for {}", words::row(app, jog)), "", Deed::Value),
         item("go to a waypoint".to_owned(), "", Deed::GoTo),
-        item("next step size".to_owned(), "i", Deed::StepSize),
-        item("next axes".to_owned(), "Tab", Deed::Axes),
-        item("end jogging".to_owned(), "j", Deed::Leave),
+        item("next step size".to_owned(), &size, Deed::StepSize),
+        item("next axes".to_owned(), &axes, Deed::Axes),
+        item("end jogging".to_owned(), &end, Deed::Leave),
     ];
     Menu { title: format!("Waypoint {} \"{name}\"", jog.waypoint + 1), items, chosen: 0 }
 }
@@ -60,7 +70,7 @@ pub(super) fn act(app: &mut App, deed: Deed) {
     let mut ask = |question: Question, typed: String| app.mode = Mode::Asking(Asking { question, typed });
     match deed {
         Deed::Insert { as_pose } => {
-            let name = app.jog.as_ref().map(|jog| suggested_name(&app.taught, jog.waypoint)).unwrap_or_default();
+            let name = app.jog.as_ref().map(|jog| suggested_name(app.taught(), jog.waypoint)).unwrap_or_default();
             ask(Question::RecordName { as_pose }, name);
         }
         Deed::TeachAgain { as_pose } => app.message = teach(app, as_pose).err().or(app.message.take()),
@@ -77,7 +87,7 @@ fn form(jog: &Jogging, as_pose: bool) -> Form {
 }
 
 fn stood<'a>(app: &'a App, jog: &'a Jogging, known: &'a [Option<Joints>]) -> Stood<'a> {
-    Stood { arm: &app.arm, recipe: &app.taught, q: &jog.q, known }
+    Stood { arm: &app.arm, recipe: app.taught(), q: &jog.q, known }
 }
 
 fn teach(app: &mut App, as_pose: bool) -> Result<(), String> {
@@ -102,9 +112,10 @@ pub fn record(app: &mut App, name: &str, as_pose: bool) -> Result<(), String> {
 
 /// Makes the edit; if it was made, the model stands where the recipe now says, with that waypoint selected.
 fn keep(app: &mut App, record: &Record, waypoint: usize) {
-    let before = Arc::clone(&app.taught);
-    edits::make(app, &record.edit, &record.words);
-    if let (Some(jog), false) = (&mut app.jog, Arc::ptr_eq(&before, &app.taught)) {
+    let before = Arc::clone(app.taught());
+    edits::make(app, &record.edit);
+    let made = !Arc::ptr_eq(&before, app.taught());
+    if let (Some(jog), true) = (&mut app.jog, made) {
         jog.q = record.q;
         jog.waypoint = waypoint;
     }
@@ -141,14 +152,14 @@ pub fn settle_value(app: &mut App, text: &str) -> Result<(), String> {
 /// # Errors
 /// Why not, as a sentence.
 pub fn settle_waypoint(app: &mut App, text: &str) -> Result<(), String> {
-    let count = app.taught.waypoints.len();
+    let count = app.taught().waypoints.len();
     let index = match text.parse::<usize>() {
         Ok(number) if (1..=count).contains(&number) => number - 1,
         Ok(number) => return Err(format!("there is no waypoint {number}; there are {count}")),
-        Err(_) => app.taught.waypoint_named(text).ok_or_else(|| format!("there is no waypoint \"{text}\""))?,
+        Err(_) => app.taught().waypoint_named(text).ok_or_else(|| format!("there is no waypoint \"{text}\""))?,
     };
     let q = known(app)[index].ok_or("that waypoint is not checked yet")?;
-    let carried = app.taught.hanging_at(index).arriving();
+    let carried = app.taught().hanging_at(index).arriving();
     if let Some(jog) = &mut app.jog {
         (jog.q, jog.carried, jog.waypoint) = (q, carried, index);
     }

@@ -38,7 +38,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
 /// Draws rulers and limits; tells how many rows they took.
 fn rows(sheet: &mut Sheet, app: &App, jog: &Jogging, gauges: &Gauges) -> usize {
     let theme = app.theme;
-    let name = &app.taught.waypoints[jog.waypoint].name;
+    let name = &app.taught().waypoints[jog.waypoint].name;
     let way = jog.axes.as_ref().map_or("Joints".to_owned(), |axes| format!("TCP in {} axes", axes.name()));
     sheet.rule(0, &format!("{way}; selected: waypoint {} \"{name}\"", jog.waypoint + 1), true);
     let all = if jog.axes.is_some() { directions(app, jog) } else { joints(app, jog, gauges) };

@@ -14,7 +14,7 @@ use crate::units::Measure;
 
 use super::action::Action;
 use super::app::{App, Mode};
-use super::edits;
+use super::{edits, file};
 use super::gauges::Gauges;
 
 pub use deeds::Deed;
@@ -76,7 +76,7 @@ fn tcp(app: &App, jog: &Jogging, q: &Joints) -> Pose {
 /// The system that coordinates are told in, base: for the tool's axes the TCP as it stood where jogging began.
 fn system(app: &App, jog: &Jogging) -> Pose {
     let axes = jog.axes.as_ref().unwrap_or(&Axes::Base);
-    axes.in_base(&app.taught, &tcp(app, jog, &jog.began)).unwrap_or_else(Pose::identity)
+    axes.in_base(app.taught(), &tcp(app, jog, &jog.began)).unwrap_or_else(Pose::identity)
 }
 
 /// Opens jogging where the cursor is.
@@ -86,7 +86,7 @@ pub(super) fn open(app: &mut App) {
         return;
     };
     let segment = &session.judged().plan.segments[session.cursor().segment];
-    let last = app.taught.waypoints.len() - 1;
+    let last = app.taught().waypoints.len() - 1;
     app.jog = Some(Jogging {
         q: gauges.q,
         began: gauges.q,
@@ -121,18 +121,19 @@ pub(super) fn act(app: &mut App, action: &Action) {
         Action::Deed(deed) => deeds::act(app, *deed),
         Action::Undo => edits::undo(app),
         Action::Redo => edits::redo(app),
+        Action::Save => file::save(app),
         Action::Help => app.mode = Mode::Page(super::app::Page::Help, 0),
         Action::Back | Action::Jog => leave(app),
         _ => {}
     }
-    let last = app.taught.waypoints.len() - 1;
+    let last = app.taught().waypoints.len() - 1;
     if let Some(jog) = &mut app.jog {
         jog.waypoint = jog.waypoint.min(last);
     }
 }
 
 fn next_axes(app: &mut App) {
-    let all = Axes::of(&app.taught);
+    let all = Axes::of(app.taught());
     let Some(jog) = &mut app.jog else { return };
     let next = jog.axes.as_ref().map_or(0, |now| all.iter().position(|axes| axes == now).map_or(all.len(), |at| at + 1));
     jog.axes = all.get(next).cloned();
@@ -154,7 +155,7 @@ fn step(app: &mut App, sign: f64, count: usize) {
         let (q, told, stopped) = match (&jog.axes, jog.direction()) {
             (Some(axes), Some(direction)) => {
                 let stand = Stand { arm: &app.arm, carried: &jog.carried, q: jog.q };
-                let Some(system) = axes.in_base(&app.taught, &tcp(app, jog, &jog.q)) else {
+                let Some(system) = axes.in_base(app.taught(), &tcp(app, jog, &jog.q)) else {
                     app.message = Some(format!("there is no frame \"{}\" any more; Tab goes on", axes.name()));
                     return;
                 };

@@ -95,5 +95,5 @@ pub(super) fn speed_left(app: &App, left: &SpeedLeft) -> String {
     }
     let speed = Measure::si(left.moving, Dimension::Speed).text_down(0);
     let joint = &app.arm.joints()[left.joint].name;
-    format!("{speed} {}; {joint} stops it", line_words(&app.taught, &left.direction))
+    format!("{speed} {}; {joint} stops it", line_words(app.taught(), &left.direction))
 }

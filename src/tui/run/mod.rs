@@ -1,8 +1,10 @@
 //! The only place that knows threads, the terminal and its signals.
 
+mod keeper;
 mod news;
 mod screen;
 
+use std::path::PathBuf;
 use std::sync::Arc;
 use std::time::Duration;
 
@@ -16,12 +18,14 @@ use crate::program::Recipe;
 use crate::review::{Desk, Done, Recheck, Reply};
 
 use crate::tui::action::Action;
-use crate::tui::app::{App, Wish};
+use crate::tui::app::{App, FileWish, Wish};
+use crate::tui::keymap::Keymap;
 use crate::tui::keys::action_of;
 use crate::tui::options::Options;
 use crate::tui::remedies::wanted;
 use crate::tui::update::update;
 
+use keeper::Keeper;
 use news::{News, listen};
 
 pub use screen::{Screen, restore};
@@ -33,10 +37,16 @@ pub struct Started {
     pub arm: Arc<Arm>,
     /// What was taught.
     pub recipe: Arc<Recipe>,
-    /// Where the recipe came from.
+    /// The recipe's file; none for the built-in demonstration.
+    pub path: Option<PathBuf>,
+    /// Where the recipe came from, as it is told.
     pub recipe_path: String,
-    /// Where the arm came from.
-    pub arm_path: String,
+    /// Its text.
+    pub recipe_text: String,
+    /// The text of the arm file.
+    pub arm_text: String,
+    /// The keys that the person chose.
+    pub keymap: Keymap,
 }
 
 /// A running check is looked at this often: four times a second.
@@ -46,7 +56,7 @@ const LOOK: Duration = Duration::from_millis(250);
 ///
 /// # Errors
 /// Where there is no terminal, it is gone, or the check came to an unexpected end.
-pub fn run(started: Started, options: Options) -> anyhow::Result<()> {
+pub fn run(started: &Started, options: Options) -> anyhow::Result<()> {
     let ended = watched(started, options)?;
     if let Some(signal) = ended {
         end_by(signal)?;
@@ -55,22 +65,35 @@ pub fn run(started: Started, options: Options) -> anyhow::Result<()> {
 }
 
 /// Runs the screen; tells the signal that ended it, if one did. The terminal is given back when this returns.
-fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
+fn watched(started: &Started, options: Options) -> anyhow::Result<Option<i32>> {
     let mut screen = Screen::take(options.mouse)?;
     let news = listen().context("can't listen to the terminal")?;
     let (width, height) = screen.size()?;
-    let mut app = App::new(started.arm, started.recipe, options.theme(), Rect::new(0, 0, width, height));
+    let area = Rect::new(0, 0, width, height);
+    let mut app = App::new(Arc::clone(&started.arm), (*started.recipe).clone(), options.theme(), area);
+    app.keymap = started.keymap.clone();
+    let mut keeper = Keeper::of(started, &mut app);
     let mut recheck = Recheck::start().context("can't start the check")?;
     let mut desk = Desk::start().context("can't start the search for remedies")?;
     let mut patience = FIRST;
     loop {
+        keeper.note(&mut app);
         if std::mem::take(&mut app.unchecked) {
-            recheck.submit(&app.arm, &app.taught, app.judged().cloned());
+            recheck.submit(&app.arm, app.taught(), app.judged().cloned());
             // What is done before anybody could read that it is being checked is shown at once.
             if let Ok(reply) = recheck.replies().recv_timeout(std::mem::replace(&mut patience, SOON)) {
                 accept(&mut app, &mut recheck, reply);
             } else if let Some(progress) = recheck.progress() {
                 update(&mut app, Action::Checking(progress));
+            }
+        }
+        let idle = app.progress.is_none();
+        if let (Some(preview), Some(judged)) = (app.preview.as_mut().filter(|preview| idle && !preview.asked), app.session.as_ref())
+        {
+            preview.asked = true;
+            recheck.submit(&app.arm, &preview.recipe, Some(judged.judged().clone()));
+            if let Ok(reply) = recheck.replies().recv_timeout(SOON) {
+                accept(&mut app, &mut recheck, reply);
             }
         }
         if let (Some(segment), Some(judged)) = (app.tighten.take(), app.judged()) {
@@ -82,7 +105,20 @@ fn watched(started: Started, options: Options) -> anyhow::Result<Option<i32>> {
         screen.show(&app)?;
         match wait(&mut app, &mut recheck, &mut desk, &news)? {
             Turn::Draw => {}
-            Turn::Quit => return Ok(None),
+            Turn::File(wish) => {
+                keeper.note(&mut app);
+                keeper.act(&mut app, &wish);
+                // Saving may end in quitting.
+                if std::mem::replace(&mut app.wish, Wish::GoOn) == Wish::Quit {
+                    keeper.end();
+                    return Ok(None);
+                }
+            }
+            Turn::Copy(text) => screen.copy(&text)?,
+            Turn::Quit => {
+                keeper.end();
+                return Ok(None);
+            }
             Turn::End(signal) => return Ok(Some(signal)),
             Turn::Suspend => suspend(&mut screen, &mut app)?,
         }
@@ -101,6 +137,8 @@ enum Turn {
     Quit,
     End(i32),
     Suspend,
+    File(FileWish),
+    Copy(String),
 }
 
 /// Waits for something to happen, then takes all that waits, so that many keys make one frame.
@@ -139,7 +177,11 @@ fn wait(app: &mut App, recheck: &mut Recheck, desk: &mut Desk, news: &Receiver<N
 
 fn accept(app: &mut App, recheck: &mut Recheck, reply: Reply) {
     match recheck.accept(reply) {
-        Some(Done::Judged(judged)) => update(app, Action::Judged(Box::new(judged))),
+        // What answers a preview is not what is taught.
+        Some(Done::Judged(judged)) if Arc::ptr_eq(&judged.recipe, app.taught()) => {
+            update(app, Action::Judged(Box::new(judged)));
+        }
+        Some(Done::Judged(judged)) => update(app, Action::Previewed(Box::new(judged))),
         Some(Done::Closer(survey, closer)) => update(app, Action::Closer(survey, closer)),
         None => {}
     }
@@ -150,7 +192,7 @@ fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
         News::End(signal) => return Ok(Turn::End(*signal)),
         News::Suspend => return Ok(Turn::Suspend),
         News::Gone => anyhow::bail!("the terminal is gone"),
-        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(*key, &app.mode),
+        News::Terminal(Event::Key(key)) if key.kind != KeyEventKind::Release => action_of(*key, &app.mode, &app.keymap),
         News::Terminal(Event::Resize(width, height)) => Some(Action::Resize(*width, *height)),
         News::Terminal(Event::Mouse(mouse)) => match mouse.kind {
             MouseEventKind::Down(MouseButton::Left) => Some(Action::Click(mouse.column, mouse.row)),
@@ -167,6 +209,8 @@ fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
         Wish::GoOn => Turn::Draw,
         Wish::Quit => Turn::Quit,
         Wish::Suspend => Turn::Suspend,
+        Wish::File(wish) => Turn::File(wish),
+        Wish::Copy(text) => Turn::Copy(text),
     })
 }
 

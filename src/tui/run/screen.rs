@@ -3,6 +3,7 @@ use std::sync::Once;
 
 use ratatui::Terminal;
 use ratatui::backend::CrosstermBackend;
+use ratatui::crossterm::clipboard::CopyToClipboard;
 use ratatui::crossterm::event::{DisableMouseCapture, EnableMouseCapture};
 use ratatui::crossterm::style::force_color_output;
 use ratatui::crossterm::terminal::{
@@ -42,6 +43,14 @@ impl Screen {
         let mut screen = Self { terminal, mouse };
         screen.enter()?;
         Ok(screen)
+    }
+
+    /// Hands a text to the clipboard of the terminal that the person sits at, by OSC 52.
+    ///
+    /// # Errors
+    /// Where the terminal is gone.
+    pub fn copy(&mut self, text: &str) -> io::Result<()> {
+        execute!(io::stdout(), CopyToClipboard::to_clipboard_from(text))
     }
 
     /// Enters the other screen of the terminal: at start, and after having been away.
