@@ -4,8 +4,8 @@ use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Edit;
 use crate::review::{Judged, Progress, Told};
 
-use super::jog::Deed;
 use super::app::FileWish;
+use super::jog::Deed;
 use super::stretch::OnStretch;
 
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.

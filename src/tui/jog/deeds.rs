@@ -67,11 +67,11 @@ pub(super) fn menu(app: &App) -> Menu {
 
 /// Does a deed, or asks what it needs to know.
 pub(super) fn act(app: &mut App, deed: Deed) {
+    let suggested = app.jog.as_ref().map(|jog| suggested_name(app.taught(), jog.waypoint)).unwrap_or_default();
     let mut ask = |question: Question, typed: String| app.mode = Mode::Asking(Asking { question, typed });
     match deed {
         Deed::Insert { as_pose } => {
-            let name = app.jog.as_ref().map(|jog| suggested_name(app.taught(), jog.waypoint)).unwrap_or_default();
-            ask(Question::RecordName { as_pose }, name);
+            ask(Question::RecordName { as_pose }, suggested);
         }
         Deed::TeachAgain { as_pose } => app.message = teach(app, as_pose).err().or(app.message.take()),
         Deed::Value => ask(Question::JogValue, String::new()),

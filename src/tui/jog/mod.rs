@@ -14,8 +14,8 @@ use crate::units::Measure;
 
 use super::action::Action;
 use super::app::{App, Mode};
-use super::{edits, file};
 use super::gauges::Gauges;
+use super::{edits, file};
 
 pub use deeds::Deed;
 pub(super) use deeds::{record, settle_value, settle_waypoint};
@@ -188,7 +188,7 @@ fn known(app: &App) -> Vec<Option<Joints>> {
         let plan = &judged?.plan;
         if index == 0 { plan.segments.first().map(|first| first.start) } else { plan.arriving(index).map(|segment| segment.end) }
     };
-    app.taught
+    app.taught()
         .waypoints
         .iter()
         .map(|waypoint| match &waypoint.taught {
