@@ -8,4 +8,5 @@ mod cases;
 mod desk;
 mod least;
 mod offered;
+mod two_links;
 mod worked;
