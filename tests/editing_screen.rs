@@ -142,6 +142,20 @@ fn quitting_with_edits_asks_and_without_does_not() {
 }
 
 #[test]
+fn the_history_says_what_each_step_was() {
+    let mut app = opened(80, 24);
+    for action in [
+        Action::OnStretch(OnStretch::Duplicate),
+        Action::OnStretch(OnStretch::Shift("0 0 5".to_owned())),
+        Action::Undo,
+        Action::Edits,
+    ] {
+        update(&mut app, action);
+    }
+    insta::assert_snapshot!("edits_80x24", shown(&app));
+}
+
+#[test]
 fn what_is_only_looked_at_is_not_edited() {
     let mut app = opened(80, 24);
     let taught = Arc::clone(app.taught());

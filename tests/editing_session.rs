@@ -195,7 +195,13 @@ fn a_file_that_was_changed_meanwhile_is_not_overwritten_unasked() {
     assert_eq!(text(&folder), theirs);
     running.press("s");
     running.until("Changed on the disk meanwhile");
-    running.press("\x1b[B\x1b[B\r");
+    running.press("\x1b[B\r");
+    running.until("100 mm/s -> 90 mm/s");
+    running.press("\x7f");
+    running.until("At the cursor");
+    running.press("s");
+    running.until("save mine over it");
+    running.press("\x1b[B\x1b[B\x1b[B\r");
     running.until("saved to");
     assert!(text(&folder).contains("speed  = 210"));
     assert_eq!(std::fs::read_to_string(folder.path().join("housing-transfer.toml~")).expect("a backup"), theirs);

@@ -83,6 +83,10 @@ pub enum Action {
     OnStretch(OnStretch),
     /// What a typed text would make of the recipe, judged.
     Previewed(Box<Judged>),
+    /// The edits that were made and taken back.
+    Edits,
+    /// What somebody else changed in the recipe's file.
+    Changes,
     /// Write what is taught to its file.
     Save,
     /// Ask for the name of another file to write it to.

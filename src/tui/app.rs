@@ -60,6 +60,10 @@ pub enum Page {
     Why,
     /// What is proved of the segment.
     Bounds,
+    /// The edits that were made and taken back.
+    Edits,
+    /// What somebody else changed in the file.
+    Changes,
     /// What was not checked, and the doubts.
     NotChecked,
     /// Keys and signs.
@@ -207,6 +211,8 @@ pub struct App {
     pub mark: Option<usize>,
     /// What a typed text would make of the recipe.
     pub preview: Option<Preview>,
+    /// What somebody else changed in the recipe's file, a sentence each.
+    pub changes: Vec<String>,
     /// Why nothing may be edited, if so.
     pub look_only: Option<String>,
     /// Whether what is taught now is still to be checked.
@@ -259,6 +265,7 @@ impl App {
             made: Vec::new(),
             mark: None,
             preview: None,
+            changes: Vec::new(),
             look_only: None,
             unchecked: true,
             keymap: Keymap::default(),

@@ -1,5 +1,8 @@
+use ratatui::style::Style;
+
 use super::action::Action;
 use super::app::{App, FileWish, Item, Menu, Wish};
+use super::page::{Line, paragraph};
 
 /// A menu of answers, each by name; no key stands beside them, so that none is given by accident.
 pub(super) fn question(title: String, answers: Vec<(String, Action)>) -> Menu {
@@ -40,4 +43,40 @@ pub(super) fn copy(app: &mut App) {
     let text = std::iter::once(why.title.clone()).chain(paragraphs).collect::<Vec<_>>().join("\n");
     app.message = Some("copied, if this terminal takes it".to_owned());
     app.wish = Wish::Copy(text);
+}
+
+/// Every step that was made, the newest last, where it was saved, and what was taken back.
+pub fn edits(app: &App, width: usize) -> Vec<Line> {
+    let history = &app.history;
+    let mut lines = Vec::new();
+    let saved = |after: usize| (history.saved_after() == Some(after)).then_some("saved here");
+    let mark = |after: usize, lines: &mut Vec<Line>| {
+        lines.extend(saved(after).map(|told| vec![(format!("    {told}"), app.theme.strong())]));
+    };
+    mark(0, &mut lines);
+    for (index, step) in history.done().iter().enumerate() {
+        lines.extend(paragraph(&app.theme.text(&format!("{:>3} {}", index + 1, step.words)), width, 0, Style::new()));
+        mark(index + 1, &mut lines);
+    }
+    if history.done().is_empty() {
+        lines.extend(paragraph("Nothing was edited yet.", width, 0, Style::new()));
+    }
+    for (index, step) in history.undone().iter().rev().enumerate() {
+        if index == 0 {
+            lines.push(Vec::new());
+            lines.extend(paragraph("Taken back; r makes them again:", width, 0, app.theme.strong()));
+        }
+        lines.extend(paragraph(&app.theme.text(&step.words), width, 4, Style::new()));
+        mark(history.done().len() + index + 1, &mut lines);
+    }
+    lines
+}
+
+/// What somebody else changed in the file, a sentence each.
+pub fn changes(app: &App, width: usize) -> Vec<Line> {
+    let mut lines: Vec<Line> =
+        app.changes.iter().flat_map(|told| paragraph(&app.theme.text(told), width, 0, Style::new())).collect();
+    lines.push(Vec::new());
+    lines.extend(paragraph("Your edits are kept; s asks again what to do.", width, 0, app.theme.strong()));
+    lines
 }

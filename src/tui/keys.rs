@@ -53,6 +53,7 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('i')], Action::StepSize, "jog: next step size", "size"),
     binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
     binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
+    binding(&[KeyCode::Char('v')], Action::Edits, "edits made and undone", ""),
     binding(&[KeyCode::Char('s')], Action::Save, "save", ""),
     binding(&[], Action::SaveAs, "save elsewhere", ""),
     binding(&[KeyCode::Char('k')], Action::Copy, "copy what is told", ""),

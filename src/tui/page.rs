@@ -5,7 +5,7 @@ use super::layout::Layout;
 use super::sheet::{Sheet, wrap};
 use super::update::layout;
 use super::why::Spacing;
-use super::{bounds, help, not_checked, why};
+use super::{bounds, file, help, not_checked, why};
 
 /// A line of a text: pieces, each with its style.
 pub type Line = Vec<(String, Style)>;
@@ -25,6 +25,8 @@ fn text(app: &App, page: Page, width: usize) -> (String, Vec<Line>) {
     match page {
         Page::Why => (why::title(app, width), why::lines(app, width, Spacing::Airy)),
         Page::Bounds => (bounds::title(app), bounds::lines(app, width)),
+        Page::Edits => ("Edits".to_owned(), file::edits(app, width)),
+        Page::Changes => ("Changed on the disk meanwhile".to_owned(), file::changes(app, width)),
         Page::NotChecked => ("Not checked".to_owned(), not_checked::lines(app, width)),
         Page::Help => ("Help".to_owned(), help::lines(app.theme, &app.keymap, width)),
     }

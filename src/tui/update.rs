@@ -56,6 +56,7 @@ fn by_mode(app: &mut App, action: Action) {
         (_, Action::Quit | Action::QuitAnyway) => app.wish = Wish::Quit,
         (Mode::Editing(_), action) => editing::handle(app, &action),
         (_, Action::File(wish)) => app.wish = Wish::File(wish),
+        (_, Action::Changes) => app.mode = Mode::Page(Page::Changes, 0),
         (_, Action::LookOnly(why)) => app.look_only = Some(why),
         (_, Action::Stay) => app.mode = Mode::Panes,
         (_, Action::Suspend) => app.wish = Wish::Suspend,
@@ -91,6 +92,7 @@ fn by_mode(app: &mut App, action: Action) {
         (Mode::Page(..) | Mode::Menu(_), Action::Back) => app.mode = Mode::Panes,
         (Mode::Page(Page::Why, _), Action::ReadWhy)
         | (Mode::Page(Page::Bounds, _), Action::Bounds)
+        | (Mode::Page(Page::Edits, _), Action::Edits)
         | (Mode::Page(Page::Help, _), Action::Help)
         | (Mode::Page(Page::NotChecked, _), Action::NotChecked)
         | (Mode::Page(..), Action::Enter) => app.mode = Mode::Panes,
@@ -150,6 +152,7 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::Edit => edit(app),
         Action::EditStretch => app.mode = Mode::Menu(stretch::menu(app)),
         Action::OnStretch(what) => stretch::act(app, what),
+        Action::Edits => app.mode = Mode::Page(Page::Edits, 0),
         Action::Save => file::save(app),
         Action::SaveAs => app.mode = Mode::Asking(Asking { question: Question::SaveAs, typed: String::new() }),
         Action::Copy => file::copy(app),
@@ -268,6 +271,7 @@ fn is_named(action: &Action) -> bool {
             | Action::EditStretch
             | Action::Undo
             | Action::Redo
+            | Action::Edits
             | Action::Save
             | Action::SaveAs
             | Action::Copy

@@ -128,7 +128,10 @@ impl Keeper {
                     app.wish = Wish::Quit;
                 }
             }
-            Err(NotSaved::Changed { text, .. }) => app.mode = Mode::Menu(self.changed(app, text.as_deref())),
+            Err(NotSaved::Changed { text, .. }) => {
+                let menu = self.changed(app, text.as_deref());
+                app.mode = Mode::Menu(menu);
+            }
             Err(why) => app.message = Some(format!("not saved, the edits are kept: {why}")),
         }
     }
@@ -143,14 +146,16 @@ impl Keeper {
     }
 
     /// What to do about a file that somebody else has written.
-    fn changed(&self, app: &App, text: Option<&str>) -> Menu {
+    fn changed(&self, app: &mut App, text: Option<&str>) -> Menu {
         let told = changes_on_disk(text, &self.source, &self.saved, &app.arm);
+        app.changes.clone_from(&told);
         let first = told.first().map_or(String::new(), |first| format!(": {first}"));
         let more = if told.len() > 1 { format!(" and {} more", told.len() - 1) } else { String::new() };
         question(
             format!("Changed on the disk meanwhile{first}{more}"),
             vec![
                 ("stay and keep my edits unsaved".to_owned(), Action::Stay),
+                ("show what was changed".to_owned(), Action::Changes),
                 ("save mine elsewhere".to_owned(), Action::SaveAs),
                 ("save mine over it; theirs is kept as a backup".to_owned(), Action::File(FileWish::SaveOver)),
                 ("take theirs and give my edits up".to_owned(), Action::File(FileWish::Reload)),
