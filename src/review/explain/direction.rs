@@ -35,6 +35,19 @@ pub(super) fn in_tool(axes: &M3, vector: &V3) -> String {
     format!("tool {}", named(&(axes.transpose() * vector), false))
 }
 
+/// How a vector in base axes lies to the tool axis, the z axis of the TCP: along it, sideways, or in between.
+pub(super) fn beside_tool(axes: &M3, vector: &V3) -> &'static str {
+    let along = vector.try_normalize(0.0).map_or(f64::NAN, |unit| unit.dot(&axes.column(2)).abs());
+    // A part of the other kind of up to SMALL is left out of the words, as it is elsewhere.
+    if along >= (1.0 - SMALL * SMALL).sqrt() {
+        "along the tool axis"
+    } else if along <= SMALL {
+        "sideways to the tool axis"
+    } else {
+        "at an angle to the tool axis"
+    }
+}
+
 fn told(recipe: &Recipe, vector: &V3, way: impl Fn(usize, bool) -> &'static str, either: bool) -> String {
     let axes = format!("along base {}", named(vector, either));
     let parts = parts(vector);

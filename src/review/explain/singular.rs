@@ -2,7 +2,7 @@ use crate::checks::{Check, Excess};
 use crate::kinematics::{Closeness, SingularKind, condition};
 use crate::units::{Angle, Dimension, Length, Measure, Speed, TurnRate};
 
-use super::direction::{axis, line};
+use super::direction::{axis, beside_tool, line};
 use super::listing::all_of;
 use super::scene::Scene;
 use super::{Label, Paragraph, proof_text};
@@ -96,10 +96,11 @@ fn speed(scene: &Scene) -> String {
     let mut told = Vec::new();
     if left.moving.is_finite() {
         told.push(format!(
-            "With the orientation held, {} lets the tool move at no more than {} {}.",
+            "With the orientation held, {} lets the tool move at no more than {} {}, {}.",
             scene.joint(left.joint).name,
             Speed::m_per_s(left.moving).measure().text_down(0),
-            line(recipe, &left.direction)
+            line(recipe, &left.direction),
+            beside_tool(&scene.instant.tcp.axes, &left.direction)
         ));
     }
     if left.turning.is_finite() {
