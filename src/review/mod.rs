@@ -6,8 +6,11 @@ mod first_run;
 mod judged;
 mod not_checked;
 mod recheck;
+mod record;
 mod reduced_speed;
 mod session;
+mod sign_off;
+mod verify;
 
 pub use explain::{
     Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, bounds_text, check_words, doubt_text, explain, fastest_text,
@@ -17,6 +20,15 @@ pub use explain::{
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
 pub use judged::Judged;
 pub use not_checked::not_checked;
+pub use record::{
+    Accepted, Date, Datum, Earlier, Matter, Person, Record, Role, SealedCheck, SealedCycle, SealedFile, SealedRun, SealedSegment,
+    Settled, Sources, Tightest,
+};
 pub use recheck::{Done, Progress, Recheck, Reply, Ticket};
 pub use reduced_speed::{REDUCED_SPEED, Reduced, reduced_speed};
 pub use session::Session;
+pub use verify::{
+    CellPoint, CellTable, CellTool, Compared, MASS_SLACK, Outcome, Reported, SegmentChange, Slack, compare_points, compare_record,
+    compare_typed, segment_changes,
+};
+pub use sign_off::{Answer, Around, Hindrance, NotTaken, OpenDoubt, Question, Reason, SignOff};
