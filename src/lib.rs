@@ -2,7 +2,7 @@
 //! real tool and part, why something fails, and which change makes it right.
 //!
 //! The modules stand in layers; each may name only those above it in this list:
-//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`program`], [`dynamics`], [`motion`], [`checks`], [`review`], [`files`],
+//! [`units`], [`geometry`], [`arm`], [`kinematics`], [`program`], [`dynamics`], [`motion`], [`seal`], [`checks`], [`review`], [`files`],
 //! [`report`], [`tui`], [`cli`].
 
 pub mod arm;
@@ -16,5 +16,6 @@ pub mod motion;
 pub mod program;
 pub mod report;
 pub mod review;
+pub mod seal;
 pub mod tui;
 pub mod units;

@@ -65,6 +65,11 @@ impl Check {
         }
     }
 
+    /// The check of that name in data; `None` for any other text.
+    pub fn from_key(key: &str) -> Option<Self> {
+        Self::ALL.into_iter().find(|check| check.key() == key)
+    }
+
     /// Whether it judges by what the arm can do; the others judge by what the cell asks.
     pub fn is_arm_limit(self) -> bool {
         !matches!(self, Self::Singular | Self::SpeedLeft | Self::TcpSpeed)

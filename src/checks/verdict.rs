@@ -28,6 +28,11 @@ impl Verdict {
         }
     }
 
+    /// The verdict that a word names; `None` for any other text.
+    pub fn from_word(word: &str) -> Option<Self> {
+        Self::ALL.into_iter().find(|verdict| verdict.word() == word)
+    }
+
     /// Its letter, where a word is too long.
     pub fn letter(self) -> char {
         match self {

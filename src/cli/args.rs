@@ -2,7 +2,8 @@ use std::path::PathBuf;
 
 use clap::{Args as ClapArgs, Parser, Subcommand};
 
-use crate::units::Seconds;
+use crate::review::{CellTool, Date, Role};
+use crate::units::{Length, Seconds};
 
 use super::step::step;
 
@@ -74,6 +75,28 @@ pub(super) enum Command {
                             for each side where values differ. Exit codes: 0 written, 2 not."
     )]
     Trace(TraceArgs),
+    /// Sign a recipe off: write a record that others can check, with reasons for what is not clear
+    #[command(
+        after_help = "Every doubt must be looked into, every finding that is not clear accepted with a written reason, and every datum \
+                      confirmed by itself: --template prints a file of answers to fill in for --reasons. The record stands beside the \
+                      recipe as NAME.signoff.toml; signatures are in the open SSHSIG format, namespace elbowroom-signoff. Exit codes: 0 \
+                      signed, 1 something stands in the way, 2 the recipe could not be judged."
+    )]
+    Sign(SignArgs),
+    /// Say whether a record still stands, and whether the cell's copy is what was signed
+    #[command(
+        after_help = "Exit codes: 0 the record stands and its signatures are good, 1 something changed, a signature is bad, missing or of \
+                      an unknown signer, or the cell's copy differs, 2 it could not be judged."
+    )]
+    Verify(VerifyArgs),
+    /// Tell what is different between two recipes, or between a record and a recipe
+    #[command(after_help = "Exit codes: 0 nothing differs, 1 something does, 2 it could not be judged.")]
+    Compare(CompareArgs),
+    /// Print the page for the wall of a record: seal code, names, tightest segments, what was not checked
+    Page {
+        /// The record, NAME.signoff.toml
+        record: PathBuf,
+    },
     /// Write a starting file with comments: an arm, or a recipe for an arm
     #[command(after_help = "A file that is there already is never written over. Exit codes: 0 written, 2 not.")]
     New(NewArgs),
@@ -103,6 +126,96 @@ pub(super) enum NewKind {
         /// Write to this file instead of standard output
         file: Option<PathBuf>,
     },
+}
+
+/// Arguments of `sign`.
+#[derive(Debug, ClapArgs)]
+pub(super) struct SignArgs {
+    /// The recipe
+    pub recipe: PathBuf,
+    /// Who stands for it
+    #[arg(long, value_name = "NAME")]
+    pub name: Option<String>,
+    /// As what: prepared or checked
+    #[arg(long, value_name = "ROLE", default_value = "prepared", value_parser = role)]
+    pub role: Role,
+    /// When, as YYYY-MM-DD; today in UTC if left out
+    #[arg(long, value_name = "DATE", value_parser = date)]
+    pub date: Option<Date>,
+    /// What is to be said with the name
+    #[arg(long, value_name = "TEXT")]
+    pub note: Option<String>,
+    /// A file of answers: reasons for findings and doubts, and the data that were confirmed
+    #[arg(long, value_name = "FILE")]
+    pub reasons: Option<PathBuf>,
+    /// Print such a file to fill in, and sign nothing
+    #[arg(long)]
+    pub template: bool,
+    /// Sign with this OpenSSH key: Ed25519 and ECDSA P-256 here, others and public keys of agents through ssh-keygen
+    #[arg(long, value_name = "FILE")]
+    pub key: Option<PathBuf>,
+}
+
+/// Arguments of `verify`.
+#[derive(Debug, ClapArgs)]
+pub(super) struct VerifyArgs {
+    /// The record, NAME.signoff.toml
+    pub record: PathBuf,
+    /// A list of allowed signers, as ssh-keygen has it
+    #[arg(long, value_name = "FILE")]
+    pub signers: Option<PathBuf>,
+    /// The points read back from the cell, CSV with a header: waypoint, then joints in degrees or mm, or a pose
+    #[arg(long, value_name = "TABLE")]
+    pub points: Option<PathBuf>,
+    /// By how many degrees they may differ
+    #[arg(long, value_name = "DEGREES", default_value_t = 0.01)]
+    pub angle_slack: f64,
+    /// By how many mm they may differ
+    #[arg(long, value_name = "MM", default_value_t = 0.1)]
+    pub length_slack: f64,
+    /// A tool as the cell has it: NAME=KG, or NAME=KG,X,Y,Z with its TCP in mm
+    #[arg(long, value_name = "TOOL", value_parser = typed)]
+    pub tool: Vec<CellTool>,
+    /// A load as the cell has it: NAME=KG
+    #[arg(long, value_name = "LOAD", value_parser = typed)]
+    pub load: Vec<CellTool>,
+    /// The override that the cell is set to, %
+    #[arg(long = "override", value_name = "PERCENT")]
+    pub run_at: Option<f64>,
+}
+
+/// Arguments of `compare`.
+#[derive(Debug, ClapArgs)]
+pub(super) struct CompareArgs {
+    /// The earlier recipe, or a record (NAME.signoff.toml)
+    pub before: PathBuf,
+    /// The later recipe
+    pub after: PathBuf,
+}
+
+fn role(text: &str) -> Result<Role, String> {
+    match text {
+        "prepared" => Ok(Role::Prepared),
+        "checked" => Ok(Role::Checked),
+        _ => Err("it must be prepared or checked".to_owned()),
+    }
+}
+
+fn date(text: &str) -> Result<Date, String> {
+    Date::read(text).ok_or_else(|| "it must be a day such as 2026-11-30".to_owned())
+}
+
+/// A tool or load as typed from the cell.
+fn typed(text: &str) -> Result<CellTool, String> {
+    let says = "it must be NAME=KG, or NAME=KG,X,Y,Z with the TCP in mm";
+    let (name, rest) = text.split_once('=').ok_or(says)?;
+    let figures: Vec<f64> = rest.split(',').filter_map(|part| part.trim().parse().ok()).filter(|v: &f64| v.is_finite()).collect();
+    let tcp = |mm: [f64; 3]| Some(mm.map(|mm| Length::mm(mm).as_m()));
+    match (figures[..].to_vec().as_slice(), rest.split(',').count()) {
+        ([mass], 1) => Ok(CellTool { name: name.to_owned(), mass: *mass, tcp: None }),
+        ([mass, x, y, z], 4) => Ok(CellTool { name: name.to_owned(), mass: *mass, tcp: tcp([*x, *y, *z]) }),
+        _ => Err(says.to_owned()),
+    }
 }
 
 /// Arguments of `check`.

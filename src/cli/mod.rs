@@ -6,16 +6,20 @@ mod check;
 mod chosen;
 mod code;
 mod columns;
+mod compare;
 mod explain;
 mod findings_text;
+mod key;
 mod new;
 mod not_checked_text;
 mod out;
 mod plan;
 mod screen;
+mod sign;
 mod step;
 mod table;
 mod trace;
+mod verify;
 
 use std::process::ExitCode;
 
@@ -40,6 +44,10 @@ pub fn run() -> ExitCode {
         Some(Command::Explain(explain)) => explain::run(&explain),
         Some(Command::Plan(plan)) => plan::run(&plan),
         Some(Command::Trace(trace)) => trace::run(&trace),
+        Some(Command::Sign(sign)) => sign::run(&sign),
+        Some(Command::Verify(verify)) => verify::run(&verify),
+        Some(Command::Compare(compare)) => compare::run(&compare),
+        Some(Command::Page { record }) => verify::page(&record),
         Some(Command::New(new)) => new::run(&new),
     };
     match done {

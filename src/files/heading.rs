@@ -20,7 +20,13 @@ pub(super) const ARM: Heading = Heading { key: "elbowroom-arm", file: "an arm fi
 /// The heading of a recipe.
 pub(super) const RECIPE: Heading = Heading { key: "elbowroom-recipe", file: "a recipe" };
 
-/// The version that this program reads, of both kinds.
+/// The heading of a sign-off record.
+pub(super) const RECORD: Heading = Heading { key: "elbowroom-signoff", file: "a sign-off record" };
+
+/// The heading of a file of reasons.
+pub(super) const REASONS: Heading = Heading { key: "elbowroom-reasons", file: "a file of reasons" };
+
+/// The version that this program reads, of every kind.
 const VERSION: f64 = 1.0;
 
 /// Judges the heading of a file where `wanted` is needed and `other` might have been given instead. False if the rest of the file

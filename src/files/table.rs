@@ -303,7 +303,7 @@ impl<'a> Table<'a> {
         Some(Self::new(self.page, entries, at, self.field.key(key).item(index), thing))
     }
 
-    fn get(&self, key: &str) -> Option<&'a Spanned<DeValue<'a>>> {
+    pub(super) fn get(&self, key: &str) -> Option<&'a Spanned<DeValue<'a>>> {
         self.entries.get(key)
     }
 }

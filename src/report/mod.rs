@@ -8,9 +8,11 @@ mod plan_json;
 mod save;
 mod stopping_json;
 mod trace_csv;
+mod wall_page;
 
 pub use check_json::{FORMAT, check_json};
 pub use grid::{MOST_ROWS, TooManyRows};
 pub use plan_json::{PLAN_FORMAT, plan_json};
 pub use save::save;
 pub use trace_csv::{TraceError, trace_csv};
+pub use wall_page::wall_page;

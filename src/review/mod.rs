@@ -11,8 +11,11 @@ mod recheck;
 pub mod record;
 mod reduced_speed;
 mod remedies;
+mod sealed;
 mod session;
 mod shift;
+mod sign_off;
+mod verify;
 
 pub use explain::{
     Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, bounds_text, check_words, difference_words, doubt_text, edit_words,
@@ -26,5 +29,14 @@ pub use not_checked::not_checked;
 pub use recheck::{Done, Progress, Recheck, Reply, Ticket};
 pub use reduced_speed::{REDUCED_SPEED, Reduced, reduced_speed};
 pub use remedies::{Change, Desk, Effect, Ends, Errand, News, Remedy, RemedyKind, Short, Told, Tried, found_by, kinds_for, search};
+pub use sealed::{
+    Accepted, Date, Datum, Earlier, Matter, Person, Record, Role, SealedCheck, SealedCycle, SealedFile, SealedRun, SealedSegment,
+    Settled, Sources, Tightest,
+};
 pub use session::Session;
 pub use shift::shift;
+pub use sign_off::{Answer, Around, Hindrance, NotTaken, OpenDoubt, Question, Reason, SignOff};
+pub use verify::{
+    CellPoint, CellTable, CellTool, Compared, MASS_SLACK, Outcome, Reported, SegmentChange, Slack, compare_points, compare_record,
+    compare_typed, segment_changes,
+};

@@ -9,7 +9,7 @@ use source::{Source, tree};
 ///
 /// `program` stands below `dynamics` because what hangs on the flange (`program::Carried`) is part of what a recipe says, and the
 /// holding torque is computed from it.
-const ORDER: [&str; 13] = [
+const ORDER: [&str; 14] = [
     "units",
     "geometry",
     "arm",
@@ -17,6 +17,7 @@ const ORDER: [&str; 13] = [
     "program",
     "dynamics",
     "motion",
+    "seal",
     "checks",
     "review",
     "files",

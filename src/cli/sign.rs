@@ -1,0 +1,154 @@
+use std::path::{Path, PathBuf};
+use std::sync::Arc;
+use std::time::{SystemTime, UNIX_EPOCH};
+
+use anyhow::{Context, ensure};
+
+use crate::checks::Watch;
+use crate::files::{
+    is_there, no_link, open, read_reasons, read_record, read_text, reasons_template, record_path, record_text, set_aside,
+    signature_path, signed_part, sources, write, write_anyway,
+};
+use crate::review::{
+    Around, Compared, Date, Earlier, Judged, Outcome, Person, Record, SignOff, Sources, compare_record, first_run,
+};
+use crate::seal::Digest;
+
+use super::args::SignArgs;
+use super::code::Code;
+use super::key::Signing;
+use super::out;
+
+/// What is about to be signed.
+pub(super) struct Opened {
+    pub judged: Judged,
+    pub sources: Sources,
+    pub run: crate::review::FirstRun,
+}
+
+/// Opens and judges a recipe for a record; a link is refused, since it may lead elsewhere tomorrow.
+///
+/// # Errors
+/// All that is wrong with its files.
+pub(super) fn opened(recipe: &Path) -> anyhow::Result<Opened> {
+    no_link(recipe)?;
+    let opened = open(recipe)?;
+    let sources = sources(&opened);
+    let (arm, recipe) = (Arc::new(opened.arm), Arc::new(opened.recipe));
+    let judged = Judged::of(&arm, &recipe, None, &Watch::default()).expect("nobody stops this watch");
+    let run = first_run(&judged, &Watch::default()).expect("nobody stops this watch");
+    Ok(Opened { judged, sources, run })
+}
+
+/// Signs a recipe off: writes its record, or puts one more name under the record that stands.
+pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
+    let Opened { judged, sources, run } = opened(&args.recipe)?;
+    let mut sign_off = SignOff::of(&judged, &sources);
+    let place = record_path(&args.recipe);
+    let earlier = earlier(&place)?;
+    if let Some(earlier) = &earlier {
+        sign_off.take_over(earlier);
+    }
+    if args.template {
+        out::print(&reasons_template(&sign_off))?;
+        return Ok(Code::Clear);
+    }
+    let name = args.name.clone().context("--name is needed: who stands for it")?;
+    let date = args.date.map_or_else(today, Ok)?;
+    if let Some(reasons) = &args.reasons {
+        read_reasons(&read_text(reasons)?, &mut sign_off, &name, date)?;
+    }
+    if let Err(hindrances) = sign_off.can_sign(Around { data_one_by_one: true, ..Around::default() }) {
+        out::complain(&format!("{}: not signed:", args.recipe.display()));
+        for hindrance in hindrances {
+            out::complain(&format!("  {hindrance}"));
+        }
+        out::complain("elbowroom sign --template prints a file of answers to fill in for --reasons");
+        return Ok(Code::NotClear);
+    }
+    let signing = args.key.as_deref().map(Signing::of).transpose()?;
+    let person = Person {
+        name,
+        role: args.role,
+        date,
+        note: args.note.clone().unwrap_or_default(),
+        key: signing.as_ref().map(Signing::fingerprint),
+    };
+    let stands = earlier.filter(|earlier| is_the_same(&compare_record(earlier, &judged, &sources, &run)));
+    let (record, is_new) = match stands {
+        // One more name under the same record.
+        Some(mut record) => {
+            record.people.push(person);
+            (record, false)
+        }
+        None => {
+            let before = earlier_at(&place)?;
+            let bare = Record::of(&judged, &sources, &run, &before.as_ref().map_or_else(Earlier::default, Earlier::of), date);
+            let mut record = sign_off.decided(bare);
+            record.people.push(person);
+            (record, true)
+        }
+    };
+    let told = keep(&place, &record, is_new, signing.as_ref())?;
+    out::print(&told)?;
+    Ok(Code::Clear)
+}
+
+fn is_the_same(compared: &Compared) -> bool {
+    compared.outcome == Outcome::Stands && compared.other_bytes.is_empty()
+}
+
+fn earlier(place: &Path) -> anyhow::Result<Option<Record>> {
+    earlier_at(place)
+}
+
+/// The record that stands at a place, if one does.
+fn earlier_at(place: &Path) -> anyhow::Result<Option<Record>> {
+    if !is_there(place) {
+        return Ok(None);
+    }
+    no_link(place)?;
+    Ok(Some(read_record(&read_text(place)?).context("the record that is there can't be read; move it away first")?))
+}
+
+/// Writes record and signature. An earlier record of other content is set aside under its seal code.
+fn keep(place: &Path, record: &Record, is_new: bool, signing: Option<&Signing>) -> anyhow::Result<String> {
+    let index = record.people.len() - 1;
+    ensure!(index < crate::files::MOST_PEOPLE, "there are {index} names under this record already, and no more can be");
+    // Signed before anything is written, so that a wrong passphrase leaves everything as it was.
+    let signature = signing.map(|signing| signing.sign(&signed_part(record, index))).transpose()?;
+    let text = record_text(record);
+    let mut told = Vec::new();
+    if is_new {
+        if let Some(before) = earlier_at(place)? {
+            let kept = set_aside(place, &Digest::of(record_text(&before).as_bytes()))?;
+            told.push(format!("the earlier record is now {}", kept.display()));
+        }
+        write(place, &text, None)?;
+    } else {
+        write_anyway(place, &text)?;
+    }
+    told.push(format!("record: {}, seal {}", place.display(), Digest::of(text.as_bytes()).code()));
+    match signature {
+        Some(armoured) => {
+            let beside: PathBuf = signature_path(place, index);
+            write(&beside, &armoured, None)?;
+            told.push(format!("signature: {}", beside.display()));
+        }
+        None => told.push("no signature: a name only".to_owned()),
+    }
+    let person = &record.people[index];
+    told.push(format!(
+        "{} {} on {}; the record says what was judged and is no leave to run an arm",
+        person.role.words(),
+        person.name,
+        person.date
+    ));
+    Ok(told.join("\n") + "\n")
+}
+
+/// Today in UTC.
+fn today() -> anyhow::Result<Date> {
+    let since = SystemTime::now().duration_since(UNIX_EPOCH).context("the clock stands before 1970; give --date")?;
+    Ok(Date::after_1970(since.as_secs()))
+}
