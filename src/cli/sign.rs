@@ -1,18 +1,16 @@
-use std::path::{Path, PathBuf};
+use std::path::Path;
 use std::sync::Arc;
 use std::time::{SystemTime, UNIX_EPOCH};
 
-use anyhow::{Context, ensure};
+use anyhow::Context;
 
 use crate::checks::Watch;
 use crate::files::{
-    is_there, no_link, open, read_reasons, read_record, read_text, reasons_template, record_path, record_text, set_aside,
-    signature_path, signed_part, sources, write, write_anyway,
+    earlier_record, keep_record, no_link, open, read_reasons, read_text, reasons_template, record_path, signed_part, sources,
 };
 use crate::review::{
     Around, Compared, Date, Earlier, Judged, Outcome, Person, Record, SignOff, Sources, compare_record, first_run,
 };
-use crate::seal::Digest;
 
 use super::args::SignArgs;
 use super::code::Code;
@@ -45,7 +43,7 @@ pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
     let Opened { judged, sources, run } = opened(&args.recipe)?;
     let mut sign_off = SignOff::of(&judged, &sources);
     let place = record_path(&args.recipe);
-    let earlier = earlier(&place)?;
+    let earlier = earlier_record(&place).context("the record that is there can't be read; move it away first")?;
     if let Some(earlier) = &earlier {
         sign_off.take_over(earlier);
     }
@@ -82,7 +80,7 @@ pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
             (record, false)
         }
         None => {
-            let before = earlier_at(&place)?;
+            let before = earlier_record(&place)?;
             let bare = Record::of(&judged, &sources, &run, &before.as_ref().map_or_else(Earlier::default, Earlier::of), date);
             let mut record = sign_off.decided(bare);
             record.people.push(person);
@@ -98,45 +96,15 @@ fn is_the_same(compared: &Compared) -> bool {
     compared.outcome == Outcome::Stands && compared.other_bytes.is_empty()
 }
 
-fn earlier(place: &Path) -> anyhow::Result<Option<Record>> {
-    earlier_at(place)
-}
-
-/// The record that stands at a place, if one does.
-fn earlier_at(place: &Path) -> anyhow::Result<Option<Record>> {
-    if !is_there(place) {
-        return Ok(None);
-    }
-    no_link(place)?;
-    Ok(Some(read_record(&read_text(place)?).context("the record that is there can't be read; move it away first")?))
-}
-
-/// Writes record and signature. An earlier record of other content is set aside under its seal code.
+/// Writes record and signature, and tells where they are.
 fn keep(place: &Path, record: &Record, is_new: bool, signing: Option<&Signing>) -> anyhow::Result<String> {
     let index = record.people.len() - 1;
-    ensure!(index < crate::files::MOST_PEOPLE, "there are {index} names under this record already, and no more can be");
     // Signed before anything is written, so that a wrong passphrase leaves everything as it was.
     let signature = signing.map(|signing| signing.sign(&signed_part(record, index))).transpose()?;
-    let text = record_text(record);
-    let mut told = Vec::new();
-    if is_new {
-        if let Some(before) = earlier_at(place)? {
-            let kept = set_aside(place, &Digest::of(record_text(&before).as_bytes()))?;
-            told.push(format!("the earlier record is now {}", kept.display()));
-        }
-        write(place, &text, None)?;
-    } else {
-        write_anyway(place, &text)?;
-    }
-    told.push(format!("record: {}, seal {}", place.display(), Digest::of(text.as_bytes()).code()));
-    match signature {
-        Some(armoured) => {
-            let beside: PathBuf = signature_path(place, index);
-            write(&beside, &armoured, None)?;
-            told.push(format!("signature: {}", beside.display()));
-        }
-        None => told.push("no signature: a name only".to_owned()),
-    }
+    let kept = keep_record(place, record, is_new, signature.as_deref())?;
+    let mut told: Vec<String> = kept.aside.iter().map(|aside| format!("the earlier record is now {}", aside.display())).collect();
+    told.push(format!("record: {}, seal {}", place.display(), kept.seal.code()));
+    told.push(kept.signature.map_or("no signature: a name only".to_owned(), |at| format!("signature: {}", at.display())));
     let person = &record.people[index];
     told.push(format!(
         "{} {} on {}; the record says what was judged and is no leave to run an arm",

@@ -6,6 +6,7 @@ use crate::review::{Judged, Progress, Told};
 
 use super::app::FileWish;
 use super::jog::Deed;
+use super::signing::Decision;
 use super::stretch::OnStretch;
 
 /// An action is everything that can happen to the screen: what a person asks for, and what arrives from elsewhere.
@@ -87,6 +88,10 @@ pub enum Action {
     Edits,
     /// What somebody else changed in the recipe's file.
     Changes,
+    /// Sign the recipe off.
+    SignOff,
+    /// Decide about a finding of the sign-off.
+    Decide(Decision),
     /// Write what is taught to its file.
     Save,
     /// Ask for the name of another file to write it to.

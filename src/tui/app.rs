@@ -15,6 +15,7 @@ use super::keymap::Keymap;
 use super::keys::Binding;
 use super::remedies::Remedies;
 use super::scene::Scene;
+use super::signing::Signing;
 use super::theme::Theme;
 
 /// A pane that can be worked in.
@@ -62,7 +63,7 @@ pub enum Page {
     Bounds,
     /// The edits that were made and taken back.
     Edits,
-    /// What somebody else changed in the file.
+    /// What is different from something else.
     Changes,
     /// What was not checked, and the doubts.
     NotChecked,
@@ -90,6 +91,16 @@ pub enum Question {
     SaveAs,
     /// Three lengths by which a stretch is shifted.
     ShiftBy,
+    /// Who signs off.
+    SignName,
+    /// What they want to say.
+    SignNote,
+    /// What was found about a doubt, by its number.
+    Settle(usize),
+    /// Why a finding is accepted, by its number.
+    AcceptBecause(usize),
+    /// Why it is refused.
+    RefuseBecause(usize),
 }
 
 /// What is typed in answer to a question.
@@ -146,6 +157,8 @@ pub enum Mode {
     Jog,
     /// Data that can be edited.
     Editing(Editing),
+    /// A sign-off.
+    SignOff,
     /// A question in the lowest row.
     Asking(Asking),
 }
@@ -183,6 +196,12 @@ pub enum FileWish {
     TakeUp,
     /// Throw them away.
     Forget,
+    /// Read the files for a sign-off.
+    SignOff,
+    /// Write the record of the sign-off.
+    WriteRecord,
+    /// Tell what is different since the record was made.
+    SinceRecord,
     /// Open the recipe although somebody else has it open.
     OpenAllTheSame,
 }
@@ -211,8 +230,10 @@ pub struct App {
     pub mark: Option<usize>,
     /// What a typed text would make of the recipe.
     pub preview: Option<Preview>,
-    /// What somebody else changed in the recipe's file, a sentence each.
-    pub changes: Vec<String>,
+    /// What is different from something else, a sentence each, below a title.
+    pub changes: (String, Vec<String>),
+    /// The sign-off that is worked on.
+    pub signing: Option<Signing>,
     /// Why nothing may be edited, if so.
     pub look_only: Option<String>,
     /// Whether what is taught now is still to be checked.
@@ -265,7 +286,8 @@ impl App {
             made: Vec::new(),
             mark: None,
             preview: None,
-            changes: Vec::new(),
+            changes: (String::new(), Vec::new()),
+            signing: None,
             look_only: None,
             unchecked: true,
             keymap: Keymap::default(),

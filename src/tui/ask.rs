@@ -4,8 +4,8 @@ use crate::review::{Judged, check_words};
 use super::action::Action;
 use super::app::{App, Asking, FileWish, Mode, Question, Wish};
 use super::jog;
-use super::stretch;
 use super::update::follow_finding;
+use super::{signing, stretch};
 
 /// The question as it stands in the lowest row.
 pub fn prompt(question: Question) -> &'static str {
@@ -13,6 +13,11 @@ pub fn prompt(question: Question) -> &'static str {
         Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
         Question::Find => "Find a name, verdict or check: ",
         Question::SaveAs => "Save as: ",
+        Question::SignName => "Your name: ",
+        Question::SignNote => "Note: ",
+        Question::Settle(_) => "What you found: ",
+        Question::AcceptBecause(_) => "Accepted because: ",
+        Question::RefuseBecause(_) => "Refused because: ",
         Question::ShiftBy => "Shift by x y z in mm (0 0 12.5): ",
         Question::JogValue => "Value (mm or degrees, or with its unit): ",
         Question::JogWaypoint => "Jog from waypoint (number or name): ",
@@ -43,6 +48,11 @@ pub(super) fn answer(app: &mut App, action: &Action) {
 fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
     let typed = asking.typed.trim().to_owned();
     match asking.question {
+        asked @ (Question::SignName
+        | Question::SignNote
+        | Question::Settle(_)
+        | Question::AcceptBecause(_)
+        | Question::RefuseBecause(_)) => signing::answered(app, asked, &typed),
         Question::SaveAs | Question::ShiftBy if typed.is_empty() => Ok(()),
         Question::ShiftBy => {
             stretch::act(app, &stretch::OnStretch::Shift(typed));

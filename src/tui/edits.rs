@@ -46,5 +46,7 @@ pub(super) fn redo(app: &mut App) {
 /// What is taught now is to be checked, and the edit to be noted down.
 fn changed(app: &mut App, edit: Edit) {
     app.unchecked = true;
+    // Answers belong to what was shown when they were given.
+    app.signing = None;
     app.made.push(edit);
 }

@@ -72,11 +72,13 @@ pub fn edits(app: &App, width: usize) -> Vec<Line> {
     lines
 }
 
-/// What somebody else changed in the file, a sentence each.
+/// What is different from something else, a sentence each.
 pub fn changes(app: &App, width: usize) -> Vec<Line> {
     let mut lines: Vec<Line> =
-        app.changes.iter().flat_map(|told| paragraph(&app.theme.text(told), width, 0, Style::new())).collect();
-    lines.push(Vec::new());
-    lines.extend(paragraph("Your edits are kept; s asks again what to do.", width, 0, app.theme.strong()));
+        app.changes.1.iter().flat_map(|told| paragraph(&app.theme.text(told), width, 0, Style::new())).collect();
+    if app.history.is_unsaved() {
+        lines.push(Vec::new());
+        lines.extend(paragraph("Your edits are kept and not saved.", width, 0, app.theme.strong()));
+    }
     lines
 }

@@ -53,6 +53,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         (Mode::Menu(_), action) => matches!(action, Action::Up | Action::Enter),
         (Mode::Editing(editing), _) if editing.typing.is_some() => false,
         (Mode::Editing(_), action) => matches!(action, Action::Up | Action::Left | Action::Enter | Action::NextPane | Action::Undo),
+        (Mode::SignOff, action) => matches!(action, Action::Up | Action::Enter | Action::NotChecked),
         (Mode::Remedies, action) => matches!(action, Action::Up | Action::Enter | Action::NextFinding | Action::Undo),
         (Mode::Page(Page::Why, _), action) => matches!(action, Action::Up | Action::Worst | Action::NextFinding),
         (Mode::Page(..), action) => matches!(action, Action::Up),

@@ -1,7 +1,7 @@
 use ratatui::crossterm::event::{KeyCode, KeyEvent, KeyModifiers};
 
 use super::action::Action;
-use super::app::Mode;
+use super::app::{FileWish, Mode};
 use super::keymap::Keymap;
 
 /// A binding says which keys ask for which action, and how the footer and the help tell it. A key that is in no binding does
@@ -54,6 +54,8 @@ pub static BINDINGS: &[Binding] = &[
     binding(&[KeyCode::Char('u')], Action::Undo, "undo the last edit", ""),
     binding(&[KeyCode::Char('r')], Action::Redo, "redo it", ""),
     binding(&[KeyCode::Char('v')], Action::Edits, "edits made and undone", ""),
+    binding(&[KeyCode::Char('d')], Action::SignOff, "sign off", ""),
+    binding(&[], Action::File(FileWish::SinceRecord), "changed since the record", ""),
     binding(&[KeyCode::Char('s')], Action::Save, "save", ""),
     binding(&[], Action::SaveAs, "save elsewhere", ""),
     binding(&[KeyCode::Char('k')], Action::Copy, "copy what is told", ""),

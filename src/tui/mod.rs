@@ -36,6 +36,7 @@ mod rows;
 mod run;
 mod scene;
 mod sheet;
+mod signing;
 mod sketch;
 mod stretch;
 mod theme;
@@ -53,6 +54,7 @@ pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
 pub use remedies::wanted as remedies_wanted;
 pub use run::{Screen, Started, restore, run};
+pub use signing::{Decision, Signing};
 pub use stretch::OnStretch;
 pub use theme::Theme;
 pub use update::update;
@@ -75,6 +77,12 @@ pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
         let height = area.height - layout.headline.height - layout.footer.height;
         let whole = Rect { y: layout.headline.bottom(), height, ..area };
         edit_page::draw(&mut Sheet::new(buffer, whole, theme), app, editing);
+        return;
+    }
+    if matches!(app.mode, Mode::SignOff) {
+        let height = area.height - layout.headline.height - layout.footer.height;
+        let whole = Rect { y: layout.headline.bottom(), height, ..area };
+        signing::draw(&mut Sheet::new(buffer, whole, theme), app);
         return;
     }
     if matches!(app.mode, Mode::Remedies) {

@@ -26,7 +26,7 @@ fn text(app: &App, page: Page, width: usize) -> (String, Vec<Line>) {
         Page::Why => (why::title(app, width), why::lines(app, width, Spacing::Airy)),
         Page::Bounds => (bounds::title(app), bounds::lines(app, width)),
         Page::Edits => ("Edits".to_owned(), file::edits(app, width)),
-        Page::Changes => ("Changed on the disk meanwhile".to_owned(), file::changes(app, width)),
+        Page::Changes => (app.changes.0.clone(), file::changes(app, width)),
         Page::NotChecked => ("Not checked".to_owned(), not_checked::lines(app, width)),
         Page::Help => ("Help".to_owned(), help::lines(app.theme, &app.keymap, width)),
     }

@@ -11,7 +11,7 @@ use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
 use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, edits, file, jog, page, remedies, stretch};
+use super::{click, edits, file, jog, page, remedies, signing, stretch};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
@@ -55,6 +55,9 @@ fn by_mode(app: &mut App, action: Action) {
         (_, Action::Quit) if app.history.is_unsaved() => app.mode = Mode::Menu(file::unsaved(app)),
         (_, Action::Quit | Action::QuitAnyway) => app.wish = Wish::Quit,
         (Mode::Editing(_), action) => editing::handle(app, &action),
+        (_, Action::SignOff) => signing::open(app),
+        (_, Action::Decide(decision)) => signing::decide(app, &decision),
+        (Mode::SignOff, Action::NotChecked) => app.mode = Mode::Page(Page::NotChecked, 0),
         (_, Action::File(wish)) => app.wish = Wish::File(wish),
         (_, Action::Changes) => app.mode = Mode::Page(Page::Changes, 0),
         (_, Action::LookOnly(why)) => app.look_only = Some(why),
@@ -74,6 +77,7 @@ fn by_mode(app: &mut App, action: Action) {
             in_panes(app, &action);
             app.mode = Mode::Remedies;
         }
+        (Mode::SignOff, action) => signing::handle(app, &action),
         (Mode::Menu(menu), Action::Up) => menu.chosen = menu.chosen.checked_sub(1).unwrap_or(menu.items.len() - 1),
         (Mode::Menu(menu), Action::Down) => menu.chosen = (menu.chosen + 1) % menu.items.len(),
         (Mode::Menu(menu), Action::Enter) => {
@@ -271,6 +275,8 @@ fn is_named(action: &Action) -> bool {
             | Action::EditStretch
             | Action::Undo
             | Action::Redo
+            | Action::SignOff
+            | Action::File(_)
             | Action::Edits
             | Action::Save
             | Action::SaveAs

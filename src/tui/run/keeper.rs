@@ -18,13 +18,13 @@ use super::Started;
 #[derive(Debug)]
 pub(super) struct Keeper {
     /// The recipe's file; none for the built-in demonstration.
-    path: Option<PathBuf>,
+    pub(super) path: Option<PathBuf>,
     /// Where the recipe and its arm came from, as they are told.
     source: String,
     /// The text that stands in the file, as far as is known, and the recipe that it gives.
-    text: String,
+    pub(super) text: String,
     saved: Arc<Recipe>,
-    arm_text: String,
+    pub(super) arm_text: String,
     aside: Aside,
     journal: Option<Journal>,
     lock: Option<Lock>,
@@ -102,6 +102,9 @@ impl Keeper {
                     app.message = Some(format!("can't be thrown away: {error}"));
                 }
             }
+            FileWish::SignOff => self.open_sign_off(app),
+            FileWish::SinceRecord => self.since_record(app),
+            FileWish::WriteRecord => self.write_record(app),
             FileWish::OpenAllTheSame => self.take_lock(app, true),
         }
     }
@@ -148,7 +151,7 @@ impl Keeper {
     /// What to do about a file that somebody else has written.
     fn changed(&self, app: &mut App, text: Option<&str>) -> Menu {
         let told = changes_on_disk(text, &self.source, &self.saved, &app.arm);
-        app.changes.clone_from(&told);
+        app.changes = ("Changed on the disk meanwhile".to_owned(), told.clone());
         let first = told.first().map_or(String::new(), |first| format!(": {first}"));
         let more = if told.len() > 1 { format!(" and {} more", told.len() - 1) } else { String::new() };
         question(

@@ -2,6 +2,7 @@
 
 mod keeper;
 mod news;
+mod record;
 mod screen;
 
 use std::path::PathBuf;
