@@ -234,7 +234,9 @@ fn a_program_is_signed_off_on_the_screen() {
     for _ in 0..open {
         running.press("\r\x1b[B");
     }
-    running.press("\r");
+    // Behind the data stands the plan of the first run, then the name.
+    running.until("first run: clear up to 100 %");
+    running.press("\x1b[B\r");
     running.until("Your name:");
     running.press("Anna\r");
     running.until("name: Anna");

@@ -3,6 +3,10 @@
 use std::path::{Path, PathBuf};
 use std::process::{Command, Output, Stdio};
 
+#[cfg(unix)]
+#[expect(dead_code, reason = "other tests use other parts")]
+mod pty;
+
 const NAME: &str = "lid-placing";
 
 /// A folder with a recipe that is clear, and its arm.
@@ -323,4 +327,33 @@ fn no_trick_with_signatures_goes_through() {
     let verified = cell.verify(&["--signers", "signers"]);
     assert_code(&verified, 0, "by the key of anna@plant.example");
     assert!(told(&verified).contains("by the key of bert@plant.example"), "{}", told(&verified));
+}
+
+/// A locked key asks for its passphrase on the terminal and does not show it; a wrong one leaves nothing behind.
+#[cfg(unix)]
+#[test]
+fn the_passphrase_of_a_locked_key_is_asked_for_and_not_shown() {
+    if !keygen() {
+        return;
+    }
+    let cell = Cell::new();
+    let made = Command::new("ssh-keygen").args(["-q", "-t", "ed25519", "-N", "hidden words", "-f"]).arg(cell.path("key")).output();
+    assert!(made.expect("runs").status.success());
+    cell.write("answers.toml", &cell.answers("lid-placing.toml"));
+    let sign = |typed: &str, says: &str| {
+        let mut command = portable_pty::CommandBuilder::new(env!("CARGO_BIN_EXE_elbowroom"));
+        command.args(["sign", "lid-placing.toml", "--reasons", "answers.toml", "--name", "Anna", "--key", "key"]);
+        command.cwd(cell.0.path());
+        let mut running = pty::Running::sized(command, [100, 24]);
+        running.until("Passphrase of key:");
+        running.press(&format!("{typed}\r"));
+        running.until(says);
+        assert!(!running.text().contains(typed), "{}", running.text());
+        running.end();
+    };
+    sign("other words", "does not unlock the key");
+    assert!(!cell.path("lid-placing.signoff.toml").exists());
+    sign("hidden words", "signature:");
+    cell.write("signers", &signers(&cell, "key"));
+    assert_code(&cell.verify(&["--signers", "signers"]), 0, "signature good");
 }

@@ -1,6 +1,6 @@
 use ratatui::style::Style;
 
-use crate::review::{Answer, Around, Date, Person, Question, Reason, Role, SignOff, Sources, explain};
+use crate::review::{Answer, Around, Date, FirstRun, Person, Question, Reason, Role, SignOff, Sources, explain};
 
 use super::action::Action;
 use super::app::{App, Asking, FileWish, Mode, Question as Asked, Wish};
@@ -15,6 +15,10 @@ pub struct Signing {
     pub sign_off: SignOff,
     /// What was read for it.
     pub sources: Sources,
+    /// The plan of the first run.
+    pub run: FirstRun,
+    /// The same in words, a sentence each.
+    pub plan: Vec<String>,
     /// Who answers.
     pub name: String,
     /// As what.
@@ -36,6 +40,8 @@ pub enum Row {
     Finding(usize),
     /// A datum.
     Datum(usize),
+    /// The plan of the first run.
+    Plan,
     /// Who signs.
     Name,
     /// As what.
@@ -61,7 +67,7 @@ impl Signing {
         let doubts = (0..self.sign_off.doubts().len()).map(Row::Doubt);
         let findings = (0..self.sign_off.questions().len()).map(Row::Finding);
         let data = (0..self.sign_off.data().len()).map(Row::Datum);
-        doubts.chain(findings).chain(data).chain([Row::Name, Row::Role, Row::Note, Row::Sign]).collect()
+        doubts.chain(findings).chain(data).chain([Row::Plan, Row::Name, Row::Role, Row::Note, Row::Sign]).collect()
     }
 
     /// The person as they would stand under the record, by name alone.
@@ -140,6 +146,7 @@ fn enter(app: &mut App, row: Row) {
             let typed = signing.name.clone();
             ask(app, Asked::SignName, typed);
         }
+        Row::Plan => {}
         Row::Role => signing.role = if signing.role == Role::Prepared { Role::Checked } else { Role::Prepared },
         Row::Note => {
             let typed = signing.note.clone();
@@ -263,6 +270,9 @@ fn told(signing: &Signing, row: Row) -> (&'static str, String) {
             let datum = &signing.sign_off.data()[index];
             (done(datum.confirmed), format!("{}: {}", datum.of, datum.value))
         }
+        Row::Plan => {
+            ("   ", format!("first run: clear up to {}", signing.run.highest.map_or("no override".to_owned(), |at| at.to_string())))
+        }
         Row::Name => ("   ", format!("name: {}", if signing.name.is_empty() { "-" } else { &signing.name })),
         Row::Role => ("   ", format!("as: {}", signing.role.words())),
         Row::Note => ("   ", format!("note: {}", if signing.note.is_empty() { "-" } else { &signing.note })),
@@ -297,6 +307,7 @@ fn detail(app: &App, signing: &Signing, row: Row, width: usize) -> Vec<String> {
                 if datum.confirmed { "Confirmed." } else { "Enter confirms this one; there is no way to confirm several." };
             format!("{} {} ({}). {by_itself}", datum.of, datum.value, datum.at)
         }
+        Row::Plan => signing.plan.join(" "),
         Row::Name => "Who stands for it.".to_owned(),
         Row::Role => "Enter changes between prepared by and checked by.".to_owned(),
         Row::Note => "What is to be said with the name; may be empty.".to_owned(),

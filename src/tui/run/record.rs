@@ -2,7 +2,10 @@ use std::time::{SystemTime, UNIX_EPOCH};
 
 use crate::checks::Watch;
 use crate::files::{NotKept, earlier_record, keep_record, no_link, open, record_path, sources};
-use crate::review::{Date, Earlier, Outcome, Record, Role, SegmentChange, SignOff, compare_record, first_run, segment_changes};
+use crate::review::{
+    Date, Earlier, Outcome, Record, Role, SegmentChange, SignOff, compare_record, first_run, first_run_text, segment_changes,
+    stage_words,
+};
 use crate::tui::app::{App, Mode, Page};
 use crate::tui::signing::{Signing, hindrances};
 
@@ -42,7 +45,10 @@ impl Keeper {
         let seconds = SystemTime::now().duration_since(UNIX_EPOCH).map_or(0, |since| since.as_secs());
         let date = Date::after_1970(seconds);
         let (name, note) = (String::new(), String::new());
-        app.signing = Some(Signing { sign_off, sources, name, role: Role::Prepared, note, date, chosen: 0 });
+        let run = first_run(&judged, &Watch::default()).expect("nobody stops this watch");
+        let stages = run.stages.iter().map(|stage| stage_words(&judged, stage));
+        let plan = stages.chain(first_run_text(&judged, &run)).collect();
+        app.signing = Some(Signing { sign_off, sources, run, plan, name, role: Role::Prepared, note, date, chosen: 0 });
         app.mode = Mode::SignOff;
     }
 
@@ -95,7 +101,7 @@ impl Keeper {
             return;
         }
         let place = record_path(path);
-        let run = first_run(&judged, &Watch::default()).expect("nobody stops this watch");
+        let run = signing.run.clone();
         let written = earlier_record(&place).map_err(NotKept::from).and_then(|earlier| {
             let stands = earlier.as_ref().filter(|earlier| {
                 let compared = compare_record(earlier, &judged, &signing.sources, &run);
