@@ -6,7 +6,7 @@ use anyhow::Context;
 
 use crate::checks::Watch;
 use crate::files::{
-    earlier_record, keep_record, no_link, open, read_reasons, read_text, reasons_template, record_path, signed_part, sources,
+    earlier_record, keep_record, open_itself, read_reasons, read_text, reasons_template, record_path, signed_part, sources,
 };
 use crate::review::{
     Around, Compared, Date, Earlier, Judged, Outcome, Person, Record, SignOff, Sources, compare_record, first_run,
@@ -29,8 +29,7 @@ pub(super) struct Opened {
 /// # Errors
 /// All that is wrong with its files.
 pub(super) fn opened(recipe: &Path) -> anyhow::Result<Opened> {
-    no_link(recipe)?;
-    let opened = open(recipe)?;
+    let opened = open_itself(recipe)?;
     let sources = sources(&opened);
     let (arm, recipe) = (Arc::new(opened.arm), Arc::new(opened.recipe));
     let judged = Judged::of(&arm, &recipe, None, &Watch::default()).expect("nobody stops this watch");
@@ -44,9 +43,7 @@ pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
     let mut sign_off = SignOff::of(&judged, &sources);
     let place = record_path(&args.recipe);
     let earlier = earlier_record(&place).context("the record that is there can't be read; move it away first")?;
-    if let Some(earlier) = &earlier {
-        sign_off.take_over(earlier);
-    }
+    let taken = earlier.as_ref().map_or(0, |earlier| sign_off.take_over(earlier));
     if args.template {
         out::print(&reasons_template(&sign_off))?;
         return Ok(Code::Clear);
@@ -88,7 +85,8 @@ pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
         }
     };
     let told = keep(&place, &record, is_new, signing.as_ref())?;
-    out::print(&told)?;
+    let still = if taken > 0 { format!("{taken} answers of the earlier record still hold\n") } else { String::new() };
+    out::print(&(still + &told))?;
     Ok(Code::Clear)
 }
 

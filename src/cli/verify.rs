@@ -143,9 +143,14 @@ fn signatures(args: &VerifyArgs, record: &Record) -> anyhow::Result<(Vec<String>
         };
         lines.push(format!("{who}: {told}"));
     }
-    if record.people.iter().all(|person| person.key.is_none()) && list.is_some() {
+    if list.is_some() && record.people.last().is_none_or(|person| person.key.is_none()) {
         good = false;
-        lines.push("no signature although a list of signers was given".to_owned());
+        // A signature stands for all above it, so only what comes after the last one can have been put there by anybody.
+        lines.push(if record.people.iter().all(|person| person.key.is_none()) {
+            "no signature although a list of signers was given".to_owned()
+        } else {
+            "no signature covers the last name, although a list of signers was given: anybody can have put it there".to_owned()
+        });
     }
     Ok((lines, good))
 }

@@ -56,5 +56,5 @@ pub use record_text::{record_text, signed_part};
 pub use records::{Kept, NotKept, earlier_record, keep_record};
 pub use save::{Content, NewText, NotSaved, Saved, changes_on_disk, make_folder, text_of_edited, text_of_new, write, write_anyway};
 pub use source::Source;
-pub use sources::{MOST_PEOPLE, is_there, no_link, read_text, record_path, set_aside, signature_path, sources};
+pub use sources::{MOST_PEOPLE, is_there, no_link, open_itself, read_text, record_path, set_aside, signature_path, sources};
 pub use starter::{starting_arm, starting_postures, starting_recipe};

@@ -3,7 +3,7 @@ use std::path::{Path, PathBuf};
 use crate::review::{SealedFile, Sources};
 use crate::seal::Digest;
 
-use super::{Complaint, Opened, Rejected, Source, content, raw};
+use super::{Complaint, Opened, Rejected, Source, content, open, raw};
 
 /// What was read, as a record needs it: hashes of both files, and their content.
 pub fn sources(opened: &Opened) -> Sources {
@@ -48,6 +48,17 @@ pub fn no_link(path: &Path) -> Result<(), Rejected> {
     let is_link = std::fs::symlink_metadata(path).is_ok_and(|data| data.file_type().is_symlink());
     let says = "this is a symbolic link, which may lead to another file tomorrow; what is signed must be the file itself";
     if is_link { Err(Rejected::one(Complaint::whole(&path.display().to_string(), says))) } else { Ok(()) }
+}
+
+/// Opens a recipe that is to be signed or held against a record: neither it nor its arm file may be a symbolic link.
+///
+/// # Errors
+/// That one of them is a link, or all that is wrong with either.
+pub fn open_itself(recipe: &Path) -> Result<Opened, Rejected> {
+    no_link(recipe)?;
+    let opened = open(recipe)?;
+    no_link(Path::new(&opened.arm_source.path))?;
+    Ok(opened)
 }
 
 /// Sets a record and its signatures aside under names with its seal code, so that nothing is lost when a new one is written.

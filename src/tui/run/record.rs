@@ -1,7 +1,7 @@
 use std::time::{SystemTime, UNIX_EPOCH};
 
 use crate::checks::Watch;
-use crate::files::{NotKept, earlier_record, keep_record, no_link, open, record_path, sources};
+use crate::files::{NotKept, earlier_record, keep_record, open, open_itself, record_path, sources};
 use crate::review::{
     Date, Earlier, Outcome, Record, Role, SegmentChange, SignOff, compare_record, first_run, first_run_text, segment_changes,
     stage_words,
@@ -18,7 +18,7 @@ impl Keeper {
             app.message = Some("the built-in demonstration has no file to sign; save it elsewhere first".to_owned());
             return;
         };
-        let opened = match no_link(path).and_then(|()| open(path)) {
+        let opened = match open_itself(path) {
             Ok(opened) => opened,
             Err(rejected) => {
                 app.message = rejected.to_string().lines().next().map(|first| format!("can't be signed: {first}"));

@@ -1,80 +1,16 @@
 //! Signing off on the real program: what is signed can be checked by others, and nothing can be changed unnoticed.
 
-use std::path::{Path, PathBuf};
-use std::process::{Command, Output, Stdio};
-
+mod cell;
 #[cfg(unix)]
 #[expect(dead_code, reason = "other tests use other parts")]
+#[path = "../pty/mod.rs"]
 mod pty;
+mod tampering;
+mod voids;
 
-const NAME: &str = "lid-placing";
+use std::process::{Command, Stdio};
 
-/// A folder with a recipe that is clear, and its arm.
-struct Cell(tempfile::TempDir);
-
-impl Cell {
-    fn new() -> Self {
-        let folder = tempfile::tempdir().expect("a folder");
-        let from = Path::new(env!("CARGO_MANIFEST_DIR")).join("recipes");
-        std::fs::create_dir(folder.path().join("arms")).expect("a folder");
-        for name in ["lid-placing.toml", "housing-transfer.toml", "arms/four-axis-rrpr.toml", "arms/six-axis-12kg.toml"] {
-            std::fs::copy(from.join(name), folder.path().join(name)).expect("copied");
-        }
-        Self(folder)
-    }
-
-    fn path(&self, name: &str) -> PathBuf {
-        self.0.path().join(name)
-    }
-
-    fn text(&self, name: &str) -> String {
-        std::fs::read_to_string(self.path(name)).expect("there")
-    }
-
-    fn write(&self, name: &str, text: &str) {
-        std::fs::write(self.path(name), text).expect("written");
-    }
-
-    fn run(&self, arguments: &[&str]) -> Output {
-        let program = env!("CARGO_BIN_EXE_elbowroom");
-        Command::new(program).args(arguments).current_dir(self.0.path()).stdin(Stdio::null()).output().expect("runs")
-    }
-
-    /// Every answer that the template asks for.
-    fn answers(&self, recipe: &str) -> String {
-        let template = String::from_utf8(self.run(&["sign", recipe, "--template"]).stdout).expect("UTF-8");
-        let uncommented = |line: &str| match line.strip_prefix("# ") {
-            Some(rest) if rest.starts_with("[[confirm") || rest.starts_with("of =") || rest.starts_with("value =") => {
-                rest.to_owned()
-            }
-            _ => line.replace("reason = \"\"", "reason = \"seen on the cell\""),
-        };
-        template.lines().map(|line| uncommented(line) + "\n").collect()
-    }
-
-    fn sign(&self, more: &[&str]) -> Output {
-        self.write("answers.toml", &self.answers("lid-placing.toml"));
-        let mut arguments = vec!["sign", "lid-placing.toml", "--reasons", "answers.toml", "--date", "2026-11-30"];
-        arguments.extend(more);
-        self.run(&arguments)
-    }
-
-    fn verify(&self, more: &[&str]) -> Output {
-        let record = format!("{NAME}.signoff.toml");
-        let mut arguments = vec!["verify", record.as_str()];
-        arguments.extend(more);
-        self.run(&arguments)
-    }
-}
-
-fn told(output: &Output) -> String {
-    format!("{}{}", String::from_utf8_lossy(&output.stdout), String::from_utf8_lossy(&output.stderr))
-}
-
-fn assert_code(output: &Output, code: i32, says: &str) {
-    assert_eq!(output.status.code(), Some(code), "{}", told(output));
-    assert!(told(output).contains(says), "{says}\n{}", told(output));
-}
+use cell::{Cell, assert_code, told};
 
 #[test]
 fn nothing_is_signed_before_everything_was_answered() {
@@ -172,6 +108,14 @@ fn renamed_and_linked_files_are_refused() {
         std::fs::rename(cell.path("lid-placing.toml"), cell.path("elsewhere.toml")).expect("moved");
         std::os::unix::fs::symlink(cell.path("elsewhere.toml"), cell.path("lid-placing.toml")).expect("linked");
         assert_code(&cell.verify(&[]), 2, "symbolic link");
+        let cell = Cell::new();
+        assert_code(&cell.sign(&["--name", "Anna"]), 0, "seal");
+        for (name, code) in [("arms/four-axis-rrpr.toml", 2), ("lid-placing.signoff.toml", 2)] {
+            std::fs::rename(cell.path(name), cell.path("elsewhere.toml")).expect("moved");
+            std::os::unix::fs::symlink(cell.path("elsewhere.toml"), cell.path(name)).expect("linked");
+            assert_code(&cell.verify(&[]), code, "symbolic link");
+            std::fs::rename(cell.path("elsewhere.toml"), cell.path(name)).expect("moved back");
+        }
     }
 }
 
@@ -317,6 +261,10 @@ fn no_trick_with_signatures_goes_through() {
     let line = record.lines().find(|line| line.contains("SHA256:")).expect("the key").to_owned();
     cell.write("lid-placing.signoff.toml", &record.replace(&format!("{line}\n"), ""));
     assert!(!cell.verify(&["--signers", "signers"]).status.success());
+    // A name that anybody can have put below the signature.
+    cell.write("lid-placing.signoff.toml", &record);
+    assert_code(&cell.run(&["sign", "lid-placing.toml", "--name", "The head of the plant", "--role", "checked"]), 0, "a name only");
+    assert_code(&cell.verify(&["--signers", "signers"]), 1, "no signature covers the last name");
     // A second name leaves the first signature good.
     cell.write("lid-placing.signoff.toml", &record);
     let second =
