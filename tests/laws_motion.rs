@@ -36,6 +36,7 @@ fn segment(arm: &Arm, path: Path, tcp: Pose, start: Joints) -> Segment {
         end,
         carried: Carried { tcp, ..Carried::nothing() },
         carried_after: None,
+        points: std::sync::Arc::default(),
         push: None,
         shares: None,
         trouble: None,

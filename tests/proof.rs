@@ -24,6 +24,11 @@ fn hammer(judged: &Judged, index: usize, looks: usize) {
                 continue;
             };
             let reading = meter.read(&at, rate, accel);
+            for (j, span) in survey.spans.iter().enumerate() {
+                let Some([low, high]) = span.proved else { continue };
+                let q = at.q[j];
+                assert!(low <= q && q <= high, "{}: joint {j} at {q} at u = {u}, proved {low} to {high}", judged.arm.name());
+            }
             for check in Check::ALL {
                 let Proof::Proved(bound) = survey.check(check).proof else { continue };
                 for slot in meter.slots(check).filter(|slot| meter.channel(*slot).judged) {
@@ -42,8 +47,8 @@ fn hammer(judged: &Judged, index: usize, looks: usize) {
 fn hammer_family(family: Family, seed: u64, count: usize) {
     let mut draw = Draw(seed);
     let (mut clear, mut unproven, mut reasons) = (0, 0, Vec::new());
-    let loads = [Check::Holding, Check::Moving, Check::Brake, Check::Flange];
-    let mut proved = [0; 4];
+    let loads = [Check::Holding, Check::Moving, Check::Brake, Check::Flange, Check::PointSpeed];
+    let mut proved = [0; 5];
     for k in 0..count {
         let arm = random::arm(family, &mut draw);
         let recipe = random::segment(&arm, k % 3 != 0, &mut draw);

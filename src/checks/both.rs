@@ -1,6 +1,6 @@
 use crate::motion::{Plan, Segment};
 
-use super::{CheckResult, Finding, Peak, Place, Proof, SegmentSurvey, Verdict};
+use super::{CheckResult, Finding, JointSpan, Peak, Place, Proof, SegmentSurvey, Verdict};
 
 /// The result of a segment that a blend cuts something off, from that of its version on the cycle and that of its version which
 /// stops at the fly-by point: a controller may run either, so the worse of both counts in every check.
@@ -28,7 +28,25 @@ pub(super) fn worse_of_both(plan: &Plan, mut run: SegmentSurvey, stop: &SegmentS
     run.looked_at += stop.looked_at;
     run.tally.postures += stop.tally.postures;
     run.tally.trials += stop.tally.trials;
+    for (span, other) in run.spans.iter_mut().zip(&stop.spans) {
+        take_wider_span(plan, segment, run.segment, span, other);
+    }
     run
+}
+
+/// Between which values a joint stays in either version.
+fn take_wider_span(plan: &Plan, segment: &Segment, index: usize, span: &mut JointSpan, other: &JointSpan) {
+    let on_cycle = |(value, place): (f64, Place)| {
+        let u = plan.nearest_on_cycle(index, place.u);
+        (value, Place { time: segment.law.time_of(u), u })
+    };
+    if other.low.0 < span.low.0 {
+        span.low = on_cycle(other.low);
+    }
+    if other.high.0 > span.high.0 {
+        span.high = on_cycle(other.high);
+    }
+    span.proved = span.proved.zip(other.proved).map(|(a, b)| [a[0].min(b[0]), a[1].max(b[1])]);
 }
 
 fn weaker(one: Proof, other: Proof) -> Proof {

@@ -4,7 +4,7 @@ use crate::units::{Dimension, Room};
 use super::{Check, Reading, Verdict};
 
 /// How many channels there are for the largest arm.
-pub(super) const CHANNELS: usize = 8 * MAX_JOINTS + 4;
+pub(super) const CHANNELS: usize = 8 * MAX_JOINTS + 6;
 
 /// A scale turns a channel's value into what it asks of its limit.
 #[derive(Debug, Clone, Copy, PartialEq)]

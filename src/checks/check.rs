@@ -28,11 +28,15 @@ pub enum Check {
     SpeedLeft,
     /// Speed of the TCP against the cell's limit.
     TcpSpeed,
+    /// Speed of the fastest of flange, wrist centre, elbow and the tool's named points against the cell's limit.
+    PointSpeed,
+    /// How far the wrist winds cables over the whole cycle against the cell's limit. Judged for the cycle, not for a segment.
+    WindUp,
 }
 
 impl Check {
     /// All checks in order.
-    pub const ALL: [Self; 12] = [
+    pub const ALL: [Self; 14] = [
         Self::Reach,
         Self::Range,
         Self::Rate,
@@ -45,6 +49,8 @@ impl Check {
         Self::Singular,
         Self::SpeedLeft,
         Self::TcpSpeed,
+        Self::PointSpeed,
+        Self::WindUp,
     ];
 
     /// Its name in data.
@@ -62,6 +68,8 @@ impl Check {
             Self::Singular => "singular",
             Self::SpeedLeft => "speed_left",
             Self::TcpSpeed => "tcp_speed",
+            Self::PointSpeed => "point_speed",
+            Self::WindUp => "wind_up",
         }
     }
 
@@ -72,7 +80,12 @@ impl Check {
 
     /// Whether it judges by what the arm can do; the others judge by what the cell asks.
     pub fn is_arm_limit(self) -> bool {
-        !matches!(self, Self::Singular | Self::SpeedLeft | Self::TcpSpeed)
+        !matches!(self, Self::Singular | Self::SpeedLeft | Self::TcpSpeed | Self::PointSpeed | Self::WindUp)
+    }
+
+    /// Whether it is judged for the whole cycle and has no result of its own on a segment.
+    pub fn is_of_cycle(self) -> bool {
+        matches!(self, Self::Rms | Self::WindUp)
     }
 
     /// Whether it has a channel for every joint.
@@ -92,19 +105,29 @@ impl Check {
 
     /// Whether it depends on where the arm is alone and not on how fast: what breaks it does so at every override.
     pub fn is_of_posture_alone(self) -> bool {
-        matches!(self, Self::Reach | Self::Range | Self::Holding | Self::Brake | Self::Flange | Self::Singular | Self::SpeedLeft)
+        matches!(
+            self,
+            Self::Reach
+                | Self::Range
+                | Self::Holding
+                | Self::Brake
+                | Self::Flange
+                | Self::Singular
+                | Self::SpeedLeft
+                | Self::WindUp
+        )
     }
 
     /// Whether what it asks grows with the override at every place of a path, so that clear at one override is clear at every
     /// lower one.
     pub fn grows_with_speed(self) -> bool {
-        matches!(self, Self::Rate | Self::Accel | Self::TcpSpeed)
+        matches!(self, Self::Rate | Self::Accel | Self::TcpSpeed | Self::PointSpeed)
     }
 
     /// Its first channel; none for reach, and for what is judged over the whole cycle.
     pub(super) fn first_channel(self) -> Option<usize> {
         match self {
-            Self::Reach | Self::Rms => None,
+            Self::Reach | Self::Rms | Self::WindUp => None,
             Self::Range => Some(0),
             Self::Rate => Some(MAX_JOINTS),
             Self::Accel => Some(2 * MAX_JOINTS),
@@ -116,6 +139,8 @@ impl Check {
             Self::Singular => Some(8 * MAX_JOINTS + 1),
             Self::SpeedLeft => Some(8 * MAX_JOINTS + 2),
             Self::TcpSpeed => Some(8 * MAX_JOINTS + 3),
+            // The cell's limit for all points, then that of the flange alone in manual mode at reduced speed.
+            Self::PointSpeed => Some(8 * MAX_JOINTS + 4),
         }
     }
 }

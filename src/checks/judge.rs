@@ -1,16 +1,17 @@
-use crate::arm::Arm;
+use crate::arm::{Arm, MAX_JOINTS};
 use crate::geometry::V3;
 use crate::motion::Segment;
 use crate::program::Acceptance;
-use crate::units::{Measure, Room, Share};
+use crate::units::{Measure, Room, Share, Speed};
 
 use super::channel::CHANNELS;
 use super::proof::{Covered, Effort, Stuck, cover};
 use super::stretch::{finding, first_largest, stretches, worst_of};
 use super::sweep::{Look, Sweep};
+use super::wind_up::span_of;
 use super::{
-    Check, CheckResult, Finding, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved, Verdict,
-    brake, holding, moving, reach,
+    Check, CheckResult, Finding, JointSpan, Kind, Meter, Peak, Place, Profile, Proof, SegmentSurvey, Tally, TorqueSum, Unproved,
+    Verdict, brake, holding, moving, reach,
 };
 
 /// One segment while it is judged.
@@ -28,21 +29,15 @@ struct Case<'a> {
 /// How often a witness that the proof found sends the sweep back to look closer.
 const SECOND_LOOKS: usize = 3;
 
-/// Judges one segment by every check.
-pub(super) fn judge(
-    arm: &Arm,
-    index: usize,
-    segment: &Segment,
-    criteria: &Acceptance,
-    gravity: V3,
-    effort: Effort,
-) -> SegmentSurvey {
-    let meter = Meter::of(arm, segment, criteria, gravity);
-    let sweep = Sweep::of(arm, &meter, segment);
-    let after = look_after_stop(&sweep, &meter, segment);
-    let mut case = Case { arm, index, segment, meter: &meter, gravity, effort, sweep, after };
+/// Judges the segment of a meter by every check; `index` is its number in the plan, counted from 0.
+pub(super) fn judge(index: usize, meter: &Meter, effort: Effort) -> SegmentSurvey {
+    let (arm, segment, gravity) = meter.reads();
+    let sweep = Sweep::of(arm, meter, segment);
+    let after = look_after_stop(&sweep, meter, segment);
+    let mut case = Case { arm, index, segment, meter, gravity, effort, sweep, after };
     let (mut checks, mut findings) = case.look();
     let mut tally = Tally::default();
+    let mut proved = None;
     for round in 0..=SECOND_LOOKS {
         let covered = case.prove(&checks);
         tally.postures += covered.tally.postures;
@@ -53,11 +48,13 @@ pub(super) fn judge(
             continue;
         }
         case.settle(&covered, &mut checks, &mut findings);
+        proved = covered.spans;
         break;
     }
+    let spans = case.spans(proved);
     findings.sort_by(Finding::order);
     let verdict = checks.iter().map(|result| result.verdict).max().unwrap_or(Verdict::Unproven);
-    let profile = profile(&meter, &case.sweep);
+    let profile = profile(meter, &case.sweep);
     SegmentSurvey {
         segment: index,
         joint_move: !segment.follows_path() && !segment.blend,
@@ -65,16 +62,32 @@ pub(super) fn judge(
         checks,
         findings,
         profile,
-        torque: TorqueSum::of(arm, segment, &meter),
+        torque: TorqueSum::of(arm, segment, meter),
         looked_at: case.sweep.looks.len(),
         tally,
+        spans,
     }
 }
 
 /// Judges one segment at an override (above 0, at most 1): rates scale by it and accelerations by its square. Everything is
 /// looked at and proved anew, since not every demand grows with speed.
 pub fn judge_at(arm: &Arm, index: usize, segment: &Segment, criteria: &Acceptance, gravity: V3, run_at: Share) -> SegmentSurvey {
-    judge(arm, index, &segment.at_override(run_at.as_fraction()), criteria, gravity, Effort::default())
+    let slowed = segment.at_override(run_at.as_fraction());
+    judge(index, &Meter::of(arm, &slowed, criteria, gravity), Effort::default())
+}
+
+/// The same with the flange held to a speed of its own besides.
+pub fn judge_with_flange_held_to(
+    limit: Speed,
+    arm: &Arm,
+    index: usize,
+    segment: &Segment,
+    criteria: &Acceptance,
+    gravity: V3,
+    run_at: Share,
+) -> SegmentSurvey {
+    let slowed = segment.at_override(run_at.as_fraction());
+    judge(index, &Meter::of(arm, &slowed, criteria, gravity).with_flange_held_to(limit), Effort::default())
 }
 
 impl Case<'_> {
@@ -100,6 +113,18 @@ impl Case<'_> {
         let needs: Vec<usize> =
             open.flat_map(|result| self.meter.slots(result.check)).filter(|&slot| self.meter.channel(slot).judged).collect();
         cover(self.arm, self.segment, self.meter, self.gravity, &needs, &self.allowed(), self.effort)
+    }
+
+    /// Between which values each joint stays.
+    fn spans(&self, proved: Option<[[f64; 2]; MAX_JOINTS]>) -> Vec<JointSpan> {
+        let at_rest = [(0.0, 0.0, &self.segment.start), (self.segment.duration(), 1.0, &self.segment.end)];
+        let still = self.sweep.looks.is_empty() && self.segment.trouble.is_none();
+        let of_joint = |j: usize| {
+            let seen = self.sweep.looks.iter().map(|look| (look.reading[j], look.place));
+            let rests = at_rest.iter().filter(|_| still).map(|&(time, u, q)| (q[j], Place { time, u }));
+            span_of(seen.chain(rests), proved.map(|spans| spans[j]))
+        };
+        (0..self.arm.len()).map_while(of_joint).collect()
     }
 
     /// What every channel may ask for the proof to close.

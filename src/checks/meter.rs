@@ -4,9 +4,11 @@ use crate::geometry::V3;
 use crate::kinematics::{Lu, invert, null_rows, smallest_singular_value, speed_left, stacked};
 use crate::motion::{Instant, Segment};
 use crate::program::{Acceptance, Carried};
+use crate::units::Speed;
 
 use super::channel::CHANNELS;
-use super::{Channel, Check, accel, brake, flange, holding, moving, range, rate, singular, tcp_speed};
+use super::points::{Carrying, watched};
+use super::{Channel, Check, accel, brake, flange, holding, moving, points, range, rate, singular, tcp_speed};
 
 /// A reading is the value of every channel at one instant, SI.
 pub type Reading = [f64; CHANNELS];
@@ -15,6 +17,9 @@ pub type Reading = [f64; CHANNELS];
 const FLANGE: usize = 6 * MAX_JOINTS;
 /// First slot of the channels that are not a joint's.
 const SINGULAR: usize = 8 * MAX_JOINTS + 1;
+/// Slots of the points' speeds: all of them, and the flange by itself.
+const POINTS: usize = 8 * MAX_JOINTS + 4;
+const FLANGE_ALONE: usize = POINTS + 1;
 
 /// A meter reads all channels of a segment.
 #[derive(Debug)]
@@ -24,6 +29,9 @@ pub struct Meter<'a> {
     gravity: V3,
     channels: [Channel; CHANNELS],
     used: Vec<usize>,
+    /// Points whose speed has a limit: all of them, and the flange by itself.
+    points: Vec<Carrying>,
+    flange: Option<Carrying>,
 }
 
 impl<'a> Meter<'a> {
@@ -59,8 +67,33 @@ impl<'a> Meter<'a> {
             channels[slot] = channel;
             used.push(slot);
         }
+        let mut points = Vec::new();
+        if criteria.point_speed.is_some() {
+            channels[POINTS] = points::channel(criteria);
+            used.push(POINTS);
+            points = watched(arm, segment);
+        }
         used.sort_unstable();
-        Self { arm, segment, gravity, channels, used }
+        Self { arm, segment, gravity, channels, used, points, flange: None }
+    }
+
+    /// The same meter with the flange held to a speed of its own besides, as in manual mode at reduced speed.
+    #[must_use]
+    pub fn with_flange_held_to(mut self, limit: Speed) -> Self {
+        self.channels[FLANGE_ALONE] = points::flange_channel(limit);
+        self.flange = Some(Carrying::flange(self.arm));
+        self.used.push(FLANGE_ALONE);
+        self
+    }
+
+    /// The arm, the segment and gravity (base axes, m/s²) that it reads.
+    pub(super) fn reads(&self) -> (&'a Arm, &'a Segment, V3) {
+        (self.arm, self.segment, self.gravity)
+    }
+
+    /// The points that a channel of their speed is of.
+    pub(super) fn points(&self, slot: usize) -> &[Carrying] {
+        if slot == FLANGE_ALONE { self.flange.as_slice() } else { &self.points }
     }
 
     /// The slots of a reading that this arm uses.
@@ -79,6 +112,11 @@ impl<'a> Meter<'a> {
             None => 0..0,
             Some(first) if check.is_per_joint() => first..first + self.arm.len(),
             Some(first) if check == Check::Flange => first..first + 1 + 2 * self.arm.flange().wrist.len(),
+            // A point is watched where there is a limit for it.
+            Some(_) if check == Check::PointSpeed => {
+                let first = if self.points.is_empty() { FLANGE_ALONE } else { POINTS };
+                first..FLANGE_ALONE + usize::from(self.flange.is_some())
+            }
             Some(first) => first..first + 1,
         }
     }
@@ -125,6 +163,11 @@ impl<'a> Meter<'a> {
         reading[SINGULAR + 1] = speed_left(&invert(&lu), task, self.arm.joints()).moving;
         let [x, y, z, ..] = at.jacobian.twist(&at.slope);
         reading[SINGULAR + 2] = V3::new(x, y, z).norm() * rate;
+        for slot in [POINTS, FLANGE_ALONE] {
+            let speeds = self.points(slot).iter().map(|point| point.velocity(self.arm, at).norm() * rate);
+            // What is no number stays no number.
+            reading[slot] = speeds.fold(0.0, |most, speed| if speed <= most { most } else { speed });
+        }
         reading
     }
 

@@ -2,10 +2,11 @@ use crate::arm::Arm;
 use crate::geometry::V3;
 use crate::kinematics::spherical_wrist;
 use crate::motion::{Instant, Segment};
-use crate::program::ToolPoint;
+use crate::program::{Acceptance, ToolPoint};
+use crate::units::{Dimension, Speed};
 
-use super::Place;
 use super::looks::Looks;
+use super::{Channel, Check, Place, Scale};
 
 /// A point of the arm or of what hangs on it whose speed people ask for.
 #[derive(Debug, Clone, PartialEq)]
@@ -33,50 +34,121 @@ pub struct SpotPeak {
     pub at: Place,
 }
 
-/// A point and how it is carried: by the joints before number `joints`, at `at` in the axis system of the last of them.
-struct Carrying {
-    spot: Spot,
-    joints: usize,
+/// A carrying tells how a point is carried: by the joints before number `joints`, at `at` (m) in the axis system of the last of them.
+#[derive(Debug, Clone, Copy)]
+pub struct Carrying {
+    pub(super) joints: usize,
     at: V3,
 }
 
 /// An arm of fewer joints has no elbow to speak of.
 const WITH_ELBOW: usize = 5;
 
+impl Carrying {
+    /// A point of what is bolted to the flange, flange axes, m.
+    fn on_flange(arm: &Arm, at: &V3) -> Self {
+        Self { joints: arm.len(), at: arm.chain().flange.point(at) }
+    }
+
+    /// The origin of the flange.
+    pub(super) fn flange(arm: &Arm) -> Self {
+        Self::on_flange(arm, &V3::zeros())
+    }
+
+    /// How many joints move it: the first so many.
+    pub fn joints(&self) -> usize {
+        self.joints
+    }
+
+    /// Where it is at an instant, base axes, m.
+    #[inline]
+    pub fn place(&self, instant: &Instant) -> V3 {
+        instant.posture.frame(self.joints - 1).point(&self.at)
+    }
+
+    /// Its velocity by the path's fraction, base axes, m.
+    #[inline]
+    pub fn velocity(&self, arm: &Arm, instant: &Instant) -> V3 {
+        let posture = &instant.posture;
+        let at = self.place(instant);
+        (0..self.joints)
+            .map(|j| {
+                let axis = posture.axis(j);
+                let lever = if arm.chain().turns[j] { axis.cross(&(at - posture.origin(j))) } else { axis };
+                lever * instant.slope[j]
+            })
+            .sum()
+    }
+}
+
+/// The points of the arm itself that are judged, and those that the segment's tool names, in the order of their names.
+pub(super) fn watched(arm: &Arm, segment: &Segment) -> Vec<Carrying> {
+    let named = segment.points.iter().map(|at| Carrying::on_flange(arm, at));
+    of_arm(arm).into_iter().map(|(_, point)| point).chain(named).collect()
+}
+
+fn of_arm(arm: &Arm) -> Vec<(Spot, Carrying)> {
+    let chain = arm.chain();
+    let mut all = vec![(Spot::Flange, Carrying::flange(arm))];
+    if let Some(wrist) = spherical_wrist(chain) {
+        all.push((Spot::WristCentre, Carrying { joints: arm.len(), at: wrist.centre }));
+    }
+    if arm.len() >= WITH_ELBOW {
+        all.push((Spot::Elbow, Carrying { joints: 2, at: chain.fixed[2].at }));
+    }
+    all
+}
+
+fn spots(arm: &Arm, segment: &Segment, points: &[ToolPoint]) -> Vec<(Spot, Carrying)> {
+    let named = points.iter().map(|point| (Spot::Tool(point.name.clone()), Carrying::on_flange(arm, &point.at)));
+    let tcp = (Spot::Tcp, Carrying::on_flange(arm, &segment.carried.tcp.at));
+    std::iter::once(tcp).chain(of_arm(arm)).chain(named).collect()
+}
+
 /// Peaks of the speeds of TCP, flange, wrist centre, elbow and the tool's named points on a segment, as far as it can be followed.
 /// Empty where it can't be followed at all or has no motion.
 pub fn spot_peaks(arm: &Arm, segment: &Segment, points: &[ToolPoint]) -> Vec<SpotPeak> {
     let looks = Looks::along(arm, segment);
-    let peak = |point: Carrying| {
-        let (speed, at) = looks.greatest(|instant, rate| by_fraction(arm, instant, &point).norm() * rate)?;
-        Some(SpotPeak { spot: point.spot, speed, at })
+    let peak = |(spot, point): (Spot, Carrying)| {
+        let (speed, at) = looks.greatest(|instant, rate| point.velocity(arm, instant).norm() * rate)?;
+        Some(SpotPeak { spot, speed, at })
     };
-    carried_points(arm, segment, points).into_iter().filter_map(peak).collect()
+    spots(arm, segment, points).into_iter().filter_map(peak).collect()
 }
 
-/// The velocity of a point by the path's fraction, base axes, m.
-fn by_fraction(arm: &Arm, instant: &Instant, point: &Carrying) -> V3 {
-    let posture = &instant.posture;
-    let at = posture.frame(point.joints - 1).point(&point.at);
-    (0..point.joints)
-        .map(|j| {
-            let axis = posture.axis(j);
-            let lever = if arm.chain().turns[j] { axis.cross(&(at - posture.origin(j))) } else { axis };
-            lever * instant.slope[j]
-        })
-        .sum()
+/// The fastest of all points but the TCP at an instant whose fraction runs at `rate` (1/s): which, how it is carried, and its velocity
+/// in base axes, m/s.
+pub fn fastest_point(
+    arm: &Arm,
+    segment: &Segment,
+    points: &[ToolPoint],
+    instant: &Instant,
+    rate: f64,
+) -> Option<(Spot, Carrying, V3)> {
+    let of = |(spot, point): (Spot, Carrying)| {
+        let velocity = point.velocity(arm, instant) * rate;
+        (spot, point, velocity)
+    };
+    spots(arm, segment, points).into_iter().skip(1).map(of).max_by(|a, b| a.2.norm().total_cmp(&b.2.norm()))
 }
 
-fn carried_points(arm: &Arm, segment: &Segment, points: &[ToolPoint]) -> Vec<Carrying> {
-    let (chain, n) = (arm.chain(), arm.len());
-    let on_flange = |spot: Spot, at: &V3| Carrying { spot, joints: n, at: chain.flange.point(at) };
-    let mut all = vec![on_flange(Spot::Tcp, &segment.carried.tcp.at), on_flange(Spot::Flange, &V3::zeros())];
-    if let Some(wrist) = spherical_wrist(chain) {
-        all.push(Carrying { spot: Spot::WristCentre, joints: n, at: wrist.centre });
+/// Speed of the fastest point against the cell's limit.
+pub(super) fn channel(criteria: &Acceptance) -> Channel {
+    of_limit(criteria.point_speed)
+}
+
+/// Speed of the flange alone against a limit.
+pub(super) fn flange_channel(limit: Speed) -> Channel {
+    of_limit(Some(limit))
+}
+
+fn of_limit(limit: Option<Speed>) -> Channel {
+    Channel {
+        check: Check::PointSpeed,
+        joint: None,
+        of: Dimension::Speed,
+        scale: limit.map_or(Scale::Open, |speed| Scale::Ceiling(speed.as_m_per_s())),
+        reserve: 0.0,
+        judged: limit.is_some(),
     }
-    if n >= WITH_ELBOW {
-        all.push(Carrying { spot: Spot::Elbow, joints: 2, at: chain.fixed[2].at });
-    }
-    all.extend(points.iter().map(|point| on_flange(Spot::Tool(point.name.clone()), &point.at)));
-    all
 }

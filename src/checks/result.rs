@@ -105,6 +105,17 @@ pub struct Profile {
     pub rooms: Vec<[f32; Check::ALL.len()]>,
 }
 
+/// Between which values a joint stays on a segment, rad or m.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct JointSpan {
+    /// The least value that was seen, and where.
+    pub low: (f64, Place),
+    /// The greatest value that was seen, and where.
+    pub high: (f64, Place),
+    /// Least and greatest value at most, rounded outward, where the path is proved.
+    pub proved: Option<[f64; 2]>,
+}
+
 /// What all checks found on one segment.
 #[derive(Debug, Clone, PartialEq)]
 pub struct SegmentSurvey {
@@ -126,6 +137,8 @@ pub struct SegmentSurvey {
     pub looked_at: usize,
     /// How the proof went.
     pub tally: Tally,
+    /// Between which values each joint stays; empty where nothing could be looked at.
+    pub spans: Vec<JointSpan>,
 }
 
 impl SegmentSurvey {

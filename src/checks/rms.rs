@@ -6,6 +6,7 @@ use crate::program::{Recipe, Repeat};
 use crate::units::{Measure, Room};
 
 use super::torque_sum::SETTLED;
+use super::wind_up::wind_up;
 use super::{
     Channel, Check, CheckResult, Excess, Finding, Kind, Meter, Peak, Place, Proof, Scale, SegmentSurvey, TorqueSum, Unproved,
     Verdict, moving,
@@ -27,6 +28,9 @@ pub struct RmsShare {
 pub struct Cycle {
     /// The result of the check of root mean square torque; one peak a joint, with the root mean square as its demand.
     pub rms: CheckResult,
+    /// The result of the check of cables wound by the wrist; one peak a joint that turns, with the angle between its least and
+    /// greatest value as its demand.
+    pub wind_up: CheckResult,
     /// One entry a joint.
     pub shares: Vec<RmsShare>,
     /// Duration of the cycle, dwells included, s.
@@ -99,7 +103,9 @@ pub(super) fn cycle(arm: &Arm, recipe: &Recipe, plan: &Plan, segments: &[Arc<Seg
             None => rms.proof = Proof::Settled,
         }
     }
-    (Cycle { rms, shares, duration }, findings)
+    let (wind_up, of_cables) = wind_up(arm, recipe, plan, segments);
+    findings.extend(of_cables);
+    (Cycle { rms, wind_up, shares, duration }, findings)
 }
 
 /// Whether the cycle ends as it began, in the same posture with the same tool and load, so that it may start again.
@@ -167,6 +173,21 @@ fn finding(peak: &Peak, segment: usize, verdict: Verdict, planned: &Segment) -> 
 }
 
 impl Cycle {
+    /// The results of all checks of the cycle as a whole.
+    pub fn checks(&self) -> [&CheckResult; 2] {
+        [&self.rms, &self.wind_up]
+    }
+
+    /// The result of one of them; `None` for a check that is judged segment by segment.
+    pub fn check(&self, check: Check) -> Option<&CheckResult> {
+        self.checks().into_iter().find(|result| result.check == check)
+    }
+
+    /// The worst verdict of all of them.
+    pub fn verdict(&self) -> Verdict {
+        self.rms.verdict.max(self.wind_up.verdict)
+    }
+
     /// Root mean square of a joint's torque, N·m or N; NaN where the cycle could not be followed.
     pub fn rms_of(&self, joint: usize) -> f64 {
         (self.shares[joint].whole / self.duration).sqrt()

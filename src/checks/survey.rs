@@ -12,7 +12,7 @@ use super::both::worse_of_both;
 use super::judge::judge;
 use super::proof::Effort;
 use super::rms::cycle;
-use super::{Check, Cycle, Doubt, Finding, Proof, SegmentSurvey, Tally, Verdict, doubts};
+use super::{Check, Cycle, Doubt, Finding, Meter, Proof, SegmentSurvey, Tally, Verdict, doubts};
 
 /// A survey is the result of checking a whole recipe.
 #[derive(Debug, Clone, PartialEq)]
@@ -30,11 +30,7 @@ pub struct Survey {
 impl Survey {
     /// The worst verdict of all segments and of the cycle as a whole.
     pub fn verdict(&self) -> Verdict {
-        self.segments
-            .iter()
-            .map(|segment| segment.verdict)
-            .max()
-            .map_or(Verdict::Unproven, |worst| worst.max(self.cycle.rms.verdict))
+        self.segments.iter().map(|segment| segment.verdict).max().map_or(Verdict::Unproven, |worst| worst.max(self.cycle.verdict()))
     }
 
     /// What the proofs of all segments took.
@@ -170,7 +166,7 @@ pub fn tightened(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> Segme
 
 /// The worse of the versions in which a segment may run.
 fn one(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize, effort: Effort) -> SegmentSurvey {
-    let judged = |segment: &Segment| judge(arm, index, segment, &recipe.acceptance, plan.gravity, effort);
+    let judged = |segment: &Segment| judge(index, &Meter::of(arm, segment, &recipe.acceptance, plan.gravity), effort);
     let run = judged(&plan.segments[index]);
     match &plan.stops[index] {
         Some(stop) => worse_of_both(plan, run, &judged(stop)),

@@ -28,6 +28,7 @@ pub(super) fn acceptance(top: &Table<'_>) -> Acceptance {
         "singular-least",
         "tool-speed-left",
         "tcp-speed",
+        "point-speed",
         "wind-up",
         "stages",
     ]);
@@ -44,6 +45,7 @@ pub(super) fn acceptance(top: &Table<'_>) -> Acceptance {
         singular_least: table.maybe_number("singular-least").unwrap_or(usual.singular_least),
         tool_speed_left: table.maybe_number("tool-speed-left").map_or(usual.tool_speed_left, Speed::mm_per_s),
         tcp_speed: table.maybe_number("tcp-speed").map(Speed::mm_per_s),
+        point_speed: table.maybe_number("point-speed").map(Speed::mm_per_s),
         stages: stages(&table),
         wind_up: table.maybe_number("wind-up").map(Angle::deg),
     }

@@ -182,7 +182,7 @@ fn cycle(top: &Table<'_>) -> Option<SealedCycle> {
     }
     let table = top.table("cycle")?;
     table.only(&["sha256", "checks"]);
-    Some(SealedCycle { digest: digest(&table, "sha256")?, check: checks(&table)?.into_iter().next() })
+    Some(SealedCycle { digest: digest(&table, "sha256")?, checks: checks(&table)? })
 }
 
 fn accepted(table: &Table<'_>) -> Option<Accepted> {

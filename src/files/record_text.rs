@@ -80,7 +80,7 @@ fn body(out: &mut Out, record: &Record) {
     }
     out.head("[cycle]");
     out.text("sha256", &record.cycle.digest.to_string());
-    out.list("checks", record.cycle.check.iter().map(check_row));
+    out.list("checks", record.cycle.checks.iter().map(check_row));
     record.accepted.iter().for_each(|accepted| one_accepted(out, accepted));
     record.settled.iter().for_each(|settled| one_settled(out, settled));
     record.data.iter().for_each(|datum| one_datum(out, datum));

@@ -1,5 +1,7 @@
+use std::sync::Arc;
+
 use crate::arm::{Arm, Joints};
-use crate::geometry::Pose;
+use crate::geometry::{Pose, V3};
 use crate::kinematics::Posture;
 use crate::program::{Arrive, Carried, PathSpeed, PushAxes, Recipe, Taught, Usual, frame_in_base};
 use crate::units::{Jerk, Share, Speed, TurnJerk};
@@ -13,7 +15,7 @@ const SAME_POSTURE: f64 = 1e-4;
 const NO_LENGTH: f64 = 1e-9;
 
 /// What the plan of a segment from stop to stop depends on besides the recipe's own tables and its waypoint.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, PartialEq)]
 pub(super) struct Around {
     /// Where it starts.
     pub start: Place,
@@ -23,6 +25,8 @@ pub(super) struct Around {
     pub carried: Carried,
     /// Tool and load when the waypoint is left.
     pub leaving: Carried,
+    /// Named points of the tool, flange axes, m.
+    pub points: Arc<[V3]>,
 }
 
 /// The segment that arrives at waypoint `to`, from stop to stop, and where that waypoint is.
@@ -52,6 +56,7 @@ fn segment(arm: &Arm, recipe: &Recipe, to: usize, around: &Around) -> Segment {
         end: start,
         carried,
         carried_after: waypoint.then.is_some().then_some(around.leaving),
+        points: Arc::clone(&around.points),
         push: push_in_base(recipe, to),
         shares: None,
         trouble: None,

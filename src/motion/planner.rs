@@ -3,7 +3,8 @@ use std::sync::Arc;
 
 use crate::arm::{Arm, Joints};
 use crate::dynamics::gravity_in_base;
-use crate::program::{Recipe, Taught};
+use crate::geometry::V3;
+use crate::program::{Carried, Hanging, Recipe, Taught};
 
 use super::fly_by::{Earlier, Laid, Run, renumbered, rounded};
 use super::leg::{Around, leg};
@@ -73,14 +74,16 @@ struct Work<'a> {
     segments: Vec<Arc<Segment>>,
     /// Which leg of the earlier plan each one is.
     same: Vec<Option<usize>>,
-    /// Tool and load on arriving at and on leaving each waypoint.
-    carried: Vec<[crate::program::Carried; 2]>,
+    /// Tool and load on arriving at and on leaving each waypoint, and the tool's named points.
+    hung: Vec<([Carried; 2], Arc<[V3]>)>,
 }
 
 impl<'a> Work<'a> {
     fn of(arm: &'a Arm, recipe: &'a Recipe, before: Option<(&'a Recipe, &'a Plan)>) -> Self {
         let by_name = |recipe: &'a Recipe| recipe.waypoints.iter().enumerate().map(|(k, w)| (w.name.as_str(), k));
-        let carried: Vec<_> = recipe.hanging().map(|hangs| [hangs.arriving(), hangs.leaving()]).collect();
+        let points =
+            |hangs: &Hanging| hangs.tool.map_or_else(Arc::default, |tool| tool.points.iter().map(|point| point.at).collect());
+        let hung: Vec<_> = recipe.hanging().map(|hangs| ([hangs.arriving(), hangs.leaving()], points(&hangs))).collect();
         let mut work = Self {
             arm,
             recipe,
@@ -91,13 +94,13 @@ impl<'a> Work<'a> {
             places: Vec::new(),
             segments: Vec::new(),
             same: Vec::new(),
-            carried,
+            hung,
         };
         if let Some(first) = recipe.waypoints.first() {
             let middle = Joints::from_fn(arm.len(), |j| arm.joints()[j].range.middle());
             let known = before.filter(|(old, _)| old.waypoints.first() == Some(first) && old.hanging_at(0) == recipe.hanging_at(0));
             let place = known.and_then(|(_, plan)| plan.made.first);
-            work.places.push(place.unwrap_or_else(|| resolve(arm, recipe, 0, &work.carried[0][0], &middle)));
+            work.places.push(place.unwrap_or_else(|| resolve(arm, recipe, 0, &work.hung[0].0[0], &middle)));
             work.named.insert(&first.name, 0);
         }
         work
@@ -109,8 +112,8 @@ impl<'a> Work<'a> {
             Taught::Pose { near: Some(name), .. } => self.named.get(name.as_str()).map(|&index| self.places[index].q),
             _ => None,
         };
-        let [carried, leaving] = self.carried[to];
-        let around = Around { start: self.places[to - 1], near, carried, leaving };
+        let ([carried, leaving], points) = self.hung[to].clone();
+        let around = Around { start: self.places[to - 1], near, carried, leaving, points };
         let known = self.known(to, &around);
         let (segment, place) = match known {
             Some((leg, segment, place)) => {

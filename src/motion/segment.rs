@@ -1,3 +1,5 @@
+use std::sync::Arc;
+
 use crate::arm::Joints;
 use crate::dynamics::Wrench;
 use crate::geometry::{Pose, V3};
@@ -103,6 +105,8 @@ pub struct Segment {
     pub carried: Carried,
     /// Tool and load when the waypoint is left, where something was taken or released.
     pub carried_after: Option<Carried>,
+    /// Named points of the tool, flange axes, m, in the tool's order.
+    pub points: Arc<[V3]>,
     /// Process force.
     pub push: Option<Push>,
     /// For a joint move: the shares of the joints' rates and accelerations that it was given.

@@ -27,6 +27,8 @@ pub struct Acceptance {
     pub tool_speed_left: Speed,
     /// Greatest speed of the TCP, if the cell has one.
     pub tcp_speed: Option<Speed>,
+    /// Greatest speed of flange, wrist centre, elbow and the tool's named points, if the cell has one.
+    pub point_speed: Option<Speed>,
     /// How far the least and the greatest value of a wrist joint on the cycle may be apart, for the cables' sake, if the cell says.
     pub wind_up: Option<Angle>,
     /// Overrides at which the first run is tried, one after the other.
@@ -49,6 +51,7 @@ impl Default for Acceptance {
             singular_least: 0.05,
             tool_speed_left: Speed::mm_per_s(100.0),
             tcp_speed: None,
+            point_speed: None,
             wind_up: None,
             stages: Stages::default(),
         }

@@ -126,8 +126,8 @@ impl Recipe {
         not_negative("slide-least", a.slide_least.measure());
         not_negative("singular-least", Measure::si(a.singular_least, Dimension::Ratio));
         not_negative("tool-speed-left", a.tool_speed_left.measure());
-        if let Some(speed) = a.tcp_speed {
-            faults.extend(not_above_zero(field.key("tcp-speed"), "acceptance", "tcp-speed", speed.measure()));
+        for (key, limit) in [("tcp-speed", a.tcp_speed), ("point-speed", a.point_speed)] {
+            faults.extend(limit.and_then(|speed| not_above_zero(field.key(key), "acceptance", key, speed.measure())));
         }
         if let Some(angle) = a.wind_up {
             faults.extend(not_above_zero(field.key("wind-up"), "acceptance", "wind-up", angle.measure()));

@@ -109,11 +109,11 @@ pub fn check_json(judged: &Judged, recipe_file: &str, arm_file: &str) -> String 
 }
 
 fn cycle_json(judged: &Judged) -> CycleJson {
-    let rms = &judged.survey.cycle.rms;
+    let cycle = &judged.survey.cycle;
     CycleJson {
-        verdict: rms.verdict.word(),
+        verdict: cycle.verdict().word(),
         closed: is_closed(&judged.recipe, &judged.plan),
-        checks: Checks(vec![(rms.check, CheckJson::of_cycle(judged, rms))]),
+        checks: Checks(cycle.checks().map(|result| (result.check, CheckJson::of_cycle(judged, result))).into()),
     }
 }
 

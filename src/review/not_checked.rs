@@ -48,7 +48,14 @@ fn particular(judged: &Judged) -> Vec<String> {
     if recipe.acceptance.tcp_speed.is_none() {
         told.push("TCP speed: the recipe sets no limit, so it is shown but not judged.".to_owned());
     }
-    told.push("Speeds of flange, elbow, tool corners and part: only that of the TCP is judged.".to_owned());
+    told.push(match recipe.acceptance.point_speed {
+        None => "Speeds of flange, wrist centre, elbow and the tool's named points: the recipe sets no point-speed, so that of the TCP is \
+                 judged and theirs only told (plan)."
+            .to_owned(),
+        Some(_) => "Speeds of other points than TCP, flange, wrist centre, elbow and those that the tool names: corners of the part, \
+                    hoses."
+            .to_owned(),
+    });
     if recipe.waypoints.iter().any(|waypoint| waypoint.fly_by.is_some()) {
         told.push("Fly-by: how the cell's controller rounds the corner. A blend tangent to both segments is judged, and so is a stop at the \
              waypoint; controllers differ, and what yours does between the two is not.".to_owned());

@@ -1,4 +1,4 @@
-use crate::checks::{SegmentSurvey, Spot, SpotPeak, Watch, each_segment, judge_at, spot_peaks};
+use crate::checks::{SegmentSurvey, Spot, SpotPeak, Watch, each_segment, judge_with_flange_held_to, spot_peaks};
 use crate::motion::Segment;
 use crate::program::Acceptance;
 use crate::units::{Share, Speed};
@@ -23,7 +23,7 @@ pub struct Reduced {
     /// The override at which TCP and flange keep the reduced speed, rounded down to a whole percent (to a tenth below one); all of
     /// it where they keep it anyway.
     pub run_at: Share,
-    /// The segment's survey at that override, with the TCP's speed judged against the reduced one.
+    /// The segment's survey at that override, with the speeds of TCP and flange judged against the reduced one.
     pub survey: SegmentSurvey,
 }
 
@@ -49,7 +49,8 @@ pub fn reduced_speed(judged: &Judged, watch: &Watch) -> Option<Vec<Reduced>> {
         let peaks = peaks(judged, segment);
         let fastest = peaks.iter().filter(|peak| matches!(peak.spot, Spot::Tcp | Spot::Flange)).map(|peak| peak.speed);
         let run_at = override_for(fastest.fold(0.0, |most, speed| if speed <= most { most } else { speed }));
-        let survey = judge_at(&judged.arm, index, segment, &criteria, judged.plan.gravity, run_at);
+        let held = Speed::m_per_s(REDUCED_SPEED);
+        let survey = judge_with_flange_held_to(held, &judged.arm, index, segment, &criteria, judged.plan.gravity, run_at);
         Reduced { segment: index, peaks, run_at, survey }
     })
 }

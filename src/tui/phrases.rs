@@ -19,6 +19,8 @@ pub fn check_word(check: Check) -> &'static str {
         Check::Singular => "singular",
         Check::SpeedLeft => "speed left",
         Check::TcpSpeed => "TCP speed",
+        Check::PointSpeed => "point speed",
+        Check::WindUp => "wind-up",
     }
 }
 

@@ -8,7 +8,9 @@ use elbowroom::arm::{
 };
 use elbowroom::geometry::{Pose, Rotation, V3};
 use elbowroom::kinematics::Posture;
-use elbowroom::program::{Acceptance, Arrive, Given, PathSpeed, Push, PushAxes, Recipe, Repeat, Taught, Tool, Usual, Waypoint};
+use elbowroom::program::{
+    Acceptance, Arrive, Given, PathSpeed, Push, PushAxes, Recipe, Repeat, Taught, Tool, ToolPoint, Usual, Waypoint,
+};
 use elbowroom::units::{Acceleration, Seconds, Share, Speed, TurnAcceleration, TurnRate};
 
 /// SplitMix64: small, well mixed, and the same everywhere.
@@ -212,8 +214,9 @@ pub fn segment(arm: &Arm, line: bool, draw: &mut Draw) -> Recipe {
     }
     let com = V3::new(draw.between(-0.1, 0.1), draw.between(-0.1, 0.1), draw.between(0.0, 0.15));
     let body = Body { mass: draw.between(0.5, 6.0), com, inertia: Some(tensor(0.05, draw)), grounds: Grounds::Sheet };
+    let far_end = ToolPoint { name: "far end".to_owned(), at: V3::new(0.12, -0.07, 0.21) };
     recipe.tools =
-        vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body), points: vec![], turns_freely: false }];
+        vec![Tool { name: "tool".to_owned(), tcp: Pose::identity(), body: Some(body), points: vec![far_end], turns_freely: false }];
     recipe
 }
 
@@ -223,7 +226,11 @@ pub fn recipe(waypoints: Vec<Waypoint>) -> Recipe {
         name: "drawn".to_owned(),
         arm: String::new(),
         mount: Pose::new(V3::zeros(), Rotation::from_rpy(0.1, 0.2, 0.0)),
-        acceptance: Acceptance { tcp_speed: Some(Speed::m_per_s(6.0)), ..Acceptance::default() },
+        acceptance: Acceptance {
+            tcp_speed: Some(Speed::m_per_s(6.0)),
+            point_speed: Some(Speed::m_per_s(7.0)),
+            ..Acceptance::default()
+        },
         usual: Usual {
             speed: None,
             accel: Acceleration::m_per_s2(2.0),

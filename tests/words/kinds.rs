@@ -196,6 +196,32 @@ fn the_tcp_speed_of_a_joint_move_is_told_by_its_joints() {
 }
 
 #[test]
+fn the_speed_of_points_is_told_by_the_fastest() {
+    let turn = "[[waypoint]]\nname = \"aside\"\njoints = [90, -20, -20, 0, 60, 0]\narrive = \"joint\"\nshare = 80\n";
+    snapshot("point_speed_flange", &judged(SIX, "[acceptance]\npoint-speed = 700", &format!("{READY}{turn}")), Check::PointSpeed);
+    let tool = "[[tool]]\nname = \"rake\"\nmass = 2\ncom = [0, 0, 60]\ntcp = { xyz = [0, 0, 100] }\n\
+                points = [{ name = \"far tine\", xyz = [200, 0, 150] }]\n[acceptance]\npoint-speed = 700";
+    let with_rake = turn.replace("arrive", "tool = \"rake\"\narrive");
+    snapshot("point_speed_named", &judged(SIX, tool, &format!("{READY}{with_rake}")), Check::PointSpeed);
+}
+
+#[test]
+fn cables_that_wind_are_told_by_both_ends() {
+    let at = |name: &str, j6: f64| {
+        format!("[[waypoint]]\nname = \"{name}\"\njoints = [0, -20, -20, 0, 60, {j6}]\narrive = \"joint\"\nshare = 40\n")
+    };
+    let turns = format!("{READY}{}{}{}", at("one way", 170.0), at("other way", -100.0), at("home", 0.0));
+    let winding = judged(SIX, "[acceptance]\nwind-up = 200", &turns);
+    snapshot("wind_up", &winding, Check::WindUp);
+    assert!(headline(&winding).contains("the cycle as a whole over"), "{}", headline(&winding));
+    for allowed in ["[acceptance]\nwind-up = 270", ""] {
+        let result = judged(SIX, allowed, &turns);
+        assert!(!result.survey.findings.iter().any(|finding| finding.check == Check::WindUp), "{allowed}");
+        assert_eq!(result.survey.cycle.wind_up.judged, !allowed.is_empty());
+    }
+}
+
+#[test]
 fn a_sliding_joint_is_told_in_millimetres_and_newtons() {
     let down = r#"
     [[waypoint]]

@@ -142,17 +142,6 @@ pub enum Doubt {
         /// The other value, rad.
         other: f64,
     },
-    /// A wrist joint winds cables more than the acceptance criteria allow.
-    WindUp {
-        /// Which joint.
-        joint: usize,
-        /// How far its least and its greatest value on the cycle are apart, rad.
-        winds: f64,
-        /// What is allowed, rad.
-        most: f64,
-        /// The waypoints, counted from 0, on whose segments the two are.
-        between: [usize; 2],
-    },
     /// The cycle ends in the posture in which it began but for whole turns, so that every cycle winds cables further or must first
     /// turn back.
     NotUnwound {
@@ -186,7 +175,6 @@ impl Doubt {
             | Self::MountByName { .. }
             | Self::LikeRadians { .. }
             | Self::LikeMetres { .. }
-            | Self::WindUp { .. }
             | Self::NotUnwound { .. } => None,
         }
     }
@@ -202,6 +190,6 @@ pub fn doubts(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
         found.extend(turn::at_waypoint(arm, recipe, plan, index));
         found.extend(fast::doubt(arm, recipe, plan, index));
     }
-    found.extend(turn::over_the_cycle(arm, recipe, plan));
+    found.extend(turn::over_the_cycle(arm, plan));
     found
 }

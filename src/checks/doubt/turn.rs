@@ -1,9 +1,8 @@
 use std::f64::consts::{PI, TAU};
 
 use crate::arm::{Arm, Joint, JointKind, Joints};
-use crate::motion::{Follower, Plan, Segment};
+use crate::motion::Plan;
 use crate::program::{Recipe, Taught};
-use crate::units::Angle;
 
 use super::Doubt;
 
@@ -11,8 +10,6 @@ use super::Doubt;
 const HALF_TURN: f64 = PI + 1e-5;
 /// A cycle comes back when no joint is farther off than this but for whole turns, rad or m (about a degree).
 const COMES_BACK: f64 = 0.02;
-/// Joint values looked at between two ends of a segment when the extremes of its wrist joints are sought.
-const LOOKS: usize = 32;
 
 /// What is probably not meant about whole turns on the way to waypoint `index`.
 pub(super) fn at_waypoint(arm: &Arm, recipe: &Recipe, plan: &Plan, index: usize) -> Vec<Doubt> {
@@ -65,19 +62,11 @@ fn other_turn(joint: &Joint, value: f64) -> Option<f64> {
 }
 
 /// What the whole cycle does to cables along the wrist.
-pub(super) fn over_the_cycle(arm: &Arm, recipe: &Recipe, plan: &Plan) -> Vec<Doubt> {
+pub(super) fn over_the_cycle(arm: &Arm, plan: &Plan) -> Vec<Doubt> {
     let (Some(first), Some(last)) = (plan.segments.first(), plan.segments.last()) else { return Vec::new() };
     let closes = plan.segments.iter().all(|segment| segment.trouble.is_none()) && is_same_but_turns(arm, &first.start, &last.end);
     let mut found = Vec::new();
     for (joint, _) in wrist(arm) {
-        if let Some(most) = recipe.acceptance.wind_up.map(Angle::as_rad) {
-            let Some([low, high]) = extremes(arm, plan, joint) else { continue };
-            let winds = high.0 - low.0;
-            if !(winds <= most) {
-                let between = if low.1 <= high.1 { [low.1, high.1] } else { [high.1, low.1] };
-                found.push(Doubt::WindUp { joint, winds, most, between });
-            }
-        }
         let turned = last.end[joint] - first.start[joint];
         if closes && turned.abs() > HALF_TURN {
             found.push(Doubt::NotUnwound { joint, turned });
@@ -99,26 +88,4 @@ fn is_same_but_turns(arm: &Arm, a: &Joints, b: &Joints) -> bool {
 fn wrist(arm: &Arm) -> impl Iterator<Item = (usize, &Joint)> {
     let first = if arm.len() >= 6 { arm.len() - 3 } else { arm.len() - 1 };
     turning(arm).filter(move |(joint, _)| *joint >= first)
-}
-
-/// The least and the greatest value of a joint on the cycle, rad, each with the waypoint that its segment arrives at.
-fn extremes(arm: &Arm, plan: &Plan, joint: usize) -> Option<[(f64, usize); 2]> {
-    let values = plan.segments.iter().flat_map(|segment| values_on(arm, segment, joint).into_iter().map(|v| (v, segment.to)));
-    values.fold(None, |found: Option<[(f64, usize); 2]>, value| {
-        let [low, high] = found.unwrap_or([value, value]);
-        Some([if value.0 < low.0 { value } else { low }, if value.0 > high.0 { value } else { high }])
-    })
-}
-
-/// Values of a joint along a segment: exact at the ends of a joint move, looked for on a line or arc.
-fn values_on(arm: &Arm, segment: &Segment, joint: usize) -> Vec<f64> {
-    let mut values = vec![segment.start[joint]];
-    if segment.follows_path() {
-        let follower = Follower::of(arm, segment);
-        let until = segment.followed_to();
-        values.extend((1..=LOOKS).filter_map(|k| follower.at(until * k as f64 / LOOKS as f64)).map(|instant| instant.q[joint]));
-    } else if segment.trouble.is_none() {
-        values.push(segment.end[joint]);
-    }
-    values
 }

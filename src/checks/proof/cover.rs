@@ -6,9 +6,10 @@ use crate::kinematics::{SphericalWrist, spherical_wrist};
 use crate::motion::{Follower, Instant, Path, Segment};
 
 use super::border::Joined;
-use super::bounds::{Asked, Even, Pace, on_joint_move, on_path};
+use super::bounds::{Asked, Even, on_joint_move, on_path};
 use super::effort::{Effort, Tally};
 use super::leaf::{Middle, Row};
+use super::pace::Pace;
 use super::view::{Reference, View};
 
 /// What a cover proved of a segment.
@@ -18,6 +19,8 @@ pub(crate) struct Covered {
     pub asked: [Option<f64>; CHANNELS],
     /// Whether the joint path is proved to exist and to stay on one branch from the first posture to the last.
     pub path: bool,
+    /// Between which values each joint stays, rad or m, rounded outward; where the path is proved.
+    pub spans: Option<[[f64; 2]; MAX_JOINTS]>,
     /// Instants (fraction and time) at which a needed channel is flagged: the sweep missed them.
     pub witnesses: Vec<(f64, f64)>,
     /// Where and why it did not close, if so.
@@ -37,7 +40,7 @@ pub(crate) struct Stuck {
 impl Covered {
     /// Nothing was tried.
     pub fn nothing() -> Self {
-        Self { asked: [None; CHANNELS], path: false, witnesses: Vec::new(), stuck: None, tally: Tally::default() }
+        Self { asked: [None; CHANNELS], path: false, spans: None, witnesses: Vec::new(), stuck: None, tally: Tally::default() }
     }
 }
 
@@ -50,6 +53,9 @@ const LOOKS_ON: usize = 3;
 
 /// Leaves reach this much farther than they are told, in fractions of the path, so that no seam of rounding stays between them.
 const SEAM: f64 = 1e-12;
+
+/// What is known of a joint's values by ends and turning points is told this much wider, rad or m, for rounding.
+const SPAN_ROUNDING: f64 = 1e-12;
 
 /// One stretch still to be covered, on one piece of the law and in one cell of the track.
 #[derive(Debug, Clone, Copy)]
@@ -82,6 +88,7 @@ pub(crate) fn cover(
         out: Covered::nothing(),
         most: [0.0; CHANNELS],
         joined: Vec::new(),
+        spans: [[f64::INFINITY, f64::NEG_INFINITY]; MAX_JOINTS],
         hint: 0.25,
         effort,
     };
@@ -91,6 +98,7 @@ pub(crate) fn cover(
     } else {
         run.cover_all();
     }
+    run.out.spans = run.spans();
     for slot in run.needs {
         run.out.asked[slot] = Some(run.most[slot]);
     }
@@ -110,6 +118,8 @@ pub(super) struct Run<'a> {
     pub(super) out: Covered,
     most: Asked,
     pub(super) joined: Vec<Joined>,
+    /// What the joints turn through on the stretches proved so far.
+    spans: [[f64; 2]; MAX_JOINTS],
     hint: f64,
     pub(super) effort: Effort,
 }
@@ -147,6 +157,30 @@ impl Run<'_> {
             }
         }
         self.needs = left;
+    }
+
+    /// Between which values the joints stay: on a path by its stretches, otherwise by ends and turning points.
+    fn spans(&self) -> Option<[[f64; 2]; MAX_JOINTS]> {
+        if self.segment.follows_path() && self.segment.duration() > 0.0 {
+            return Some(self.spans).filter(|_| self.out.path);
+        }
+        let turning_points = match &self.segment.path {
+            Path::JointBlend(blend) => blend.turning_points(),
+            _ => Vec::new(),
+        };
+        let mut spans = [[f64::INFINITY, f64::NEG_INFINITY]; MAX_JOINTS];
+        for at in turning_points.into_iter().filter_map(|u| self.follower.at(u)).chain(self.ends()?) {
+            for (span, q) in spans.iter_mut().zip(at.q.iter()) {
+                *span = [span[0].min(q - SPAN_ROUNDING), span[1].max(q + SPAN_ROUNDING)];
+            }
+        }
+        Some(spans)
+    }
+
+    fn widen_spans(&mut self, leaf: &[[f64; 2]; MAX_JOINTS]) {
+        for (span, leaf) in self.spans.iter_mut().zip(leaf) {
+            *span = [span[0].min(leaf[0]), span[1].max(leaf[1])];
+        }
     }
 
     fn ends(&self) -> Option<[Instant; 2]> {
@@ -290,6 +324,7 @@ impl Run<'_> {
 
     fn try_path(&mut self, at: &Instant, whole: f64, pace: Pace) -> Option<f64> {
         let middle = self.middle(at)?;
+        let whole = whole.min(self.effort.widest);
         let mut half = whole.min(self.hint * 1.6).min(0.6 * middle.hope());
         let mut trials = 0;
         let (mut best, mut failed_at) = (None, f64::INFINITY);
@@ -316,9 +351,10 @@ impl Run<'_> {
             }
             half = wider;
         }
-        let kept = best.map(|(leaf, asked)| (leaf.half - SEAM, asked, Joined::of(&middle, &leaf)));
+        let kept = best.map(|(leaf, asked)| (leaf.half - SEAM, asked, Joined::of(&middle, &leaf), middle.spans(&leaf)));
         self.out.tally.trials += trials;
-        let (half, asked, joined) = kept?;
+        let (half, asked, joined, spans) = kept?;
+        self.widen_spans(&spans);
         self.hint = half;
         self.joined.push(joined);
         self.keep(&asked);

@@ -31,7 +31,7 @@ pub(super) struct Middle<'a> {
     pub first: [Row; MAX_JOINTS],
     /// Second derivatives `Y (x'' - J' slope)`.
     pub bend: Row,
-    target: Target,
+    pub target: Target,
     /// How unsure the joint values in the middle are, rad or m, each joint.
     pub slack: Row,
     slack_sum: f64,
@@ -50,6 +50,36 @@ pub(super) struct Leaf {
     pub rest: [Row; MAX_JOINTS],
     /// The arm's motion over it.
     pub motion: Motion,
+}
+
+/// How the path moves a point of the tool over a stretch, by its fraction, m: velocity and second derivative in the middle, and at
+/// least the size of the third anywhere.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct ToolMoves {
+    pub velocity: V3,
+    pub bend: V3,
+    pub third: f64,
+    /// The most that the tool's turning changes, rad.
+    most_swing: f64,
+}
+
+impl ToolMoves {
+    /// Of a point that stands `rho` (base axes, m) off the TCP and turns with the tool: `y = velocity + turning x rho` in the base,
+    /// and its derivatives.
+    pub fn of(target: &Target, rho: &V3, half: f64) -> Self {
+        let Target { velocity, bend, third, turning, swing, swing_change, .. } = *target;
+        let spin = |v: &V3| turning.cross(v);
+        // The most that the tool's turning, its derivative and its second derivative amount to over the stretch.
+        let most_swing = swing.norm() + half * swing_change;
+        let most_turn = turning.norm() + half * most_swing;
+        let turn = most_turn.powi(3) + 3.0 * most_turn * most_swing + swing_change;
+        Self {
+            velocity: velocity + spin(rho),
+            bend: bend + swing.cross(rho) + spin(&spin(rho)),
+            third: third + turn * rho.norm(),
+            most_swing,
+        }
+    }
 }
 
 /// All radii are taken larger by this share, for what rounding may do.
@@ -227,20 +257,12 @@ impl<'a> Middle<'a> {
 
     /// What the path asks of the twist's derivative, seen from the viewing link: translation and rotation.
     fn target_change(&self, motion: &Motion, half: f64) -> [Ball; 2] {
-        let Target { velocity, bend, third, turning, swing, swing_change, .. } = self.target;
+        let Target { turning, swing, swing_change, .. } = self.target;
         let base = &motion.turning[0];
-        let rho = -self.view.to_tcp;
         let whole = self.arm.task().is_whole();
-        let spin = |v: V3| if whole { turning.cross(&v) } else { V3::zeros() };
-        // In the base: y = velocity + turning x rho, and its derivatives.
-        let y = velocity + spin(rho);
-        let swung = if whole { swing.cross(&rho) } else { V3::zeros() };
-        let y1 = bend + swung + spin(spin(rho));
-        // The most that the tool's turning, its derivative and its second derivative amount to over the stretch.
-        let most_swing = swing.norm() + half * swing_change;
-        let most_turn = turning.norm() + half * most_swing;
-        let turn = most_turn.powi(3) + 3.0 * most_turn * most_swing + swing_change;
-        let y2 = third + if whole { turn * rho.norm() } else { 0.0 };
+        // A task that leaves out turning is told of the TCP itself.
+        let rho = if whole { -self.view.to_tcp } else { V3::zeros() };
+        let ToolMoves { velocity: y, bend: y1, third: y2, most_swing } = ToolMoves::of(&self.target, &rho, half);
         let most_y1 = y1.norm() + half * y2;
         let y1_seen = Ball { centre: y1, radius: half * (y2 + base.most() * most_y1) };
         let y_seen = Ball { centre: y, radius: half * (most_y1 + base.most() * (y.norm() + half * most_y1)) };
@@ -253,6 +275,29 @@ impl<'a> Middle<'a> {
             .plus(&Ball { centre: swing, radius: growth })
             .plus(&base.cross(&grown));
         [moved, turned]
+    }
+
+    /// How unsure the place of a point that stands `rho` off the TCP makes its speed, m.
+    pub fn unsure_of_speed(&self, rho: &V3) -> f64 {
+        2.0 * self.slack_sum * self.target.turning.norm() * rho.norm()
+    }
+
+    /// Between which values each joint stays over a leaf, rad or m: a parabola of the middle's slope and bend, and what the spread of
+    /// the bend and the slack add.
+    pub fn spans(&self, leaf: &Leaf) -> [[f64; 2]; MAX_JOINTS] {
+        let h = leaf.half;
+        let mut spans = [[0.0; 2]; MAX_JOINTS];
+        let unsure = self.unsure();
+        for (j, span) in spans.iter_mut().enumerate().take(self.arm.len()) {
+            let (u, a) = (self.slope[j], self.bend[j]);
+            let turns = (a != 0.0 && (u / a).abs() < h).then(|| -0.5 * u * u / a);
+            let values = [Some(-u * h + 0.5 * a * h * h), Some(u * h + 0.5 * a * h * h), Some(0.0), turns];
+            let out = (0.5 * h * h * leaf.spread[j] + h * unsure[j] + self.slack[j]) * OUTWARD + 1e-14 * (1.0 + self.at.q[j].abs());
+            let values = values.into_iter().flatten();
+            let [low, high] = values.fold([0.0f64; 2], |[low, high], value| [low.min(value), high.max(value)]);
+            *span = [self.at.q[j] + low - out, self.at.q[j] + high + out];
+        }
+        spans
     }
 
     /// How wide a stretch may hope to be: where the first-order part alone would make the theorem fail.

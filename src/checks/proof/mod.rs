@@ -21,6 +21,8 @@
 //! polynomial.
 
 mod ball;
+#[cfg(test)]
+mod blocks;
 mod border;
 mod bounds;
 mod branch;
@@ -30,6 +32,8 @@ mod effort;
 mod flange;
 mod leaf;
 mod newton_euler;
+mod pace;
+mod points;
 mod torque;
 mod view;
 

@@ -17,10 +17,10 @@ pub(super) struct Bodies {
 
 /// An inertia tensor, its largest principal moment, and how far its principal moments are apart.
 #[derive(Debug, Clone, Copy)]
-struct Tensor {
+pub(super) struct Tensor {
     matrix: M3,
     most: f64,
-    apart: f64,
+    pub apart: f64,
 }
 
 /// A number known to within a spread.
@@ -39,7 +39,7 @@ pub(super) struct Ways<'a> {
 const OUTWARD: f64 = 1.0 + 1e-9;
 
 impl Tensor {
-    fn of(matrix: M3) -> Self {
+    pub fn of(matrix: M3) -> Self {
         let mean = matrix.trace() / 3.0;
         let rest = matrix - M3::identity() * mean;
         let size = (rest.norm_squared() / 6.0).sqrt();

@@ -4,8 +4,9 @@ use crate::checks::meter::STANDS;
 use crate::checks::{Check, Meter};
 
 use super::ball::Slope;
-use super::bounds::{Pace, asked_of};
+use super::bounds::asked_of;
 use super::newton_euler::{About, Bodies, Ways};
+use super::pace::Pace;
 use super::view::{Motion, View};
 
 /// A stretch of a segment with the arm's motion over it.

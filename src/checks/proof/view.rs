@@ -151,7 +151,7 @@ impl<'a> View<'a> {
 
     /// A vector fixed in the link of joint `j`; if that joint slides, `weight` times its slide is added.
     #[inline]
-    fn carried_by(&self, motion: &Motion, j: usize, vector: V3, slide: Option<(f64, f64)>, weight: f64) -> Moving {
+    pub fn carried_by(&self, motion: &Motion, j: usize, vector: V3, slide: Option<(f64, f64)>, weight: f64) -> Moving {
         let fixed = Moving::fixed(vector, &motion.turning[j + 1], motion.half, motion.slack);
         let Some((slope, spread)) = slide else { return fixed };
         // The slide itself: along z, from 0 in the middle, up to half * |slope|; z turns with the link.

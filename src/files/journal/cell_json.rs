@@ -134,6 +134,8 @@ pub(super) struct AcceptanceJson {
     singular_least: f64,
     tool_speed_left: f64,
     tcp_speed: Option<f64>,
+    #[serde(default)]
+    point_speed: Option<f64>,
     wind_up: Option<f64>,
     stages: Vec<f64>,
 }
@@ -148,6 +150,7 @@ impl From<&Acceptance> for AcceptanceJson {
             singular_least: a.singular_least,
             tool_speed_left: a.tool_speed_left.as_m_per_s(),
             tcp_speed: a.tcp_speed.map(Speed::as_m_per_s),
+            point_speed: a.point_speed.map(Speed::as_m_per_s),
             wind_up: a.wind_up.map(Angle::as_rad),
             stages: a.stages.shares().iter().map(|share| share.as_fraction()).collect(),
         }
@@ -171,6 +174,7 @@ impl From<AcceptanceJson> for Acceptance {
             singular_least: a.singular_least,
             tool_speed_left: Speed::m_per_s(a.tool_speed_left),
             tcp_speed: a.tcp_speed.map(Speed::m_per_s),
+            point_speed: a.point_speed.map(Speed::m_per_s),
             wind_up: a.wind_up.map(Angle::rad),
             stages: Stages::of(&stages).unwrap_or_default(),
         }

@@ -106,6 +106,7 @@ fn acceptance(a: &Acceptance) -> Outline {
         singular_least: _,
         tool_speed_left: _,
         tcp_speed: _,
+        point_speed: _,
         wind_up: _,
         stages: _,
     } = a;
@@ -122,6 +123,7 @@ fn acceptance(a: &Acceptance) -> Outline {
         ("singular-least", plain(a.singular_least)),
         ("tool-speed-left", measure(a.tool_speed_left.measure())),
         ("tcp-speed", a.tcp_speed.and_then(|v| measure(v.measure()))),
+        ("point-speed", a.point_speed.and_then(|v| measure(v.measure()))),
         ("wind-up", a.wind_up.and_then(|v| measure(v.measure()))),
         ("stages", numbers(&stages, Scale::Percent)),
     ]

@@ -22,6 +22,9 @@ pub(super) fn acceptance(recipe: &Recipe) -> Vec<Datum> {
     sheet.maybe("tcp-speed", (Dimension::Speed, a.tcp_speed.map(Speed::as_m_per_s)), |a, si| {
         a.tcp_speed = si.map(Speed::m_per_s);
     });
+    sheet.maybe("point-speed", (Dimension::Speed, a.point_speed.map(Speed::as_m_per_s)), |a, si| {
+        a.point_speed = si.map(Speed::m_per_s);
+    });
     sheet.maybe("wind-up", (Dimension::Angle, a.wind_up.map(Angle::as_rad)), |a, si| a.wind_up = si.map(Angle::rad));
     let stages: Vec<String> = a.stages.shares().iter().map(|share| tidy(share.as_percent()).to_string()).collect();
     sheet.datum("stages", ("%", stages.join(" ")), |a, text| {

@@ -4,7 +4,7 @@ use super::{Judged, check_words, unproved};
 
 /// What was seen of every judged check of a segment and what is proved, a line each.
 pub fn bounds_text(judged: &Judged, survey: &SegmentSurvey) -> Vec<String> {
-    survey.checks.iter().filter(|result| result.judged && result.check != Check::Rms).map(|result| told(judged, result)).collect()
+    survey.checks.iter().filter(|result| result.judged && !result.check.is_of_cycle()).map(|result| told(judged, result)).collect()
 }
 
 fn told(judged: &Judged, result: &CheckResult) -> String {

@@ -49,9 +49,7 @@ pub fn doubt_text(judged: &Judged, doubt: &Doubt) -> String {
             Speed::m_per_s(*speed),
             Speed::m_per_s(*most).measure().text_up(0)
         ),
-        Doubt::LongWay { .. } | Doubt::WhichTurn { .. } | Doubt::WindUp { .. } | Doubt::NotUnwound { .. } => {
-            turning_text(judged, doubt, &about)
-        }
+        Doubt::LongWay { .. } | Doubt::WhichTurn { .. } | Doubt::NotUnwound { .. } => turning_text(judged, doubt, &about),
         Doubt::MotionInPart => {
             let lacking = |joint: &&Joint| !joint.drive.is_complete() || joint.link.is_none_or(|link| link.inertia.is_none());
             let names: Vec<String> = judged.arm.joints().iter().filter(lacking).map(|joint| joint.name.clone()).collect();
@@ -98,20 +96,6 @@ fn turning_text(judged: &Judged, doubt: &Doubt, about: &str) -> String {
             angle(value).signed(),
             angle(other).signed()
         ),
-        Doubt::WindUp { joint: j, winds, most, between } => {
-            let [from, to] = between.map(|waypoint| name(judged, waypoint));
-            let stretch = if from == to {
-                format!("on the segment that arrives at {}", lower(&from))
-            } else {
-                format!("between the segments that arrive at {} and {}", lower(&from), lower(&to))
-            };
-            format!(
-                "{} winds cables by {} over the cycle, {stretch}; the recipe allows {}.",
-                joint(j),
-                angle(winds).text_up(0),
-                angle(most)
-            )
-        }
         Doubt::NotUnwound { joint: j, turned } => format!(
             "{} ends the cycle {} from where it began. Before the next cycle it must turn all that way back, or cables wind \
              further with each.",

@@ -6,7 +6,7 @@ use super::Judged;
 pub fn headline(judged: &Judged) -> String {
     let survey = &judged.survey;
     let ready = if survey.verdict() == Verdict::Clear { "READY TO SIGN" } else { "NOT READY" };
-    let cycle = survey.cycle.rms.verdict;
+    let cycle = survey.cycle.verdict();
     let of_cycle = (cycle != Verdict::Clear).then(|| format!("the cycle as a whole {}", cycle.word()));
     let counts: Vec<String> = Verdict::ALL
         .into_iter()
@@ -33,5 +33,7 @@ pub fn check_words(check: Check) -> &'static str {
         Check::Singular => "singularity",
         Check::SpeedLeft => "tool speed left",
         Check::TcpSpeed => "TCP speed",
+        Check::PointSpeed => "point speed",
+        Check::WindUp => "wind-up of cables",
     }
 }

@@ -16,6 +16,7 @@ mod listing;
 mod moving;
 mod no_finding;
 mod place;
+mod point_speed;
 mod proof;
 mod range;
 mod rate;
@@ -28,6 +29,7 @@ mod singular;
 mod stopping;
 mod tcp_speed;
 mod unproved;
+mod wind_up;
 mod wrap;
 
 pub use bounds::{bounds_text, proof_summary};
@@ -48,6 +50,7 @@ use crate::checks::{Check, Excess, Finding, Kind};
 
 use super::Judged;
 pub(super) use listing::all_of;
+use reduced_speed::spot_words;
 use scene::Scene;
 
 /// Tells a finding of a judged recipe.
@@ -77,8 +80,10 @@ fn title(judged: &Judged, finding: &Finding) -> String {
 }
 
 fn excess_paragraphs(judged: &Judged, finding: &Finding, excess: &Excess) -> Vec<Paragraph> {
-    if finding.check == Check::Rms {
-        return rms::paragraphs(judged, finding, excess);
+    match finding.check {
+        Check::Rms => return rms::paragraphs(judged, finding, excess),
+        Check::WindUp => return wind_up::paragraphs(judged, finding, excess),
+        _ => {}
     }
     let Some(scene) = Scene::of(judged, finding, excess) else {
         return vec![place::paragraph(judged, finding)];
@@ -92,6 +97,7 @@ fn excess_paragraphs(judged: &Judged, finding: &Finding, excess: &Excess) -> Vec
         (Check::Brake, Some(joint)) => brake::paragraphs(&scene, joint, excess),
         (Check::Flange, joint) => flange::paragraphs(&scene, joint, excess),
         (Check::TcpSpeed, _) => tcp_speed::paragraphs(&scene, excess),
+        (Check::PointSpeed, _) => point_speed::paragraphs(&scene, excess),
         _ => singular::paragraphs(&scene, finding.check, excess),
     };
     vec![what, place::paragraph(judged, finding), why, alone, rests]

@@ -39,8 +39,8 @@ pub fn reduced_speed_text(judged: &Judged, reduced: &[Reduced]) -> Vec<String> {
         format!("Judged again there, not clear: {}.", first_of(&unclear).join("; "))
     });
     told.push(
-        "The override is found by looking at the speeds of TCP and flange; that the TCP keeps the limit at it is then judged and \
-         proved, for the flange it is not. Whether the controller limits the speed, and by which points, is its maker's matter."
+        "The override is found by looking at the speeds of TCP and flange; that both keep the limit at it is then judged and proved. \
+         Elbow and tool corners may be faster. Whether the controller limits the speed, and by which points, is its maker's matter."
             .to_owned(),
     );
     told
@@ -66,7 +66,8 @@ pub fn fastest_text(judged: &Judged, reduced: &[Reduced]) -> String {
     if told.is_empty() { String::new() } else { format!("Fastest at full override, by looking: {}.", first_of(&told).join(", ")) }
 }
 
-fn spot_words(spot: &Spot) -> String {
+/// How people call a point.
+pub(super) fn spot_words(spot: &Spot) -> String {
     match spot {
         Spot::Tcp => "TCP".to_owned(),
         Spot::Flange => "flange".to_owned(),

@@ -220,7 +220,7 @@ fn also_settled(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Option<S
     let mut others: Vec<String> = Vec::new();
     for other in &remedy.effect.settles {
         let same = (other.segment, other.check, other.joint) == (finding.segment, finding.check, finding.joint);
-        let words = if other.segment == finding.segment || other.check == Check::Rms {
+        let words = if other.segment == finding.segment || other.check.is_of_cycle() {
             subject(judged, other)
         } else {
             format!("{} on segment {}", subject(judged, other), judged.plan.segments[other.segment].label())

@@ -19,12 +19,7 @@ pub(super) fn paragraphs(scene: &Scene, excess: &Excess) -> [Paragraph; 4] {
         excess.limit,
         excess.room.asks()
     );
-    let rate = scene.rate * excess.limit.si / excess.demand.si;
-    let estimate = format!(
-        "The TCP's speed grows in step with that of the segment: by that rule it would stay within the limit here at {}, an \
-         estimate for this one instant.",
-        scene.asking(rate)
-    );
+    let estimate = slower(scene, excess, "The TCP's speed");
     let why = if scene.segment.follows_path() {
         format!("{} The speed given for the segment is what makes it so.", tool_moves(scene))
     } else {
@@ -49,33 +44,64 @@ pub(super) fn paragraphs(scene: &Scene, excess: &Excess) -> [Paragraph; 4] {
     ]
 }
 
-/// Which joints make the TCP's speed: `J1 turns at +105 °/s with the TCP 890 mm from its axis and makes 1631 mm/s`.
-fn joints(scene: &Scene) -> String {
-    let total = scene.velocity();
-    let rates = scene.rates();
-    let mut makes: Vec<(usize, f64)> = (0..scene.arm().len())
-        .map(|j| {
-            let c = scene.instant.jacobian.columns()[j];
-            (j, V3::new(c[0], c[1], c[2]).dot(&total) / total.norm() * rates[j])
-        })
-        .filter(|(_, part)| *part > TELLING * total.norm())
-        .collect();
-    makes.sort_by(|a, b| b.1.total_cmp(&a.1));
-    let told: Vec<String> = makes.iter().map(|&(j, part)| joint(scene, j, rates[j], part)).collect();
-    if told.is_empty() { String::new() } else { format!("Of this {}.", all_of(&told)) }
+/// At which speed of the segment a point would keep its limit, by the rule that both grow in step.
+pub(super) fn slower(scene: &Scene, excess: &Excess, what: &str) -> String {
+    let rate = scene.rate * excess.limit.si / excess.demand.si;
+    format!(
+        "{what} grows in step with that of the segment: by that rule it would stay within the limit here at {}, an estimate for this \
+         one instant.",
+        scene.asking(rate)
+    )
 }
 
-fn joint(scene: &Scene, j: usize, rate: f64, part: f64) -> String {
+/// A point that the first `joints` joints carry: how people call it, where it is (base axes, m) and how it moves (m/s).
+pub(super) struct Moved<'a> {
+    pub word: &'a str,
+    pub at: V3,
+    pub joints: usize,
+    pub velocity: V3,
+}
+
+/// Which joints make the TCP's speed.
+fn joints(scene: &Scene) -> String {
+    made_by(
+        scene,
+        "Of this",
+        &Moved { word: "the TCP", at: scene.instant.tcp.at, joints: scene.arm().len(), velocity: scene.velocity() },
+    )
+}
+
+/// Which joints make a point's speed, after the words `of`: `Of this J1 makes 1631 mm/s, turning at +105 °/s with the TCP 890 mm from its axis`.
+pub(super) fn made_by(scene: &Scene, of: &str, point: &Moved) -> String {
+    let rates = scene.rates();
+    let posture = &scene.instant.posture;
+    let total = point.velocity.norm();
+    let mut makes: Vec<(usize, f64)> = (0..point.joints)
+        .map(|j| {
+            let axis = posture.axis(j);
+            let turns = scene.joint(j).kind == JointKind::Revolute;
+            let column = if turns { axis.cross(&(point.at - posture.origin(j))) } else { axis };
+            (j, column.dot(&point.velocity) / total * rates[j])
+        })
+        .filter(|(_, part)| *part > TELLING * total)
+        .collect();
+    makes.sort_by(|a, b| b.1.total_cmp(&a.1));
+    let told: Vec<String> = makes.iter().map(|&(j, part)| joint(scene, j, rates[j], part, point)).collect();
+    if told.is_empty() { String::new() } else { format!("{of} {}.", all_of(&told)) }
+}
+
+fn joint(scene: &Scene, j: usize, rate: f64, part: f64, point: &Moved) -> String {
     let data = scene.joint(j);
     let posture = &scene.instant.posture;
-    let lever = posture.axis(j).cross(&(scene.instant.tcp.at - posture.origin(j))).norm();
+    let lever = posture.axis(j).cross(&(point.at - posture.origin(j))).norm();
     let rate: Measure = data.rate_of(rate);
     match data.kind {
         JointKind::Revolute => format!(
-            "{} makes {}, turning at {} with the TCP {} from its axis",
+            "{} makes {}, turning at {} with {} {} from its axis",
             data.name,
             Speed::m_per_s(part),
             rate.signed(),
+            point.word,
             Length::m(lever).measure().text(0)
         ),
         JointKind::Prismatic => format!("{} makes {}, sliding at {}", data.name, Speed::m_per_s(part), rate.signed()),

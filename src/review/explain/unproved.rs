@@ -21,7 +21,7 @@ pub(super) fn in_brief(why: Unproved) -> &'static str {
 /// What, where, why, left alone and rests on where nothing bad was seen but it is not known.
 pub(super) fn paragraphs(judged: &Judged, finding: &Finding, why: Unproved) -> Vec<Paragraph> {
     let survey = &judged.survey.segments[finding.segment];
-    let result = if finding.check == Check::Rms { &judged.survey.cycle.rms } else { survey.check(finding.check) };
+    let result = judged.survey.cycle.check(finding.check).unwrap_or_else(|| survey.check(finding.check));
     let what = match result.worst() {
         Some(peak) => format!(
             "For {} nothing bad was seen: the most that is asked is {}. But it is not known to hold everywhere.",

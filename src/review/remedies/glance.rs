@@ -14,7 +14,7 @@ const CLOSER: usize = 7;
 /// reject a change, never to accept one. Yields the least room that was seen of them, if there is such a
 /// witness.
 pub(super) fn still_flagged(judged: &Judged, finding: &Finding, segment: &Segment, criteria: &Acceptance) -> Option<Room> {
-    if matches!(finding.check, Check::Reach | Check::Rms) || segment.trouble.is_some() {
+    if finding.check == Check::Reach || finding.check.is_of_cycle() || segment.trouble.is_some() {
         return None;
     }
     let meter = Meter::of(&judged.arm, segment, criteria, judged.plan.gravity);

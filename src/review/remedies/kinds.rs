@@ -18,7 +18,8 @@ pub fn kinds_for(judged: &Judged, finding: &Finding) -> Vec<RemedyKind> {
         Check::Flange => vec![Load, Centre, Grip],
         Check::Rms => vec![Dwell, Slower, Acceleration, Load],
         Check::Singular | Check::SpeedLeft => vec![JointMove, FlyBy, Posture, Via, Turn, Tilt, Shift],
-        Check::TcpSpeed => vec![Slower, Override],
+        Check::TcpSpeed | Check::PointSpeed => vec![Slower, Override],
+        Check::WindUp => vec![Posture, Turn],
         Check::Range => vec![Posture, JointMove, Turn, Tilt, Shift, Via],
         Check::Reach => match &finding.kind {
             Kind::NoPath(NoPath::OutOfReach { .. } | NoPath::Lost { .. }) => {

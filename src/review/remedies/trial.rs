@@ -113,7 +113,7 @@ impl<'a> Trial<'a> {
     /// The same of a changed recipe, in which a waypoint may have been inserted.
     pub fn look_at(&self, recipe: &Recipe, inserted: Option<usize>, aim: Aim) -> Seen {
         let judged = self.judged;
-        if self.finding.check == Check::Rms {
+        if self.finding.check.is_of_cycle() {
             return self.look_at_cycle(recipe, inserted);
         }
         let before = Some((judged.recipe.as_ref(), judged.plan.as_ref()));
@@ -165,7 +165,7 @@ impl<'a> Trial<'a> {
         let recipe = Arc::new(recipe.clone());
         let Some(after) = Judged::of(&self.judged.arm, &recipe, Some(self.judged), self.watch) else { return Seen::NOTHING };
         let effect = self.effect(&after, inserted);
-        let is_settled = !effect.remains.iter().any(|finding| finding.check == Check::Rms && finding.joint == self.finding.joint);
+        let is_settled = !effect.remains.iter().any(|finding| self.is_same(finding));
         let spoilt = effect.worsens.first().copied();
         Seen {
             clear: is_settled && spoilt.is_none(),
@@ -209,7 +209,7 @@ impl<'a> Trial<'a> {
         let plan = &self.judged.plan;
         self.judged.survey.findings.iter().any(|known| {
             (known.check, known.joint) == (finding.check, finding.joint)
-                && (finding.check == Check::Rms || plan.segments[known.segment].to == to)
+                && (finding.check.is_of_cycle() || plan.segments[known.segment].to == to)
                 && known.verdict >= finding.verdict
                 && spare(known) <= spare(finding) + SAME_ROOM
         })
@@ -255,7 +255,7 @@ impl<'a> Trial<'a> {
     /// What an override of the whole program does to the segment, for information.
     pub fn told_of_override(&self, share: Share, size: f64) -> Remedy {
         let (judged, index) = (self.judged, self.finding.segment);
-        let own = || judged.survey.findings.iter().filter(|finding| finding.segment == index && finding.check != Check::Rms);
+        let own = || judged.survey.findings.iter().filter(|finding| finding.segment == index && !finding.check.is_of_cycle());
         let effect = Effect {
             settles: own().filter(|finding| !finding.check.is_of_posture_alone()).copied().collect(),
             remains: own().filter(|finding| finding.check.is_of_posture_alone()).copied().collect(),
@@ -275,9 +275,9 @@ impl<'a> Trial<'a> {
                 .survey
                 .findings
                 .iter()
-                .any(|new| (new.check, new.joint) == (old.check, old.joint) && (new.check == Check::Rms || to_of(new) == to))
+                .any(|new| (new.check, new.joint) == (old.check, old.joint) && (new.check.is_of_cycle() || to_of(new) == to))
         };
-        let own = |new: &&Finding| to_of(new) == self.to() || (new.check == Check::Rms && self.finding.check == Check::Rms);
+        let own = |new: &&Finding| to_of(new) == self.to() || (new.check.is_of_cycle() && new.check == self.finding.check);
         Effect {
             settles: self.judged.survey.findings.iter().filter(|old| !is_left(old)).copied().collect(),
             remains: after.survey.findings.iter().filter(own).copied().collect(),
@@ -286,8 +286,8 @@ impl<'a> Trial<'a> {
     }
 
     fn room_of(&self, judged: &Judged, inserted: Option<usize>) -> Option<Room> {
-        if self.finding.check == Check::Rms {
-            let peaks = judged.survey.cycle.rms.peaks.iter().filter(|peak| peak.joint == self.finding.joint);
+        if let Some(of_cycle) = judged.survey.cycle.check(self.finding.check) {
+            let peaks = of_cycle.peaks.iter().filter(|peak| peak.joint == self.finding.joint);
             return peaks.map(|peak| peak.room).reduce(Room::least);
         }
         let own = judged.survey.segments.iter().filter(|s| origin(judged.plan.segments[s.segment].to, inserted) == self.to());

@@ -51,7 +51,8 @@ impl Record {
             })
             .collect();
         let digests: Vec<Digest> = segments.iter().map(|segment| segment.digest).collect();
-        let cycle = SealedCycle { digest: cycle_digest(recipe, plan, &digests), check: sealed_check(judged, &survey.cycle.rms) };
+        let checks = survey.cycle.checks().into_iter().filter_map(|result| sealed_check(judged, result)).collect();
+        let cycle = SealedCycle { digest: cycle_digest(recipe, plan, &digests), checks };
         let stages = run.stages.iter().map(|stage| (stage.run_at.to_string(), stage.verdict())).collect();
         Self {
             program: env!("CARGO_PKG_VERSION").to_owned(),

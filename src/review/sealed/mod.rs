@@ -62,13 +62,13 @@ impl SealedSegment {
     }
 }
 
-/// The torque over the whole cycle.
+/// What is judged over the whole cycle: torque, and cables wound by the wrist.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct SealedCycle {
     /// The hash of all that it depends on.
     pub digest: Digest,
-    /// What was found; none where it was not judged.
-    pub check: Option<SealedCheck>,
+    /// What was found, check by check; none where nothing was judged.
+    pub checks: Vec<SealedCheck>,
 }
 
 /// Where a joint has the least room over its reserve on the whole program.

@@ -82,6 +82,7 @@ fn criteria_text(criteria: &Acceptance) -> String {
         singular_least,
         tool_speed_left,
         tcp_speed,
+        point_speed,
         wind_up,
         stages,
     } = criteria;
@@ -93,6 +94,7 @@ fn criteria_text(criteria: &Acceptance) -> String {
         format!("tool speed left {tool_speed_left}"),
         tcp_speed.map_or("no limit of TCP speed".to_owned(), |speed| format!("TCP speed {speed}")),
     ];
+    told.extend(point_speed.map(|speed| format!("speed of flange, elbow and named points {speed}")));
     told.extend(wind_up.map(|angle| format!("wind-up {angle}")));
     told.push(format!("stages {}", stages.shares().iter().map(ToString::to_string).collect::<Vec<_>>().join(", ")));
     told.join(", ")

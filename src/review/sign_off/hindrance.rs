@@ -132,9 +132,11 @@ impl SignOff {
             .filter(|survey| survey.verdict != Verdict::Clear && !told(survey.segment))
             .map(|survey| Hindrance::Unproven { on: format!("segment {}", segments[survey.segment].label()) })
             .collect();
-        let of_cycle = |question: &super::Question| question.matter.check == crate::checks::Check::Rms;
-        if self.survey().cycle.rms.verdict != Verdict::Clear && !self.questions.iter().any(of_cycle) {
-            found.push(Hindrance::Unproven { on: "the torque over the cycle".to_owned() });
+        for of_cycle in self.survey().cycle.checks() {
+            let asked = self.questions.iter().any(|question| question.matter.check == of_cycle.check);
+            if of_cycle.verdict != Verdict::Clear && !asked {
+                found.push(Hindrance::Unproven { on: format!("the {}", crate::review::check_words(of_cycle.check)) });
+            }
         }
         found
     }

@@ -179,7 +179,7 @@ impl SignOff {
         let same: Vec<_> = (0..self.judged.plan.segments.len()).map(|index| digest(&self.judged, index)).collect();
         let findings = &self.judged.survey.findings;
         for question in &mut self.questions {
-            let stands = if question.matter.check == crate::checks::Check::Rms {
+            let stands = if question.matter.check.is_of_cycle() {
                 cycle
             } else {
                 let digest = same[findings[question.finding].segment];

@@ -99,8 +99,11 @@ fn differences(record: &Record, now: &Record, judged: &Judged, sources: &Sources
             differ(&format!("{what}, {}", check_words(each)), &check(each, before), &check(each, after));
         }
     }
-    let of_cycle = |record: &Record| record.cycle.check.as_ref().map_or(String::new(), check_text);
-    differ("torque over the cycle", &of_cycle(record), &of_cycle(now));
+    for each in Check::ALL.into_iter().filter(|check| check.is_of_cycle()) {
+        let of_cycle =
+            |record: &Record| record.cycle.checks.iter().find(|found| found.check == each).map_or(String::new(), check_text);
+        differ(check_words(each), &of_cycle(record), &of_cycle(now));
+    }
     let mut sign_off = SignOff::of(judged, sources);
     let data =
         |data: &[super::Datum]| data.iter().map(|datum| format!("{} {}", datum.of, datum.value)).collect::<Vec<_>>().join("; ");
