@@ -10,10 +10,11 @@ use elbowroom::kinematics::{
     Jacobian, Lu, Posture, condition, drift, invert, null_rows, pose_error, singular_values, smallest_singular_value, speed_left,
     stacked,
 };
-use elbowroom::motion::{Law, Side};
+use elbowroom::motion::{Law, Limits, Side};
 use elbowroom::program::Carried;
 use nalgebra::DMatrix;
 use proptest::prelude::*;
+use proptest::test_runner::TestCaseError;
 use stand::chance::{self, Sequence};
 use stand::{all_near, near, plain_frames, pose_of, poses_near};
 
@@ -284,4 +285,62 @@ proptest! {
         prop_assert!(near((b[0] - a[0]) / (2.0 * h), du, 1e-9 * law.top_rate()));
         prop_assert!(near((b[1] - a[1]) / (2.0 * h), ddu, 1e-9 * accel));
     }
+
+    #[test]
+    fn a_law_of_limited_jerk_keeps_its_limits_and_lasts_as_long_as_its_closed_form(
+        rate in 1e-2..1e2f64, accel in 1e-2..1e3f64, jerk in 1e-2..1e5f64, at in 0.0..1.0f64,
+    ) {
+        let law = Law::between(0.0, 0.0, Limits { rate, accel, jerk });
+        // From rest to rest over 1: with or without the whole rate, with or without the whole acceleration.
+        let ramp = if rate * jerk >= accel * accel { accel / jerk + rate / accel } else { 2.0 * (rate / jerk).sqrt() };
+        let closed = if 1.0 / rate >= ramp {
+            ramp + 1.0 / rate
+        } else {
+            let whole = accel / (2.0 * jerk) + (accel * accel / (4.0 * jerk * jerk) + 1.0 / accel).sqrt();
+            2.0 * if whole >= 2.0 * accel / jerk { whole } else { 2.0 * (0.5 / jerk).cbrt() }
+        };
+        prop_assert!(near(law.duration() / closed, 1.0, 1e-9), "{} {closed}", law.duration());
+        keeps(&law, Limits { rate, accel, jerk }, at * law.duration())?;
+        let [u, ..] = law.at(at * law.duration(), Side::After);
+        prop_assert!(near(law.at((1.0 - at) * law.duration(), Side::Before)[0], 1.0 - u, 1e-9));
+    }
+
+    #[test]
+    fn a_law_between_rates_keeps_its_limits(
+        rate in 1e-2..1e2f64, accel in 1e-2..1e3f64, jerk in 1e-2..1e5f64, from in 0.0..1.0f64, to in 0.0..1.0f64, at in 0.0..1.0f64,
+    ) {
+        let limits = Limits { rate, accel, jerk };
+        // Rates that the way of 1 is long enough to change between, as those of a plan are: reached from rest within half of it.
+        let most = Law::between(0.0, 0.0, Limits { rate, accel: 0.5 * accel, jerk: 0.5 * jerk }).top_rate();
+        let (from, to) = (0.5 * from * most, 0.5 * to * most);
+        let law = Law::between(from, to, limits);
+        let ends = [law.at(0.0, Side::After), law.at(law.duration(), Side::Before)];
+        prop_assert!(near(ends[0][1], from, 1e-9 * rate) && near(ends[1][1], to, 1e-7 * rate), "{ends:?} {from} {to}");
+        prop_assert!(ends[0][0] == 0.0 && near(ends[1][0], 1.0, 1e-9));
+        keeps(&law, limits, at * law.duration())?;
+    }
+}
+
+/// Whether a law keeps its limits at a time, its derivatives belong together, and its pieces join without a jump.
+fn keeps(law: &Law, limits: Limits, t: f64) -> Result<(), TestCaseError> {
+    let [u, rate, accel] = law.at(t, Side::After);
+    prop_assert!((-1e-12..=1.0 + 1e-9).contains(&u) && rate >= -1e-9 * limits.rate && rate <= limits.rate * (1.0 + 1e-9));
+    prop_assert!(accel.abs() <= limits.accel * (1.0 + 1e-9));
+    prop_assert!(near(law.time_of(u), t, 1e-5 * law.duration()) || rate < 1e-4 * law.top_rate());
+    for pair in law.pieces().windows(2) {
+        let [u, rate, accel] = pair[0].at(pair[0].duration);
+        prop_assert!(near(u, pair[1].u, 1e-9) && near(rate, pair[1].rate, 1e-9 * limits.rate));
+        prop_assert!(near(accel, pair[1].accel, 1e-7 * limits.accel));
+    }
+    prop_assert!(law.pieces().iter().all(|piece| piece.jerk.abs() <= limits.jerk * (1.0 + 1e-12) && piece.duration >= 0.0));
+    let h = 1e-5 * law.duration();
+    let whole = law.pieces().iter().any(|piece| piece.start <= t - h && t + h <= piece.start + piece.duration);
+    if whole {
+        let [before, after] = [law.at(t - h, Side::After), law.at(t + h, Side::Before)];
+        // A cubic differs from its slope over h by a sixth of its jerk times the square of h.
+    let step = limits.jerk * h * h + 1e-9 * law.top_rate();
+        prop_assert!(near((after[0] - before[0]) / (2.0 * h), rate, step));
+        prop_assert!(near((after[1] - before[1]) / (2.0 * h), accel, 1e-6 * (limits.accel + limits.jerk * h)));
+    }
+    Ok(())
 }
