@@ -338,7 +338,7 @@ fn keeps(law: &Law, limits: Limits, t: f64) -> Result<(), TestCaseError> {
     if whole {
         let [before, after] = [law.at(t - h, Side::After), law.at(t + h, Side::Before)];
         // A cubic differs from its slope over h by a sixth of its jerk times the square of h.
-    let step = limits.jerk * h * h + 1e-9 * law.top_rate();
+        let step = limits.jerk * h * h + 1e-9 * law.top_rate();
         prop_assert!(near((after[0] - before[0]) / (2.0 * h), rate, step));
         prop_assert!(near((after[1] - before[1]) / (2.0 * h), accel, 1e-6 * (limits.accel + limits.jerk * h)));
     }

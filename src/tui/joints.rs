@@ -180,7 +180,11 @@ fn closeness(gauges: &Gauges) -> String {
             format!("{word} {value}{letter}")
         })
     };
-    let parts =
-        [told(Check::Singular, "singular", None), told(Check::SpeedLeft, "left", Some(0)), told(Check::TcpSpeed, "TCP", Some(0))];
+    let parts = [
+        told(Check::Singular, "singular", None),
+        told(Check::SpeedLeft, "left", Some(0)),
+        told(Check::TcpSpeed, "TCP", Some(0)),
+        told(Check::PointSpeed, "points", Some(0)),
+    ];
     parts.into_iter().flatten().collect::<Vec<_>>().join("  ")
 }

@@ -201,10 +201,26 @@ fn by_rows(app: &mut App, rows: isize) {
 }
 
 fn turn_quantity(app: &mut App, by: isize) {
-    // Reach has no quantity.
-    let shown = &Check::ALL[1..];
+    let shown = charted(app);
     let now = shown.iter().position(|check| *check == app.chart.check).unwrap_or(0) as isize;
     app.chart.check = shown[(now + by).rem_euclid(shown.len() as isize) as usize];
+}
+
+/// The checks whose quantity the chart can draw.
+fn charted(app: &App) -> Vec<Check> {
+    let points = app.session.as_ref().is_some_and(|session| session.judged().recipe.acceptance.point_speed.is_some());
+    Check::ALL.into_iter().filter(|check| quantity_of(*check) == *check && (points || *check != Check::PointSpeed)).collect()
+}
+
+/// The check whose quantity is behind another one that has none at an instant: what loses a path is closeness, the cycle's torque is
+/// that of motion, and cables are wound by joint values.
+fn quantity_of(check: Check) -> Check {
+    match check {
+        Check::Reach => Check::Singular,
+        Check::Rms => Check::Moving,
+        Check::WindUp => Check::Range,
+        other => other,
+    }
 }
 
 fn find(app: &mut App, go: impl Fn(&mut Session) -> bool) {
@@ -224,8 +240,7 @@ pub(super) fn follow_finding(app: &mut App) {
         Some(finding) => (finding.check, finding.joint),
         None => nearest.map_or((app.chart.check, None), |(result, peak)| (result.check, peak.joint)),
     };
-    // Reach has no quantity; what loses a path is closeness.
-    app.chart.check = if check == Check::Reach { Check::Singular } else { check };
+    app.chart.check = quantity_of(check);
     app.joint = joint.unwrap_or(app.joint);
 }
 
@@ -287,7 +302,7 @@ fn is_named(action: &Action) -> bool {
 }
 
 fn quantities(app: &App) -> Menu {
-    let checks = &Check::ALL[1..];
+    let checks = charted(app);
     let item = |check: &Check| Item { name: check_word(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
     Menu {
         title: "The chart shows".to_owned(),
