@@ -2,9 +2,14 @@
 
 mod random;
 
+use elbowroom::arm::Joints;
 use elbowroom::checks::{Check, Meter, Proof, Verdict, tightened};
+use elbowroom::geometry::{Pose, Rotation, turn_about};
+use elbowroom::kinematics::{Posture, singular_posture, spherical_wrist};
 use elbowroom::motion::Follower;
+use elbowroom::program::{Arrive, Given, PathSpeed, Recipe, Taught};
 use elbowroom::review::Judged;
+use elbowroom::units::{Share, Speed};
 use random::{Draw, Family};
 
 /// Looks along a judged segment evenly in time and path, and compares every proved check with what is there.
@@ -137,4 +142,89 @@ fn nothing_lies_beyond_a_bound_of_four_joints_with_a_slide() {
 #[test]
 fn nothing_lies_beyond_a_bound_of_three_joints_with_a_slide() {
     hammer_family(Family::ThreeSlide, 5, 90);
+}
+
+/// A line of 20 to 200 mm that starts where a posture is `away` from the singular posture nearest to it (norm of joint motion, rad),
+/// slow enough that something is left to prove; closeness itself is not judged. `None` if no singular posture is near.
+fn next_to_singular(arm: &elbowroom::arm::Arm, away: f64, draw: &mut Draw) -> Option<Recipe> {
+    let q = random::posture(arm, draw);
+    let near = singular_posture(arm, spherical_wrist(arm.chain()), &q)?;
+    let start = Joints::from_fn(arm.len(), |j| near.posture[j] + (q[j] - near.posture[j]) * away / near.distance);
+    let inside = |j: usize| arm.joints()[j].range.to_end(start[j]) > 0.1;
+    if !(0..arm.len()).all(inside) {
+        return None;
+    }
+    let from = Posture::at(arm.chain(), &start).tcp(&Pose::identity());
+    let turn = turn_about(&draw.direction(), if arm.task().is_whole() { draw.between(0.0, 0.3) } else { 0.0 });
+    let rotation = arm.task().turns().then(|| Rotation::from_matrix(&(turn * from.axes)));
+    let pose = Given { at: from.at + draw.direction() * draw.between(0.02, 0.2), rotation, frame: None };
+    let speed = PathSpeed { speed: Some(Speed::m_per_s(draw.between(0.002, 0.05))), ..PathSpeed::default() };
+    let start = random::waypoint("start", Taught::Joints(start), None);
+    let mut recipe =
+        random::recipe(vec![start, random::waypoint("end", Taught::Pose { pose, near: None }, Some(Arrive::Line(speed)))]);
+    recipe.acceptance.singular_least = 0.0;
+    recipe.acceptance.tool_speed_left = Speed::m_per_s(0.0);
+    recipe.acceptance.rate_reserve = Share::fraction(0.0);
+    Some(recipe)
+}
+
+/// From a tenth of a radian down to a few millionths, which is micrometres at the tool.
+#[test]
+fn nothing_lies_beyond_a_bound_next_to_a_singular_posture() {
+    let mut draw = Draw(21);
+    for (family, least) in
+        [(Family::SphericalWrist, 20), (Family::OffsetWrist, 12), (Family::FourSlide, 8), (Family::ThreeSlide, 8)]
+    {
+        let mut proved = 0;
+        for k in 0..160 {
+            let away = 0.1 * 0.7f64.powi(k % 30);
+            let arm = random::arm(family, &mut draw);
+            let Some(recipe) = next_to_singular(&arm, away, &mut draw) else { continue };
+            let judged = random::judged(arm, recipe);
+            if judged.plan.segments[0].trouble.is_some() {
+                continue;
+            }
+            let of = |check: Check| matches!(judged.survey.segments[0].check(check).proof, Proof::Proved(_));
+            proved += usize::from(of(Check::Holding) && of(Check::Reach));
+            hammer(&judged, 0, 3000);
+        }
+        assert!(proved >= least, "{family:?}: only {proved} proved");
+    }
+}
+
+/// An arc through two drawn places near a drawn posture.
+fn arc(arm: &elbowroom::arm::Arm, draw: &mut Draw) -> Recipe {
+    let start = random::posture(arm, draw);
+    let from = Posture::at(arm.chain(), &start).tcp(&Pose::identity());
+    let radius = draw.between(0.03, 0.2);
+    let via = Given { at: from.at + draw.direction() * radius, rotation: None, frame: None };
+    let turn = turn_about(&draw.direction(), if arm.task().is_whole() { draw.between(0.0, 0.6) } else { 0.0 });
+    let rotation = arm.task().turns().then(|| Rotation::from_matrix(&(turn * from.axes)));
+    let pose = Given { at: via.at + draw.direction() * radius, rotation, frame: None };
+    let speed = PathSpeed { speed: Some(Speed::m_per_s(draw.between(0.02, 0.4))), ..PathSpeed::default() };
+    let start = random::waypoint("start", Taught::Joints(start), None);
+    random::recipe(vec![start, random::waypoint("end", Taught::Pose { pose, near: None }, Some(Arrive::Arc { via, speed }))])
+}
+
+#[test]
+fn nothing_lies_beyond_a_bound_of_an_arc_or_of_limited_jerk() {
+    let mut draw = Draw(22);
+    for family in [Family::SphericalWrist, Family::OffsetWrist, Family::Seven, Family::FourSlide, Family::ThreeSlide] {
+        let mut clear = 0;
+        for k in 0..40 {
+            let drawn = random::arm(family, &mut draw);
+            let arm = if k % 2 == 0 { drawn } else { random::with_jerk(&drawn, draw.between(5.0, 50.0)) };
+            let mut recipe = arc(&arm, &mut draw);
+            if k % 2 == 1 {
+                recipe.usual.jerk = Some(elbowroom::units::Jerk::m_per_s3(draw.between(5.0, 50.0)));
+                recipe.usual.turn_jerk = Some(elbowroom::units::TurnJerk::rad_per_s3(draw.between(20.0, 200.0)));
+            }
+            let judged = random::judged(arm, recipe);
+            if judged.plan.segments[0].trouble.is_none() {
+                clear += usize::from(judged.survey.segments[0].verdict == Verdict::Clear);
+                hammer(&judged, 0, 1500);
+            }
+        }
+        assert!(clear > 4, "{family:?}: only {clear} clear");
+    }
 }
