@@ -6,12 +6,12 @@ use crate::units::{Angle, Dimension, Length, Measure, Room, Seconds};
 use super::direction::{axis, heading};
 use super::listing::{all_of, first_of};
 use super::place::along;
-use super::{Judged, Label, Paragraph, check_words, explain};
+use super::{Judged, Label, Paragraph, check_words, doubt_text, explain};
 
 /// A cycle longer or shorter by less than this takes as long as before, s: half of the last digit that is shown.
 const SAME_TIME: f64 = 0.005;
-/// A part of a displacement below this is nothing, m.
-const NOTHING: f64 = 5e-6;
+/// A displacement, or a part of one, that is told as 0.0 mm is nothing, m: half of the last digit that is shown.
+const NOTHING: f64 = 5e-5;
 
 /// The remedies of a finding as paragraphs, the least change first, and one more for what was tried without success.
 pub fn remedies_text(judged: &Judged, finding: &Finding, remedies: &[Remedy], tried: &[Tried]) -> Vec<Paragraph> {
@@ -35,7 +35,12 @@ fn nothing_to_try(finding: &Finding) -> &'static str {
 
 /// A remedy in a few words, for a list: `slower: 400 mm/s to 232 mm/s`.
 pub fn remedy_title(judged: &Judged, remedy: &Remedy) -> String {
-    format!("{}: {}", kind_words(remedy.kind()), figures(judged, &remedy.change))
+    let but = match (remedy.effect.worsens.is_empty(), remedy.effect.doubts.is_empty()) {
+        (false, _) => ", makes another worse",
+        (true, false) => ", brings a doubt",
+        (true, true) => "",
+    };
+    format!("{}: {}{but}", kind_words(remedy.kind()), figures(judged, &remedy.change))
 }
 
 /// A remedy in a few sentences: what to change, what it settles and leaves, what it makes worse, what it costs.
@@ -45,6 +50,7 @@ pub fn remedy_text(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Strin
     told.extend(also_settled(judged, finding, remedy));
     told.extend(left_over(remedy));
     told.extend(worse(remedy));
+    told.extend(doubtful(remedy));
     told.extend(costs(remedy));
     if remedy.edit.is_some() && moves_elsewhere(remedy.kind()) {
         told.push("Whether the new way is free is not judged.".to_owned());
@@ -115,6 +121,7 @@ fn figures(judged: &Judged, change: &Change) -> String {
         Change::Turn { ends, angle } => format!("{} {}", signed(*angle), ends_words(*ends)),
         Change::Tilt { ends, angle, .. } => format!("{} {}", angle.measure().text(1), ends_words(*ends)),
         Change::Shift { ends, by } => format!("{} {}", length(by), ends_words(*ends)),
+        Change::Via { by, .. } if is_told_as_nothing(by) => "on the line".to_owned(),
         Change::Via { by, .. } => format!("{} beside the line", length(by)),
         Change::JointMove { leaves, .. } => format!("leaves the path by {}", leaves.measure().text_up(0)),
         Change::Posture { waypoint, .. } => format!("from \"{}\" on", judged.recipe.waypoints[*waypoint].name),
@@ -161,17 +168,24 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
             format!("shift {number} by {} {}, that is {}, {}", length(by), heading(&judged.recipe, by), parts(by), at(*ends))
         }
         Change::Via { u, by } => {
-            let beside = if by.norm() > NOTHING {
-                format!("{} beside the line, {}, that is {}", length(by), heading(&judged.recipe, by), parts(by))
-            } else {
+            let beside = if is_told_as_nothing(by) {
                 "on the line itself".to_owned()
+            } else {
+                format!("{} beside the line, {}, that is {}", length(by), heading(&judged.recipe, by), parts(by))
             };
             format!("let {number} stop at a point on the way, {} from its start and {beside}", along(segment, *u))
         }
-        Change::JointMove { share, leaves } => format!(
-            "let the arm go by a joint move with a share of {share} on {number}; the TCP then leaves the path by up to {}",
-            leaves.measure().text_up(0)
-        ),
+        Change::JointMove { share, leaves, keeps } => {
+            let taught = if *keeps {
+                format!(", with {} taught by the joint values that it has now, so that the posture stays", name(segment.to))
+            } else {
+                String::new()
+            };
+            format!(
+                "let the arm go by a joint move with a share of {share} on {number}{taught}; the TCP then leaves the path by up to {}",
+                leaves.measure().text_up(0)
+            )
+        }
         Change::Posture { waypoint, last, from, to } => {
             let span = if waypoint == last {
                 format!("at {}:", name(*waypoint))
@@ -255,6 +269,16 @@ fn worse(remedy: &Remedy) -> Option<String> {
     (!worse.is_empty()).then(|| format!("But it makes worse: {}.", first_of(&worse).join("; ")))
 }
 
+/// Doubts that are new.
+fn doubtful(remedy: &Remedy) -> Option<String> {
+    let doubts = &remedy.effect.doubts;
+    let first = doubt_text(&remedy.after, doubts.first()?);
+    Some(match doubts.len() {
+        1 => format!("But it brings a doubt: {first}"),
+        many => format!("But it brings {many} doubts, the first: {first}"),
+    })
+}
+
 fn costs(remedy: &Remedy) -> Option<String> {
     let by = remedy.costs.as_s();
     if by >= SAME_TIME {
@@ -321,6 +345,11 @@ fn told_parts(by: &V3, axes: &str) -> String {
         })
         .collect();
     all_of(&told)
+}
+
+/// Whether a displacement is so small that its length would be told as none.
+fn is_told_as_nothing(by: &V3) -> bool {
+    by.norm() < NOTHING
 }
 
 fn signed(angle: Angle) -> String {
