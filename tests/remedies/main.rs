@@ -6,7 +6,9 @@ mod random;
 
 mod cases;
 mod desk;
+mod in_vain;
 mod least;
 mod offered;
+mod outward;
 mod two_links;
 mod worked;

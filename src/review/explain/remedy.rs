@@ -3,7 +3,7 @@ use crate::geometry::V3;
 use crate::review::{Change, Ends, Remedy, RemedyKind, Short, Tried};
 use crate::units::{Angle, Dimension, Length, Measure, Room, Seconds};
 
-use super::direction::{axis, heading};
+use super::direction::{axis, way};
 use super::listing::{all_of, first_of};
 use super::place::along;
 use super::{Judged, Label, Paragraph, check_words, doubt_text, explain};
@@ -12,6 +12,11 @@ use super::{Judged, Label, Paragraph, check_words, doubt_text, explain};
 const SAME_TIME: f64 = 0.005;
 /// A displacement, or a part of one, that is told as 0.0 mm is nothing, m: half of the last digit that is shown.
 const NOTHING: f64 = 5e-5;
+
+/// What is said of a search that was stopped after some of the kinds of remedy.
+pub fn stopped_text([tried, of]: [usize; 2]) -> String {
+    format!("The search was stopped: {tried} of {of} kinds of change were tried.")
+}
 
 /// The remedies of a finding as paragraphs, the least change first, and one more for what was tried without success.
 pub fn remedies_text(judged: &Judged, finding: &Finding, remedies: &[Remedy], tried: &[Tried]) -> Vec<Paragraph> {
@@ -165,13 +170,13 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
             format!("tilt the tool by {} about {} on {number}, {}", angle.measure().text(1), axis(about), at(*ends))
         }
         Change::Shift { ends, by } => {
-            format!("shift {number} by {} {}, that is {}, {}", length(by), heading(&judged.recipe, by), parts(by), at(*ends))
+            format!("shift {number} by {}, {}", displacement(judged, by), at(*ends))
         }
         Change::Via { u, by } => {
             let beside = if is_told_as_nothing(by) {
                 "on the line itself".to_owned()
             } else {
-                format!("{} beside the line, {}, that is {}", length(by), heading(&judged.recipe, by), parts(by))
+                format!("beside the line by {}", displacement(judged, by))
             };
             format!("let {number} stop at a point on the way, {} from its start and {beside}", along(segment, *u))
         }
@@ -290,26 +295,53 @@ fn costs(remedy: &Remedy) -> Option<String> {
     }
 }
 
-/// What was tried without success, and how near each came.
+/// What was tried without success, and how near each came; kinds that came equally near together.
 fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<String> {
-    let near = |room: Room| format!("nearest {}, room {room}", subject(judged, finding));
-    let told: Vec<String> = tried
-        .iter()
-        .map(|one| {
-            let words = kind_words(one.kind);
-            match one.short {
-                Short::Nearest(Some(room)) => format!("{words} ({})", near(room)),
-                Short::Nearest(None) if finding.check == Check::Reach => format!("{words} (still no path)"),
-                Short::Nearest(None) => format!("{words} (it comes to nothing)"),
-                Short::Spoils { segment, check, joint } => {
-                    let label = judged.plan.segments[segment].label();
-                    format!("{words} ({} is in the way on segment {label})", subject_of(judged, check, joint))
-                }
-                Short::Fixed => format!("{words} (the work fixes the points)"),
-            }
-        })
-        .collect();
+    let mut alike: Vec<(String, Vec<String>)> = Vec::new();
+    for one in tried {
+        let (near, kind) = (nearness(judged, finding, one.short), kind_words(one.kind).to_owned());
+        match alike.iter_mut().find(|(known, _)| *known == near) {
+            Some((_, kinds)) => kinds.push(kind),
+            None => alike.push((near, vec![kind])),
+        }
+    }
+    let told: Vec<String> = alike.iter().map(|(near, kinds)| format!("{} ({near})", all_of(kinds))).collect();
     (!told.is_empty()).then(|| format!("{}.", capital(&told.join("; "))))
+}
+
+/// How near something came that was tried without success, or what stands in its way.
+fn nearness(judged: &Judged, finding: &Finding, short: Short) -> String {
+    match short {
+        Short::Nearest(Some(room)) => {
+            let now = match &finding.kind {
+                Kind::Excess(excess) => Some(excess.room),
+                Kind::NoPath(_) | Kind::Unproved(_) => None,
+            };
+            let told = room_words(judged, finding, room);
+            match now.map(|now| room_words(judged, finding, now)) {
+                Some(now) if now == told => format!("no better than now, {now}"),
+                _ => format!("at best {told}"),
+            }
+        }
+        Short::Nearest(None) if finding.check == Check::Reach => "still no path".to_owned(),
+        Short::Nearest(None) => "there is none that could be judged".to_owned(),
+        Short::Spoils { segment, check, joint } => {
+            let label = judged.plan.segments[segment].label();
+            format!("{} is in the way on segment {label}", subject_of(judged, check, joint))
+        }
+        Short::Fixed => "the work fixes the points".to_owned(),
+    }
+}
+
+/// A room of a finding's check and joint: `J4 rate with room 3 %`; of a range, how far the joint stands from its end.
+fn room_words(judged: &Judged, finding: &Finding, room: Room) -> String {
+    match finding.joint.map(|j| &judged.arm.joints()[j]).filter(|_| finding.check == Check::Range) {
+        Some(joint) => {
+            let left = joint.value(room.as_fraction() * joint.range.half());
+            format!("{} {} from its end", joint.name, left.text_down(1))
+        }
+        None => format!("{} with room {room}", subject(judged, finding)),
+    }
 }
 
 fn ends_words(ends: Ends) -> &'static str {
@@ -325,9 +357,10 @@ fn length(by: &V3) -> String {
     Length::m(by.norm()).measure().text(1)
 }
 
-/// The parts of a displacement along the base axes that are not nothing.
-fn parts(by: &V3) -> String {
-    told_parts(by, "base")
+/// A displacement in base axes: its length, where it goes, and its parts: `21.0 mm forward and up (base x +18.4 mm and base z +10.0 mm)`.
+fn displacement(judged: &Judged, by: &V3) -> String {
+    let way = way(&judged.recipe, by).map_or(String::new(), |way| format!(" {way}"));
+    format!("{}{way} ({})", length(by), told_parts(by, "base"))
 }
 
 fn tool_parts(by: &V3) -> String {

@@ -43,6 +43,28 @@ pub enum RemedyKind {
     MountTilt,
 }
 
+impl RemedyKind {
+    /// All kinds.
+    pub const ALL: [Self; 16] = [
+        Self::Slower,
+        Self::Acceleration,
+        Self::FlyBy,
+        Self::Dwell,
+        Self::Turn,
+        Self::Tilt,
+        Self::Shift,
+        Self::Via,
+        Self::JointMove,
+        Self::Posture,
+        Self::Override,
+        Self::Load,
+        Self::Centre,
+        Self::Grip,
+        Self::MountHeight,
+        Self::MountTilt,
+    ];
+}
+
 /// Which of the waypoints at a segment's ends a remedy changes.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Ends {
