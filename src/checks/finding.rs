@@ -1,7 +1,7 @@
 use crate::motion::NoPath;
 use crate::units::{Measure, Room};
 
-use super::{Check, Place, Unproved, Verdict};
+use super::{Check, Peak, Place, Unproved, Verdict};
 
 /// What a finding is about.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -31,6 +31,21 @@ pub struct Excess {
     pub reserve: Room,
     /// Whether it is at the stop, with what was taken or released there.
     pub after_stop: bool,
+}
+
+impl Excess {
+    /// What a peak of the whole cycle asks too much, which is over at no instant of its own.
+    pub(super) fn over_the_cycle(peak: &Peak) -> Self {
+        Self {
+            worst: peak.at,
+            over: None,
+            demand: peak.demand,
+            limit: peak.limit,
+            room: peak.room,
+            reserve: peak.reserve,
+            after_stop: false,
+        }
+    }
 }
 
 /// A finding is one flagged stretch of one segment.

@@ -6,7 +6,8 @@ use anyhow::Context;
 
 use crate::checks::Watch;
 use crate::files::{
-    earlier_record, keep_record, open_itself, read_reasons, read_text, reasons_template, record_path, signed_part, sources,
+    Asks, OwnKey, earlier_record, keep_record, open_itself, read_reasons, read_text, reasons_template, record_path, signed_part,
+    sources,
 };
 use crate::review::{
     Around, Compared, Date, Earlier, Judged, Outcome, Person, Record, SignOff, Sources, compare_record, first_run,
@@ -14,7 +15,7 @@ use crate::review::{
 
 use super::args::SignArgs;
 use super::code::Code;
-use super::key::Signing;
+use super::key::own_key;
 use super::out;
 
 /// What is about to be signed.
@@ -61,13 +62,13 @@ pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
         out::complain("elbowroom sign --template prints a file of answers to fill in for --reasons");
         return Ok(Code::NotClear);
     }
-    let signing = args.key.as_deref().map(Signing::of).transpose()?;
+    let key = args.key.as_deref().map(own_key).transpose()?;
     let person = Person {
         name,
         role: args.role,
         date,
         note: args.note.clone().unwrap_or_default(),
-        key: signing.as_ref().map(Signing::fingerprint),
+        key: key.as_ref().map(OwnKey::fingerprint),
     };
     let stands = earlier.filter(|earlier| is_the_same(&compare_record(earlier, &judged, &sources, &run)));
     let (record, is_new) = match stands {
@@ -84,7 +85,7 @@ pub(super) fn run(args: &SignArgs) -> anyhow::Result<Code> {
             (record, true)
         }
     };
-    let told = keep(&place, &record, is_new, signing.as_ref())?;
+    let told = keep(&place, &record, is_new, key.as_ref())?;
     let still = if taken > 0 { format!("{taken} answers of the earlier record still hold\n") } else { String::new() };
     out::print(&(still + &told))?;
     Ok(Code::Clear)
@@ -95,10 +96,10 @@ fn is_the_same(compared: &Compared) -> bool {
 }
 
 /// Writes record and signature, and tells where they are.
-fn keep(place: &Path, record: &Record, is_new: bool, signing: Option<&Signing>) -> anyhow::Result<String> {
+fn keep(place: &Path, record: &Record, is_new: bool, key: Option<&OwnKey>) -> anyhow::Result<String> {
     let index = record.people.len() - 1;
     // Signed before anything is written, so that a wrong passphrase leaves everything as it was.
-    let signature = signing.map(|signing| signing.sign(&signed_part(record, index))).transpose()?;
+    let signature = key.map(|key| key.sign(&signed_part(record, index), Asks::OnTheTerminal)).transpose()?;
     let kept = keep_record(place, record, is_new, signature.as_deref())?;
     let mut told: Vec<String> = kept.aside.iter().map(|aside| format!("the earlier record is now {}", aside.display())).collect();
     told.push(format!("record: {}, seal {}", place.display(), kept.seal.code()));

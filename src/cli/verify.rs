@@ -1,11 +1,11 @@
 use std::path::{Path, PathBuf};
 
-use anyhow::Context;
+use anyhow::ensure;
 
 use crate::files::{is_there, no_link, read_points, read_record, read_text, record_path, record_text, signature_path, signed_part};
-use crate::review::{Compared, Outcome, Record, Slack, compare_points, compare_record, compare_typed};
+use crate::review::{Compared, Outcome, Record, Slack, compare_override, compare_points, compare_record, compare_typed};
 use crate::seal::{Digest, Signers, check_signature};
-use crate::units::{Angle, Length};
+use crate::units::{Angle, Length, Share};
 
 use super::args::VerifyArgs;
 use super::code::Code;
@@ -29,7 +29,7 @@ pub(super) fn run(args: &VerifyArgs) -> anyhow::Result<Code> {
     if !(stands && signed) {
         code = Code::NotClear;
     }
-    let (told, same) = cell(args, &judged)?;
+    let (told, same) = cell(args, &judged, &record)?;
     lines.extend(told);
     if !same {
         code = Code::NotClear;
@@ -156,7 +156,7 @@ fn signatures(args: &VerifyArgs, record: &Record) -> anyhow::Result<(Vec<String>
 }
 
 /// Whether the cell's copy is what was signed, as far as was given.
-fn cell(args: &VerifyArgs, judged: &crate::review::Judged) -> anyhow::Result<(Vec<String>, bool)> {
+fn cell(args: &VerifyArgs, judged: &crate::review::Judged, record: &Record) -> anyhow::Result<(Vec<String>, bool)> {
     let slack = Slack { angle: Angle::deg(args.angle_slack), length: Length::mm(args.length_slack) };
     let mut differences = Vec::new();
     let mut compared = Vec::new();
@@ -170,11 +170,8 @@ fn cell(args: &VerifyArgs, judged: &crate::review::Judged) -> anyhow::Result<(Ve
         compared.push("tool and load as typed");
     }
     if let Some(share) = args.run_at {
-        let run = crate::review::first_run(judged, &crate::checks::Watch::default()).context("the plan of the first run")?;
-        let highest = run.highest.map_or(0.0, crate::units::Share::as_percent);
-        if !(share <= highest) {
-            differences.push(format!("the cell's override of {share} % is above {highest} %, up to which all is clear"));
-        }
+        ensure!(share > 0.0 && share <= 100.0, "--override is {share}; it must be above 0 and at most 100 %");
+        differences.extend(compare_override(judged, record, Share::percent(share)));
         compared.push("override");
     }
     Ok(match (compared.is_empty(), differences.is_empty()) {

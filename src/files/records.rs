@@ -5,7 +5,7 @@ use crate::review::Record;
 use crate::seal::Digest;
 
 use super::sources::{MOST_PEOPLE, is_there, no_link, read_text, set_aside, signature_path};
-use super::{NotSaved, Rejected, read_record, record_text, write, write_anyway};
+use super::{NoKey, NotSaved, Rejected, read_record, record_text, write, write_anyway};
 
 /// What was written of a record.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -30,6 +30,9 @@ pub enum NotKept {
     /// The earlier record can't be set aside.
     #[error("the earlier record can't be set aside: {0}")]
     Aside(#[from] io::Error),
+    /// The key did not sign.
+    #[error(transparent)]
+    NotSigned(#[from] NoKey),
     /// The system or the file forbids it.
     #[error(transparent)]
     NotSaved(#[from] NotSaved),

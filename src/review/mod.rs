@@ -37,6 +37,6 @@ pub use session::Session;
 pub use shift::shift;
 pub use sign_off::{Answer, Around, Hindrance, NotTaken, OpenDoubt, Question, Reason, SignOff};
 pub use verify::{
-    CellPoint, CellTable, CellTool, Compared, MASS_SLACK, Outcome, Reported, SegmentChange, Slack, compare_points, compare_record,
-    compare_typed, segment_changes,
+    CellPoint, CellTable, CellTool, Compared, MASS_SLACK, Outcome, Reported, SegmentChange, Slack, compare_override,
+    compare_points, compare_record, compare_typed, segment_changes,
 };

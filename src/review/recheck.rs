@@ -7,7 +7,7 @@ use crate::arm::Arm;
 use crate::checks::{SegmentSurvey, Survey, Watch, tightened};
 use crate::program::Recipe;
 
-use super::Judged;
+use super::{FirstRun, Judged, first_run};
 
 /// A ticket names one request; later requests have greater tickets.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
@@ -29,6 +29,8 @@ pub enum Done {
     Judged(Judged),
     /// One segment with its bounds proved closer, and the survey whose segment it is.
     Closer(Arc<Survey>, Box<SegmentSurvey>),
+    /// The plan of the first run of a recipe, and the survey that it belongs to.
+    Planned(Arc<Survey>, Arc<FirstRun>),
 }
 
 /// How far the newest request is.
@@ -44,6 +46,7 @@ pub struct Progress {
 enum Job {
     Judge { ticket: Ticket, arm: Arc<Arm>, recipe: Arc<Recipe>, before: Option<Judged>, watch: Arc<Watch> },
     Tighten { ticket: Ticket, judged: Judged, segment: usize },
+    Plan { ticket: Ticket, judged: Judged, watch: Arc<Watch> },
 }
 
 #[derive(Debug)]
@@ -60,6 +63,8 @@ pub struct Recheck {
     replies: Receiver<Reply>,
     newest: Ticket,
     running: Option<Running>,
+    /// Stops a plan of the first run that is being made.
+    planning: Option<Arc<Watch>>,
 }
 
 impl Recheck {
@@ -71,7 +76,7 @@ impl Recheck {
         let (jobs, taken) = unbounded::<Job>();
         let (answer, replies) = unbounded();
         thread::Builder::new().name("recheck".to_owned()).spawn(move || work(&taken, &answer))?;
-        Ok(Self { jobs, replies, newest: Ticket(0), running: None })
+        Ok(Self { jobs, replies, newest: Ticket(0), running: None, planning: None })
     }
 
     /// Asks for a recipe to be checked; what `before` judged alike is taken over. An older request is stopped.
@@ -89,6 +94,15 @@ impl Recheck {
     /// Asks for the bounds of one segment (counted from 0) of what was judged last to be proved closer.
     pub fn tighten(&mut self, judged: &Judged, segment: usize) {
         let _ = self.jobs.send(Job::Tighten { ticket: self.newest, judged: judged.clone(), segment });
+    }
+
+    /// Asks for the plan of the first run of what was judged last. A check that is asked for meanwhile stops it.
+    pub fn plan(&mut self, judged: &Judged) {
+        let watch = Arc::new(Watch::default());
+        if let Some(older) = self.planning.replace(Arc::clone(&watch)) {
+            older.stop();
+        }
+        let _ = self.jobs.send(Job::Plan { ticket: self.newest, judged: judged.clone(), watch });
     }
 
     /// Where replies arrive, to be waited for together with other news. Hand each to [`Recheck::accept`].
@@ -116,6 +130,9 @@ impl Recheck {
         if let Some(running) = self.running.take() {
             running.watch.stop();
         }
+        if let Some(planning) = self.planning.take() {
+            planning.stop();
+        }
     }
 }
 
@@ -136,6 +153,9 @@ fn work(jobs: &Receiver<Job>, answer: &Sender<Reply>) {
             Job::Tighten { ticket, judged, segment } => {
                 let closer = tightened(&judged.arm, &judged.recipe, &judged.plan, segment);
                 Some(Reply { ticket, done: Done::Closer(judged.survey, Box::new(closer)) })
+            }
+            Job::Plan { ticket, judged, watch } => {
+                first_run(&judged, &watch).map(|run| Reply { ticket, done: Done::Planned(judged.survey, Arc::new(run)) })
             }
         };
         if let Some(reply) = reply

@@ -2,7 +2,7 @@ use std::sync::Arc;
 
 use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::Edit;
-use crate::review::{Judged, Progress, Told};
+use crate::review::{FirstRun, Judged, Progress, Told};
 
 use super::app::FileWish;
 use super::jog::Deed;
@@ -126,4 +126,6 @@ pub enum Action {
     Told(Option<Told>, Option<[usize; 2]>),
     /// A segment of this survey with its bounds proved closer.
     Closer(Arc<Survey>, Box<SegmentSurvey>),
+    /// The plan of the first run is made, of this survey.
+    Planned(Arc<Survey>, Arc<FirstRun>),
 }

@@ -5,7 +5,7 @@ use ratatui::layout::Rect;
 use crate::arm::Arm;
 use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::{Edit, Recipe};
-use crate::review::{History, Judged, Progress, Session};
+use crate::review::{FirstRun, History, Judged, Progress, Session};
 
 use super::action::Action;
 use super::curve::Subject;
@@ -95,6 +95,10 @@ pub enum Question {
     SignName,
     /// What they want to say.
     SignNote,
+    /// The key file to sign with.
+    KeyFile,
+    /// The passphrase of that key, which is not shown.
+    Passphrase,
     /// What was found about a doubt, by its number.
     Settle(usize),
     /// Why a finding is accepted, by its number.
@@ -200,10 +204,24 @@ pub enum FileWish {
     SignOff,
     /// Write the record of the sign-off.
     WriteRecord,
+    /// Read the key file of this name, to sign with.
+    TakeKey(String),
+    /// Unlock that key with this passphrase.
+    Unlock(Hidden),
     /// Tell what is different since the record was made.
     SinceRecord,
     /// Open the recipe although somebody else has it open.
     OpenAllTheSame,
+}
+
+/// A text that is neither drawn nor told, such as a passphrase.
+#[derive(Clone, PartialEq, Eq)]
+pub struct Hidden(pub String);
+
+impl std::fmt::Debug for Hidden {
+    fn fmt(&self, f: &mut std::fmt::Formatter) -> std::fmt::Result {
+        f.write_str("(hidden)")
+    }
 }
 
 /// What the chart is set to.
@@ -262,6 +280,10 @@ pub struct App {
     pub tighten: Option<usize>,
     /// A segment with its bounds proved closer, and the survey that it belongs to.
     pub closer: Option<(Arc<Survey>, Box<SegmentSurvey>)>,
+    /// What is to be done once the plan of the first run is made.
+    pub planning: Option<FileWish>,
+    /// The plan of the first run, and the survey that it belongs to.
+    pub first_run: Option<(Arc<Survey>, Arc<FirstRun>)>,
     /// What is known of the remedies of the finding that is looked at.
     pub remedies: Remedies,
     /// Lines that the explanation is scrolled down.
@@ -302,6 +324,8 @@ impl App {
             chart: ChartSetting { check: Check::Rate, every_joint: false, cycle: false },
             tighten: None,
             closer: None,
+            planning: None,
+            first_run: None,
             remedies: Remedies::default(),
             why_scroll: 0,
             found: String::new(),
@@ -309,6 +333,12 @@ impl App {
             wish: Wish::GoOn,
             scene: Scene::default(),
         }
+    }
+
+    /// The plan of the first run of what is judged now, if it is made.
+    pub fn first_run(&self) -> Option<&Arc<FirstRun>> {
+        let judged = self.judged()?;
+        self.first_run.as_ref().filter(|(survey, _)| Arc::ptr_eq(survey, &judged.survey)).map(|(_, run)| run)
     }
 
     /// The recipe that the panes show: the one that was judged last, so that no pane mixes it with a newer one.

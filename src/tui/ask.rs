@@ -2,7 +2,7 @@ use crate::checks::Check;
 use crate::review::{Judged, check_words};
 
 use super::action::Action;
-use super::app::{App, Asking, FileWish, Mode, Question, Wish};
+use super::app::{App, Asking, FileWish, Hidden, Mode, Question, Wish};
 use super::jog;
 use super::update::follow_finding;
 use super::{signing, stretch};
@@ -15,6 +15,8 @@ pub fn prompt(question: Question) -> &'static str {
         Question::SaveAs => "Save as: ",
         Question::SignName => "Your name: ",
         Question::SignNote => "Note: ",
+        Question::KeyFile => "Key file (such as ~/.ssh/id_ed25519; empty: a name only): ",
+        Question::Passphrase => "Passphrase of the key (not shown): ",
         Question::Settle(_) => "What you found: ",
         Question::AcceptBecause(_) => "Accepted because: ",
         Question::RefuseBecause(_) => "Refused because: ",
@@ -30,8 +32,8 @@ pub(super) fn answer(app: &mut App, action: &Action) {
     let Mode::Asking(asking) = &mut app.mode else { return };
     match action {
         Action::Type(sign) if !sign.is_control() => asking.typed.push(*sign),
-        Action::Back => app.mode = Mode::Panes,
-        Action::Erase if asking.typed.is_empty() => app.mode = Mode::Panes,
+        Action::Back => app.mode = asked_from(asking.question),
+        Action::Erase if asking.typed.is_empty() => app.mode = asked_from(asking.question),
         Action::Erase => asking.typed.truncate(asking.typed.len() - asking.typed.chars().next_back().map_or(0, char::len_utf8)),
         Action::Enter => {
             let asking = asking.clone();
@@ -44,15 +46,41 @@ pub(super) fn answer(app: &mut App, action: &Action) {
     }
 }
 
+/// What the screen was doing when it asked.
+fn asked_from(question: Question) -> Mode {
+    match question {
+        Question::SignName
+        | Question::SignNote
+        | Question::KeyFile
+        | Question::Passphrase
+        | Question::Settle(_)
+        | Question::AcceptBecause(_)
+        | Question::RefuseBecause(_) => Mode::SignOff,
+        _ => Mode::Panes,
+    }
+}
+
 /// Goes where the answer says, or tells why not.
 fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
     let typed = asking.typed.trim().to_owned();
+    if matches!(asked_from(asking.question), Mode::SignOff) {
+        app.mode = Mode::SignOff;
+    }
     match asking.question {
         asked @ (Question::SignName
         | Question::SignNote
         | Question::Settle(_)
         | Question::AcceptBecause(_)
         | Question::RefuseBecause(_)) => signing::answered(app, asked, &typed),
+        Question::KeyFile => {
+            app.wish = Wish::File(FileWish::TakeKey(typed));
+            Ok(())
+        }
+        // Blanks are part of it.
+        Question::Passphrase => {
+            app.wish = Wish::File(FileWish::Unlock(Hidden(asking.typed.clone())));
+            Ok(())
+        }
         Question::SaveAs | Question::ShiftBy if typed.is_empty() => Ok(()),
         Question::ShiftBy => {
             stretch::act(app, &stretch::OnStretch::Shift(typed));

@@ -2,7 +2,7 @@ use ratatui::style::Style;
 use unicode_width::UnicodeWidthStr;
 
 use super::action::Action;
-use super::app::{App, Mode, Page};
+use super::app::{App, Mode, Page, Question};
 use super::ask;
 use super::keys::{BINDINGS, Binding};
 use super::sheet::{Sheet, fit};
@@ -15,8 +15,9 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         let x = sheet.put(0, 0, prompt, theme.strong());
         // The end of what is typed stays in view.
         let room = sheet.width().saturating_sub(x + 1);
-        let skipped = asking.typed.chars().count().saturating_sub(room);
-        let shown: String = asking.typed.chars().skip(skipped).collect();
+        let typed = if asking.question == Question::Passphrase { "" } else { &asking.typed };
+        let skipped = typed.chars().count().saturating_sub(room);
+        let shown: String = typed.chars().skip(skipped).collect();
         let x = sheet.put(x, 0, &shown, Style::new());
         sheet.put(x, 0, " ", theme.selected());
         return;

@@ -1,5 +1,7 @@
 use ratatui::style::Style;
 
+use std::sync::Arc;
+
 use crate::review::{Answer, Around, Date, FirstRun, Person, Question, Reason, Role, SignOff, Sources, explain};
 
 use super::action::Action;
@@ -16,11 +18,13 @@ pub struct Signing {
     /// What was read for it.
     pub sources: Sources,
     /// The plan of the first run.
-    pub run: FirstRun,
+    pub run: Arc<FirstRun>,
     /// The same in words, a sentence each.
     pub plan: Vec<String>,
     /// Who answers.
     pub name: String,
+    /// The fingerprint of the key that signs; none for a name only.
+    pub key: Option<String>,
     /// As what.
     pub role: Role,
     /// What they want to say.
@@ -44,6 +48,8 @@ pub enum Row {
     Plan,
     /// Who signs.
     Name,
+    /// With which key.
+    Key,
     /// As what.
     Role,
     /// A note.
@@ -67,12 +73,12 @@ impl Signing {
         let doubts = (0..self.sign_off.doubts().len()).map(Row::Doubt);
         let findings = (0..self.sign_off.questions().len()).map(Row::Finding);
         let data = (0..self.sign_off.data().len()).map(Row::Datum);
-        doubts.chain(findings).chain(data).chain([Row::Plan, Row::Name, Row::Role, Row::Note, Row::Sign]).collect()
+        doubts.chain(findings).chain(data).chain([Row::Plan, Row::Name, Row::Key, Row::Role, Row::Note, Row::Sign]).collect()
     }
 
-    /// The person as they would stand under the record, by name alone.
+    /// The person as they would stand under the record.
     pub fn person(&self) -> Person {
-        Person { name: self.name.clone(), role: self.role, date: self.date, note: self.note.clone(), key: None }
+        Person { name: self.name.clone(), role: self.role, date: self.date, note: self.note.clone(), key: self.key.clone() }
     }
 
     fn reason(&self, words: &str) -> Reason {
@@ -147,6 +153,7 @@ fn enter(app: &mut App, row: Row) {
             ask(app, Asked::SignName, typed);
         }
         Row::Plan => {}
+        Row::Key => ask(app, Asked::KeyFile, String::new()),
         Row::Role => signing.role = if signing.role == Role::Prepared { Role::Checked } else { Role::Prepared },
         Row::Note => {
             let typed = signing.note.clone();
@@ -274,6 +281,7 @@ fn told(signing: &Signing, row: Row) -> (&'static str, String) {
             ("   ", format!("first run: clear up to {}", signing.run.highest.map_or("no override".to_owned(), |at| at.to_string())))
         }
         Row::Name => ("   ", format!("name: {}", if signing.name.is_empty() { "-" } else { &signing.name })),
+        Row::Key => ("   ", format!("key: {}", signing.key.as_deref().unwrap_or("none, a name only"))),
         Row::Role => ("   ", format!("as: {}", signing.role.words())),
         Row::Note => ("   ", format!("note: {}", if signing.note.is_empty() { "-" } else { &signing.note })),
         Row::Sign => ("   ", "sign: write the record".to_owned()),
@@ -309,6 +317,11 @@ fn detail(app: &App, signing: &Signing, row: Row, width: usize) -> Vec<String> {
         }
         Row::Plan => signing.plan.join(" "),
         Row::Name => "Who stands for it.".to_owned(),
+        Row::Key => {
+            "Enter names your own SSH key file. Ed25519 and ECDSA P-256 sign here, others and public keys of agents through \
+                     ssh-keygen. Without a key the record holds your name only, which anybody can type."
+                .to_owned()
+        }
         Row::Role => "Enter changes between prepared by and checked by.".to_owned(),
         Row::Note => "What is to be said with the name; may be empty.".to_owned(),
         Row::Sign => {
@@ -317,8 +330,7 @@ fn detail(app: &App, signing: &Signing, row: Row, width: usize) -> Vec<String> {
             if hindrances.is_empty() {
                 format!(
                     "The record says what was judged and what was not ({not_checked} matters, c lists them); it replaces no risk \
-                     assessment, no safeguard and no trial at reduced speed, and is no leave to run an arm. Local codes come first. To \
-                     sign it with your key: elbowroom sign --key."
+                     assessment, no safeguard and no trial at reduced speed, and is no leave to run an arm. Local codes come first."
                 )
             } else {
                 format!("Still in the way: {}.", hindrances.join("; "))

@@ -40,6 +40,15 @@ pub fn update(app: &mut App, action: Action) {
         }
         Action::Told(told, progress) => remedies::hear(app, told, progress),
         Action::Closer(survey, closer) => app.closer = Some((survey, closer)),
+        Action::Planned(survey, run) => {
+            app.first_run = Some((survey, run));
+            // What it was made for goes on, unless the person has turned to something else.
+            match app.planning.take() {
+                Some(wish) if matches!(app.mode, Mode::Panes) && app.first_run().is_some() => app.wish = Wish::File(wish),
+                Some(_) => app.message = Some("the plan of the first run is made; ask again".to_owned()),
+                None => {}
+            }
+        }
         asked => {
             app.message = None;
             by_mode(app, asked);

@@ -13,7 +13,7 @@ const DIRECTIONS: usize = 90;
 const SHORTER: [f64; 3] = [0.95, 0.75, 0.45];
 
 /// Directions spread evenly over the sphere by the golden angle (a published way; from memory).
-fn directions() -> impl Iterator<Item = V3> {
+pub fn directions() -> impl Iterator<Item = V3> {
     let golden = std::f64::consts::PI * (3.0 - 5f64.sqrt());
     (0..DIRECTIONS).map(move |k| {
         let z = 1.0 - (2.0 * k as f64 + 1.0) / DIRECTIONS as f64;
@@ -23,7 +23,7 @@ fn directions() -> impl Iterator<Item = V3> {
     })
 }
 
-fn ends(which: Ends, to: usize) -> Vec<usize> {
+pub fn ends(which: Ends, to: usize) -> Vec<usize> {
     match which {
         Ends::Both => vec![to - 1, to],
         Ends::Start => vec![to - 1],

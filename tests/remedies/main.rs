@@ -5,6 +5,7 @@
 mod random;
 
 mod cases;
+mod dense;
 mod desk;
 mod in_vain;
 mod least;

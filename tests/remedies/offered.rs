@@ -14,7 +14,7 @@ fn key(judged: &Judged, finding: &Finding, edit: Option<&Edit>) -> (usize, Check
         Some(Edit::Insert { index, .. }) if to > *index => to - 1,
         _ => to,
     };
-    (if finding.check == Check::Rms { 0 } else { to }, finding.check, finding.joint)
+    (if finding.check.is_of_cycle() { 0 } else { to }, finding.check, finding.joint)
 }
 
 /// Judges the recipe afresh with the edit and holds what was claimed against it.

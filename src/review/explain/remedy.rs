@@ -26,13 +26,17 @@ pub fn remedies_text(judged: &Judged, finding: &Finding, remedies: &[Remedy], tr
         let opening = if remedies.is_empty() { "Nothing that was tried settles it." } else { "Tried without success:" };
         told.push(Paragraph::says(Label::Remedies, format!("{opening} {text}")));
     } else if told.is_empty() {
-        told.push(Paragraph::says(Label::Remedies, nothing_to_try(finding)));
+        told.push(Paragraph::says(Label::Remedies, nothing_to_try(judged, finding)));
     }
     told
 }
 
-fn nothing_to_try(finding: &Finding) -> &'static str {
+fn nothing_to_try(judged: &Judged, finding: &Finding) -> &'static str {
+    let lost = judged.plan.version(finding.segment, finding.stop).trouble.is_some();
     match finding.kind {
+        _ if lost && finding.check != Check::Reach => {
+            "This segment has no path to its end yet. Settle that first; this finding may go with it, or change."
+        }
         Kind::Unproved(_) => "Nothing in the program settles this; the data that are missing do.",
         _ => "No change of this segment alone settles this; look at the waypoint and at the segment before it.",
     }

@@ -1,5 +1,7 @@
 /// In how many even steps a demand that need not fall with speed is looked for from above.
 const STEPS: u32 = 20;
+/// No step is longer than this share of the number it starts from, so that small numbers are looked at as closely.
+const SHORTER: f64 = 0.08;
 
 /// The greatest whole number below `above` that is found clear, where what is clear at one number is clear at every lower one.
 /// `guess` is where the search starts.
@@ -20,10 +22,15 @@ pub(super) fn greatest(above: u32, guess: u32, mut clear: impl FnMut(u32) -> boo
     between(low, high, &mut clear)
 }
 
-/// The same where nothing is known of how clear numbers lie: from above in even steps to the first that is clear, and from there
+/// The same where nothing is known of how clear numbers lie: from above in steps to the first that is clear, and from there
 /// up again. What is yielded is clear and the next number is not, unless that is `above`.
 pub(super) fn greatest_from_above(above: u32, guess: u32, mut clear: impl FnMut(u32) -> bool) -> Option<u32> {
     let mut tried: Vec<u32> = (1..STEPS).map(|k| (u64::from(above) * u64::from(k) / u64::from(STEPS)) as u32).collect();
+    let mut at = f64::from(above);
+    while at > 1.0 {
+        at *= 1.0 - SHORTER;
+        tried.push(at as u32);
+    }
     tried.extend([guess, 1]);
     tried.retain(|at| *at > 0 && *at < above);
     tried.sort_unstable();

@@ -10,6 +10,10 @@ pub fn kinds_for(judged: &Judged, finding: &Finding) -> Vec<RemedyKind> {
         Turn, Via,
     };
     let segment = judged.plan.version(finding.segment, finding.stop);
+    if segment.trouble.is_some() && finding.check != Check::Reach {
+        // What is found on the way to where a path ends may go or change with it.
+        return Vec::new();
+    }
     let mut kinds: Vec<RemedyKind> = match finding.check {
         Check::Rate => vec![Slower, FlyBy, JointMove, Posture, Via, Override, Turn, Tilt, Shift],
         Check::Accel => vec![Slower, Acceleration, FlyBy, JointMove, Posture, Via, Override, Turn, Tilt, Shift],

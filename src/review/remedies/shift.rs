@@ -10,13 +10,13 @@ use super::trial::{Aim, Nearest, Trial};
 use super::{Change, Ends, Outcome, Short, size};
 
 /// Displacements that are tried, m.
-const SHIFTS: Reach = Reach { first: 0.002, most: 0.128 };
+const SHIFTS: Reach = Reach { first: 0.002, most: 0.128, widest: 0.032 };
 /// Tilts that are tried, rad: half a degree to 16 degrees.
-const TILTS: Reach = Reach { first: 0.008_73, most: 0.28 };
+const TILTS: Reach = Reach { first: 0.008_73, most: 0.28, widest: 0.07 };
 /// Another choice of ends is taken only if it needs no more than this share of what the first needs: one point rather than two.
-const FEWER: f64 = 0.985;
+const FEWER: f64 = 0.992;
 /// A found displacement grows by this share at a time where rounding it to what people type has spoilt it.
-const ROUNDED_UP: f64 = 0.01;
+const ROUNDED_UP: f64 = 0.005;
 /// How often it may grow.
 const GROWS: usize = 12;
 

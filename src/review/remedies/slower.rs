@@ -57,7 +57,9 @@ fn lowered(trial: &Trial, above: u32, guess: u32, edit: impl Fn(u32) -> Edit) ->
         nearest.note(seen)
     };
     for aim in [Aim::Speeds, Aim::Check] {
-        let found = if trial.finding.check.grows_with_speed() {
+        // Lower speeds are lower all along, but a joint's acceleration is a sum whose parts may have relieved each other.
+        let falls = trial.finding.check.grows_with_speed() && trial.finding.check != Check::Accel;
+        let found = if falls {
             greatest(above, guess, |steps| clear(steps, aim))
         } else {
             greatest_from_above(above, guess, |steps| clear(steps, aim))

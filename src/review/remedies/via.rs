@@ -8,7 +8,7 @@ use super::trial::{Aim, Nearest, Trial};
 use super::{Change, Outcome, size};
 
 /// How far beside the line a point is tried, m.
-const BESIDE: Reach = Reach { first: 0.004, most: 0.128 };
+const BESIDE: Reach = Reach { first: 0.004, most: 0.128, widest: 0.064 };
 /// A point is added no nearer to an end than this share of the line.
 const FROM_END: f64 = 0.05;
 /// Where the trouble is at an end, a point is added at this share of the line from there.

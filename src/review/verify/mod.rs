@@ -1,9 +1,11 @@
 //! Whether a record still stands: what changed since, and whether the same content still yields the same results.
 
 mod cell;
+mod override_set;
 mod segments;
 
 pub use cell::{CellPoint, CellTable, CellTool, MASS_SLACK, Reported, Slack, compare_points, compare_typed};
+pub use override_set::compare_override;
 pub use segments::{SegmentChange, segment_changes};
 
 use crate::checks::Check;

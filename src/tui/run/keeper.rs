@@ -3,8 +3,8 @@ use std::sync::Arc;
 use std::time::SystemTime;
 
 use crate::files::{
-    Aside, Content, Journal, Lock, NotLocked, NotSaved, Recovered, changes_on_disk, left_behind, open, read_recipe, text_of_edited,
-    write, write_anyway,
+    Aside, Content, Journal, Lock, NotLocked, NotSaved, OwnKey, Recovered, changes_on_disk, left_behind, open, read_recipe,
+    text_of_edited, write, write_anyway,
 };
 use crate::program::Recipe;
 use crate::review::History;
@@ -29,6 +29,10 @@ pub(super) struct Keeper {
     journal: Option<Journal>,
     lock: Option<Lock>,
     left_behind: Option<Recovered>,
+    /// The key that a sign-off is signed with.
+    pub(super) key: Option<OwnKey>,
+    /// The name of a key file whose passphrase is asked for.
+    pub(super) locked: Option<String>,
     /// Whether somebody was told already that edits can't be noted down.
     complained: bool,
 }
@@ -48,6 +52,8 @@ impl Keeper {
             aside,
             lock: None,
             left_behind: None,
+            key: None,
+            locked: None,
             complained: false,
         };
         keeper.take_lock(app, false);
@@ -105,6 +111,8 @@ impl Keeper {
             FileWish::SignOff => self.open_sign_off(app),
             FileWish::SinceRecord => self.since_record(app),
             FileWish::WriteRecord => self.write_record(app),
+            FileWish::TakeKey(name) => self.take_key(app, name, None),
+            FileWish::Unlock(passphrase) => self.unlock(app, &passphrase.0),
             FileWish::OpenAllTheSame => self.take_lock(app, true),
         }
     }

@@ -112,6 +112,9 @@ fn watched(started: &Started, options: Options) -> anyhow::Result<Option<i32>> {
             Turn::File(wish) => {
                 keeper.note(&mut app);
                 keeper.act(&mut app, &wish);
+                if let Some(judged) = app.planning.as_ref().and(app.judged()) {
+                    recheck.plan(judged);
+                }
                 // Saving may end in quitting.
                 if std::mem::replace(&mut app.wish, Wish::GoOn) == Wish::Quit {
                     keeper.end();
@@ -161,7 +164,10 @@ fn wait(app: &mut App, recheck: &mut Recheck, desk: &mut Desk, news: &Receiver<N
                 told = news.try_recv().ok();
             }
         }
-        recv(replies) -> reply => accept(app, recheck, reply.context("the check came to an unexpected end")?),
+        recv(replies) -> reply => {
+            accept(app, recheck, reply.context("the check came to an unexpected end")?);
+            return Ok(wished(app));
+        }
         recv(remedies) -> told => {
             let told = told.context("the search for remedies came to an unexpected end")?;
             if let Some(told) = desk.accept(told) {
@@ -187,6 +193,7 @@ fn accept(app: &mut App, recheck: &mut Recheck, reply: Reply) {
         }
         Some(Done::Judged(judged)) => update(app, Action::Previewed(Box::new(judged))),
         Some(Done::Closer(survey, closer)) => update(app, Action::Closer(survey, closer)),
+        Some(Done::Planned(survey, run)) => update(app, Action::Planned(survey, run)),
         None => {}
     }
 }
@@ -209,13 +216,18 @@ fn hear(app: &mut App, news: &News) -> anyhow::Result<Turn> {
     if let Some(action) = action {
         update(app, action);
     }
-    Ok(match std::mem::replace(&mut app.wish, Wish::GoOn) {
+    Ok(wished(app))
+}
+
+/// What the app wishes to be done.
+fn wished(app: &mut App) -> Turn {
+    match std::mem::replace(&mut app.wish, Wish::GoOn) {
         Wish::GoOn => Turn::Draw,
         Wish::Quit => Turn::Quit,
         Wish::Suspend => Turn::Suspend,
         Wish::File(wish) => Turn::File(wish),
         Wish::Copy(text) => Turn::Copy(text),
-    })
+    }
 }
 
 /// Lets the shell have the terminal until it sends this program on.

@@ -1,23 +1,73 @@
+use std::path::PathBuf;
+use std::sync::Arc;
 use std::time::{SystemTime, UNIX_EPOCH};
 
-use crate::checks::Watch;
-use crate::files::{NotKept, earlier_record, keep_record, open, open_itself, record_path, sources};
+use crate::files::{Asks, NotKept, OwnKey, earlier_record, keep_record, open, open_itself, record_path, signed_part, sources};
 use crate::review::{
-    Date, Earlier, Outcome, Record, Role, SegmentChange, SignOff, compare_record, first_run, first_run_text, segment_changes,
+    Date, Earlier, FirstRun, Outcome, Record, Role, SegmentChange, SignOff, compare_record, first_run_text, segment_changes,
     stage_words,
 };
-use crate::tui::app::{App, Mode, Page};
+use crate::tui::app::{App, Asking, FileWish, Mode, Page, Question};
 use crate::tui::signing::{Signing, hindrances};
 
 use super::keeper::Keeper;
 
+/// The plan of the first run, if it is made; otherwise it is asked for, and what was wished goes on with it.
+fn planned(app: &mut App, wish: &FileWish) -> Option<Arc<FirstRun>> {
+    let made = app.first_run().cloned();
+    if made.is_none() {
+        app.message = Some("the plan of the first run is being made".to_owned());
+        app.planning = Some(wish.clone());
+    }
+    made
+}
+
 impl Keeper {
+    /// Reads a key file to sign with; a locked one asks for its passphrase. No name is no key.
+    pub(super) fn take_key(&mut self, app: &mut App, name: &str, passphrase: Option<&str>) {
+        app.mode = Mode::SignOff;
+        self.key = None;
+        let Some(signing) = &mut app.signing else { return };
+        signing.key = None;
+        if name.is_empty() {
+            return;
+        }
+        let file = self.named(name);
+        match OwnKey::read(&file, passphrase) {
+            Ok(key) => {
+                signing.key = Some(key.fingerprint());
+                self.key = Some(key);
+            }
+            Err(no_key) if no_key.is_locked() => {
+                self.locked = Some(name.to_owned());
+                app.mode = Mode::Asking(Asking { question: Question::Passphrase, typed: String::new() });
+            }
+            Err(no_key) => app.message = Some(no_key.to_string().replace('\n', " ")),
+        }
+    }
+
+    /// Unlocks the key that asked for its passphrase.
+    pub(super) fn unlock(&mut self, app: &mut App, passphrase: &str) {
+        if let Some(name) = self.locked.take() {
+            self.take_key(app, &name, Some(passphrase));
+        }
+    }
+
+    /// The file that a typed name means: `~/` is the person's own folder.
+    fn named(&self, name: &str) -> PathBuf {
+        match (name.strip_prefix("~/"), std::env::var_os("HOME")) {
+            (Some(rest), Some(home)) => PathBuf::from(home).join(rest),
+            _ => PathBuf::from(name),
+        }
+    }
+
     /// Opens a sign-off of what stands in the files, with what an earlier record answered already.
     pub(super) fn open_sign_off(&self, app: &mut App) {
         let Some((path, judged)) = self.path.as_ref().zip(app.judged().cloned()) else {
             app.message = Some("the built-in demonstration has no file to sign; save it elsewhere first".to_owned());
             return;
         };
+        let Some(run) = planned(app, &FileWish::SignOff) else { return };
         let opened = match open_itself(path) {
             Ok(opened) => opened,
             Err(rejected) => {
@@ -45,10 +95,9 @@ impl Keeper {
         let seconds = SystemTime::now().duration_since(UNIX_EPOCH).map_or(0, |since| since.as_secs());
         let date = Date::after_1970(seconds);
         let (name, note) = (String::new(), String::new());
-        let run = first_run(&judged, &Watch::default()).expect("nobody stops this watch");
         let stages = run.stages.iter().map(|stage| stage_words(&judged, stage));
         let plan = stages.chain(first_run_text(&judged, &run)).collect();
-        app.signing = Some(Signing { sign_off, sources, run, plan, name, role: Role::Prepared, note, date, chosen: 0 });
+        app.signing = Some(Signing { sign_off, sources, run, plan, name, role: Role::Prepared, note, date, chosen: 0, key: None });
         app.mode = Mode::SignOff;
     }
 
@@ -58,6 +107,7 @@ impl Keeper {
             app.message = Some("the built-in demonstration has no record".to_owned());
             return;
         };
+        let Some(run) = planned(app, &FileWish::SinceRecord) else { return };
         let (record, opened) = match (earlier_record(&record_path(path)), open(path)) {
             (Ok(Some(record)), Ok(opened)) => (record, opened),
             (Ok(None), _) => {
@@ -70,7 +120,6 @@ impl Keeper {
             }
         };
         let sources = sources(&opened);
-        let run = first_run(&judged, &Watch::default()).expect("nobody stops this watch");
         let now = Record::of(&judged, &sources, &run, &Earlier::default(), Date::after_1970(0));
         let value = |value: Option<String>| value.unwrap_or_else(|| "nothing".to_owned());
         let data = crate::seal::changes(&record.content, &now.content).into_iter();
@@ -115,7 +164,10 @@ impl Keeper {
                 }
             };
             record.people.push(signing.person());
-            keep_record(&place, &record, stands.is_none(), None)
+            // Signed before anything is written, so that a key that fails leaves everything as it was.
+            let part = signed_part(&record, record.people.len() - 1);
+            let signature = self.key.as_ref().map(|key| key.sign(&part, Asks::Never)).transpose()?;
+            keep_record(&place, &record, stands.is_none(), signature.as_deref())
         });
         app.message = Some(match written {
             Ok(kept) => {
