@@ -3,18 +3,21 @@
 use std::sync::Arc;
 
 use elbowroom::checks::{Check, Finding, Kind, Watch};
-use elbowroom::program::{Arrive, Edit};
+use elbowroom::program::Edit;
 use elbowroom::review::{Judged, RemedyKind, Short, Tried, kind_words, remedies_text};
-use elbowroom::units::{Share, Speed};
 
-use crate::cases::{SIX, demonstration, found, judged, past_a_straight_wrist, remedies};
+use crate::cases::{SIX, found, judged, past_a_straight_wrist, remedies};
+
+/// A six-axis arm whose file gives all that torque in motion needs.
+const FULL: &str = include_str!("../../recipes/arms/six-axis-12kg.toml");
 
 const TOOL: &str = "[usual]\naccel = 1000\n[[tool]]\nname = \"gripper\"\ntcp = { xyz = [0, 0, 165] }\nmass = 3.4\ncom = [0, 0, 60]\n\
                     turns-freely = true\n[[load]]\nname = \"housing\"\nmass = 6.5\ncom = [0, 0, -15]\n";
 
 /// An arm so weak at J2 that nothing in the program helps it to hold itself.
 fn too_weak() -> Judged {
-    let weak = SIX.replace("holding = 690", "holding = 300");
+    let weak = FULL.replace("holding = 690, peak = 1500", "holding = 300, peak = 320");
+    assert_ne!(weak, FULL);
     judged(
         &weak,
         &format!("carrying = \"housing\"\nrepeat = \"start\"\n{TOOL}"),
@@ -91,13 +94,7 @@ fn far_away() -> Judged {
 }
 
 fn all() -> Vec<Judged> {
-    vec![
-        too_weak(),
-        hard_corner(),
-        far_away(),
-        demonstration(),
-        past_a_straight_wrist("[acceptance]\nsingular-least = 0.9\ntool-speed-left = 3000"),
-    ]
+    vec![too_weak(), hard_corner(), far_away(), past_a_straight_wrist("[acceptance]\nsingular-least = 0.9\ntool-speed-left = 3000")]
 }
 
 fn reserve(finding: &Finding) -> f64 {
@@ -136,7 +133,9 @@ fn what_was_tried_in_vain_is_told_with_how_near_it_came() {
             }
         }
     }
-    let missing: Vec<RemedyKind> = RemedyKind::ALL.into_iter().filter(|kind| !seen.contains(kind)).collect();
+    // A stop takes the blend away and what it asks with it, so a fly-by point always has that.
+    let may_fail = RemedyKind::ALL.into_iter().filter(|kind| *kind != RemedyKind::FlyBy);
+    let missing: Vec<RemedyKind> = may_fail.filter(|kind| !seen.contains(kind)).collect();
     assert!(missing.is_empty(), "no case tries {missing:?} in vain");
 }
 
@@ -168,30 +167,17 @@ fn the_nearest_of_a_load_that_is_never_light_enough_is_the_lightest() {
     assert!((told - lightest).abs() < 2e-3, "{told} {lightest}");
 }
 
-/// Where the ramp alone asks too much, no pace of the corner is slow enough; the nearest is no worse than any that is judged here.
+/// What a line asks is no finding of the corner past its end: the corner is settled by itself, whatever else is left.
 #[test]
-fn the_nearest_of_a_pace_that_is_never_slow_enough_is_as_good_as_any() {
+fn a_corner_is_settled_even_where_the_line_before_it_is_not() {
     let judged = hard_corner();
-    let of_blend = |finding: &&Finding| judged.plan.segments[finding.segment].blend && finding.check == Check::Accel;
-    for finding in judged.survey.findings.iter().filter(of_blend) {
-        let (_, vain) = remedies(&judged, finding);
-        if !vain.iter().any(|one| one.kind == RemedyKind::Slower && matches!(one.short, Short::Nearest(Some(_)))) {
-            continue;
-        }
-        let told = tried(&judged, finding, RemedyKind::Slower);
-        for percent in [10.0, 50.0, 90.0] {
-            let corner = judged.plan.segments[finding.segment].to;
-            let slowed = |index: usize| {
-                Edit::change(&judged.recipe, index, |waypoint| {
-                    if let Some(Arrive::Line(speed)) = &mut waypoint.arrive {
-                        speed.speed = Some(Speed::mm_per_s(700.0 * Share::percent(percent).as_fraction()));
-                    }
-                })
-            };
-            let there = room(&judged, finding, &Edit::Together(vec![slowed(corner), slowed(corner + 1)]));
-            assert!(there <= told + 0.05, "{percent} %: {there} {told}");
-        }
-        return;
+    let blend = |finding: &&Finding| judged.plan.segments[finding.segment].blend;
+    let corner = judged.survey.findings.iter().find(blend).expect("the corner asks too much");
+    let line = |finding: &&Finding| !blend(finding) && (finding.check, finding.joint) == (corner.check, corner.joint);
+    assert!(judged.survey.findings.iter().any(|finding| line(&finding)), "so does the line");
+    let (found, tried) = remedies(&judged, corner);
+    for kind in [RemedyKind::Slower, RemedyKind::FlyBy] {
+        let remedy = found.iter().find(|remedy| remedy.kind() == kind).unwrap_or_else(|| panic!("no {kind:?}; {tried:?}"));
+        assert!(remedy.effect.worsens.is_empty(), "{:?}", remedy.effect);
     }
-    panic!("no pace was tried in vain: {:?}", judged.survey.findings);
 }

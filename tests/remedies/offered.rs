@@ -8,13 +8,14 @@ use crate::cases::{demonstration, remedies};
 use crate::random::{self, Draw, Family};
 
 /// Where a finding would be in the recipe as it was, with what it is about. A point that an edit inserts splits a segment in two.
-fn key(judged: &Judged, finding: &Finding, edit: Option<&Edit>) -> (usize, Check, Option<usize>) {
-    let to = judged.plan.segments[finding.segment].to;
+fn key(judged: &Judged, finding: &Finding, edit: Option<&Edit>) -> (usize, bool, Check, Option<usize>) {
+    let (to, blend) = (judged.plan.segments[finding.segment].to, judged.plan.segments[finding.segment].blend);
     let to = match edit {
         Some(Edit::Insert { index, .. }) if to > *index => to - 1,
         _ => to,
     };
-    (if finding.check.is_of_cycle() { 0 } else { to }, finding.check, finding.joint)
+    let of_cycle = finding.check.is_of_cycle();
+    (if of_cycle { 0 } else { to }, !of_cycle && blend, finding.check, finding.joint)
 }
 
 /// Judges the recipe afresh with the edit and holds what was claimed against it.

@@ -5,4 +5,5 @@ mod doubts;
 mod every_kind;
 mod figures;
 mod kinds;
+mod reader;
 mod remedies;

@@ -12,6 +12,7 @@ mod first_run;
 mod flange;
 mod headline;
 mod holding;
+mod in_vain;
 mod listing;
 mod moving;
 mod no_finding;

@@ -1,9 +1,10 @@
 use crate::checks::{Check, Finding, Kind};
 use crate::geometry::V3;
-use crate::review::{Change, Ends, Remedy, RemedyKind, Short, Tried};
-use crate::units::{Angle, Dimension, Length, Measure, Room, Seconds};
+use crate::review::{Change, Ends, Remedy, RemedyKind, Tried};
+use crate::units::{Angle, Dimension, Length, Measure, Seconds};
 
 use super::direction::{axis, way};
+use super::in_vain::tried_text;
 use super::listing::{all_of, first_of};
 use super::place::along;
 use super::{Judged, Label, Paragraph, check_words, doubt_text, explain};
@@ -74,6 +75,9 @@ fn moves_elsewhere(kind: RemedyKind) -> bool {
 
 /// The room of the finding's check and joint, before and after.
 fn rooms(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Option<String> {
+    if let Change::FlyBy { to: None, .. } = remedy.change {
+        return Some("The blend is then gone, and with it what it asks.".to_owned());
+    }
     let [before, after] = [remedy.room[0]?, remedy.room[1]?];
     let joint = finding.joint.map(|j| &judged.arm.joints()[j]);
     Some(match joint.filter(|_| finding.check == Check::Range) {
@@ -108,11 +112,12 @@ pub fn kind_words(kind: RemedyKind) -> &'static str {
 }
 
 /// What of a finding a room is of: `J4 rate`.
-fn subject(judged: &Judged, finding: &Finding) -> String {
+pub(super) fn subject(judged: &Judged, finding: &Finding) -> String {
     subject_of(judged, finding.check, finding.joint)
 }
 
-fn subject_of(judged: &Judged, check: Check, joint: Option<usize>) -> String {
+/// A check and its joint: `J4 rate`.
+pub(super) fn subject_of(judged: &Judged, check: Check, joint: Option<usize>) -> String {
     let joint = joint.map_or(String::new(), |j| format!("{} ", judged.arm.joints()[j].name));
     format!("{joint}{}", check_words(check))
 }
@@ -121,8 +126,9 @@ fn figures(judged: &Judged, change: &Change) -> String {
     match change {
         Change::Speed { from, to } => format!("{from} to {to}"),
         Change::TurnSpeed { from, to } => format!("{from} to {to}"),
-        Change::Share { from, to } | Change::AccelShare { from, to } => format!("{from} to {to}"),
-        Change::Pace { to } | Change::Override { share: to } => to.to_string(),
+        Change::Share { from, to } | Change::AccelShare { from, to } => format!("share {from} to {to}"),
+        Change::Pace { to } => format!("both segments at {to}"),
+        Change::Override { share } => share.to_string(),
         Change::Accel { from, to } => format!("{from} to {to}"),
         Change::TurnAccel { from, to } => format!("{from} to {to}"),
         Change::FlyBy { from, to, .. } => to.map_or_else(|| format!("{from} to a stop"), |to| format!("{from} to {to}")),
@@ -238,22 +244,32 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
     }
 }
 
-/// Findings that go as well.
+/// Findings that go as well, those of the segment itself first.
 fn also_settled(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Option<String> {
-    let mut others: Vec<String> = Vec::new();
+    let mut settled: Vec<(Option<usize>, Vec<String>)> = vec![(None, Vec::new())];
     for other in &remedy.effect.settles {
         let same = (other.segment, other.check, other.joint) == (finding.segment, finding.check, finding.joint);
-        let words = if other.segment == finding.segment || other.check.is_of_cycle() {
-            subject(judged, other)
-        } else {
-            format!("{} on segment {}", subject(judged, other), judged.plan.segments[other.segment].label())
-        };
         // What could not be judged before is no finding that a remedy settles.
-        if !same && !matches!(other.kind, Kind::Unproved(_)) && !others.contains(&words) {
-            others.push(words);
+        if same || matches!(other.kind, Kind::Unproved(_)) {
+            continue;
+        }
+        let elsewhere = (other.segment != finding.segment && !other.check.is_of_cycle()).then_some(other.segment);
+        let words = subject(judged, other);
+        match settled.iter_mut().find(|(of, _)| *of == elsewhere) {
+            Some((_, known)) if known.contains(&words) => {}
+            Some((_, known)) => known.push(words),
+            None => settled.push((elsewhere, vec![words])),
         }
     }
-    (!others.is_empty()).then(|| format!("It settles {} as well.", all_of(&first_of(&others))))
+    let told: Vec<String> = settled
+        .iter()
+        .filter(|(_, words)| !words.is_empty())
+        .map(|(elsewhere, words)| {
+            let place = elsewhere.map_or(String::new(), |index| format!(" on segment {}", judged.plan.segments[index].label()));
+            format!("It settles {}{place} as well.", all_of(&first_of(words)))
+        })
+        .collect();
+    (!told.is_empty()).then(|| told.join(" "))
 }
 
 /// Findings that stay on the segment.
@@ -296,55 +312,6 @@ fn costs(remedy: &Remedy) -> Option<String> {
         Some(format!("It saves {} on the cycle.", Seconds::s(-by).measure().text_down(2)))
     } else {
         remedy.edit.is_some().then(|| "The cycle takes as long as before.".to_owned())
-    }
-}
-
-/// What was tried without success, and how near each came; kinds that came equally near together.
-fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<String> {
-    let mut alike: Vec<(String, Vec<String>)> = Vec::new();
-    for one in tried {
-        let (near, kind) = (nearness(judged, finding, one.short), kind_words(one.kind).to_owned());
-        match alike.iter_mut().find(|(known, _)| *known == near) {
-            Some((_, kinds)) => kinds.push(kind),
-            None => alike.push((near, vec![kind])),
-        }
-    }
-    let told: Vec<String> = alike.iter().map(|(near, kinds)| format!("{} ({near})", all_of(kinds))).collect();
-    (!told.is_empty()).then(|| format!("{}.", capital(&told.join("; "))))
-}
-
-/// How near something came that was tried without success, or what stands in its way.
-fn nearness(judged: &Judged, finding: &Finding, short: Short) -> String {
-    match short {
-        Short::Nearest(Some(room)) => {
-            let now = match &finding.kind {
-                Kind::Excess(excess) => Some(excess.room),
-                Kind::NoPath(_) | Kind::Unproved(_) => None,
-            };
-            let told = room_words(judged, finding, room);
-            match now.map(|now| room_words(judged, finding, now)) {
-                Some(now) if now == told => format!("no better than now, {now}"),
-                _ => format!("at best {told}"),
-            }
-        }
-        Short::Nearest(None) if finding.check == Check::Reach => "still no path".to_owned(),
-        Short::Nearest(None) => "there is none that could be judged".to_owned(),
-        Short::Spoils { segment, check, joint } => {
-            let label = judged.plan.segments[segment].label();
-            format!("{} is in the way on segment {label}", subject_of(judged, check, joint))
-        }
-        Short::Fixed => "the work fixes the points".to_owned(),
-    }
-}
-
-/// A room of a finding's check and joint: `J4 rate with room 3 %`; of a range, how far the joint stands from its end.
-fn room_words(judged: &Judged, finding: &Finding, room: Room) -> String {
-    match finding.joint.map(|j| &judged.arm.joints()[j]).filter(|_| finding.check == Check::Range) {
-        Some(joint) => {
-            let left = joint.value(room.as_fraction() * joint.range.half());
-            format!("{} {} from its end", joint.name, left.text_down(1))
-        }
-        None => format!("{} with room {room}", subject(judged, finding)),
     }
 }
 
@@ -403,7 +370,8 @@ fn tenths(time: Seconds) -> String {
     time.measure().text(1)
 }
 
-fn capital(text: &str) -> String {
+/// A sentence's beginning: its first letter is a capital.
+pub(super) fn capital(text: &str) -> String {
     let mut letters = text.chars();
     letters.next().map_or(String::new(), |first| first.to_uppercase().collect::<String>() + letters.as_str())
 }

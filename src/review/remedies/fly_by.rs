@@ -6,9 +6,7 @@ use super::trial::{Aim, Nearest, Trial};
 use super::{Change, Outcome, size};
 
 /// Radii are offered in steps of this, mm: what people type.
-const STEP: f64 = 1.0;
-/// A radius below this is told in tenths of a step, mm.
-const FINE_BELOW: f64 = 10.0;
+const STEP: f64 = 0.1;
 /// No radius is made larger than so many times itself.
 const LARGEST: f64 = 3.0;
 /// So many radii may turn out to be spoilt by what they do to the whole before the search ends.
@@ -18,19 +16,15 @@ const SPOILT: usize = 8;
 pub(super) fn fly_by(trial: &Trial) -> Outcome {
     let waypoint = trial.to();
     let Some(from) = trial.recipe().waypoints[waypoint].fly_by else { return Outcome::nothing() };
-    let step = if from.as_mm() < FINE_BELOW { STEP / 10.0 } else { STEP };
     let edit = |to: Option<Length>| Edit::change(trial.recipe(), waypoint, |point| point.fly_by = to);
     // Whole steps on both sides of the radius as it is; what people typed may lie between two.
-    let down = (from.as_mm() / step - 1e-6).ceil().max(1.0);
-    let up = (from.as_mm() / step + 1e-6).floor();
+    let down = (from.as_mm() / STEP - 1e-6).ceil().max(1.0);
+    let up = (from.as_mm() / STEP + 1e-6).floor();
     let radius = |closer: bool, steps: u32| {
         let at = if closer { down - f64::from(steps) } else { up + f64::from(steps) };
-        (at > 0.0).then(|| Length::mm(crate::units::tidy(at * step)))
+        (at > 0.0).then(|| Length::mm(crate::units::tidy(at * STEP)))
     };
-    let ways = [
-        Way { which: true, most: down as u32 },
-        Way { which: false, most: ((LARGEST - 1.0) * down) as u32 },
-    ];
+    let ways = [Way { which: true, most: down as u32 }, Way { which: false, most: ((LARGEST - 1.0) * down) as u32 }];
     let (mut nearest, mut spoilt, mut offered) = (Nearest::default(), 0, None);
     least_steps(&ways, |closer, steps| {
         if spoilt >= SPOILT || trial.watch.is_stopped() {

@@ -92,7 +92,9 @@ pub(super) fn nearest_centre(trial: &Trial) -> Outcome {
         let slope = V3::from_fn(|k, _| {
             let mut probe = by;
             probe[k] += PROBE;
-            room(&probe).room.map_or(0.0, |there| (there.as_fraction() - left.as_fraction()) / PROBE)
+            let there = room(&probe);
+            nearest.note(there);
+            there.room.map_or(0.0, |there| (there.as_fraction() - left.as_fraction()) / PROBE)
         });
         if !(slope.norm() > 1e-6) {
             break;

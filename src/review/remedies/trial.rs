@@ -104,6 +104,11 @@ impl<'a> Trial<'a> {
         self.segment().to
     }
 
+    /// Where the finding is in the recipe as it is.
+    fn spot(&self) -> Spot {
+        Spot::of(self.segment(), None)
+    }
+
     pub fn recipe(&self) -> &'a Recipe {
         &self.judged.recipe
     }
@@ -132,24 +137,24 @@ impl<'a> Trial<'a> {
         let before = Some((judged.recipe.as_ref(), judged.plan.as_ref()));
         let Some(replanned) = Plan::again(&judged.arm, recipe, before, &|| !self.watch.is_stopped()) else { return Seen::NOTHING };
         let plan = &replanned.plan;
-        let to = self.to();
         let same_rules = recipe.acceptance == judged.recipe.acceptance && plan.gravity == judged.plan.gravity;
         let changed: Vec<usize> = (0..plan.segments.len()).filter(|&i| !same_rules || replanned.same[i].is_none()).collect();
-        let is_meant = |i: &usize| origin(plan.segments[*i].to, inserted) == to;
+        let own = self.spot();
+        let is_meant = |i: &usize| Spot::of(&plan.segments[*i], inserted) == own;
         let (meant, others): (Vec<usize>, Vec<usize>) = changed.into_iter().partition(is_meant);
-        let mut seen = Seen { clear: !meant.is_empty(), ..Seen::NOTHING };
+        // Where the arm stops at a fly-by point there is no blend any more, and nothing that it could ask.
+        let is_gone = own.blend && plan.segments.iter().all(|segment| Spot::of(segment, inserted) != own);
+        let mut seen = Seen { clear: is_gone || !meant.is_empty(), ..Seen::NOTHING };
         for (own, index) in meant.into_iter().map(|i| (true, i)).chain(others.into_iter().map(|i| (false, i))) {
             if !own && !seen.clear || self.watch.is_stopped() {
                 break;
             }
             for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
-                if own
-                    && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance, plan.gravity)
-                {
+                if own && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance, plan.gravity) {
                     return Seen { clear: false, room: Some(room), ..seen };
                 }
                 let survey = judge_at(&judged.arm, index, segment, &recipe.acceptance, plan.gravity, Share::WHOLE);
-                let amiss = self.amiss(&survey, own.then_some(aim), origin(segment.to, inserted));
+                let amiss = self.amiss(&survey, own.then_some(aim), Spot::of(segment, inserted));
                 seen.clear &= amiss.is_none();
                 seen.spoilt = seen.spoilt.or(amiss.filter(|amiss| !(own && self.is_same(amiss))));
                 if own {
@@ -191,24 +196,23 @@ impl<'a> Trial<'a> {
     pub fn look_at_override(&self, share: Share) -> Seen {
         let (judged, index) = (self.judged, self.finding.segment);
         let survey = judge_at(&judged.arm, index, self.segment(), &judged.recipe.acceptance, judged.plan.gravity, share);
-        let amiss = self.amiss(&survey, Some(Aim::Speeds), self.to());
+        let amiss = self.amiss(&survey, Some(Aim::Speeds), self.spot());
         Seen { clear: amiss.is_none(), room: self.room_in(&survey), spoilt: amiss.filter(|amiss| !self.is_same(amiss)), jump: 0.0 }
     }
 
-    /// A finding that stands against an aim on the segment that arrived at `to`; without an aim, one that is new or worse. The
+    /// A finding that stands against an aim on the segment that was at a spot; without an aim, one that is new or worse. The
     /// finding that is to be settled is told before others.
-    fn amiss(&self, survey: &SegmentSurvey, aim: Option<Aim>, to: usize) -> Option<Finding> {
+    fn amiss(&self, survey: &SegmentSurvey, aim: Option<Aim>, spot: Spot) -> Option<Finding> {
         let is_wanted = |finding: &Finding| match aim {
             Some(Aim::All) => true,
             Some(Aim::Speeds) => !finding.check.is_of_posture_alone() || finding.check == self.finding.check,
             Some(Aim::Check) => finding.check == self.finding.check,
             None => false,
         };
-        let against = survey.findings.iter().filter(|finding| is_wanted(finding) || !self.was_as_bad(finding, to));
+        let against = survey.findings.iter().filter(|finding| is_wanted(finding) || !self.was_as_bad(finding, spot));
         let found = against.min_by_key(|finding| (aim.is_none() || !self.is_same(finding), finding.check != Check::Reach))?;
         // Told by the number that its segment has in the unchanged plan.
-        let segment = self.judged.plan.index_arriving(to).unwrap_or(found.segment);
-        Some(Finding { segment, ..*found })
+        Some(Finding { segment: self.index_at(spot).unwrap_or(found.segment), ..*found })
     }
 
     /// Whether a finding of the segment concerned is of the check and joint that are to be settled.
@@ -216,12 +220,17 @@ impl<'a> Trial<'a> {
         (finding.check, finding.joint) == (self.finding.check, self.finding.joint)
     }
 
-    /// Whether a finding of the segment that arrived at `to` was there before, and was no better.
-    fn was_as_bad(&self, finding: &Finding, to: usize) -> bool {
+    /// The segment of the unchanged plan that is at a spot.
+    fn index_at(&self, spot: Spot) -> Option<usize> {
+        self.judged.plan.segments.iter().position(|segment| Spot::of(segment, None) == spot)
+    }
+
+    /// Whether a finding of the segment that was at a spot was there before, and was no better.
+    fn was_as_bad(&self, finding: &Finding, spot: Spot) -> bool {
         let plan = &self.judged.plan;
         self.judged.survey.findings.iter().any(|known| {
             (known.check, known.joint) == (finding.check, finding.joint)
-                && (finding.check.is_of_cycle() || plan.segments[known.segment].to == to)
+                && (finding.check.is_of_cycle() || Spot::of(&plan.segments[known.segment], None) == spot)
                 && known.verdict >= finding.verdict
                 && spare(known) <= spare(finding) + SAME_ROOM
         })
@@ -256,8 +265,8 @@ impl<'a> Trial<'a> {
             return Err(Short::Nearest(room[1]));
         }
         if let Some(spoilt) = effect.worsens.iter().find(|finding| finding.verdict >= self.finding.verdict) {
-            let to = origin(after.plan.segments[spoilt.segment].to, inserted);
-            let segment = before.plan.index_arriving(to).unwrap_or(spoilt.segment);
+            let spot = Spot::of(&after.plan.segments[spoilt.segment], inserted);
+            let segment = self.index_at(spot).or(before.plan.index_arriving(spot.to)).unwrap_or(self.finding.segment);
             return Err(Short::spoils(&Finding { segment, ..*spoilt }));
         }
         let costs = Seconds::s(after.plan.duration() - before.plan.duration());
@@ -280,20 +289,19 @@ impl<'a> Trial<'a> {
     }
 
     fn effect(&self, after: &Judged, inserted: Option<usize>) -> Effect {
-        let to_of = |finding: &Finding| origin(after.plan.segments[finding.segment].to, inserted);
-        let is_left = |old: &Finding| {
-            let to = self.judged.plan.segments[old.segment].to;
-            after
-                .survey
-                .findings
-                .iter()
-                .any(|new| (new.check, new.joint) == (old.check, old.joint) && (new.check.is_of_cycle() || to_of(new) == to))
-        };
-        let own = |new: &&Finding| to_of(new) == self.to() || (new.check.is_of_cycle() && new.check == self.finding.check);
+        let spot_of = |finding: &Finding| Spot::of(&after.plan.segments[finding.segment], inserted);
+        let is_left =
+            |old: &Finding| {
+                let spot = Spot::of(&self.judged.plan.segments[old.segment], None);
+                after.survey.findings.iter().any(|new| {
+                    (new.check, new.joint) == (old.check, old.joint) && (new.check.is_of_cycle() || spot_of(new) == spot)
+                })
+            };
+        let own = |new: &&Finding| spot_of(new) == self.spot() || (new.check.is_of_cycle() && new.check == self.finding.check);
         Effect {
             settles: self.judged.survey.findings.iter().filter(|old| !is_left(old)).copied().collect(),
             remains: after.survey.findings.iter().filter(own).copied().collect(),
-            worsens: after.survey.findings.iter().filter(|new| !self.was_as_bad(new, to_of(new))).copied().collect(),
+            worsens: after.survey.findings.iter().filter(|new| !self.was_as_bad(new, spot_of(new))).copied().collect(),
             doubts: after.survey.doubts.iter().filter(|new| !self.was_doubted(new, inserted)).cloned().collect(),
         }
     }
@@ -310,7 +318,7 @@ impl<'a> Trial<'a> {
             let peaks = of_cycle.peaks.iter().filter(|peak| peak.joint == self.finding.joint);
             return peaks.map(|peak| peak.room).reduce(Room::least);
         }
-        let own = judged.survey.segments.iter().filter(|s| origin(judged.plan.segments[s.segment].to, inserted) == self.to());
+        let own = judged.survey.segments.iter().filter(|s| Spot::of(&judged.plan.segments[s.segment], inserted) == self.spot());
         own.filter_map(|survey| self.room_in(survey)).reduce(Room::least)
     }
 }
@@ -328,6 +336,21 @@ fn least(one: Option<Room>, other: Option<Room>) -> Option<Room> {
     match (one, other) {
         (Some(one), Some(other)) => Some(one.least(other)),
         (one, other) => one.or(other),
+    }
+}
+
+/// Where something is in the recipe as it is: on the way to a waypoint, or on the blend past it. What is found on the one is no finding
+/// of the other.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+struct Spot {
+    to: usize,
+    blend: bool,
+}
+
+impl Spot {
+    /// Where a segment of a plan is, into whose recipe a waypoint may have been inserted.
+    fn of(segment: &Segment, inserted: Option<usize>) -> Self {
+        Self { to: origin(segment.to, inserted), blend: segment.blend }
     }
 }
 
