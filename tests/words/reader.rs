@@ -7,7 +7,7 @@ use elbowroom::arm::JointKind;
 use elbowroom::checks::{Check, Finding, Kind, Watch};
 use elbowroom::geometry::{Pose, Rotation, V3, turn_about};
 use elbowroom::kinematics::Posture;
-use elbowroom::program::{Arrive, Given, Recipe, Taught};
+use elbowroom::program::{Arrive, Given, Recipe, Taught, frame_in_base};
 use elbowroom::review::{Judged, RemedyKind, found_by, remedy_text};
 use elbowroom::units::{Acceleration, Length, Seconds, Share, Speed};
 
@@ -48,8 +48,12 @@ fn ends(text: &str, to: usize) -> Vec<usize> {
     }
 }
 
-/// The TCP of a waypoint in base axes.
+/// The TCP of a waypoint in base axes: as taught, which the arm need not reach, or by its joint values.
 fn tcp(judged: &Judged, waypoint: usize) -> Pose {
+    if let Taught::Pose { pose: Given { at, rotation: Some(rotation), frame }, .. } = &judged.recipe.waypoints[waypoint].taught {
+        let frame = frame.as_deref().map_or_else(Pose::identity, |name| frame_in_base(&judged.recipe, name).expect("a frame"));
+        return frame.then(&Pose { axes: rotation.matrix(), at: *at });
+    }
     let (segment, q) = match judged.plan.arriving(waypoint) {
         Some(segment) => (segment, segment.end),
         None => judged.plan.arriving(waypoint + 1).map(|segment| (segment, segment.start)).expect("it leaves"),
@@ -146,7 +150,9 @@ fn read(judged: &Judged, finding: &Finding, text: &str) -> Option<Recipe> {
             recipe.waypoints[to].taught = Taught::Joints(judged.plan.segments[finding.segment].end);
         }
     } else if text.contains("the heaviest load that leaves the reserve is ") {
-        let load = recipe.loads.iter_mut().find(|load| text.contains(&format!("of {:.1} kg", load.body.mass)))?;
+        let name = recipe.carrying.clone()?;
+        let load = recipe.loads.iter_mut().find(|load| load.name == name)?;
+        assert!(text.contains(&format!("of {:.1} kg", load.body.mass)), "{text}");
         load.body.mass = figure(text, "leaves the reserve is ", "kg");
     } else if text.starts_with("With the centre of mass of the load") {
         let name = recipe.carrying.clone()?;
