@@ -15,6 +15,7 @@ pub(super) struct RemedyJson {
     title: String,
     text: String,
     size: SizeJson,
+    and: Option<AndJson>,
     weight: Option<f64>,
     costs_s: Option<f64>,
     room_before: Option<f64>,
@@ -33,6 +34,13 @@ struct SizeJson {
     after: Option<f64>,
     by: Option<f64>,
     unit: &'static str,
+}
+
+/// A second change that must be made together with the first.
+#[derive(Debug, Serialize)]
+struct AndJson {
+    kind: &'static str,
+    size: SizeJson,
 }
 
 /// What a finding is about. `segment` is its number as people read it, `null` for what is judged over the cycle.
@@ -71,6 +79,7 @@ impl RemedyJson {
             title: remedy_title(judged, remedy),
             text: remedy_text(judged, finding, remedy),
             size: size(&remedy.change),
+            and: remedy.and.map(|second| AndJson { kind: kind_key(second.kind()), size: size(&second) }),
             weight: figure(remedy.size),
             costs_s: shown(remedy.costs.measure()),
             room_before: remedy.room[0].and_then(percent),

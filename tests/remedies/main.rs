@@ -11,5 +11,6 @@ mod in_vain;
 mod least;
 mod offered;
 mod outward;
+mod together;
 mod two_links;
 mod worked;

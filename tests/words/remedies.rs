@@ -176,6 +176,29 @@ fn another_height_and_another_grip_are_told_for_information() {
 }
 
 #[test]
+fn two_changes_that_must_be_made_together_are_told_together() {
+    let arm = SIX.replacen("rate   = 175", "rate   = 20", 1).replace("holding = 690", "holding = 410");
+    let across = r#"
+    [[waypoint]]
+    name = "left"
+    pose = { xyz = [1200, 250, 620], rpy = [180, -55, 0] }
+    arrive = "joint"
+    share = 40
+    [[waypoint]]
+    name = "right"
+    pose = { xyz = [1200, -250, 620], rpy = [180, -55, 0] }
+    arrive = "line"
+    speed = 305
+    "#;
+    let judged = judged(&arm, "", &format!("carrying = \"housing\"{READY}{across}"));
+    let of_line = |finding: &&Finding| finding.check == Check::Holding && judged.plan.segments[finding.segment].to == 2;
+    let finding = judged.survey.findings.iter().find(of_line).expect("J2 holds too little");
+    let (remedies, tried) = all(&judged, finding);
+    let told = remedies_text(&judged, finding, &remedies, &tried);
+    insta::assert_snapshot!("remedies_together", shown(&Explanation { title: explain(&judged, finding).title, paragraphs: told }));
+}
+
+#[test]
 fn remedies_of_the_cells_criteria_are_told() {
     snapshot("remedies_singular", &past_a_straight_wrist(100.0), Check::Singular);
     let aside = "[[waypoint]]\nname = \"aside\"\njoints = [90, -20, -20, 0, 60, 0]\narrive = \"joint\"\nshare = 80\n";

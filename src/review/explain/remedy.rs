@@ -50,12 +50,15 @@ pub fn remedy_title(judged: &Judged, remedy: &Remedy) -> String {
         (true, false) => ", brings a doubt",
         (true, true) => "",
     };
-    format!("{}: {}{but}", kind_words(remedy.kind()), figures(judged, &remedy.change))
+    let one = |change: &Change| format!("{}: {}", kind_words(change.kind()), figures(judged, change));
+    let and = remedy.and.as_ref().map_or(String::new(), |second| format!(", and {}", one(second)));
+    format!("{}{and}{but}", one(&remedy.change))
 }
 
 /// A remedy in a few sentences: what to change, what it settles and leaves, what it makes worse, what it costs.
 pub fn remedy_text(judged: &Judged, finding: &Finding, remedy: &Remedy) -> String {
-    let mut told = vec![format!("{}.", capital(&advice(judged, finding, &remedy.change)))];
+    let and = remedy.and.as_ref().map_or(String::new(), |second| format!(", and {}", advice(judged, finding, second)));
+    let mut told = vec![format!("{}{and}.", capital(&advice(judged, finding, &remedy.change)))];
     told.extend(rooms(judged, finding, remedy));
     told.extend(also_settled(judged, finding, remedy));
     told.extend(left_over(remedy));

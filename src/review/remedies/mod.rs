@@ -21,6 +21,7 @@ mod remedy;
 mod shift;
 mod size;
 mod slower;
+mod together;
 mod trial;
 mod turn;
 mod via;
@@ -58,13 +59,16 @@ impl Outcome {
 }
 
 /// Looks for remedies of a finding, kind by kind, and tells of each as soon as it is known; in an order that does not depend on the
-/// number of cores. Ends early, with what was told so far, when the watch stops it.
+/// number of cores. Where none of them settles it, two are tried together. Ends early, with what was told so far, when the watch stops it.
 pub fn search(judged: &Judged, finding: &Finding, watch: &Watch, mut tell: impl FnMut(Told)) {
     let trial = Trial { judged, finding, watch };
     let kinds = kinds_for(judged, finding);
+    let (mut settled, mut spoilt) = (false, false);
     let tried = |kind: &RemedyKind| (!watch.is_stopped()).then(|| (*kind, try_kind(&trial, *kind)));
     in_order(&kinds, tried, |done| {
         let Some((kind, outcome)) = done.filter(|_| !watch.is_stopped()) else { return };
+        settled |= outcome.found.iter().any(|remedy| remedy.edit.is_some());
+        spoilt |= kind == RemedyKind::Shift && matches!(outcome.short, Short::Spoils { check, .. } if !check.is_of_posture_alone());
         if outcome.found.is_empty() {
             tell(Told::Tried(Tried { kind, short: outcome.short }));
         }
@@ -72,6 +76,12 @@ pub fn search(judged: &Judged, finding: &Finding, watch: &Watch, mut tell: impl 
             tell(Told::Found(Box::new(remedy)));
         }
     });
+    if spoilt
+        && !settled
+        && let Some(remedy) = together::shift_and_slower(&trial)
+    {
+        tell(Told::Found(Box::new(remedy)));
+    }
 }
 
 /// All remedies of a finding, the least change first, and what was tried without success.

@@ -274,6 +274,8 @@ pub struct Effect {
 pub struct Remedy {
     /// What it changes.
     pub change: Change,
+    /// What must be changed together with it, where the one alone settles nothing without harm.
+    pub and: Option<Change>,
     /// The edit that makes the change; `None` where it is information only, such as the heaviest load.
     pub edit: Option<Edit>,
     /// The whole recipe, judged with the change.

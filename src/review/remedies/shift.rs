@@ -15,6 +15,8 @@ const SHIFTS: Reach = Reach { first: 0.002, most: 0.128, widest: 0.032 };
 const TILTS: Reach = Reach { first: 0.008_73, most: 0.28, widest: 0.07 };
 /// Another choice of ends is taken only if it needs no more than this share of what the first needs: one point rather than two.
 const FEWER: f64 = 0.992;
+/// Multiples of the least shift that are tried together with a lower speed: a longer one leaves more of the speed.
+const MULTIPLES: [f64; 6] = [1.02, 1.2, 1.5, 2.0, 2.5, 3.0];
 /// A found displacement grows by this share at a time where rounding it to what people type has spoilt it.
 const ROUNDED_UP: f64 = 0.005;
 /// How often it may grow.
@@ -51,25 +53,8 @@ fn at_ends(
         return Outcome::short(Short::Fixed);
     }
     let mut nearest = Nearest::default();
-    let mut found: Vec<(Ends, V3)> = Vec::new();
-    for aim in [Aim::All, Aim::Check] {
-        let mut most = reach.most;
-        for &ends in &ends {
-            let edit = |by: &V3| displaced(trial, ends, displacement(*by));
-            let least = shortest(directions, Reach { most, ..reach }, |by| {
-                let seen = edit(by).map(|edit| trial.look(&edit, aim).in_posture(by.norm()));
-                seen.is_some_and(|seen| nearest.note(seen))
-            });
-            if let Some(by) = least {
-                most = FEWER * by.norm();
-                found.push((ends, by));
-            }
-        }
-        if !found.is_empty() {
-            break;
-        }
-    }
-    found.sort_by(|a, b| a.1.norm().total_cmp(&b.1.norm()));
+    let least = |aim| least_at_ends(trial, reach, directions, &displacement, aim, &mut nearest);
+    let found = [Aim::All, Aim::Check].into_iter().map(least).find(|found| !found.is_empty()).unwrap_or_default();
     let mut short = nearest.short();
     for (ends, by) in found {
         match grown(trial, by, |by| displaced(trial, ends, displacement(*by)), |by| told(ends, by)) {
@@ -78,6 +63,46 @@ fn at_ends(
         }
     }
     Outcome::short(short)
+}
+
+/// For each choice of ends the least displacement that meets an aim, if it is less than those of the choices before; the least first.
+fn least_at_ends(
+    trial: &Trial,
+    reach: Reach,
+    directions: &[V3],
+    displacement: &impl Fn(V3) -> Displacement,
+    aim: Aim,
+    nearest: &mut Nearest,
+) -> Vec<(Ends, V3)> {
+    let mut found: Vec<(Ends, V3)> = Vec::new();
+    let mut most = reach.most;
+    for ends in free_ends(trial) {
+        let edit = |by: &V3| displaced(trial, ends, displacement(*by));
+        let least = shortest(directions, Reach { most, ..reach }, |by| {
+            let seen = edit(by).map(|edit| trial.look(&edit, aim).in_posture(by.norm()));
+            seen.is_some_and(|seen| nearest.note(seen))
+        });
+        if let Some(by) = least {
+            most = FEWER * by.norm();
+            found.push((ends, by));
+        }
+    }
+    found.sort_by(|a, b| a.1.norm().total_cmp(&b.1.norm()));
+    found
+}
+
+/// The least shift that settles the finding but may ask for a lower speed, and multiples of it: each a change, its edit and its size.
+pub(super) fn but_for_speed(trial: &Trial) -> Vec<(Change, Edit, f64)> {
+    let along = Displacement::Along;
+    let least = least_at_ends(trial, SHIFTS, &directions(trial, false), &along, Aim::Place, &mut Nearest::default());
+    let Some(&(ends, by)) = least.first() else { return Vec::new() };
+    let longer = MULTIPLES.iter().map(|times| by * *times).filter(|by| by.norm() <= SHIFTS.most);
+    longer
+        .filter_map(|by| {
+            let edit = displaced(trial, ends, along(by))?;
+            Some((Change::Shift { ends, by }, edit, size::moved(Length::m(by.norm()))))
+        })
+        .collect()
 }
 
 /// Offers a displacement, a little longer if rounding it to what people type has spoilt it.

@@ -23,6 +23,9 @@ pub(super) enum Aim {
     All,
     /// The check of the finding is clear; others are no worse than they were.
     Check,
+    /// The finding is gone, and all that is new or worse depends on how fast the segment runs: the first of two changes that are made
+    /// together.
+    Place,
 }
 
 /// What was seen of the finding with a change.
@@ -207,9 +210,12 @@ impl<'a> Trial<'a> {
             Some(Aim::All) => true,
             Some(Aim::Speeds) => !finding.check.is_of_posture_alone() || finding.check == self.finding.check,
             Some(Aim::Check) => finding.check == self.finding.check,
+            Some(Aim::Place) => self.is_same(finding),
             None => false,
         };
-        let against = survey.findings.iter().filter(|finding| is_wanted(finding) || !self.was_as_bad(finding, spot));
+        let counts = |finding: &Finding| aim != Some(Aim::Place) || finding.check.is_of_posture_alone();
+        let is_new = |finding: &Finding| counts(finding) && !self.was_as_bad(finding, spot);
+        let against = survey.findings.iter().filter(|finding| is_wanted(finding) || is_new(finding));
         let found = against.min_by_key(|finding| (aim.is_none() || !self.is_same(finding), finding.check != Check::Reach))?;
         // Told by the number that its segment has in the unchanged plan.
         Some(Finding { segment: self.index_at(spot).unwrap_or(found.segment), ..*found })
@@ -243,6 +249,14 @@ impl<'a> Trial<'a> {
         peaks.map(|peak| peak.room).reduce(Room::least)
     }
 
+    /// What depends on speed on the finding's segment of a changed recipe and was not as bad before: what a second change must settle.
+    pub fn too_fast(&self, after: &Judged) -> Option<Finding> {
+        let spot = self.spot();
+        let own = |new: &&Finding| Spot::of(&after.plan.segments[new.segment], None) == spot;
+        let depends = |new: &&Finding| !new.check.is_of_posture_alone() && !new.check.is_of_cycle() && !self.was_as_bad(new, spot);
+        after.survey.findings.iter().filter(own).find(depends).copied()
+    }
+
     /// The remedy that a change is: judged and proved with the whole recipe. An edit that is `only_told` is not offered to be
     /// applied.
     ///
@@ -270,7 +284,7 @@ impl<'a> Trial<'a> {
             return Err(Short::spoils(&Finding { segment, ..*spoilt }));
         }
         let costs = Seconds::s(after.plan.duration() - before.plan.duration());
-        Ok(Remedy { change, edit: (!only_told).then_some(edit), after, effect, room, costs, size })
+        Ok(Remedy { change, and: None, edit: (!only_told).then_some(edit), after, effect, room, costs, size })
     }
 
     /// What an override of the whole program does to the segment, for information.
@@ -285,7 +299,7 @@ impl<'a> Trial<'a> {
         let moves: f64 = judged.plan.segments.iter().map(|segment| segment.duration()).sum();
         let costs = Seconds::s(moves * (1.0 / share.as_fraction() - 1.0));
         let room = [self.room_of(judged, None), self.look_at_override(share).room];
-        Remedy { change: Change::Override { share }, edit: None, after: judged.clone(), effect, room, costs, size }
+        Remedy { change: Change::Override { share }, and: None, edit: None, after: judged.clone(), effect, room, costs, size }
     }
 
     fn effect(&self, after: &Judged, inserted: Option<usize>) -> Effect {
