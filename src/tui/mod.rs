@@ -14,6 +14,7 @@ mod edit_page;
 mod editing;
 mod edits;
 mod file;
+mod filter;
 mod footer;
 mod gauges;
 mod headline;
@@ -63,6 +64,11 @@ use sheet::Sheet;
 
 /// Draws the app into an area of a buffer. Nothing is computed here that could be known before.
 pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
+    draw_body(buffer, area, app);
+    footer::draw_message(&mut Sheet::new(buffer, area, app.theme), app);
+}
+
+fn draw_body(buffer: &mut Buffer, area: Rect, app: &App) {
     let theme = app.theme;
     let layout = update::layout_in(app, area);
     headline::draw(&mut Sheet::new(buffer, layout.headline, theme), app);
