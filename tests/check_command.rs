@@ -230,3 +230,45 @@ fn explain_tells_one_segment_or_all_findings() {
     assert_eq!(none.status.code(), Some(2));
     assert_eq!(text(&none.stderr), "there is no segment 99; they are numbered from 2 to 14\n");
 }
+
+/// Remedies as data: what they say is what their words say, and their edits are complete.
+#[test]
+fn explain_as_json_carries_remedies_with_figures_and_edits() {
+    let report = json(&["explain", "--demo", "--json", "--segment", "10"]);
+    assert_eq!(report["format"], "elbowroom-explain/1");
+    let findings = report["findings"].as_array().expect("findings");
+    assert!(!findings.is_empty());
+    for finding in findings {
+        assert_eq!(finding["segment"], 10);
+        let remedies = finding["remedies"].as_array().expect("remedies");
+        let of = |kind: &str| remedies.iter().find(|remedy| remedy["kind"] == kind).unwrap_or_else(|| panic!("no {kind}"));
+        let slower = of("slower");
+        assert_eq!((&slower["size"]["before"], &slower["size"]["unit"]), (&400.0.into(), &"mm_s".into()));
+        let after = slower["size"]["after"].as_f64().expect("a speed");
+        assert_eq!(slower["title"], format!("slower: 400 mm/s to {after} mm/s"));
+        let edit = &slower["edits"][0];
+        assert_eq!((&edit["waypoint"], &edit["name"], &edit["inserted"]), (&10.into(), &"window out".into(), &false.into()));
+        let data = edit["data"].as_array().expect("data");
+        assert_eq!(data.len(), 1, "{data:?}");
+        assert_eq!((&data[0]["datum"], &data[0]["unit"]), (&"speed".into(), &"mm/s".into()));
+        assert_eq!(data[0]["after"].as_str().and_then(|text| text.parse().ok()), Some(after));
+        assert!(of("via")["edits"][0]["inserted"] == true);
+        for remedy in remedies {
+            let room = |when: &str| remedy[when].as_f64().expect("a room");
+            assert!(room("room_after") > room("room_before"), "{remedy}");
+            assert_eq!(remedy["information"] == true, remedy["edits"].as_array().is_some_and(Vec::is_empty), "{remedy}");
+            assert!(remedy["costs_s"].is_f64() && remedy["weight"].is_f64(), "{remedy}");
+        }
+        let applicable = remedies.iter().filter(|remedy| remedy["information"] == false);
+        let bad = |remedy: &Value| ["worsens", "doubts"].map(|key| remedy[key].as_array().is_some_and(|all| !all.is_empty()));
+        let weights: Vec<([bool; 2], f64)> =
+            applicable.map(|remedy| (bad(remedy), remedy["weight"].as_f64().expect("a weight"))).collect();
+        assert!(weights.windows(2).all(|pair| pair[0] <= pair[1]), "{weights:?}");
+        let all = remedies.len() + finding["tried"].as_array().expect("tried").len();
+        assert!(all >= 7, "{all}");
+    }
+    let quick = json(&["explain", "--demo", "--json", "--no-remedies"]);
+    assert!(quick["findings"].as_array().is_some_and(|all| all.len() == 3 && all.iter().all(|one| one["remedies"].is_null())));
+    let both = elbowroom(&["explain", "--demo", "--json", "--segment", "10", "--tighten"]);
+    assert_eq!(both.status.code(), Some(2));
+}

@@ -5,7 +5,7 @@ use std::sync::Arc;
 use elbowroom::checks::Watch;
 use elbowroom::files::{Opened, demo};
 use elbowroom::review::{Judged, search};
-use elbowroom::tui::{Action, App, Mode, Theme, draw, remedies_wanted, update};
+use elbowroom::tui::{Action, App, Mode, Theme, draw, remedies_are_to_stop, remedies_wanted, update};
 use ratatui::buffer::Buffer;
 use ratatui::layout::Rect;
 
@@ -94,4 +94,52 @@ fn a_search_is_asked_for_once_a_finding() {
     assert!(remedies_wanted(&mut app).is_none());
     update(&mut app, Action::NextFinding);
     assert!(remedies_wanted(&mut app).is_some());
+}
+
+#[test]
+fn esc_stops_a_search_that_runs_and_keeps_what_it_found() {
+    let mut app = opened(80, 24);
+    let (judged, finding) = remedies_wanted(&mut app).expect("a finding is looked at");
+    let mut news = Vec::new();
+    search(&judged, &finding, &Watch::default(), |told| news.push(told));
+    let of = elbowroom::review::kinds_for(&judged, &finding).len();
+    assert!(news.len() > 3);
+    let mut news = news.into_iter();
+    for (tried, told) in news.by_ref().take(2).enumerate() {
+        update(&mut app, Action::Told(Some(told), Some([tried + 1, of])));
+    }
+    update(&mut app, Action::Remedies);
+    assert!(shown(&app).contains("Esc stop"), "{}", shown(&app));
+    assert!(!remedies_are_to_stop(&mut app));
+    update(&mut app, Action::Back);
+    assert!(remedies_are_to_stop(&mut app) && !remedies_are_to_stop(&mut app), "asked for once");
+    assert!(matches!(app.mode, Mode::Remedies), "the list stays");
+    // What was found before the search took notice counts; nothing makes it run again by itself.
+    update(&mut app, Action::Told(news.next(), None));
+    update(&mut app, Action::Told(None, None));
+    assert!(remedies_wanted(&mut app).is_none());
+    insta::assert_snapshot!("remedies_stopped_80x24", shown(&app));
+    update(&mut app, Action::Back);
+    assert!(matches!(app.mode, Mode::Panes));
+    // The list's own key goes on.
+    update(&mut app, Action::Remedies);
+    update(&mut app, Action::Remedies);
+    assert!(matches!(app.mode, Mode::Remedies));
+    seek(&mut app);
+    assert!(!shown(&app).contains("stopped"), "{}", shown(&app));
+}
+
+#[test]
+fn a_search_stopped_at_its_end_is_no_partial_one() {
+    let mut app = opened(80, 24);
+    let (judged, finding) = remedies_wanted(&mut app).expect("a finding is looked at");
+    let of = elbowroom::review::kinds_for(&judged, &finding).len();
+    let mut tried = 0;
+    search(&judged, &finding, &Watch::default(), |told| {
+        tried += 1;
+        update(&mut app, Action::Told(Some(told), Some([tried.min(of), of])));
+    });
+    update(&mut app, Action::Remedies);
+    update(&mut app, Action::Back);
+    assert!(!shown(&app).contains("stopped"), "{}", shown(&app));
 }

@@ -256,6 +256,9 @@ pub(super) struct ExplainArgs {
     /// Leave out the remedies, which take a while to try
     #[arg(long)]
     pub no_remedies: bool,
+    /// Print JSON, one object on one line: the findings with their remedies
+    #[arg(long, conflicts_with = "tighten")]
+    pub json: bool,
     /// Columns to wrap text at
     #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
     pub width: u16,

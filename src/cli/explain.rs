@@ -1,4 +1,5 @@
 use crate::checks::{Finding, Watch, tightened};
+use crate::report::{Explained, explain_json};
 use crate::review::{Explanation, Judged, bounds_text, explain, found_by, headline, no_finding, remedies_text};
 
 use super::args::ExplainArgs;
@@ -10,7 +11,8 @@ use super::out;
 
 /// Tells all findings of a recipe at length, or all about one segment.
 pub(super) fn run(args: &ExplainArgs) -> anyhow::Result<Code> {
-    let judged = chosen(args.recipe.as_deref())?.judged;
+    let chosen = chosen(args.recipe.as_deref())?;
+    let judged = &chosen.judged;
     let width = usize::from(args.width);
     let wanted = match args.segment {
         None => None,
@@ -24,19 +26,33 @@ pub(super) fn run(args: &ExplainArgs) -> anyhow::Result<Code> {
         }
     };
     let is_meant = |finding: &&Finding| wanted.as_ref().is_none_or(|meant| meant.contains(&finding.segment));
-    let mut parts = vec![headline(&judged) + "\n"];
-    let told = |finding: &Finding| if args.no_remedies { explain(&judged, finding) } else { with_remedies(&judged, finding) };
+    if args.json {
+        let explained: Vec<Explained> = judged
+            .survey
+            .findings
+            .iter()
+            .filter(is_meant)
+            .map(|finding| Explained {
+                finding: *finding,
+                remedies: (!args.no_remedies).then(|| found_by(judged, finding, &Watch::default())),
+            })
+            .collect();
+        out::print(&(explain_json(judged, &chosen.recipe_file, &chosen.arm_file, &explained) + "\n"))?;
+        return Ok(Code::Clear);
+    }
+    let mut parts = vec![headline(judged) + "\n"];
+    let told = |finding: &Finding| if args.no_remedies { explain(judged, finding) } else { with_remedies(judged, finding) };
     parts.extend(judged.survey.findings.iter().filter(is_meant).map(|finding| explanation_text(&told(finding), width)));
     match wanted {
         Some(meant) => {
             let quiet = meant.iter().copied().filter(|&index| judged.survey.segments[index].findings.is_empty());
-            parts.extend(quiet.map(|index| explanation_text(&no_finding(&judged, index), width)));
+            parts.extend(quiet.map(|index| explanation_text(&no_finding(judged, index), width)));
             if args.tighten {
-                parts.extend(meant.into_iter().map(|index| closer(&judged, index, width)));
+                parts.extend(meant.into_iter().map(|index| closer(judged, index, width)));
             }
         }
         None if judged.survey.doubts.is_empty() => {}
-        None => parts.push(doubts_text(&judged, width)),
+        None => parts.push(doubts_text(judged, width)),
     }
     out::print(&parts.join("\n"))?;
     Ok(Code::Clear)

@@ -1,16 +1,19 @@
 //! What goes out: the result of a check as JSON, the motion over the cycle as CSV. One format a file.
 
 mod check_json;
+mod explain_json;
 mod finding_json;
 mod grid;
 mod judged_json;
 mod plan_json;
+mod remedy_json;
 mod save;
 mod stopping_json;
 mod trace_csv;
 mod wall_page;
 
 pub use check_json::{FORMAT, check_json};
+pub use explain_json::{EXPLAIN_FORMAT, Explained, explain_json};
 pub use grid::{MOST_ROWS, TooManyRows};
 pub use plan_json::{PLAN_FORMAT, plan_json};
 pub use save::save;

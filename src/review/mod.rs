@@ -20,7 +20,7 @@ mod verify;
 pub use explain::{
     Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, bounds_text, check_words, difference_words, doubt_text, edit_words,
     explain, fastest_text, first_run_text, headline, held_back_words, joint_stop_words, kind_words, line_words, no_finding,
-    proof_summary, proof_text, reduced_speed_text, remedies_text, remedy_text, remedy_title, stage_words, stopping_text, wrap,
+    proof_summary, proof_text, reduced_speed_text, remedies_text, remedy_text, remedy_title, stage_words, stopped_text, stopping_text, wrap,
 };
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
 pub use history::{History, Step};

@@ -76,6 +76,7 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         (Mode::Editing(editing), _) if editing.typing.is_some() => false,
         (Mode::Editing(_), action) => matches!(action, Action::Up | Action::Left | Action::Enter | Action::NextPane | Action::Undo),
         (Mode::SignOff, action) => matches!(action, Action::Up | Action::Enter | Action::NotChecked),
+        (Mode::Remedies, Action::Remedies) => app.remedies.stopped().is_some(),
         (Mode::Remedies, action) => matches!(action, Action::Up | Action::Enter | Action::NextFinding | Action::Undo),
         (Mode::Page(Page::Why, _), action) => matches!(action, Action::Up | Action::Worst | Action::NextFinding),
         (Mode::Page(..), action) => matches!(action, Action::Up),
@@ -118,7 +119,13 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         {
             hints.insert(0, (true, ("Enter".to_owned(), "take it".to_owned())));
         }
-        hints.insert(0, (false, ("Esc".to_owned(), "back".to_owned())));
+        if matches!(app.mode, Mode::Remedies)
+            && let Some((_, (_, word))) = hints.iter_mut().find(|(_, (_, word))| word == "remedies")
+        {
+            "go on".clone_into(word);
+        }
+        let stops = matches!(app.mode, Mode::Remedies) && app.remedies.is_running();
+        hints.insert(0, (stops, ("Esc".to_owned(), if stops { "stop" } else { "back" }.to_owned())));
     }
     let total = |hints: &[(bool, (String, String))]| {
         hints.iter().map(|(_, (key, word))| key.width() + word.width() + 3).sum::<usize>().saturating_sub(2)

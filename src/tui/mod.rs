@@ -53,7 +53,7 @@ pub use jog::{Deed, Jogging};
 pub use keymap::{Keymap, action_name, changeable, kept};
 pub use keys::{BINDINGS, Binding, action_of};
 pub use options::Options;
-pub use remedies::wanted as remedies_wanted;
+pub use remedies::{is_to_stop as remedies_are_to_stop, wanted as remedies_wanted};
 pub use run::{Screen, Started, restore, run};
 pub use signing::{Decision, Signing};
 pub use stretch::OnStretch;

@@ -3,7 +3,9 @@ use std::sync::Arc;
 use ratatui::style::Style;
 
 use crate::checks::{Finding, Survey};
-use crate::review::{Judged, Remedy, Told, Tried, remedies_text, remedy_text, remedy_title};
+use crate::review::{
+    Judged, Remedy, RemedyKind, Told, Tried, kinds_for, remedies_text, remedy_text, remedy_title, stopped_text,
+};
 use crate::units::Seconds;
 
 use super::action::Action;
@@ -23,6 +25,10 @@ pub struct Remedies {
     tried: Vec<Tried>,
     /// Kinds tried, and of how many; none when the search is done.
     progress: Option<[usize; 2]>,
+    /// Of how many kinds the search was when somebody stopped it.
+    stopped: Option<usize>,
+    /// Whether the search is to be stopped, which the screen can't do by itself.
+    halt: bool,
     /// Which one is chosen, counted from 0.
     chosen: usize,
 }
@@ -35,8 +41,35 @@ impl Remedies {
 
     /// How much is known, for whoever must notice a change.
     pub fn count(&self) -> usize {
-        self.found.len() + self.tried.len() + usize::from(self.progress.is_none())
+        self.found.len() + self.tried.len() + usize::from(self.progress.is_none()) + usize::from(self.stopped.is_some())
     }
+
+    /// Whether a search runs.
+    pub fn is_running(&self) -> bool {
+        self.progress.is_some()
+    }
+
+    /// Kinds tried and of how many, where the search was stopped before the last.
+    pub fn stopped(&self) -> Option<[usize; 2]> {
+        let mut kinds: Vec<RemedyKind> =
+            self.found.iter().map(Remedy::kind).chain(self.tried.iter().map(|tried| tried.kind)).collect();
+        kinds.sort_unstable();
+        kinds.dedup();
+        self.stopped.map(|of| [kinds.len(), of]).filter(|[tried, of]| tried < of)
+    }
+
+    /// Stops the search; what was found stays.
+    fn stop(&mut self) {
+        if let Some([_, of]) = self.progress.take() {
+            self.stopped = Some(of);
+            self.halt = true;
+        }
+    }
+}
+
+/// Whether somebody asked since the last time that the search be stopped.
+pub fn is_to_stop(app: &mut App) -> bool {
+    std::mem::take(&mut app.remedies.halt)
 }
 
 /// The finding whose remedies are to be sought next, if the known ones are of another. Only what is checked to the end is worth it.
@@ -50,14 +83,16 @@ pub fn wanted(app: &mut App) -> Option<(Judged, Finding)> {
         return None;
     }
     let (judged, finding) = (judged.clone(), *finding);
-    app.remedies = Remedies { of: Some((Arc::clone(&judged.survey), finding)), progress: Some([0, 0]), ..Remedies::default() };
+    let progress = Some([0, kinds_for(&judged, &finding).len()]);
+    app.remedies = Remedies { of: Some((Arc::clone(&judged.survey), finding)), progress, ..Remedies::default() };
     Some((judged, finding))
 }
 
 /// Takes in what a search tells; none when it has ended.
 pub(super) fn hear(app: &mut App, told: Option<Told>, progress: Option<[usize; 2]>) {
     let known = &mut app.remedies;
-    known.progress = progress;
+    // What was found before the search took notice of being stopped counts as well.
+    known.progress = progress.filter(|_| known.stopped.is_none());
     match told {
         Some(Told::Found(remedy)) => {
             let at = known.found.partition_point(|other| other.order(&remedy).is_lt());
@@ -80,6 +115,9 @@ pub(super) fn choose(app: &mut App, action: &Action) {
         Action::Down => *chosen = (*chosen + 1).min(last),
         Action::ToStart => *chosen = 0,
         Action::ToEnd => *chosen = last,
+        Action::Back if app.remedies.is_running() => app.remedies.stop(),
+        // Nothing known any more, so all is sought again.
+        Action::Remedies if app.remedies.stopped().is_some() => app.remedies = Remedies::default(),
         Action::Back | Action::Remedies => app.mode = Mode::Panes,
         Action::Enter => apply(app),
         _ => {}
@@ -108,9 +146,14 @@ pub fn in_brief(app: &App) -> Option<String> {
     }
     let titles: Vec<String> =
         app.remedies.found.iter().filter(|remedy| remedy.edit.is_some()).map(|remedy| remedy_title(judged, remedy)).collect();
-    let trying = if app.remedies.progress.is_some() { " Others are being tried." } else { "" };
+    let trying = match (app.remedies.is_running(), app.remedies.stopped()) {
+        (true, _) => " Others are being tried.".to_owned(),
+        (false, Some(part)) => format!(" {}", stopped_text(part)),
+        (false, None) => String::new(),
+    };
     Some(match titles.len() {
-        0 if app.remedies.progress.is_some() => "being tried ...".to_owned(),
+        0 if app.remedies.is_running() => "being tried ...".to_owned(),
+        0 if app.remedies.stopped().is_some() => format!("none found so far.{trying}"),
         0 => "no change of the program that was tried settles it; o tells how near each came.".to_owned(),
         _ => format!("{}. o shows them.{trying}", titles.join("; ")),
     })
@@ -123,7 +166,21 @@ pub fn in_full(app: &App) -> Vec<crate::review::Paragraph> {
     if !app.remedies.are_of(judged, finding) || app.remedies.progress.is_some() {
         return Vec::new();
     }
-    remedies_text(judged, finding, &app.remedies.found, &app.remedies.tried)
+    told(app, judged, finding)
+}
+
+/// What is known of them so far, and whether that is all.
+fn told(app: &App, judged: &Judged, finding: &Finding) -> Vec<crate::review::Paragraph> {
+    let known = &app.remedies;
+    let part = known.stopped().map(|part| crate::review::Paragraph {
+        label: crate::review::Label::Remedies,
+        text: stopped_text(part),
+        bars: Vec::new(),
+    });
+    let nothing_yet = part.is_some() && known.found.is_empty() && known.tried.is_empty();
+    let mut told = if nothing_yet { Vec::new() } else { remedies_text(judged, finding, &known.found, &known.tried) };
+    told.extend(part);
+    told
 }
 
 /// Draws the list of remedies with the chosen one told below it.
@@ -136,7 +193,11 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     };
     let known = &app.remedies;
     let number = judged.plan.segments[finding.segment].label();
-    let progress = known.progress.map_or(String::new(), |[done, of]| format!(", trying {} of {of}", (done + 1).min(of.max(1))));
+    let progress = match (known.progress, known.stopped()) {
+        (Some([done, of]), _) => format!(", trying {} of {of}", (done + 1).min(of.max(1))),
+        (None, Some([tried, of])) => format!(", stopped after {tried} of {of}"),
+        (None, None) => String::new(),
+    };
     sheet.rule(0, &format!("Remedies for segment {number}{progress}"), true);
     let mut y = 1;
     let title = app.scene.why.as_ref().map_or(String::new(), |why| why.title.clone());
@@ -204,11 +265,11 @@ fn detail(app: &App, judged: &Judged, finding: &Finding, width: usize) -> Vec<Li
         };
         lines.extend(paragraph(hint, width, 0, theme.strong()));
     }
-    if known.progress.is_none()
-        && let Some(last) = remedies_text(judged, finding, &known.found, &known.tried).get(known.found.len())
-    {
-        lines.push(Vec::new());
-        lines.extend(paragraph(&theme.text(&last.text), width, 0, Style::new()));
+    if known.progress.is_none() {
+        for last in told(app, judged, finding).iter().skip(known.found.len()) {
+            lines.push(Vec::new());
+            lines.extend(paragraph(&theme.text(&last.text), width, 0, Style::new()));
+        }
     }
     if lines.is_empty() {
         lines.extend(paragraph("Changes are being tried.", width, 0, Style::new()));

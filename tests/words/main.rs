@@ -2,6 +2,7 @@
 
 mod cases;
 mod doubts;
+mod every_kind;
 mod figures;
 mod kinds;
 mod remedies;

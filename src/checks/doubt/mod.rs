@@ -178,6 +178,19 @@ impl Doubt {
             | Self::NotUnwound { .. } => None,
         }
     }
+
+    /// The joint that it is about, if it is about one.
+    pub fn joint(&self) -> Option<usize> {
+        match self {
+            Self::LongWay { joint, .. } | Self::WhichTurn { joint, .. } | Self::NotUnwound { joint, .. } => Some(*joint),
+            _ => None,
+        }
+    }
+
+    /// Whether two doubts are of one kind, whatever their figures and whomever they are about.
+    pub fn is_alike(&self, other: &Self) -> bool {
+        std::mem::discriminant(self) == std::mem::discriminant(other)
+    }
 }
 
 /// Everything in a recipe that is probably a mistake: what stands in its tables, then in order of the waypoints, then of the whole

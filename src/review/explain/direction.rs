@@ -6,6 +6,9 @@ const SMALL: f64 = 0.2;
 /// How far a mount may lean and still count as upright, cosine (2 degrees).
 const UPRIGHT: f64 = 0.999_39;
 
+/// Ways along the base's axes, and against them.
+const WAYS: [[&str; 2]; 3] = [["forward", "back"], ["to the left", "to the right"], ["up", "down"]];
+
 /// Whether the base stands upright, so that its z axis points up and words like "up" and "left" hold in its axes.
 pub(super) fn stands_upright(recipe: &Recipe) -> bool {
     recipe.mount.axes[(2, 2)] > UPRIGHT
@@ -14,15 +17,20 @@ pub(super) fn stands_upright(recipe: &Recipe) -> bool {
 /// Where a vector in base axes points: `to the right (along base -y)`. Seen from the base looking along its x axis; where the
 /// base does not stand upright only the axes are told.
 pub(super) fn heading(recipe: &Recipe, vector: &V3) -> String {
-    const WAYS: [[&str; 2]; 3] = [["forward", "back"], ["to the left", "to the right"], ["up", "down"]];
     told(recipe, vector, |axis, negative| WAYS[axis][usize::from(negative)], false)
+}
+
+/// The same in words alone, `forward and up`; none where the base does not stand upright.
+pub(super) fn way(recipe: &Recipe, vector: &V3) -> Option<String> {
+    let words: Vec<&str> = parts(vector).iter().map(|&axis| WAYS[axis][usize::from(vector[axis] < 0.0)]).collect();
+    (stands_upright(recipe) && !words.is_empty()).then(|| words.join(" and "))
 }
 
 /// Along which line a vector in base axes lies, either way: `left and right (along base y)`.
 pub fn line(recipe: &Recipe, vector: &V3) -> String {
-    const WAYS: [&str; 3] = ["forward and back", "left and right", "up and down"];
+    const LINES: [&str; 3] = ["forward and back", "left and right", "up and down"];
     let turned = if largest(vector) < 0.0 { -vector } else { *vector };
-    told(recipe, &turned, |axis, _| WAYS[axis], true)
+    told(recipe, &turned, |axis, _| LINES[axis], true)
 }
 
 /// The axis of a turn in base axes, the right hand's way round: `base +z 0.84, +x 0.54`.

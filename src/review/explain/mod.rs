@@ -42,7 +42,7 @@ pub use headline::{check_words, headline};
 pub use no_finding::no_finding;
 pub use proof::proof_text;
 pub use reduced_speed::{fastest_text, reduced_speed_text};
-pub use remedy::{kind_words, remedies_text, remedy_text, remedy_title};
+pub use remedy::{kind_words, remedies_text, remedy_text, remedy_title, stopped_text};
 pub use stopping::{joint_stop_words, stopping_text};
 pub use wrap::wrap;
 

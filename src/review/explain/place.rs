@@ -107,7 +107,7 @@ fn between(segment: &Segment, from: Place, to: Place) -> String {
     let [first, last] = [from.u, to.u].map(|u| along(segment, u));
     let whole = whole(segment);
     match (from.u <= 0.0, to.u >= 1.0) {
-        (true, true) if segment.follows_path() => format!("all along its {whole}"),
+        (true, true) if segment.follows_path() && !segment.blend => format!("all along its {whole}"),
         (true, true) => "all along".to_owned(),
         _ if first == last => format!("at {first} of {whole}"),
         (true, false) => format!("from its start to {last} of {whole}"),

@@ -3,15 +3,20 @@ use crate::geometry::V3;
 use crate::review::{Change, Ends, Remedy, RemedyKind, Short, Tried};
 use crate::units::{Angle, Dimension, Length, Measure, Room, Seconds};
 
-use super::direction::{axis, heading};
+use super::direction::{axis, way};
 use super::listing::{all_of, first_of};
 use super::place::along;
-use super::{Judged, Label, Paragraph, check_words, explain};
+use super::{Judged, Label, Paragraph, check_words, doubt_text, explain};
 
 /// A cycle longer or shorter by less than this takes as long as before, s: half of the last digit that is shown.
 const SAME_TIME: f64 = 0.005;
-/// A part of a displacement below this is nothing, m.
-const NOTHING: f64 = 5e-6;
+/// A displacement, or a part of one, that is told as 0.0 mm is nothing, m: half of the last digit that is shown.
+const NOTHING: f64 = 5e-5;
+
+/// What is said of a search that was stopped after some of the kinds of remedy.
+pub fn stopped_text([tried, of]: [usize; 2]) -> String {
+    format!("The search was stopped: {tried} of {of} kinds of change were tried.")
+}
 
 /// The remedies of a finding as paragraphs, the least change first, and one more for what was tried without success.
 pub fn remedies_text(judged: &Judged, finding: &Finding, remedies: &[Remedy], tried: &[Tried]) -> Vec<Paragraph> {
@@ -39,7 +44,12 @@ fn nothing_to_try(judged: &Judged, finding: &Finding) -> &'static str {
 
 /// A remedy in a few words, for a list: `slower: 400 mm/s to 232 mm/s`.
 pub fn remedy_title(judged: &Judged, remedy: &Remedy) -> String {
-    format!("{}: {}", kind_words(remedy.kind()), figures(judged, &remedy.change))
+    let but = match (remedy.effect.worsens.is_empty(), remedy.effect.doubts.is_empty()) {
+        (false, _) => ", makes another worse",
+        (true, false) => ", brings a doubt",
+        (true, true) => "",
+    };
+    format!("{}: {}{but}", kind_words(remedy.kind()), figures(judged, &remedy.change))
 }
 
 /// A remedy in a few sentences: what to change, what it settles and leaves, what it makes worse, what it costs.
@@ -49,6 +59,7 @@ pub fn remedy_text(judged: &Judged, finding: &Finding, remedy: &Remedy) -> Strin
     told.extend(also_settled(judged, finding, remedy));
     told.extend(left_over(remedy));
     told.extend(worse(remedy));
+    told.extend(doubtful(remedy));
     told.extend(costs(remedy));
     if remedy.edit.is_some() && moves_elsewhere(remedy.kind()) {
         told.push("Whether the new way is free is not judged.".to_owned());
@@ -119,6 +130,7 @@ fn figures(judged: &Judged, change: &Change) -> String {
         Change::Turn { ends, angle } => format!("{} {}", signed(*angle), ends_words(*ends)),
         Change::Tilt { ends, angle, .. } => format!("{} {}", angle.measure().text(1), ends_words(*ends)),
         Change::Shift { ends, by } => format!("{} {}", length(by), ends_words(*ends)),
+        Change::Via { by, .. } if is_told_as_nothing(by) => "on the line".to_owned(),
         Change::Via { by, .. } => format!("{} beside the line", length(by)),
         Change::JointMove { leaves, .. } => format!("leaves the path by {}", leaves.measure().text_up(0)),
         Change::Posture { waypoint, .. } => format!("from \"{}\" on", judged.recipe.waypoints[*waypoint].name),
@@ -162,20 +174,27 @@ fn advice(judged: &Judged, finding: &Finding, change: &Change) -> String {
             format!("tilt the tool by {} about {} on {number}, {}", angle.measure().text(1), axis(about), at(*ends))
         }
         Change::Shift { ends, by } => {
-            format!("shift {number} by {} {}, that is {}, {}", length(by), heading(&judged.recipe, by), parts(by), at(*ends))
+            format!("shift {number} by {}, {}", displacement(judged, by), at(*ends))
         }
         Change::Via { u, by } => {
-            let beside = if by.norm() > NOTHING {
-                format!("{} beside the line, {}, that is {}", length(by), heading(&judged.recipe, by), parts(by))
-            } else {
+            let beside = if is_told_as_nothing(by) {
                 "on the line itself".to_owned()
+            } else {
+                format!("beside the line by {}", displacement(judged, by))
             };
             format!("let {number} stop at a point on the way, {} from its start and {beside}", along(segment, *u))
         }
-        Change::JointMove { share, leaves } => format!(
-            "let the arm go by a joint move with a share of {share} on {number}; the TCP then leaves the path by up to {}",
-            leaves.measure().text_up(0)
-        ),
+        Change::JointMove { share, leaves, keeps } => {
+            let taught = if *keeps {
+                format!(", with {} taught by the joint values that it has now, so that the posture stays", name(segment.to))
+            } else {
+                String::new()
+            };
+            format!(
+                "let the arm go by a joint move with a share of {share} on {number}{taught}; the TCP then leaves the path by up to {}",
+                leaves.measure().text_up(0)
+            )
+        }
         Change::Posture { waypoint, last, from, to } => {
             let span = if waypoint == last {
                 format!("at {}:", name(*waypoint))
@@ -259,6 +278,16 @@ fn worse(remedy: &Remedy) -> Option<String> {
     (!worse.is_empty()).then(|| format!("But it makes worse: {}.", first_of(&worse).join("; ")))
 }
 
+/// Doubts that are new.
+fn doubtful(remedy: &Remedy) -> Option<String> {
+    let doubts = &remedy.effect.doubts;
+    let first = doubt_text(&remedy.after, doubts.first()?);
+    Some(match doubts.len() {
+        1 => format!("But it brings a doubt: {first}"),
+        many => format!("But it brings {many} doubts, the first: {first}"),
+    })
+}
+
 fn costs(remedy: &Remedy) -> Option<String> {
     let by = remedy.costs.as_s();
     if by >= SAME_TIME {
@@ -270,26 +299,53 @@ fn costs(remedy: &Remedy) -> Option<String> {
     }
 }
 
-/// What was tried without success, and how near each came.
+/// What was tried without success, and how near each came; kinds that came equally near together.
 fn tried_text(judged: &Judged, finding: &Finding, tried: &[Tried]) -> Option<String> {
-    let near = |room: Room| format!("nearest {}, room {room}", subject(judged, finding));
-    let told: Vec<String> = tried
-        .iter()
-        .map(|one| {
-            let words = kind_words(one.kind);
-            match one.short {
-                Short::Nearest(Some(room)) => format!("{words} ({})", near(room)),
-                Short::Nearest(None) if finding.check == Check::Reach => format!("{words} (still no path)"),
-                Short::Nearest(None) => format!("{words} (it comes to nothing)"),
-                Short::Spoils { segment, check, joint } => {
-                    let label = judged.plan.segments[segment].label();
-                    format!("{words} ({} is in the way on segment {label})", subject_of(judged, check, joint))
-                }
-                Short::Fixed => format!("{words} (the work fixes the points)"),
-            }
-        })
-        .collect();
+    let mut alike: Vec<(String, Vec<String>)> = Vec::new();
+    for one in tried {
+        let (near, kind) = (nearness(judged, finding, one.short), kind_words(one.kind).to_owned());
+        match alike.iter_mut().find(|(known, _)| *known == near) {
+            Some((_, kinds)) => kinds.push(kind),
+            None => alike.push((near, vec![kind])),
+        }
+    }
+    let told: Vec<String> = alike.iter().map(|(near, kinds)| format!("{} ({near})", all_of(kinds))).collect();
     (!told.is_empty()).then(|| format!("{}.", capital(&told.join("; "))))
+}
+
+/// How near something came that was tried without success, or what stands in its way.
+fn nearness(judged: &Judged, finding: &Finding, short: Short) -> String {
+    match short {
+        Short::Nearest(Some(room)) => {
+            let now = match &finding.kind {
+                Kind::Excess(excess) => Some(excess.room),
+                Kind::NoPath(_) | Kind::Unproved(_) => None,
+            };
+            let told = room_words(judged, finding, room);
+            match now.map(|now| room_words(judged, finding, now)) {
+                Some(now) if now == told => format!("no better than now, {now}"),
+                _ => format!("at best {told}"),
+            }
+        }
+        Short::Nearest(None) if finding.check == Check::Reach => "still no path".to_owned(),
+        Short::Nearest(None) => "there is none that could be judged".to_owned(),
+        Short::Spoils { segment, check, joint } => {
+            let label = judged.plan.segments[segment].label();
+            format!("{} is in the way on segment {label}", subject_of(judged, check, joint))
+        }
+        Short::Fixed => "the work fixes the points".to_owned(),
+    }
+}
+
+/// A room of a finding's check and joint: `J4 rate with room 3 %`; of a range, how far the joint stands from its end.
+fn room_words(judged: &Judged, finding: &Finding, room: Room) -> String {
+    match finding.joint.map(|j| &judged.arm.joints()[j]).filter(|_| finding.check == Check::Range) {
+        Some(joint) => {
+            let left = joint.value(room.as_fraction() * joint.range.half());
+            format!("{} {} from its end", joint.name, left.text_down(1))
+        }
+        None => format!("{} with room {room}", subject(judged, finding)),
+    }
 }
 
 fn ends_words(ends: Ends) -> &'static str {
@@ -305,9 +361,10 @@ fn length(by: &V3) -> String {
     Length::m(by.norm()).measure().text(1)
 }
 
-/// The parts of a displacement along the base axes that are not nothing.
-fn parts(by: &V3) -> String {
-    told_parts(by, "base")
+/// A displacement in base axes: its length, where it goes, and its parts: `21.0 mm forward and up (base x +18.4 mm and base z +10.0 mm)`.
+fn displacement(judged: &Judged, by: &V3) -> String {
+    let way = way(&judged.recipe, by).map_or(String::new(), |way| format!(" {way}"));
+    format!("{}{way} ({})", length(by), told_parts(by, "base"))
 }
 
 fn tool_parts(by: &V3) -> String {
@@ -325,6 +382,11 @@ fn told_parts(by: &V3, axes: &str) -> String {
         })
         .collect();
     all_of(&told)
+}
+
+/// Whether a displacement is so small that its length would be told as none.
+fn is_told_as_nothing(by: &V3) -> bool {
+    by.norm() < NOTHING
 }
 
 fn signed(angle: Angle) -> String {

@@ -1,4 +1,5 @@
 use crate::checks::{Check, Finding, Meter};
+use crate::geometry::V3;
 use crate::motion::{Follower, Segment, Side};
 use crate::program::Acceptance;
 use crate::units::Room;
@@ -13,11 +14,19 @@ const CLOSER: usize = 7;
 /// A look at a few instants of a changed segment, for a witness that the check and joint of the finding are still flagged there: enough to
 /// reject a change, never to accept one. Yields the least room that was seen of them, if there is such a
 /// witness.
-pub(super) fn still_flagged(judged: &Judged, finding: &Finding, segment: &Segment, criteria: &Acceptance) -> Option<Room> {
+///
+/// `gravity` is in base axes, m/s².
+pub(super) fn still_flagged(
+    judged: &Judged,
+    finding: &Finding,
+    segment: &Segment,
+    criteria: &Acceptance,
+    gravity: V3,
+) -> Option<Room> {
     if finding.check == Check::Reach || finding.check.is_of_cycle() || segment.trouble.is_some() {
         return None;
     }
-    let meter = Meter::of(&judged.arm, segment, criteria, judged.plan.gravity);
+    let meter = Meter::of(&judged.arm, segment, criteria, gravity);
     let follower = Follower::of(&judged.arm, segment);
     let mut flagged = false;
     let mut look = |time: f64| {

@@ -15,6 +15,7 @@ mod leaves;
 mod load;
 mod mount;
 mod moved;
+mod outward;
 mod posture;
 mod remedy;
 mod shift;

@@ -137,7 +137,7 @@ fn posed(trial: &Trial, run: &Run, to: &Joints) -> Option<Edit> {
 }
 
 /// Joint values rounded so finely that the TCP stays where it is within hundredths of a millimetre.
-fn typed_finely(arm: &crate::arm::Arm, q: &Joints) -> Joints {
+pub(super) fn typed_finely(arm: &crate::arm::Arm, q: &Joints) -> Joints {
     const FINER: f64 = 100.0;
     let scaled = Joints::from_fn(q.len(), |j| q[j] * FINER);
     let rounded = typed(arm, &scaled);

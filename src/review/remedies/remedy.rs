@@ -1,5 +1,5 @@
 use crate::arm::Joints;
-use crate::checks::{Check, Finding};
+use crate::checks::{Check, Doubt, Finding};
 use crate::geometry::V3;
 use crate::program::Edit;
 use crate::units::{Acceleration, Angle, Length, Mass, Room, Seconds, Share, Speed, TurnAcceleration, TurnRate};
@@ -41,6 +41,28 @@ pub enum RemedyKind {
     MountHeight,
     /// A base that leans. Information only.
     MountTilt,
+}
+
+impl RemedyKind {
+    /// All kinds.
+    pub const ALL: [Self; 16] = [
+        Self::Slower,
+        Self::Acceleration,
+        Self::FlyBy,
+        Self::Dwell,
+        Self::Turn,
+        Self::Tilt,
+        Self::Shift,
+        Self::Via,
+        Self::JointMove,
+        Self::Posture,
+        Self::Override,
+        Self::Load,
+        Self::Centre,
+        Self::Grip,
+        Self::MountHeight,
+        Self::MountTilt,
+    ];
 }
 
 /// Which of the waypoints at a segment's ends a remedy changes.
@@ -158,6 +180,8 @@ pub enum Change {
         share: Share,
         /// How far the TCP then leaves the line or arc at most, rounded up.
         leaves: Length,
+        /// Whether the end is then taught by the joint values that it has now, so that the posture stays.
+        keeps: bool,
     },
     /// Another posture from one waypoint on, up to the next joint move.
     Posture {
@@ -241,6 +265,8 @@ pub struct Effect {
     pub remains: Vec<Finding>,
     /// Findings that are new or worse, anywhere, as they are after it.
     pub worsens: Vec<Finding>,
+    /// Doubts that are new, anywhere, as they are after it.
+    pub doubts: Vec<Doubt>,
 }
 
 /// A remedy is one change that settles a finding: tried, judged and proved again with the whole recipe, and only then offered.
@@ -268,10 +294,12 @@ impl Remedy {
         self.change.kind()
     }
 
-    /// The order in which remedies are shown: what can be applied first, then by size.
+    /// The order in which remedies are shown: what can be applied first; of those what brings nothing bad, then what brings a doubt,
+    /// then what makes something worse; then by size.
     pub fn order(&self, other: &Self) -> std::cmp::Ordering {
+        let brings = |effect: &Effect| (!effect.worsens.is_empty(), !effect.doubts.is_empty());
         (self.edit.is_none().cmp(&other.edit.is_none()))
-            .then(self.effect.worsens.is_empty().cmp(&other.effect.worsens.is_empty()).reverse())
+            .then(brings(&self.effect).cmp(&brings(&other.effect)))
             .then(self.size.total_cmp(&other.size))
             .then(self.kind().cmp(&other.kind()))
     }

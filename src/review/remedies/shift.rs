@@ -88,7 +88,9 @@ pub(super) fn grown(
     told: impl Fn(V3) -> (Change, f64),
 ) -> Result<super::Remedy, Short> {
     let mut short = Short::Nearest(None);
-    for k in 0..GROWS {
+    // What is nothing grows to nothing.
+    let grows = if by == V3::zeros() { 1 } else { GROWS };
+    for k in 0..grows {
         let by = by * (1.0 + ROUNDED_UP * k as f64);
         let Some(edit) = edit(&by) else { continue };
         let (change, size) = told(by);

@@ -20,6 +20,8 @@ const LONGER: f64 = 0.10;
 const ADDED: f64 = 0.5;
 /// What another way of moving counts by itself.
 const OTHER_WAY: f64 = 0.5;
+/// What a pose taught anew by its joint values counts by itself: it stays where it is, and its frame no longer moves it.
+const BY_JOINTS: f64 = 0.25;
 /// What another posture counts by itself: all points of it are taught anew.
 const OTHER_POSTURE: f64 = 1.0;
 
@@ -66,6 +68,11 @@ pub(super) fn turned(angle: Angle) -> f64 {
 /// A path left by so much.
 pub(super) fn left(way: Length) -> f64 {
     OTHER_WAY + moved(way)
+}
+
+/// A path left by so much, and its end taught by joint values.
+pub(super) fn left_and_taught(way: Length) -> f64 {
+    left(way) + BY_JOINTS
 }
 
 /// A posture changed: its largest turn, as a share of half a turn (of the range where a joint slides).

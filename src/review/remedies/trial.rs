@@ -1,6 +1,6 @@
 use std::sync::Arc;
 
-use crate::checks::{Check, Finding, Kind, SegmentSurvey, Watch, judge_at};
+use crate::checks::{Check, Doubt, Finding, Kind, SegmentSurvey, Watch, judge_at};
 use crate::motion::{Plan, Segment};
 use crate::program::{Edit, Recipe};
 use crate::units::{Room, Seconds, Share};
@@ -52,7 +52,7 @@ impl Seen {
 #[derive(Debug, Clone, Copy, Default)]
 pub(super) struct Nearest {
     room: Option<Room>,
-    spoilt: Option<Finding>,
+    spoilt: Option<Short>,
 }
 
 impl Nearest {
@@ -62,13 +62,26 @@ impl Nearest {
         if let Some(room) = seen.room.filter(|room| nearer(*room)) {
             self.room = Some(room);
         }
-        self.spoilt = self.spoilt.or(seen.spoilt);
+        self.spoilt = self.spoilt.or(seen.spoilt.as_ref().map(Short::spoils));
         seen.clear
+    }
+
+    /// Takes note of what became of an offer and keeps the remedy; whether it is one.
+    pub fn take(&mut self, offer: Result<Remedy, Short>, kept: &mut Option<Remedy>) -> bool {
+        match offer {
+            Ok(remedy) => *kept = Some(remedy),
+            Err(short @ Short::Spoils { .. }) => {
+                self.spoilt = self.spoilt.or(Some(short));
+                return false;
+            }
+            Err(_) => return false,
+        }
+        true
     }
 
     /// Why nothing came of it.
     pub fn short(&self) -> Short {
-        self.spoilt.as_ref().map_or(Short::Nearest(self.room), Short::spoils)
+        self.spoilt.unwrap_or(Short::Nearest(self.room))
     }
 }
 
@@ -131,8 +144,7 @@ impl<'a> Trial<'a> {
             }
             for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
                 if own
-                    && plan.gravity == judged.plan.gravity
-                    && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance)
+                    && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance, plan.gravity)
                 {
                     return Seen { clear: false, room: Some(room), ..seen };
                 }
@@ -259,7 +271,7 @@ impl<'a> Trial<'a> {
         let effect = Effect {
             settles: own().filter(|finding| !finding.check.is_of_posture_alone()).copied().collect(),
             remains: own().filter(|finding| finding.check.is_of_posture_alone()).copied().collect(),
-            worsens: Vec::new(),
+            ..Effect::default()
         };
         let moves: f64 = judged.plan.segments.iter().map(|segment| segment.duration()).sum();
         let costs = Seconds::s(moves * (1.0 / share.as_fraction() - 1.0));
@@ -282,7 +294,15 @@ impl<'a> Trial<'a> {
             settles: self.judged.survey.findings.iter().filter(|old| !is_left(old)).copied().collect(),
             remains: after.survey.findings.iter().filter(own).copied().collect(),
             worsens: after.survey.findings.iter().filter(|new| !self.was_as_bad(new, to_of(new))).copied().collect(),
+            doubts: after.survey.doubts.iter().filter(|new| !self.was_doubted(new, inserted)).cloned().collect(),
         }
+    }
+
+    /// Whether a doubt of the changed recipe was there before.
+    fn was_doubted(&self, new: &Doubt, inserted: Option<usize>) -> bool {
+        let waypoint = new.waypoint().map(|index| origin(index, inserted));
+        let known = |old: &Doubt| old.is_alike(new) && (old.waypoint(), old.joint()) == (waypoint, new.joint());
+        self.judged.survey.doubts.iter().any(known)
     }
 
     fn room_of(&self, judged: &Judged, inserted: Option<usize>) -> Option<Room> {

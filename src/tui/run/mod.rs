@@ -23,7 +23,7 @@ use crate::tui::app::{App, FileWish, Wish};
 use crate::tui::keymap::Keymap;
 use crate::tui::keys::action_of;
 use crate::tui::options::Options;
-use crate::tui::remedies::wanted;
+use crate::tui::remedies::{is_to_stop, wanted};
 use crate::tui::update::update;
 
 use keeper::Keeper;
@@ -99,6 +99,9 @@ fn watched(started: &Started, options: Options) -> anyhow::Result<Option<i32>> {
         }
         if let (Some(segment), Some(judged)) = (app.tighten.take(), app.judged()) {
             recheck.tighten(judged, segment);
+        }
+        if is_to_stop(&mut app) {
+            desk.stop();
         }
         if let Some((judged, finding)) = wanted(&mut app) {
             desk.submit(&judged, &finding);
