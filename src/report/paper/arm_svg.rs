@@ -14,7 +14,7 @@ const HEIGHT: f64 = 200.0;
 /// Height that the words above the views take.
 const HEAD: f64 = 18.0;
 /// Free space around what is drawn.
-const EDGE: f64 = 9.0;
+const EDGE: f64 = 16.0;
 /// Half the width of the drawn foot, m.
 const FOOT: f64 = 0.12;
 
@@ -126,7 +126,7 @@ impl<'a> Arms<'a> {
     }
 
     fn view(&self, page: &mut Markup, stance: &Stance, view: View) {
-        let left = if matches!(view, View::Side) { EDGE } else { 0.5 * WIDTH + EDGE };
+        let left = if matches!(view, View::Side) { 0.0 } else { 0.5 * WIDTH } + EDGE;
         page.says("text", &[("x", &left), ("y", &11)], view.words());
         page.shape("use", &[("href", &format!("#{}", view.id()))]);
         for half in foot(&stance.mount) {
@@ -143,8 +143,9 @@ impl<'a> Arms<'a> {
         }
         let [x, y] = self.dot(view, &stance.tcp);
         if stance.verdict != Verdict::Clear {
-            // The letter stands beside the TCP, on the side where there is room.
-            let (x, stands) = if x > left + 0.35 * WIDTH { (x - 8.0, "end") } else { (x + 8.0, "start") };
+            // The letter stands beside the TCP, on the side away from the base.
+            let base = self.dot(view, &stance.mount.at)[0];
+            let (x, stands) = if x < base { (x - 7.0, "end") } else { (x + 7.0, "start") };
             let name = format!("letter {}", class(stance.verdict));
             let [x, y] = [x, y + 4.0].map(|value| format!("{value:.1}"));
             page.says("text", &[("class", &name), ("x", &x), ("y", &y), ("text-anchor", &stands)], &sign(stance.verdict));

@@ -81,6 +81,13 @@ impl Cell {
     pub fn verdict(verdict: Verdict) -> Self {
         Self::Verdict(verdict, verdict.word().to_owned())
     }
+
+    /// What it says.
+    pub fn words(&self) -> &str {
+        match self {
+            Self::Text(words) | Self::Verdict(_, words) | Self::Code(words) | Self::Link(_, words) => words,
+        }
+    }
 }
 
 /// The verdicts along the cycle.

@@ -1,5 +1,6 @@
 use crate::checks::Verdict;
 use crate::review::drawn::{Curve, Point};
+use crate::units::Room;
 
 use super::html::class;
 use super::markup::Markup;
@@ -8,7 +9,7 @@ use super::markup::Markup;
 const WIDTH: f64 = 340.0;
 const HEIGHT: f64 = 200.0;
 /// Room for the words around the plot: left, right, top, bottom.
-const AROUND: [f64; 4] = [44.0, 10.0, 12.0, 34.0];
+const AROUND: [f64; 4] = [44.0, 10.0, 16.0, 34.0];
 /// Nothing above this share of a limit is drawn to scale.
 const HIGHEST: f64 = 4.0;
 /// A chart shows at least up to this share of a limit.
@@ -127,8 +128,15 @@ fn worst(page: &mut Markup, curve: &Curve, scale: &Scale) {
         Verdict::Over | Verdict::NoPath => format!("M{x:.1} {:.1}l6 10h-12z", y - 6.0),
     };
     page.shape("path", &[("class", &format!("mark {}", class(point.verdict))), ("d", &shape)]);
-    let (at, stands) = if x > 0.6 * WIDTH { (x - 9.0, "end") } else { (x + 9.0, "start") };
-    text(page, [at, (y + 4.0).max(LINE)], stands, &format!("{:.0} %", 100.0 * point.asked));
+    let stands = if x > 0.8 * WIDTH {
+        "end"
+    } else if x < 0.3 * WIDTH {
+        "start"
+    } else {
+        "middle"
+    };
+    // Rounded as its finding is told.
+    text(page, [x, y - 9.0], stands, &Room::fraction(1.0 - point.asked).asks());
 }
 
 fn line(page: &mut Markup, points: impl Iterator<Item = [f64; 2]>, name: &str) {

@@ -103,11 +103,14 @@ fn labelled(page: &mut Markup, all: &[Labelled]) {
     });
 }
 
-/// Widest bar, in units of its drawing; a full limit is half of it, since a sum may be more.
+/// Widest bar, in units of its drawing, and where the limit is: a sum may be more.
 const BAR: f64 = 200.0;
+const LIMIT: f64 = 160.0;
 
 /// Shares of a sum: name, figure, and a bar whose length stands in the figure too.
 fn bars(page: &mut Markup, bars: &[Bar]) {
+    // The sum stands last.
+    let total = bars.last().map_or(0.0, |bar| bar.share);
     page.within("table", &[("class", &"bars")], |page| {
         page.says("caption", &[], "Shares; the mark is the limit");
         page.within("thead", &[], |page| {
@@ -122,30 +125,38 @@ fn bars(page: &mut Markup, bars: &[Bar]) {
                 page.within("tr", &[], |page| {
                     page.says("th", &[("scope", &"row")], &bar.name);
                     page.says("td", &[("class", &"figure")], &bar.figure);
-                    page.within("td", &[], |page| drawn_bar(page, bar));
+                    page.within("td", &[], |page| drawn_bar(page, bar, total));
                 });
             }
         });
     });
 }
 
-fn drawn_bar(page: &mut Markup, bar: &Bar) {
+fn drawn_bar(page: &mut Markup, bar: &Bar, total: f64) {
     let size = [("viewBox", &"0 0 200 10" as &dyn std::fmt::Display), ("class", &"bar"), ("aria-hidden", &"true")];
     page.within("svg", &size, |page| {
-        let width = (bar.share.abs() * BAR / 2.0).min(BAR);
+        let width = (bar.share.abs() * LIMIT).min(BAR);
         if width.is_finite() {
-            let kind = if bar.share < 0.0 { "against" } else { "adds" };
+            let kind = if bar.share * total < 0.0 { "against" } else { "adds" };
             page.shape("rect", &[("class", &kind), ("x", &0), ("y", &1), ("width", &format!("{width:.1}")), ("height", &8)]);
         }
-        page.shape("path", &[("class", &"limit"), ("d", &"M100 0V10")]);
+        page.shape("path", &[("class", &"limit"), ("d", &format!("M{LIMIT} 0V10"))]);
     });
 }
+
+/// A table of no more rows is kept on one page.
+const SHORT: usize = 16;
+/// A table with a cell of more letters than this is not squeezed onto a small screen, but moved.
+const LONG: usize = 120;
 
 fn table(page: &mut Markup, told: &Table) {
     // What is wider than the screen is moved by itself, not the whole page; the keyboard must get there too.
     let about = [("class", &"wide" as &dyn std::fmt::Display), ("tabindex", &0), ("role", &"group"), ("aria-label", &told.caption)];
+    let mut kind = Vec::new();
+    kind.extend((told.rows.len() <= SHORT).then_some("short"));
+    kind.extend(told.rows.iter().flatten().any(|cell| cell.words().len() > LONG).then_some("prose"));
     page.within("div", &about, |page| {
-        page.within("table", &[], |page| {
+        page.within("table", &[("class", &kind.join(" "))], |page| {
             page.says("caption", &[], &told.caption);
             page.within("thead", &[], |page| {
                 page.within("tr", &[], |page| {

@@ -1,5 +1,7 @@
 use std::fmt::{Display, Write};
 
+use crate::review::glued;
+
 use super::visible::visible;
 
 /// Markup is a growing text of HTML with SVG in it. Names of elements and attributes are part of the program; text and values come in
@@ -46,7 +48,7 @@ impl Markup {
 
     /// Plain text.
     pub fn words(&mut self, text: &str) {
-        self.text.push_str(&escaped(&visible(text)));
+        self.text.push_str(&escaped(&glued(&visible(text))));
     }
 
     /// The style sheet and what stands before the first element: text of the program's own, as it is.

@@ -107,7 +107,9 @@ impl Curve {
         if planned.dwell > 0.0 || planned.carried_after.is_some() {
             times.extend([lasts + 0.01 * planned.dwell, lasts + 0.99 * planned.dwell, lasts + planned.dwell]);
         }
-        times.retain(|time| time.is_finite());
+        // With what was taken or released there it is the next segment's matter, but for what is judged at the stop.
+        let after = planned.carried_after.is_some() && !subject.check.looks_after_stop();
+        times.retain(|time| time.is_finite() && !(after && *time >= lasts + planned.dwell));
         times.sort_by(f64::total_cmp);
         times.dedup();
         for time in times {

@@ -46,7 +46,7 @@ pub use reduced_speed::{fastest_text, reduced_speed_text};
 pub use remedy::{kind_words, remedies_text, remedy_text, remedy_title};
 pub use segment_row::{SEGMENT_HEADS, segment_row};
 pub use stopping::{joint_stop_words, stopping_text};
-pub use wrap::wrap;
+pub use wrap::{glued, wrap};
 
 use crate::checks::{Check, Excess, Finding, Kind};
 
