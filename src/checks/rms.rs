@@ -160,7 +160,16 @@ fn peak(channel: &Channel, value: f64, at: Place) -> Peak {
 
 fn finding(peak: &Peak, segment: usize, verdict: Verdict, planned: &Segment) -> Finding {
     let [from, to] = [(0.0, 0.0), (planned.duration(), 1.0)].map(|(time, u)| Place { time, u });
-    Finding { segment, check: Check::Rms, joint: peak.joint, verdict, from, to, kind: Kind::Excess(Excess::over_the_cycle(peak)), stop: false }
+    Finding {
+        segment,
+        check: Check::Rms,
+        joint: peak.joint,
+        verdict,
+        from,
+        to,
+        kind: Kind::Excess(Excess::over_the_cycle(peak)),
+        stop: false,
+    }
 }
 
 impl Cycle {

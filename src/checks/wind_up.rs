@@ -142,7 +142,16 @@ fn closely(arm: &Arm, recipe: &Recipe, plan: &Plan, segment: &Segment, joint: us
 
 fn finding(peak: &Peak, verdict: Verdict, at: End, plan: &Plan) -> Finding {
     let [from, to] = whole(&plan.segments[at.1]);
-    Finding { segment: at.1, check: Check::WindUp, joint: peak.joint, verdict, from, to, kind: Kind::Excess(Excess::over_the_cycle(peak)), stop: false }
+    Finding {
+        segment: at.1,
+        check: Check::WindUp,
+        joint: peak.joint,
+        verdict,
+        from,
+        to,
+        kind: Kind::Excess(Excess::over_the_cycle(peak)),
+        stop: false,
+    }
 }
 
 /// A finding that it is not known how far the wrist winds cables.

@@ -164,11 +164,12 @@ fn size(change: &Change) -> SizeJson {
         Change::FlyBy { from, to, .. } => from_to(from.measure(), to.unwrap_or(Length::m(0.0)).measure()),
         Change::Dwell { from, to, .. } => from_to(from.measure(), to.measure()),
         Change::Load { from, to } => from_to(from.measure(), to.measure()),
-        Change::Turn { angle, .. }
-        | Change::Tilt { angle, .. }
-        | Change::Grip { angle, .. }
-        | Change::MountTilt { angle, .. } => by(angle.measure()),
-        Change::Shift { by: way, .. } | Change::Via { by: way, .. } | Change::Centre { by: way } => by(Length::m(way.norm()).measure()),
+        Change::Turn { angle, .. } | Change::Tilt { angle, .. } | Change::Grip { angle, .. } | Change::MountTilt { angle, .. } => {
+            by(angle.measure())
+        }
+        Change::Shift { by: way, .. } | Change::Via { by: way, .. } | Change::Centre { by: way } => {
+            by(Length::m(way.norm()).measure())
+        }
         Change::JointMove { leaves, .. } => by(leaves.measure()),
         Change::MountHeight { by: way } => by(way.measure()),
         // The largest turn of a joint; a sliding joint's way is among the edits.

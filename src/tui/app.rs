@@ -5,10 +5,10 @@ use ratatui::layout::Rect;
 use crate::arm::Arm;
 use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::{Edit, Recipe};
+use crate::review::drawn::Subject;
 use crate::review::{FirstRun, History, Judged, Progress, Session};
 
 use super::action::Action;
-use super::curve::Subject;
 use super::editing::{Editing, Preview};
 use super::jog::Jogging;
 use super::keymap::Keymap;

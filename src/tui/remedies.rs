@@ -3,9 +3,7 @@ use std::sync::Arc;
 use ratatui::style::Style;
 
 use crate::checks::{Finding, Survey};
-use crate::review::{
-    Judged, Remedy, RemedyKind, Told, Tried, kinds_for, remedies_text, remedy_text, remedy_title, stopped_text,
-};
+use crate::review::{Judged, Remedy, RemedyKind, Told, Tried, kinds_for, remedies_text, remedy_text, remedy_title, stopped_text};
 use crate::units::Seconds;
 
 use super::action::Action;

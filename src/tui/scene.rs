@@ -2,17 +2,14 @@ use std::sync::Arc;
 
 use crate::checks::{Survey, Verdict};
 use crate::motion::Cursor;
+use crate::review::drawn::{Bands, Curve, Gauges, Sketch, Subject};
 use crate::review::{Explanation, Label, Paragraph, explain, headline, no_finding, not_checked};
 
 use super::app::App;
-use super::bands::Bands;
-use super::curve::{Curve, Subject};
 use super::filter::{Shown, wanted};
-use super::gauges::Gauges;
 use super::layout::Layout;
 use super::remedies;
 use super::rows::Rows;
-use super::sketch::Sketch;
 
 /// A scene is what the panes draw, kept until what it was computed from changes. Drawing itself computes nothing.
 #[derive(Debug, Default)]

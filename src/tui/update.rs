@@ -1,7 +1,7 @@
 use ratatui::layout::Rect;
 
 use crate::checks::Check;
-use crate::review::Session;
+use crate::review::{Session, check_brief};
 
 use super::action::Action;
 use super::app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
@@ -9,7 +9,6 @@ use super::ask;
 use super::editing::{self, Editing};
 use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
-use super::phrases::check_word;
 use super::scene::refresh;
 use super::{click, edits, file, filter, jog, page, remedies, signing, stretch};
 
@@ -333,7 +332,7 @@ fn is_named(app: &App, action: &Action) -> bool {
 
 fn quantities(app: &App) -> Menu {
     let checks = charted(app);
-    let item = |check: &Check| Item { name: check_word(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
+    let item = |check: &Check| Item { name: check_brief(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
     Menu {
         title: "The chart shows".to_owned(),
         items: checks.iter().map(item).collect(),

@@ -14,7 +14,8 @@ use crate::cases::{SIX, found, judged, remedy};
 /// A change of the dense search is smaller than what was offered by at least this share.
 const SMALLER: f64 = 0.95;
 
-const TOOL: &str = "[usual]\naccel = 1000\n[[tool]]\nname = \"gripper\"\ntcp = { xyz = [0, 0, 165] }\nmass = 3.4\ncom = [0, 0, 60]\n";
+const TOOL: &str =
+    "[usual]\naccel = 1000\n[[tool]]\nname = \"gripper\"\ntcp = { xyz = [0, 0, 165] }\nmass = 3.4\ncom = [0, 0, 60]\n";
 const READY: &str = "[[waypoint]]\nname = \"ready\"\njoints = [0, -20, -20, 0, 60, 0]\n";
 
 /// Whether a changed recipe, judged afresh, no longer has a finding's check and joint on its segment, and nothing that is worse.
@@ -28,7 +29,14 @@ fn settles(before: &Judged, finding: &Finding, how: impl FnOnce(&mut Recipe)) ->
     let key = |judged: &Judged, of: &Finding| (judged.plan.segments[of.segment].to, of.check, of.joint);
     let wanted = key(before, finding);
     let worst = |judged: &Judged, of| {
-        judged.survey.findings.iter().filter(|other| key(judged, other) == of).map(|other| other.verdict).max().unwrap_or(Verdict::Clear)
+        judged
+            .survey
+            .findings
+            .iter()
+            .filter(|other| key(judged, other) == of)
+            .map(|other| other.verdict)
+            .max()
+            .unwrap_or(Verdict::Clear)
     };
     after.survey.findings.iter().all(|left| {
         let of = key(&after, left);
@@ -65,9 +73,8 @@ fn no_nearer_radius_of_a_dense_search_settles_it() {
         let finding = found(&judged, Check::Accel);
         let Change::FlyBy { waypoint, to, .. } = remedy(&judged, &finding, RemedyKind::FlyBy).change else { panic!("a radius") };
         let least = (to.map_or(0.0, Length::as_mm) - radius).abs();
-        let settled = |mm: f64| {
-            settles(&judged, &finding, |recipe| recipe.waypoints[waypoint].fly_by = (mm > 0.0).then(|| Length::mm(mm)))
-        };
+        let settled =
+            |mm: f64| settles(&judged, &finding, |recipe| recipe.waypoints[waypoint].fly_by = (mm > 0.0).then(|| Length::mm(mm)));
         assert!(settled(to.map_or(0.0, Length::as_mm)), "{to:?} settles it by the same measure");
         // A finer step than any that is offered.
         let mut by = 0.25;

@@ -87,21 +87,15 @@ fn changes() -> Vec<Change> {
                 Change::TurnAccel { from: TurnAcceleration::deg_per_s2(900.0), to: TurnAcceleration::deg_per_s2(410.0) }
             }
             Some(Change::TurnAccel { .. }) => Change::AccelShare { from: Share::percent(100.0), to: Share::percent(71.0) },
-            Some(Change::AccelShare { .. }) => {
-                Change::FlyBy { waypoint: 1, from: Length::mm(20.0), to: Some(Length::mm(34.0)) }
-            }
+            Some(Change::AccelShare { .. }) => Change::FlyBy { waypoint: 1, from: Length::mm(20.0), to: Some(Length::mm(34.0)) },
             Some(Change::FlyBy { to: Some(_), .. }) => Change::FlyBy { waypoint: 1, from: Length::mm(20.0), to: None },
-            Some(Change::FlyBy { to: None, .. }) => {
-                Change::Dwell { waypoint: 1, from: Seconds::s(0.0), to: Seconds::s(1.3) }
-            }
+            Some(Change::FlyBy { to: None, .. }) => Change::Dwell { waypoint: 1, from: Seconds::s(0.0), to: Seconds::s(1.3) },
             Some(Change::Dwell { .. }) => Change::Turn { ends: Ends::Start, angle: deg(-12.3) },
             Some(Change::Turn { .. }) => Change::Tilt { ends: Ends::End, axis: V3::y(), angle: deg(1.3) },
             Some(Change::Tilt { .. }) => Change::Shift { ends: Ends::Both, by },
             Some(Change::Shift { .. }) => Change::Via { u: 0.5, by: V3::zeros() },
             Some(Change::Via { by: beside, .. }) if *beside == V3::zeros() => Change::Via { u: 0.5, by },
-            Some(Change::Via { .. }) => {
-                Change::JointMove { share: Share::percent(11.0), leaves: Length::mm(45.2), keeps: false }
-            }
+            Some(Change::Via { .. }) => Change::JointMove { share: Share::percent(11.0), leaves: Length::mm(45.2), keeps: false },
             Some(Change::JointMove { keeps: false, .. }) => {
                 Change::JointMove { share: Share::percent(11.0), leaves: Length::mm(45.2), keeps: true }
             }

@@ -27,10 +27,7 @@ pub(super) fn fly_by(trial: &Trial) -> Outcome {
         let at = if closer { down - f64::from(steps) } else { up + f64::from(steps) };
         (at > 0.0).then(|| Length::mm(crate::units::tidy(at * step)))
     };
-    let ways = [
-        Way { which: true, most: down as u32 },
-        Way { which: false, most: ((LARGEST - 1.0) * down) as u32 },
-    ];
+    let ways = [Way { which: true, most: down as u32 }, Way { which: false, most: ((LARGEST - 1.0) * down) as u32 }];
     let (mut nearest, mut spoilt, mut offered) = (Nearest::default(), 0, None);
     least_steps(&ways, |closer, steps| {
         if spoilt >= SPOILT || trial.watch.is_stopped() {

@@ -87,7 +87,13 @@ mod tests {
     fn a_way_is_tried_at_its_very_end_and_not_beyond() {
         assert_eq!(least_steps(&BOTH, |way, steps| way < 0 && steps == 40), Some((-1, 40)));
         let mut farthest = 0;
-        assert!(least_steps(&BOTH, |_, steps| { farthest = farthest.max(steps); false }).is_none());
+        assert!(
+            least_steps(&BOTH, |_, steps| {
+                farthest = farthest.max(steps);
+                false
+            })
+            .is_none()
+        );
         assert_eq!(farthest, 1000);
         assert!(least_steps::<i64>(&[], |_, _| true).is_none());
     }

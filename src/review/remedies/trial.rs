@@ -143,9 +143,7 @@ impl<'a> Trial<'a> {
                 break;
             }
             for segment in [Some(&plan.segments[index]), plan.stops[index].as_ref()].into_iter().flatten() {
-                if own
-                    && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance, plan.gravity)
-                {
+                if own && let Some(room) = still_flagged(judged, self.finding, segment, &recipe.acceptance, plan.gravity) {
                     return Seen { clear: false, room: Some(room), ..seen };
                 }
                 let survey = judge_at(&judged.arm, index, segment, &recipe.acceptance, plan.gravity, Share::WHOLE);
