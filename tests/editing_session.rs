@@ -137,6 +137,40 @@ fn what_was_not_saved_is_offered_after_a_kill() {
     assert!(third.end().success());
 }
 
+/// A kill between the file and the notes against a crash: the notes tell of edits that stand in the file.
+#[test]
+fn what_was_saved_just_before_a_kill_is_not_offered_again() {
+    let folder = cell();
+    let mut running = open(&folder, [80, 24]);
+    slow_down(&mut running);
+    let notes = folder.path().join(".housing-transfer.toml.journal");
+    let noted = std::fs::read(&notes).expect("notes");
+    running.press("s");
+    running.until("saved to");
+    assert!(!notes.exists());
+    running.signal("KILL");
+    while !running.has_ended() {
+        std::thread::sleep(std::time::Duration::from_millis(10));
+    }
+    std::fs::write(&notes, &noted).expect("written");
+    let saved = text(&folder);
+    let mut again = open(&folder, [80, 24]);
+    again.until("1 tight, 12 clear");
+    assert!(!again.text().contains("never saved"), "{}", again.text());
+    again.press("q");
+    assert!(again.end().success());
+    assert!(!notes.exists());
+    // Where the file holds anything else they are offered.
+    std::fs::write(&notes, &noted).expect("written");
+    std::fs::write(recipe(&folder), saved.replace("# ", "#  ")).expect("written");
+    let mut third = open(&folder, [80, 24]);
+    third.until("never saved");
+    third.press("\x1b[B\r");
+    third.press("q");
+    assert!(third.end().success());
+    assert_eq!(std::fs::read(&notes).expect("kept"), noted);
+}
+
 #[test]
 fn a_hang_up_keeps_the_edits_for_the_next_start() {
     let folder = cell();

@@ -235,8 +235,7 @@ fn a_number_or_a_time_is_gone_to() {
     assert_eq!(answer(&mut app, Action::GoTo, "12").0, 12);
     assert!((answer(&mut app, Action::GoTo, "9,9 s").1 - 9.9).abs() < 1e-9);
     assert_eq!(answer(&mut app, Action::GoTo, "1").1, 0.0);
-    assert_eq!(answer(&mut app, Action::Find, "WHEEL").0, 5);
-    assert_eq!(answer(&mut app, Action::Find, "").0, 8);
+    assert_eq!(answer(&mut app, Action::GoTo, "8").0, 8);
     assert_eq!(answer(&mut app, Action::GoTo, "99").0, 8);
     assert_eq!(app.message.as_deref(), Some("there is no waypoint 99; there are 14"));
     assert_eq!(answer(&mut app, Action::GoTo, "nans").0, 8);

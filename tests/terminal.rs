@@ -29,7 +29,7 @@ fn it_opens_moves_and_quits() {
 fn arrows_and_enter_are_enough_to_quit() {
     let mut running = Running::program();
     running.press("\r");
-    running.until("find a waypoint");
+    running.until("filter the list");
     running.press("\x1b[A\r");
     assert!(running.end().success());
 }

@@ -94,7 +94,7 @@ impl Check {
     }
 
     /// Whether it also looks at the stop with what was taken or released there.
-    pub(super) fn looks_after_stop(self) -> bool {
+    pub fn looks_after_stop(self) -> bool {
         matches!(self, Self::Holding | Self::Brake | Self::Flange)
     }
 

@@ -1,6 +1,6 @@
 use std::path::PathBuf;
 
-use clap::{Args as ClapArgs, Parser, Subcommand};
+use clap::{ArgGroup, Args as ClapArgs, Parser, Subcommand};
 
 use crate::review::{CellTool, Date, Role};
 use crate::units::{Length, Seconds};
@@ -75,6 +75,13 @@ pub(super) enum Command {
                             for each side where values differ. Exit codes: 0 written, 2 not."
     )]
     Trace(TraceArgs),
+    /// Write all that was found as one HTML file, as Markdown for a ticket, or both
+    #[command(
+        after_help = "The HTML file needs no other and no network, and prints on A4 and Letter. A report that is there is replaced, and the \
+                      one before kept as NAME~; anything else that is there is left alone. The same files make the same bytes. Exit \
+                      codes: 0 written, whatever the verdict, 2 not."
+    )]
+    Report(ReportArgs),
     /// Sign a recipe off: write a record that others can check, with reasons for what is not clear
     #[command(
         after_help = "Every doubt must be looked into, every finding that is not clear accepted with a written reason, and every datum \
@@ -279,6 +286,33 @@ pub(super) struct PlanArgs {
     /// Columns to wrap text at
     #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
     pub width: u16,
+}
+
+/// Arguments of `report`.
+#[derive(Debug, ClapArgs)]
+#[command(group(ArgGroup::new("formats").args(["html", "markdown"]).required(true).multiple(true)))]
+pub(super) struct ReportArgs {
+    /// The recipe
+    #[arg(required_unless_present = "demo")]
+    pub recipe: Option<PathBuf>,
+    /// Take the built-in demonstration cell
+    #[arg(long, conflicts_with = "recipe")]
+    pub demo: bool,
+    /// Write HTML to this file, or to standard output for -
+    #[arg(long, value_name = "FILE")]
+    pub html: Option<PathBuf>,
+    /// Write Markdown to this file, or to standard output for -
+    #[arg(long, value_name = "FILE")]
+    pub markdown: Option<PathBuf>,
+    /// Leave out the remedies, which take a while to try
+    #[arg(long)]
+    pub no_remedies: bool,
+    /// A list of allowed signers, as ssh-keygen has it, for the state of the sign-off
+    #[arg(long, value_name = "FILE")]
+    pub signers: Option<PathBuf>,
+    /// A day to put on it, as YYYY-MM-DD; none if left out
+    #[arg(long, value_name = "DATE", value_parser = date)]
+    pub date: Option<Date>,
 }
 
 /// Arguments of `trace`.

@@ -2,13 +2,13 @@ use std::path::Path;
 
 use crate::checks::Watch;
 use crate::report::check_json;
-use crate::review::{Judged, headline, proof_summary, reduced_speed, reduced_speed_text};
+use crate::review::{CAUTION, Judged, headline, proof_summary, reduced_speed, reduced_speed_text};
 
 use super::args::CheckArgs;
 use super::chosen::{Chosen, chosen};
 use super::code::Code;
 use super::findings_text::findings_text;
-use super::not_checked_text::{CAUTION, doubts_text, hanging, not_checked_text};
+use super::not_checked_text::{doubts_text, hanging, not_checked_text};
 use super::out::{self, Reader};
 use super::table::table;
 

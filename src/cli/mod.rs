@@ -14,8 +14,10 @@ mod new;
 mod not_checked_text;
 mod out;
 mod plan;
+mod report;
 mod screen;
 mod sign;
+mod standing;
 mod step;
 mod table;
 mod trace;
@@ -43,6 +45,7 @@ pub fn run() -> ExitCode {
         Some(Command::Check(check)) => check::run(&check),
         Some(Command::Explain(explain)) => explain::run(&explain),
         Some(Command::Plan(plan)) => plan::run(&plan),
+        Some(Command::Report(report)) => report::run(&report),
         Some(Command::Trace(trace)) => trace::run(&trace),
         Some(Command::Sign(sign)) => sign::run(&sign),
         Some(Command::Verify(verify)) => verify::run(&verify),

@@ -1,9 +1,5 @@
 use crate::review::{Judged, doubt_text, not_checked, wrap};
 
-/// What stands under every result.
-pub(super) const CAUTION: &str = "Elbowroom computes from data that people typed. It replaces no risk assessment, no safeguard \
-                                  and no reduced-speed trial.";
-
 /// The doubts about a recipe, a paragraph each; empty for none.
 pub(super) fn doubts_text(judged: &Judged, width: usize) -> String {
     let told = judged.survey.doubts.iter().map(|doubt| hanging("doubt: ", &doubt_text(judged, doubt), width));

@@ -1,16 +1,15 @@
-use crate::checks::{Spot, Watch, stopping};
+use crate::checks::Watch;
 use crate::report::plan_json;
 use crate::review::{
-    FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, fastest_text, first_run, first_run_text, headline, held_back_words,
-    joint_stop_words, reduced_speed, reduced_speed_text, stage_words, stopping_text, wrap,
+    CAUTION, FIRST_RUN_CAUTIONS, FirstRun, Judged, Reduced, fastest_text, first_run, first_run_text, headline, reduced_speed,
+    reduced_speed_text, run_rows, stage_rows, stage_words, stop_rows, stopping_text, wrap,
 };
-use crate::units::{Length, Seconds, Speed};
 
 use super::args::PlanArgs;
 use super::chosen::{Chosen, chosen};
 use super::code::Code;
 use super::columns::{Stands, columns};
-use super::not_checked_text::{CAUTION, hanging};
+use super::not_checked_text::hanging;
 use super::out;
 
 /// Plans the first run of a recipe.
@@ -63,29 +62,12 @@ fn stages(judged: &Judged, plan: &FirstRun, width: usize) -> String {
         };
         return plan.stages.iter().map(line).collect();
     }
-    let mut rows = vec![["override", "verdict", "not clear"].map(str::to_owned)];
-    rows.extend(
-        plan.stages.iter().map(|stage| [stage.run_at.to_string(), stage.verdict().word().to_owned(), stage_words(judged, stage)]),
-    );
-    columns(&rows, [Stands::Last, Stands::First, Stands::First], 2, width)
+    columns(&stage_rows(judged, plan), [Stands::Last, Stands::First, Stands::First], 2, width)
 }
 
 /// The segments in a table: how fast each is clear, the peaks of speed at full override, and the override at reduced speed.
 fn segments(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], width: usize) -> String {
-    let mut rows = vec![["#", "to", "clear to", "held back by", "TCP", "flange", "reduced at"].map(str::to_owned)];
-    rows.extend(plan.segments.iter().zip(reduced).map(|(run, reduced)| {
-        let segment = &judged.plan.segments[run.segment];
-        let speed = |spot: Spot| Speed::m_per_s(reduced.peak(&spot)).measure().text_up(0);
-        [
-            segment.number().to_string(),
-            judged.recipe.waypoints[segment.to].name.clone(),
-            run.highest.map_or("never".to_owned(), |share| share.to_string()),
-            held_back_words(judged, run.held_back),
-            speed(Spot::Tcp),
-            speed(Spot::Flange),
-            reduced.run_at.to_string(),
-        ]
-    }));
+    let rows = run_rows(judged, plan, reduced);
     let [first, last] = [Stands::First, Stands::Last];
     let table = if width < NARROW {
         let few: Vec<[String; 4]> =
@@ -100,18 +82,7 @@ fn segments(judged: &Judged, plan: &FirstRun, reduced: &[Reduced], width: usize)
 /// What a stop asks for, in a table: the TCP's way along its path, the joint that runs on farthest, and the time until all rest.
 /// Empty where no segment has stopping data.
 fn stops(judged: &Judged, width: usize) -> String {
-    let mut rows = vec![["#", "to", "TCP runs on", "at", "farthest joint", "rests after"].map(str::to_owned)];
-    for segment in &judged.plan.segments {
-        let Some(stop) = stopping(&judged.arm, segment) else { continue };
-        rows.push([
-            segment.number().to_string(),
-            judged.recipe.waypoints[segment.to].name.clone(),
-            Length::m(stop.tcp).measure().text_up(0),
-            Seconds::s(stop.tcp_at.time).to_string(),
-            joint_stop_words(judged, &stop),
-            Seconds::s(stop.time).measure().text_up(2),
-        ]);
-    }
+    let rows = stop_rows(judged);
     if rows.len() == 1 {
         return String::new();
     }

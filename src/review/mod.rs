@@ -1,6 +1,7 @@
 //! The review: a recipe with its plan and survey, and the words in which findings are told. What the screen, the command line and
 //! the reports share.
 
+pub mod drawn;
 mod explain;
 mod first_run;
 mod history;
@@ -18,10 +19,10 @@ mod sign_off;
 mod verify;
 
 pub use explain::{
-    Bar, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, bounds_text, check_words, difference_words, doubt_text, edit_words,
-    explain, fastest_text, first_run_text, headline, held_back_words, joint_stop_words, kind_words, line_words, no_finding,
-    proof_summary, proof_text, reduced_speed_text, remedies_text, remedy_text, remedy_title, stage_words, stopped_text,
-    stopping_text, wrap,
+    Bar, CAUTION, Explanation, FIRST_RUN_CAUTIONS, Label, Paragraph, SEGMENT_HEADS, bounds_text, check_brief, check_words,
+    difference_words, doubt_text, edit_words, explain, fastest_text, first_run_text, glued, headline, held_back_words,
+    joint_stop_words, kind_words, line_words, no_finding, proof_summary, proof_text, reduced_speed_text, remedies_text,
+    remedy_text, remedy_title, run_rows, segment_row, stage_rows, stage_words, stop_rows, stopped_text, stopping_text, wrap,
 };
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
 pub use history::{History, Step};

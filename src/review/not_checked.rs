@@ -14,7 +14,7 @@ pub fn not_checked(judged: &Judged) -> Vec<String> {
             "Stopping time and distance, and the separation of people from the arm.",
             "Safeguards, interlocks, emergency stops and the cell's risk assessment.",
             "Gears, heat and wear; brakes beyond what they hold at standstill.",
-            "Cables and hoses: how they pull and rub; how far the wrist winds them is only told, where the recipe sets a limit.",
+            "Cables and hoses: how they pull and rub.",
             "The grip: whether the tool holds the part.",
             "The task program's logic, signals and waiting times.",
             "How the first waypoint is reached, and the way back to it when the cycle starts again.",
@@ -56,6 +56,9 @@ fn particular(judged: &Judged) -> Vec<String> {
                     hoses."
             .to_owned(),
     });
+    if recipe.acceptance.wind_up.is_none() {
+        told.push("How far the wrist winds cables over the cycle: the recipe sets no wind-up.".to_owned());
+    }
     if recipe.waypoints.iter().any(|waypoint| waypoint.fly_by.is_some()) {
         told.push("Fly-by: how the cell's controller rounds the corner. A blend tangent to both segments is judged, and so is a stop at the \
              waypoint; controllers differ, and what yours does between the two is not.".to_owned());

@@ -92,19 +92,42 @@ impl Session {
 
     /// Goes to the worst instant of the worst finding; `false` if there is none.
     pub fn go_to_worst(&mut self) -> bool {
-        self.go_to_finding(0)
+        self.go_to_worst_among(|_| true)
+    }
+
+    /// The same among the findings on segments that are meant.
+    pub fn go_to_worst_among(&mut self, meant: impl Fn(usize) -> bool) -> bool {
+        let found = self.judged.survey.findings.iter().position(|finding| meant(finding.segment));
+        found.is_some_and(|index| self.go_to_finding(index))
     }
 
     /// Goes to the next finding, from the last on to the worst; `false` if there is none.
     pub fn go_to_next_finding(&mut self) -> bool {
-        let count = self.judged.survey.findings.len();
-        count > 0 && self.go_to_finding(self.finding.map_or(0, |index| (index + 1) % count))
+        self.go_to_next_finding_among(|_| true)
+    }
+
+    /// The same among the findings on segments that are meant.
+    pub fn go_to_next_finding_among(&mut self, meant: impl Fn(usize) -> bool) -> bool {
+        let first = self.finding.map_or(0, |index| index + 1);
+        self.go_to_first_of(|on, count| (first + on) % count, meant)
     }
 
     /// Goes to the finding before, from the worst on to the last; `false` if there is none.
     pub fn go_to_previous_finding(&mut self) -> bool {
-        let count = self.judged.survey.findings.len();
-        count > 0 && self.go_to_finding(self.finding.map_or(0, |index| (index + count - 1) % count))
+        self.go_to_previous_finding_among(|_| true)
+    }
+
+    /// The same among the findings on segments that are meant.
+    pub fn go_to_previous_finding_among(&mut self, meant: impl Fn(usize) -> bool) -> bool {
+        let behind = self.finding.unwrap_or(1);
+        self.go_to_first_of(|on, count| (behind + 2 * count - 1 - on) % count, meant)
+    }
+
+    /// Goes to the first finding on a segment that is meant, in the order in which `nth` numbers them.
+    fn go_to_first_of(&mut self, nth: impl Fn(usize, usize) -> usize, meant: impl Fn(usize) -> bool) -> bool {
+        let findings = &self.judged.survey.findings;
+        let found = (0..findings.len()).map(|on| nth(on, findings.len())).find(|&index| meant(findings[index].segment));
+        found.is_some_and(|index| self.go_to_finding(index))
     }
 
     fn go_to_finding(&mut self, index: usize) -> bool {

@@ -46,8 +46,10 @@ pub enum Action {
     NotChecked,
     /// Ask for a waypoint's number or a time.
     GoTo,
-    /// Ask for a part of a waypoint's name.
+    /// Ask what the list is narrowed to.
     Find,
+    /// The whole list again.
+    ShowAll,
     /// The chart spans the segment or the whole cycle.
     Span,
     /// The chart shows the next quantity.

@@ -5,10 +5,10 @@ use ratatui::layout::Rect;
 use crate::arm::Arm;
 use crate::checks::{Check, SegmentSurvey, Survey};
 use crate::program::{Edit, Recipe};
+use crate::review::drawn::Subject;
 use crate::review::{FirstRun, History, Judged, Progress, Session};
 
 use super::action::Action;
-use super::curve::Subject;
 use super::editing::{Editing, Preview};
 use super::jog::Jogging;
 use super::keymap::Keymap;
@@ -76,7 +76,7 @@ pub enum Page {
 pub enum Question {
     /// A waypoint's number or a time.
     GoTo,
-    /// A part of a waypoint's name.
+    /// What the list is narrowed to.
     Find,
     /// The value of the row that is jogged.
     JogValue,
@@ -288,8 +288,8 @@ pub struct App {
     pub remedies: Remedies,
     /// Lines that the explanation is scrolled down.
     pub why_scroll: usize,
-    /// What was looked for last.
-    pub found: String,
+    /// What the list is narrowed to; empty where all is shown.
+    pub filter: String,
     /// A line for the person, until the next key.
     pub message: Option<String>,
     /// What is to become of the program.
@@ -328,7 +328,7 @@ impl App {
             first_run: None,
             remedies: Remedies::default(),
             why_scroll: 0,
-            found: String::new(),
+            filter: String::new(),
             message: None,
             wish: Wish::GoOn,
             scene: Scene::default(),

@@ -2,9 +2,9 @@ use ratatui::style::Style;
 
 use crate::checks::Verdict;
 use crate::geometry::{Pose, V3};
+use crate::review::drawn::Gauges;
 
 use super::app::App;
-use super::gauges::Gauges;
 use super::raster::{Dot, Ink, Raster};
 use super::sheet::Sheet;
 

@@ -1,17 +1,13 @@
-use crate::checks::Check;
-use crate::review::{Judged, check_words};
-
 use super::action::Action;
 use super::app::{App, Asking, FileWish, Hidden, Mode, Question, Wish};
-use super::jog;
 use super::update::follow_finding;
-use super::{signing, stretch};
+use super::{filter, jog, signing, stretch};
 
 /// The question as it stands in the lowest row.
 pub fn prompt(question: Question) -> &'static str {
     match question {
         Question::GoTo => "Go to waypoint or time (10 or 12.4s): ",
-        Question::Find => "Find a name, verdict or check: ",
+        Question::Find => "Show only (name, verdict or check): ",
         Question::SaveAs => "Save as: ",
         Question::SignName => "Your name: ",
         Question::SignNote => "Note: ",
@@ -91,10 +87,7 @@ fn settle(app: &mut App, asking: &Asking) -> Result<(), String> {
             Ok(())
         }
         Question::GoTo => go_to(app, &typed),
-        Question::Find => {
-            let looked_for = if typed.is_empty() { app.found.clone() } else { typed };
-            find(app, &looked_for)
-        }
+        Question::Find => filter::take(app, &typed),
         Question::JogValue => jog::settle_value(app, &typed),
         Question::JogWaypoint => jog::settle_waypoint(app, &typed),
         Question::RecordName { as_pose } => jog::record(app, &typed, as_pose),
@@ -126,42 +119,4 @@ fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
         Err(_) => return Err(format!("\"{typed}\" is neither a waypoint's number nor a time such as 12.4s")),
     }
     Ok(())
-}
-
-/// The next waypoint after the cursor's that has the text in its name, or whose segment has that verdict or a finding or nearest
-/// limit of such a check; from the last on to the first.
-fn find(app: &mut App, text: &str) -> Result<(), String> {
-    if text.is_empty() {
-        return Ok(());
-    }
-    let session = app.session.as_mut().ok_or("not checked yet")?;
-    let wanted = text.to_lowercase();
-    let judged = session.judged().clone();
-    let count = judged.recipe.waypoints.len();
-    let now = session.waypoint();
-    let fits: Vec<usize> = (1..=count).map(|on| (now + on) % count).filter(|&index| is_meant(&judged, index, &wanted)).collect();
-    app.found = text.to_owned();
-    match fits.first() {
-        Some(0) => session.go_to_time(0.0),
-        Some(&index) => {
-            session.go_to_waypoint(index);
-            follow_finding(app);
-        }
-        None => return Err(format!("no waypoint has \"{text}\" in its name, and no segment such a verdict or check")),
-    }
-    if fits.len() > 1 {
-        app.message = Some(format!("{} fit \"{text}\"; f and Enter go to the next", fits.len()));
-    }
-    Ok(())
-}
-
-fn is_meant(judged: &Judged, waypoint: usize, wanted: &str) -> bool {
-    if judged.recipe.waypoints[waypoint].name.to_lowercase().contains(wanted) {
-        return true;
-    }
-    let Some(survey) = judged.plan.index_arriving(waypoint).map(|index| &judged.survey.segments[index]) else { return false };
-    let is_check = |check: Check| check_words(check).to_lowercase().contains(wanted);
-    survey.verdict.word() == wanted
-        || survey.findings.iter().any(|finding| is_check(finding.check))
-        || survey.nearest().is_some_and(|(result, _)| is_check(result.check))
 }

@@ -2,11 +2,12 @@ use ratatui::style::Style;
 use unicode_width::UnicodeWidthStr;
 
 use crate::checks::{Check, Verdict};
+use crate::review::check_brief;
+use crate::review::drawn::{Curve, Point};
 use crate::units::{Dimension, Measure};
 
 use super::app::{App, Pane};
-use super::curve::{Curve, Point};
-use super::phrases::{check_word, joint_word};
+use super::phrases::joint_word;
 use super::raster::{Ink, Raster};
 use super::sheet::{Sheet, fit};
 
@@ -72,8 +73,8 @@ fn title(app: &App, curve: &Curve, width: usize) -> String {
     let Some(judged) = app.judged() else { return String::new() };
     let joint = subject.joint.filter(|_| !curve.worst_joint);
     let what = match (joint, subject.check.is_per_joint()) {
-        (None, true) => format!("{} of all joints", check_word(subject.check)),
-        _ => format!("{} {}", joint_word(judged, joint), check_word(subject.check)).trim_start().to_owned(),
+        (None, true) => format!("{} of all joints", check_brief(subject.check)),
+        _ => format!("{} {}", joint_word(judged, joint), check_brief(subject.check)).trim_start().to_owned(),
     };
     let gauge = app.scene.gauges.as_ref().and_then(|gauges| match joint {
         Some(_) => gauges.get(subject.check, joint),

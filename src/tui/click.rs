@@ -25,7 +25,7 @@ pub(super) fn click(app: &mut App, column: u16, row: u16) {
     let Some(line) = (at.y - area.y).checked_sub(1).map(usize::from) else { return };
     match pane {
         Pane::List => {
-            let (_, rows) = app.scene.rows.around(app.segment(), usize::from(area.height) - 1);
+            let (_, rows) = app.scene.listed().around(app.segment(), usize::from(area.height) - 1);
             let segment = match rows.get(line) {
                 Some(Row::Segment(segment)) => Some(*segment),
                 Some(Row::Events(waypoint)) => app.judged().and_then(|judged| judged.plan.index_arriving(*waypoint)),

@@ -19,7 +19,9 @@ const WIDEST_NAME: usize = 22;
 pub fn draw(sheet: &mut Sheet, app: &App, editing: &Editing) {
     let theme = sheet.theme();
     let data = editing.data(app);
-    sheet.rule(0, &title(app.taught(), editing), true);
+    let narrowed = app.scene.shown.as_ref().filter(|_| editing.group == Group::Waypoint);
+    let narrowed = narrowed.map_or_else(String::new, |shown| format!(" ({}: {})", shown.told(), shown.text));
+    sheet.rule(0, &format!("{}{narrowed}", title(app.taught(), editing)), true);
     if data.is_empty() {
         sheet.put(1, 1, "There are none yet. Tab goes on.", Style::new());
         return;

@@ -6,6 +6,7 @@ use crate::review::Judged;
 use super::action::Action;
 use super::app::{App, Mode};
 use super::edits;
+use super::filter::next_waypoint;
 
 /// Which parts of the recipe are edited together.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -114,8 +115,10 @@ pub(super) fn handle(app: &mut App, action: &Action) {
         Action::LeapOn => editing.chosen = (editing.chosen + 10).min(last),
         Action::ToStart => editing.chosen = 0,
         Action::ToEnd => editing.chosen = last,
-        Action::Left => editing.waypoint = editing.waypoint.saturating_sub(1),
-        Action::Right => editing.waypoint = (editing.waypoint + 1).min(app.taught().waypoints.len().saturating_sub(1)),
+        Action::Left | Action::Right => {
+            let (count, back) = (app.taught().waypoints.len(), matches!(action, Action::Left));
+            editing.waypoint = next_waypoint(app, editing.waypoint, count, back);
+        }
         Action::NextPane => (editing.group, editing.chosen) = (editing.group.next(), 0),
         Action::Enter => {
             if let Some((_, datum)) = data.get(editing.chosen) {

@@ -5,9 +5,31 @@ use super::action::Action;
 use super::app::{App, Mode, Page, Question};
 use super::ask;
 use super::keys::{BINDINGS, Binding};
-use super::sheet::{Sheet, fit};
+use super::sheet::{Sheet, fit, wrap};
 
-/// Draws the lowest row: a question, a message, or the keys.
+/// A message takes at most this many rows.
+const MESSAGE_ROWS: usize = 4;
+
+/// Draws the message, if there is one, over the lowest rows of the whole screen: as many as its words need.
+pub fn draw_message(sheet: &mut Sheet, app: &App) {
+    let Some(message) = app.message.as_ref().filter(|_| !matches!(app.mode, Mode::Asking(_)) && sheet.height() >= 3) else {
+        return;
+    };
+    let (theme, width) = (app.theme, sheet.width());
+    let mut lines = wrap(&theme.text(message), width);
+    let most = MESSAGE_ROWS.min(sheet.height() - 2);
+    if lines.len() > most {
+        let rest = lines.split_off(most - 1).join(" ");
+        lines.push(fit(&rest, width, theme));
+    }
+    let first = sheet.height() - lines.len();
+    sheet.part(0, first, width, lines.len()).wipe();
+    for (row, line) in lines.iter().enumerate() {
+        sheet.put(0, first + row, line, theme.strong());
+    }
+}
+
+/// Draws the lowest row: a question or the keys.
 pub fn draw(sheet: &mut Sheet, app: &App) {
     let theme = app.theme;
     if let Mode::Asking(asking) = &app.mode {
@@ -22,8 +44,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         sheet.put(x, 0, " ", theme.selected());
         return;
     }
-    if let Some(message) = &app.message {
-        sheet.put(0, 0, &fit(message, sheet.width(), theme), theme.strong());
+    if app.message.is_some() {
         return;
     }
     let mut x = 0;

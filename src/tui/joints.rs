@@ -2,10 +2,10 @@ use ratatui::style::Style;
 
 use crate::arm::{Arm, JointKind};
 use crate::checks::{Check, Verdict};
+use crate::review::drawn::{Gauge, Gauges};
 use crate::units::Measure;
 
 use super::app::{App, Pane};
-use super::gauges::{Gauge, Gauges};
 use super::phrases::how;
 use super::sheet::{Sheet, fit};
 use super::theme::Theme;

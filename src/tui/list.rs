@@ -1,4 +1,5 @@
 use ratatui::style::Style;
+use unicode_width::UnicodeWidthStr;
 
 use crate::review::Judged;
 
@@ -71,8 +72,7 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     let theme = app.theme;
     let columns = Columns::of(app, sheet.width());
     let focused = app.pane == Pane::List;
-    let marked = app.mark.map_or(String::new(), |mark| format!(", marked from {}", mark + 1));
-    let title_end = sheet.rule(0, &format!("{}{marked}", Pane::List.name()), focused);
+    let title_end = sheet.rule(0, &title(app, sheet.width().saturating_sub(4)), focused);
     for (x, word) in [
         (columns.how, "how"),
         (columns.verdict, "is"),
@@ -84,7 +84,11 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         }
     }
     let height = sheet.height().saturating_sub(1);
-    let (_, rows) = app.scene.rows.around(app.segment(), height);
+    let (_, rows) = app.scene.listed().around(app.segment(), height);
+    if let Some(shown) = app.scene.shown.as_ref().filter(|shown| shown.count() == 0) {
+        let told = fit(&format!("nothing fits \"{}\"; Esc shows all", shown.text), sheet.width().saturating_sub(2), theme);
+        sheet.put(1, rows.len() + 1, &told, theme.strong());
+    }
     for (y, row) in rows.iter().enumerate() {
         let y = y + 1;
         match row {
@@ -105,8 +109,19 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
                 let told = app.judged().map_or_else(String::new, |judged| doubt_words(judged, *doubt));
                 note(sheet, app, columns, y, &format!("doubt: {told}"));
             }
+            Row::Outside => note(sheet, app, columns, y, "does not fit the filter"),
         }
     }
+}
+
+/// What the list is called, what it is narrowed to, and where a marked stretch begins.
+fn title(app: &App, width: usize) -> String {
+    let marked = app.mark.map_or(String::new(), |mark| format!(", marked from {}", mark + 1));
+    let Some(shown) = &app.scene.shown else { return format!("{}{marked}", Pane::List.name()) };
+    let told = format!("{}: ", shown.told());
+    let all = if marked.is_empty() { " (Esc: all)" } else { "" };
+    let room = width.saturating_sub(told.width() + all.width() + marked.width());
+    format!("{told}{}{all}{marked}", fit(&shown.text, room, app.theme))
 }
 
 fn note(sheet: &mut Sheet, app: &App, columns: Columns, y: usize, told: &str) {

@@ -29,6 +29,10 @@ pub fn draw(sheet: &mut Sheet, menu: &Menu) {
     }
     let rows = height.saturating_sub(2);
     let first = (menu.chosen + 1).saturating_sub(rows);
+    if menu.items.len() > rows && rows > 0 {
+        let told = format!(" {}-{} of {} ", first + 1, first + rows, menu.items.len());
+        sheet.put_before(width.saturating_sub(1), height.saturating_sub(1), &told, Style::new());
+    }
     for (row, item) in menu.items.iter().enumerate().skip(first).take(rows) {
         let y = row - first + 1;
         sheet.put(3, y, &fit(&item.name, width.saturating_sub(5), theme), Style::new());

@@ -5,17 +5,15 @@ mod action;
 mod app;
 mod arm;
 mod ask;
-mod bands;
 mod bounds;
 mod chart;
 mod click;
-mod curve;
 mod edit_page;
 mod editing;
 mod edits;
 mod file;
+mod filter;
 mod footer;
-mod gauges;
 mod headline;
 mod help;
 mod jog;
@@ -37,7 +35,6 @@ mod run;
 mod scene;
 mod sheet;
 mod signing;
-mod sketch;
 mod stretch;
 mod theme;
 mod update;
@@ -63,6 +60,11 @@ use sheet::Sheet;
 
 /// Draws the app into an area of a buffer. Nothing is computed here that could be known before.
 pub fn draw(buffer: &mut Buffer, area: Rect, app: &App) {
+    draw_body(buffer, area, app);
+    footer::draw_message(&mut Sheet::new(buffer, area, app.theme), app);
+}
+
+fn draw_body(buffer: &mut Buffer, area: Rect, app: &App) {
     let theme = app.theme;
     let layout = update::layout_in(app, area);
     headline::draw(&mut Sheet::new(buffer, layout.headline, theme), app);

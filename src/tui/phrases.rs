@@ -1,28 +1,8 @@
 use crate::checks::{Check, CheckResult, Peak, SegmentSurvey, Unproved};
 use crate::motion::NoPath;
 use crate::program::{Arrive, Recipe, Then, Usual};
-use crate::review::Judged;
+use crate::review::{Judged, check_brief};
 use crate::units::{Measure, Speed};
-
-/// A check's word on the screen.
-pub fn check_word(check: Check) -> &'static str {
-    match check {
-        Check::Reach => "reach",
-        Check::Range => "range",
-        Check::Rate => "rate",
-        Check::Accel => "accel",
-        Check::Holding => "holding",
-        Check::Moving => "moving",
-        Check::Brake => "brake",
-        Check::Flange => "flange",
-        Check::Rms => "rms",
-        Check::Singular => "singular",
-        Check::SpeedLeft => "speed left",
-        Check::TcpSpeed => "TCP speed",
-        Check::PointSpeed => "point speed",
-        Check::WindUp => "wind-up",
-    }
-}
 
 /// A joint's name, or nothing for a check that has none.
 pub fn joint_word(judged: &Judged, joint: Option<usize>) -> &str {
@@ -85,13 +65,13 @@ pub fn nearest(judged: &Judged, survey: &SegmentSurvey, brief: bool) -> String {
         _ => None,
     });
     if let Some((check, why)) = unproved {
-        return format!("{}: {}", check_word(check), why_open(why));
+        return format!("{}: {}", check_brief(check), why_open(why));
     }
     survey.nearest().map_or_else(String::new, |(result, worst)| peak(judged, result, worst, brief))
 }
 
 fn peak(judged: &Judged, result: &CheckResult, peak: &Peak, brief: bool) -> String {
-    let word = if brief && result.check == Check::Holding { "hold" } else { check_word(result.check) };
+    let word = if brief && result.check == Check::Holding { "hold" } else { check_brief(result.check) };
     let what = [joint_word(judged, peak.joint), word].join(" ");
     let what = what.trim_start();
     match result.check {

@@ -1,9 +1,9 @@
 use ratatui::style::Style;
 
+use crate::review::drawn::cell_of;
 use crate::units::{Dimension, Measure};
 
 use super::app::App;
-use super::bands::cell_of;
 use super::layout::label_width;
 use super::sheet::Sheet;
 

@@ -4,6 +4,7 @@ use crate::checks::{Doubt, Verdict};
 use crate::program::Recipe;
 use crate::review::{Judged, doubt_text};
 
+use super::filter::Shown;
 use super::phrases::{events, how};
 
 /// A row of the list.
@@ -17,6 +18,8 @@ pub enum Row {
     Events(usize),
     /// A doubt about a waypoint, by its place among all doubts.
     Doubt(usize),
+    /// That the segment above is listed only because the cursor is on it; the filter hides it.
+    Outside,
 }
 
 /// The list's rows in order, and how wide its columns must be.
@@ -67,6 +70,31 @@ impl Rows {
         }
         if let Some(judged) = judged {
             list.verdict = judged.survey.segments.iter().map(|survey| survey.verdict.word().len()).fold(list.verdict, usize::max);
+        }
+        list
+    }
+
+    /// The rows that a filter leaves, columns as wide as before. The segment that the cursor is on always stands there, so that nobody
+    /// edits what they don't see.
+    pub fn narrowed(&self, judged: &Judged, shown: &Shown, here: usize) -> Self {
+        let mut list = Self { rows: Vec::new(), of_segment: vec![0; self.of_segment.len()], ..*self };
+        for row in &self.rows {
+            let is_shown = match row {
+                Row::Start => shown.has_waypoint(0),
+                Row::Segment(segment) => shown.has(*segment) || *segment == here,
+                Row::Events(waypoint) => shown.has_waypoint(*waypoint),
+                Row::Doubt(doubt) => judged.survey.doubts.get(*doubt).is_some_and(|doubt| shown.has_waypoint(waypoint_of(doubt))),
+                Row::Outside => false,
+            };
+            if let Row::Segment(segment) = row {
+                list.of_segment[*segment] = list.rows.len();
+            }
+            if is_shown {
+                list.rows.push(*row);
+            }
+            if *row == Row::Segment(here) && !shown.has(here) {
+                list.rows.push(Row::Outside);
+            }
         }
         list
     }

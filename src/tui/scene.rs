@@ -2,24 +2,25 @@ use std::sync::Arc;
 
 use crate::checks::{Survey, Verdict};
 use crate::motion::Cursor;
+use crate::review::drawn::{Bands, Curve, Gauges, Sketch, Subject};
 use crate::review::{Explanation, Label, Paragraph, explain, headline, no_finding, not_checked};
 
 use super::app::App;
-use super::bands::Bands;
-use super::curve::{Curve, Subject};
-use super::gauges::Gauges;
+use super::filter::{Shown, wanted};
 use super::layout::Layout;
 use super::remedies;
 use super::rows::Rows;
-use super::sketch::Sketch;
 
 /// A scene is what the panes draw, kept until what it was computed from changes. Drawing itself computes nothing.
 #[derive(Debug, Default)]
 pub struct Scene {
     /// One sentence on the whole, and the worst verdict.
     pub headline: Option<(String, Verdict)>,
-    /// Rows of the list.
+    /// Rows of the list, all of them.
     pub rows: Rows,
+    /// What the filter leaves of them, if one stands.
+    pub shown: Option<Shown>,
+    narrowed: Option<(Rows, usize)>,
     /// Cells of the ribbon.
     pub bands: Bands,
     /// The path of the TCP.
@@ -40,6 +41,11 @@ pub struct Scene {
 }
 
 impl Scene {
+    /// The rows that stand in the list: all, or those that the filter leaves.
+    pub fn listed(&self) -> &Rows {
+        self.narrowed.as_ref().map_or(&self.rows, |(rows, _)| rows)
+    }
+
     /// Shows the arm elsewhere than at the cursor, until the next refresh.
     pub(super) fn stand_at(&mut self, gauges: Option<Gauges>) {
         self.gauges = gauges;
@@ -66,6 +72,10 @@ pub fn refresh(app: &mut App) {
             ..Scene::default()
         };
     }
+    narrow(app);
+    let Some(session) = &app.session else { return };
+    let judged = session.judged();
+    let scene = &mut app.scene;
     let width = Layout::ribbon_cells(app.area);
     if scene.width != Some(width) {
         scene.bands = Bands::of(judged, width);
@@ -101,4 +111,21 @@ pub fn refresh(app: &mut App) {
         app.why_scroll = 0;
     }
     scene.told = Some(told);
+}
+
+/// Brings what the filter leaves of the list up to date.
+fn narrow(app: &mut App) {
+    let text = wanted(app).to_owned();
+    let Some(session) = app.session.as_ref().filter(|_| !text.is_empty()) else {
+        (app.scene.shown, app.scene.narrowed) = (None, None);
+        return;
+    };
+    let (judged, here) = (session.judged(), session.cursor().segment);
+    let is_known = app.scene.shown.as_ref().is_some_and(|shown| shown.text == text);
+    if is_known && app.scene.narrowed.as_ref().is_some_and(|(_, segment)| *segment == here) {
+        return;
+    }
+    let shown = app.scene.shown.take().filter(|_| is_known).unwrap_or_else(|| Shown::of(judged, &text));
+    app.scene.narrowed = Some((app.scene.rows.narrowed(judged, &shown, here), here));
+    app.scene.shown = Some(shown);
 }

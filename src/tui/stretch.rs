@@ -9,6 +9,7 @@ use crate::units::Length;
 use super::action::Action;
 use super::app::{App, Asking, Item, Menu, Mode, Question};
 use super::edits;
+use super::filter;
 
 /// An edit of a stretch of waypoints.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -42,13 +43,19 @@ pub fn meant(app: &App) -> RangeInclusive<usize> {
     from.min(here)..=from.max(here)
 }
 
+/// How many waypoints of the stretch the filter hides. That of the cursor is always seen.
+fn hidden(app: &App) -> usize {
+    let here = app.session.as_ref().map_or(0, Session::waypoint);
+    meant(app).filter(|waypoint| *waypoint != here && !filter::shows_waypoint(app, *waypoint)).count()
+}
+
 /// The menu of edits of the stretch.
 pub(super) fn menu(app: &App) -> Menu {
     let stretch = meant(app);
-    let title = if stretch.start() == stretch.end() {
-        format!("Waypoint {}", stretch.start() + 1)
-    } else {
-        format!("Waypoints {} to {}", stretch.start() + 1, stretch.end() + 1)
+    let title = match hidden(app) {
+        _ if stretch.start() == stretch.end() => format!("Waypoint {}", stretch.start() + 1),
+        0 => format!("Waypoints {} to {}", stretch.start() + 1, stretch.end() + 1),
+        hidden => format!("Waypoints {} to {}, {hidden} of them hidden by the filter", stretch.start() + 1, stretch.end() + 1),
     };
     let mark = if app.mark.is_some() { "mark the stretch from here instead" } else { "mark a stretch from here to the cursor" };
     let mut items = vec![
@@ -65,7 +72,11 @@ pub(super) fn menu(app: &App) -> Menu {
     items.extend(loads);
     items.push(("without a load".to_owned(), OnStretch::Load(None)));
     items.push(("delete".to_owned(), OnStretch::Delete));
-    let items = items.into_iter().map(|(name, what)| Item { name, key: String::new(), action: Action::OnStretch(what) }).collect();
+    let item = |(name, what)| Item { name, key: String::new(), action: Action::OnStretch(what) };
+    let mut items: Vec<Item> = items.into_iter().map(item).collect();
+    if hidden(app) > 0 {
+        items.insert(0, Item { name: "show all of them first".to_owned(), key: String::new(), action: Action::ShowAll });
+    }
     Menu { title, items, chosen: 0 }
 }
 
@@ -99,9 +110,13 @@ pub(super) fn act(app: &mut App, what: &OnStretch) {
 }
 
 fn make(app: &mut App, edit: Result<Edit, String>) {
+    let hidden = hidden(app);
     match edit {
         Ok(edit) => {
             edits::make(app, &edit);
+            if let Some(told) = app.message.as_mut().filter(|_| hidden > 0) {
+                *told += &format!("; {hidden} of them hidden by the filter");
+            }
             app.mark = None;
         }
         Err(why) => app.message = Some(format!("not done: {why}")),

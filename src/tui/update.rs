@@ -1,7 +1,7 @@
 use ratatui::layout::Rect;
 
 use crate::checks::Check;
-use crate::review::Session;
+use crate::review::{Session, check_brief};
 
 use super::action::Action;
 use super::app::{App, Asking, Item, Menu, Mode, Page, Pane, Question, Wish};
@@ -9,12 +9,12 @@ use super::ask;
 use super::editing::{self, Editing};
 use super::keys::BINDINGS;
 use super::layout::{Layout, Wants};
-use super::phrases::check_word;
 use super::scene::refresh;
-use super::{click, edits, file, jog, page, remedies, signing, stretch};
+use super::{click, edits, file, filter, jog, page, remedies, signing, stretch};
 
 /// Changes the app by an action. The only place where it changes.
 pub fn update(app: &mut App, action: Action) {
+    let mut before = None;
     match action {
         Action::Resize(width, height) => {
             app.area.width = width;
@@ -23,6 +23,7 @@ pub fn update(app: &mut App, action: Action) {
         Action::Checking(progress) => app.progress = Some(progress),
         Action::Judged(judged) => {
             app.progress = None;
+            before = app.judged().map(|judged| std::sync::Arc::clone(&judged.recipe));
             match &mut app.session {
                 Some(session) => session.renew(*judged),
                 None => {
@@ -55,6 +56,9 @@ pub fn update(app: &mut App, action: Action) {
         }
     }
     refresh(app);
+    if let Some(before) = before {
+        filter::tell_of_new(app, &before);
+    }
     jog::follow(app);
     page::hold_scroll(app);
 }
@@ -137,11 +141,10 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::ToStart => to_end(app, false),
         Action::ToEnd => to_end(app, true),
         Action::NextPane => app.pane = app.pane.next(),
+        Action::Back if app.pane == Pane::List => filter::lift(app),
         Action::Back => app.pane = Pane::List,
         Action::Enter => app.mode = Mode::Menu(actions(app)),
-        Action::Worst => find(app, Session::go_to_worst),
-        Action::NextFinding => find(app, Session::go_to_next_finding),
-        Action::PreviousFinding => find(app, Session::go_to_previous_finding),
+        Action::Worst | Action::NextFinding | Action::PreviousFinding => find(app, action),
         Action::ReadWhy => app.mode = Mode::Page(Page::Why, 0),
         Action::Remedies => app.mode = Mode::Remedies,
         Action::Bounds => {
@@ -151,7 +154,8 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::NotChecked => app.mode = Mode::Page(Page::NotChecked, 0),
         Action::Help => app.mode = Mode::Page(Page::Help, 0),
         Action::GoTo => app.mode = Mode::Asking(Asking { question: Question::GoTo, typed: String::new() }),
-        Action::Find => app.mode = Mode::Asking(Asking { question: Question::Find, typed: String::new() }),
+        Action::Find => filter::ask(app),
+        Action::ShowAll => filter::lift(app),
         Action::Span => app.chart.cycle = !app.chart.cycle,
         Action::EveryJoint => app.chart.every_joint = !app.chart.every_joint,
         Action::Show(check) => app.chart.check = *check,
@@ -198,10 +202,10 @@ fn to_end(app: &mut App, last: bool) {
 fn by_rows(app: &mut App, rows: isize) {
     match app.pane {
         Pane::List => {
-            if let Some(session) = &mut app.session {
-                session.go_by_segments(rows);
+            if let (Some(segment), Some(session)) = (filter::by_rows(app, rows), &mut app.session) {
+                session.go_to_segment(segment);
+                follow_finding(app);
             }
-            follow_finding(app);
         }
         Pane::Why => app.why_scroll = app.why_scroll.saturating_add_signed(rows),
         Pane::Joints => app.joint = app.joint.saturating_add_signed(rows).min(app.arm.len() - 1),
@@ -232,12 +236,25 @@ fn quantity_of(check: Check) -> Check {
     }
 }
 
-fn find(app: &mut App, go: impl Fn(&mut Session) -> bool) {
+/// Goes from finding to finding among those that the list shows, and tells how many it hides.
+fn find(app: &mut App, action: &Action) {
+    let hidden = filter::hidden_findings(app);
+    let shown = |segment| app.scene.shown.as_ref().is_none_or(|shown| shown.has(segment));
     let Some(session) = &mut app.session else { return };
-    if go(session) {
+    let found = match action {
+        Action::Worst => session.go_to_worst_among(shown),
+        Action::NextFinding => session.go_to_next_finding_among(shown),
+        _ => session.go_to_previous_finding_among(shown),
+    };
+    if found {
         follow_finding(app);
-    } else {
-        app.message = Some("no findings".to_owned());
+    }
+    let more = if hidden == 1 { "1 finding is hidden".to_owned() } else { format!("{hidden} findings are hidden") };
+    match (found, hidden) {
+        (true, 0) => {}
+        (false, 0) => app.message = Some("no findings".to_owned()),
+        (true, _) => app.message = Some(format!("{more} by the filter, Esc shows all")),
+        (false, _) => app.message = Some(format!("no finding is shown; {more} by the filter, Esc shows all")),
     }
 }
 
@@ -257,7 +274,7 @@ pub(super) fn follow_finding(app: &mut App) {
 fn actions(app: &App) -> Menu {
     let choose = Item { name: "chart: choose quantity".to_owned(), key: String::new(), action: Action::ChooseQuantity };
     let mut items: Vec<Item> =
-        BINDINGS.iter().filter(|binding| is_named(&binding.action)).map(|b| Item::of(b, &app.keymap, app.theme)).collect();
+        BINDINGS.iter().filter(|binding| is_named(app, &binding.action)).map(|b| Item::of(b, &app.keymap, app.theme)).collect();
     items.push(choose);
     let charting = matches!(app.pane, Pane::Chart | Pane::Joints);
     items.sort_by_key(|item| match item.action {
@@ -279,7 +296,10 @@ fn actions(app: &App) -> Menu {
 }
 
 /// Whether an action stands in the menu; the others are what arrows, Enter and Backspace do anyway.
-fn is_named(action: &Action) -> bool {
+fn is_named(app: &App, action: &Action) -> bool {
+    if matches!(action, Action::ShowAll) {
+        return !app.filter.is_empty();
+    }
     matches!(
         action,
         Action::NextPane
@@ -312,7 +332,7 @@ fn is_named(action: &Action) -> bool {
 
 fn quantities(app: &App) -> Menu {
     let checks = charted(app);
-    let item = |check: &Check| Item { name: check_word(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
+    let item = |check: &Check| Item { name: check_brief(*check).to_owned(), key: String::new(), action: Action::Show(*check) };
     Menu {
         title: "The chart shows".to_owned(),
         items: checks.iter().map(item).collect(),

@@ -1,4 +1,4 @@
-//! Edits drawn from a fixed sequence.
+//! Edits drawn from a fixed sequence, or from choices that a failing case is made smaller by.
 
 use elbowroom::arm::{Body, Grounds, Joints};
 use elbowroom::geometry::{Pose, Rotation, V3};
@@ -6,17 +6,64 @@ use elbowroom::program::{
     Arrive, Edit, Frame, Given, PathSpeed, Push, PushAxes, Recipe, Repeat, Taught, Then, ToolPoint, Waypoint, rename,
 };
 use elbowroom::units::{Acceleration, Angle, Jerk, Length, Seconds, Share, Speed};
+use proptest::collection::vec;
+use proptest::prelude::*;
+use proptest::test_runner::{RngSeed, TestRunner};
 
-/// SplitMix64: small, well mixed, and the same everywhere.
-pub struct Draw(pub u64);
+/// So many cases of what `strategy` draws. A failing one is made smaller and printed with its seed. `ELBOWROOM_TEST_SEED` and
+/// `ELBOWROOM_TEST_CASES` set another sequence and another count.
+pub fn every<S: Strategy>(cases: u32, strategy: &S, holds: impl Fn(S::Value)) {
+    let set = |name: &str| std::env::var(name).ok().map(|text| text.parse::<u64>().expect("a number"));
+    let seed = set("ELBOWROOM_TEST_SEED").unwrap_or(1901);
+    let cases = set("ELBOWROOM_TEST_CASES").map_or(cases, |cases| cases as u32);
+    let config = ProptestConfig { cases, rng_seed: RngSeed::Fixed(seed), failure_persistence: None, ..ProptestConfig::default() };
+    let outcome = TestRunner::new(config).run(strategy, |case| {
+        holds(case);
+        Ok(())
+    });
+    if let Err(failed) = outcome {
+        panic!("ELBOWROOM_TEST_SEED={seed} ELBOWROOM_TEST_CASES={cases}\n{failed}");
+    }
+}
+
+/// A list of choices for one thing that is drawn.
+pub fn choices(most: usize) -> impl Strategy<Value = Vec<u32>> {
+    vec(any::<u32>(), 0..most)
+}
+
+/// Edits of a recipe, each by its own choices, so that a failing sequence loses all that it does not need.
+pub fn edits(most: usize) -> impl Strategy<Value = Vec<Vec<u32>>> {
+    vec(choices(24), 1..=most)
+}
+
+/// Where drawn things come from.
+pub enum Draw {
+    /// SplitMix64: small, well mixed, and the same everywhere.
+    Seeded(u64),
+    /// A list of choices that can be made shorter and smaller; zeros where it ends. Zero is the plainest choice.
+    Chosen(std::vec::IntoIter<u32>),
+}
 
 impl Draw {
+    pub fn seeded(seed: u64) -> Self {
+        Self::Seeded(seed)
+    }
+
+    pub fn chosen(choices: Vec<u32>) -> Self {
+        Self::Chosen(choices.into_iter())
+    }
+
     pub fn bits(&mut self) -> u64 {
-        self.0 = self.0.wrapping_add(0x9e37_79b9_7f4a_7c15);
-        let mut z = self.0;
-        z = (z ^ (z >> 30)).wrapping_mul(0xbf58_476d_1ce4_e5b9);
-        z = (z ^ (z >> 27)).wrapping_mul(0x94d0_49bb_1331_11eb);
-        z ^ (z >> 31)
+        match self {
+            Self::Seeded(state) => {
+                *state = state.wrapping_add(0x9e37_79b9_7f4a_7c15);
+                let mut z = *state;
+                z = (z ^ (z >> 30)).wrapping_mul(0xbf58_476d_1ce4_e5b9);
+                z = (z ^ (z >> 27)).wrapping_mul(0x94d0_49bb_1331_11eb);
+                z ^ (z >> 31)
+            }
+            Self::Chosen(choices) => choices.next().unwrap_or(0).into(),
+        }
     }
 
     pub fn below(&mut self, count: usize) -> usize {
@@ -24,7 +71,7 @@ impl Draw {
     }
 
     pub fn chance(&mut self, percent: usize) -> bool {
-        self.below(100) < percent
+        self.below(100) >= 100 - percent
     }
 
     /// A number as a person types one: a few digits, at most three behind the point.

@@ -2,38 +2,37 @@ use elbowroom::files::demo;
 use elbowroom::program::Edit;
 use elbowroom::review::History;
 
-use super::drawn::{Draw, edit};
+use super::drawn::{Draw, edit, edits, every};
 
 #[test]
 fn any_edits_undone_are_the_original_and_redone_the_result() {
     let opened = demo();
-    for seed in 0..60 {
-        let mut draw = Draw(seed);
+    every(60, &edits(40), |all| {
         let mut fresh = 0;
         let mut history = History::of(opened.recipe.clone());
         let mut states = vec![history.recipe().clone()];
-        for _ in 0..40 {
-            let next = edit(history.recipe(), &mut draw, &mut fresh);
+        for choices in &all {
+            let next = edit(history.recipe(), &mut Draw::chosen(choices.clone()), &mut fresh);
             history.make(&opened.arm, next).expect("it fits");
             states.push(history.recipe().clone());
         }
-        for state in states[..40].iter().rev() {
+        for state in states[..all.len()].iter().rev() {
             history.undo().expect("a step to undo");
-            assert_eq!(history.recipe(), state, "seed {seed}");
+            assert_eq!(history.recipe(), state);
         }
         assert!(history.undo().is_none() && !history.is_unsaved());
         for state in &states[1..] {
             history.redo().expect("a step to redo");
-            assert_eq!(history.recipe(), state, "seed {seed}");
+            assert_eq!(history.recipe(), state);
         }
         assert!(history.redo().is_none());
-    }
+    });
 }
 
 #[test]
 fn the_edits_that_undo_and_redo_yield_lead_from_state_to_state() {
     let opened = demo();
-    let mut draw = Draw(7);
+    let mut draw = Draw::seeded(7);
     let (mut history, mut followed, mut fresh) = (History::of(opened.recipe.clone()), opened.recipe.clone(), 0);
     for _ in 0..300 {
         let made = match draw.below(4) {

@@ -13,7 +13,7 @@ const WRITER: &str = "ELBOWROOM_TEST_WRITER";
 /// The edits of the scripted session: the same in the child that is killed and in the test that judges.
 fn script() -> Vec<Edit> {
     let mut recipe = demo().recipe;
-    let (mut draw, mut fresh) = (Draw(42), 0);
+    let (mut draw, mut fresh) = (Draw::seeded(42), 0);
     (0..400)
         .map(|_| {
             let next = edit(&recipe, &mut draw, &mut fresh);
@@ -54,7 +54,7 @@ fn a_kill_at_any_of_two_hundred_moments_loses_at_most_the_last_edit() {
     let script = script();
     let text = demo().recipe_source.text;
     let arm = demo().arm;
-    let mut draw = Draw(9);
+    let mut draw = Draw::seeded(9);
     let mut counts = Vec::new();
     for round in 0..200 {
         let folder = tempfile::tempdir().expect("a folder");

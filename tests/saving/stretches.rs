@@ -40,7 +40,7 @@ fn loads(recipe: &Recipe) -> Vec<Option<&str>> {
 #[test]
 fn a_stretch_is_moved_as_a_whole_whichever_way() {
     let (recipe, arm) = (demo().recipe, demo().arm);
-    let mut draw = Draw(3);
+    let mut draw = Draw::seeded(3);
     for _ in 0..200 {
         let first = draw.below(recipe.waypoints.len());
         let last = first + draw.below(recipe.waypoints.len() - first);

@@ -4,6 +4,10 @@ use crate::review::{FirstRun, HeldBack, SegmentRun, Stage};
 use super::listing::{all_of, first_of};
 use super::{Judged, check_words};
 
+/// What stands under every result.
+pub const CAUTION: &str = "Elbowroom computes from data that people typed. It replaces no risk assessment, no safeguard \
+                                  and no reduced-speed trial.";
+
 /// What a person minds before and during a first run, in order; in the sense of ISO 10218-2. The first two come before any stage.
 pub const FIRST_RUN_CAUTIONS: [&str; 6] = [
     "People leave the safeguarded space before drive power comes on, and stay out while the program runs.",

@@ -37,3 +37,23 @@ pub fn check_words(check: Check) -> &'static str {
         Check::WindUp => "wind-up of cables",
     }
 }
+
+/// A check's word where there is little room: in rows, and over columns.
+pub fn check_brief(check: Check) -> &'static str {
+    match check {
+        Check::Reach => "reach",
+        Check::Range => "range",
+        Check::Rate => "rate",
+        Check::Accel => "accel",
+        Check::Holding => "holding",
+        Check::Moving => "moving",
+        Check::Brake => "brake",
+        Check::Flange => "flange",
+        Check::Rms => "rms",
+        Check::Singular => "singular",
+        Check::SpeedLeft => "speed left",
+        Check::TcpSpeed => "TCP speed",
+        Check::PointSpeed => "point speed",
+        Check::WindUp => "wind-up",
+    }
+}

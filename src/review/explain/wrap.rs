@@ -23,6 +23,19 @@ pub fn wrap(text: &str, width: usize) -> Vec<String> {
     lines
 }
 
+/// Text in which no figure can be parted from its unit: the space between them is one at which no line breaks.
+pub fn glued(text: &str) -> String {
+    let mut out = String::with_capacity(text.len());
+    let mut after_figure = false;
+    for (at, sign) in text.char_indices() {
+        let word = text[at..].strip_prefix(' ').and_then(|rest| rest.split(' ').next()).unwrap_or_default();
+        let unit = word.trim_end_matches(['.', ',', ':', ';', ')']);
+        out.push(if sign == ' ' && after_figure && UNITS.contains(&unit) { '\u{a0}' } else { sign });
+        after_figure = sign.is_ascii_digit();
+    }
+    out
+}
+
 /// Words, units glued to their figures.
 fn words(text: &str) -> Vec<String> {
     let mut words: Vec<String> = Vec::new();
@@ -47,6 +60,12 @@ mod tests {
     fn a_figure_keeps_its_unit() {
         assert_eq!(wrap("it is asked for 509 °/s", 19), ["it is asked for", "509 °/s"]);
         assert_eq!(wrap("asked for 509 °/s of 330 °/s, much", 17), ["asked for 509 °/s", "of 330 °/s, much"]);
+    }
+
+    #[test]
+    fn nothing_but_the_space_before_a_unit_changes() {
+        assert_eq!(glued("at  509 °/s, 12 % (3 kg) of 4 parts"), "at  509\u{a0}°/s, 12\u{a0}% (3\u{a0}kg) of 4 parts");
+        assert_eq!(glued("mm 5 "), "mm 5 ");
     }
 
     #[test]

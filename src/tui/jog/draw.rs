@@ -2,10 +2,10 @@ use ratatui::style::Style;
 
 use crate::checks::{Check, Verdict};
 use crate::geometry::V3;
+use crate::review::drawn::{Gauge, Gauges};
 use crate::review::jog::{DAMPED_BELOW, Direction, Readings, Stand, coordinates};
 use crate::tui::app::App;
 use crate::tui::arm;
-use crate::tui::gauges::{Gauge, Gauges};
 use crate::tui::sheet::{Sheet, fit};
 use crate::units::{Angle, Dimension, Length, Measure};
 

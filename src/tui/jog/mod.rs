@@ -9,12 +9,12 @@ use crate::arm::{JointKind, Joints};
 use crate::geometry::Pose;
 use crate::kinematics::Posture;
 use crate::program::{Carried, Recipe, Taught};
+use crate::review::drawn::Gauges;
 use crate::review::jog::{Axes, Direction, Sizes, Stand, StepOf, cartesian_step, joint_step};
 use crate::units::Measure;
 
 use super::action::Action;
 use super::app::{App, Mode};
-use super::gauges::Gauges;
 use super::{edits, file};
 
 pub use deeds::Deed;

@@ -2,6 +2,7 @@ use std::path::{Path, PathBuf};
 use std::sync::Arc;
 use std::time::SystemTime;
 
+use crate::arm::Arm;
 use crate::files::{
     Aside, Content, Journal, Lock, NotLocked, NotSaved, OwnKey, Recovered, changes_on_disk, left_behind, open, read_recipe,
     text_of_edited, write, write_anyway,
@@ -68,7 +69,7 @@ impl Keeper {
             Ok(lock) => {
                 self.lock = Some(lock);
                 app.look_only = None;
-                self.left_behind = left_behind(path, &self.aside);
+                self.left_behind = left_behind(path, &self.aside).and_then(|found| self.unless_saved(found, &app.arm));
                 if let Some(found) = &self.left_behind {
                     app.mode = Mode::Menu(recovery(found, found.fits(&self.text)));
                 }
@@ -80,6 +81,21 @@ impl Keeper {
             // Edited without: nobody can be told, and nothing is lost.
             Err(nowhere @ NotLocked::NoPlace { .. }) => app.message = Some(nowhere.to_string()),
         }
+    }
+
+    /// What was left behind, unless it stands in the file: then the run ended after it had saved, and nothing is lost.
+    fn unless_saved(&self, found: Recovered, arm: &Arm) -> Option<Recovered> {
+        let is_saved = read_recipe(&found.text, &self.source, arm).is_ok_and(|before| {
+            let mut now = before.clone();
+            let all = found.lost == 0 && found.edits.iter().all(|edit| edit.apply(&mut now).is_ok());
+            all && text_of_edited(&found.text, &before, &now, arm).text == self.text
+        });
+        if !is_saved {
+            return Some(found);
+        }
+        // What can't be thrown away is looked at again at the next start.
+        let _ = found.forget();
+        None
     }
 
     /// Notes down the edits that were made since.

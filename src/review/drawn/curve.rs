@@ -1,4 +1,4 @@
-use crate::checks::{Check, Verdict};
+use crate::checks::{Check, Finding, Verdict};
 use crate::review::Judged;
 use crate::units::Dimension;
 
@@ -59,13 +59,13 @@ impl Curve {
             Some(segment) => {
                 let (Some(start), Some(planned)) = (plan.starts.get(segment), plan.segments.get(segment)) else { return curve };
                 curve.span = [*start, start + planned.duration() + planned.dwell];
-                curve.add(judged, segment, subject, LOOKS);
+                curve.add(judged, segment, false, subject, LOOKS);
             }
             None => {
                 curve.span = [0.0, plan.duration()];
                 for segment in 0..plan.segments.len() {
                     if plan.segments.len() <= MOST_SEGMENTS {
-                        curve.add(judged, segment, subject, LOOKS_IN_CYCLE);
+                        curve.add(judged, segment, false, subject, LOOKS_IN_CYCLE);
                     } else {
                         curve.add_kept(judged, segment, subject.check);
                         curve.worst_joint = subject.joint.is_some();
@@ -77,20 +77,39 @@ impl Curve {
         curve
     }
 
-    /// Looks at a segment: evenly, and at every instant that the check found worth a look, so that no narrow peak is lost.
-    fn add(&mut self, judged: &Judged, segment: usize, subject: Subject, looks: usize) {
-        let Some(probe) = Probe::of(judged, segment) else { return };
-        let planned = &judged.plan.segments[segment];
-        let (start, lasts) = (judged.plan.starts[segment], planned.duration());
+    /// The curve of what a finding is about, along the version of its segment that it is of: times are on the cycle, or where that
+    /// version stops at fly-by points since its start.
+    pub fn of_finding(judged: &Judged, finding: &Finding) -> Self {
+        let mut curve = Self::default();
+        let planned = judged.plan.version(finding.segment, finding.stop);
+        let start = if finding.stop { 0.0 } else { judged.plan.starts[finding.segment] };
+        curve.span = [start, start + planned.duration() + planned.dwell];
+        let subject = Subject { check: finding.check, joint: finding.joint, segment: Some(finding.segment) };
+        curve.add(judged, finding.segment, finding.stop, subject, LOOKS);
+        curve.thin();
+        curve
+    }
+
+    /// Looks at a segment, or at its version that stops at fly-by points: evenly, and at every instant that the check found worth a look, so that no narrow peak is lost.
+    fn add(&mut self, judged: &Judged, segment: usize, stop: bool, subject: Subject, looks: usize) {
+        let Some(probe) = Probe::of_version(judged, segment, stop) else { return };
+        let planned = judged.plan.version(segment, stop);
+        let (start, lasts) = (if stop { 0.0 } else { judged.plan.starts[segment] }, planned.duration());
+        let survey = &judged.survey.segments[segment];
         let mut times: Vec<f64> = (0..=looks).map(|k| lasts * k as f64 / looks as f64).collect();
-        times.extend(judged.survey.segments[segment].profile.places.iter().map(|place| place.time));
+        if !stop {
+            times.extend(survey.profile.places.iter().map(|place| place.time));
+        }
         // Where a path is lost it is worst, and nothing else looks there.
-        times.extend(judged.survey.segments[segment].findings.iter().map(|finding| judged.on_cycle(finding, finding.worst()).time));
+        let seen = survey.findings.iter().filter(|finding| finding.stop || !stop);
+        times.extend(seen.map(|finding| if stop { finding.worst() } else { judged.on_cycle(finding, finding.worst()) }.time));
         times.extend(planned.law.pieces().iter().map(|piece| piece.start));
         if planned.dwell > 0.0 || planned.carried_after.is_some() {
             times.extend([lasts + 0.01 * planned.dwell, lasts + 0.99 * planned.dwell, lasts + planned.dwell]);
         }
-        times.retain(|time| time.is_finite());
+        // With what was taken or released there it is the next segment's matter, but for what is judged at the stop.
+        let after = planned.carried_after.is_some() && !subject.check.looks_after_stop();
+        times.retain(|time| time.is_finite() && !(after && *time >= lasts + planned.dwell));
         times.sort_by(f64::total_cmp);
         times.dedup();
         for time in times {

@@ -1,7 +1,5 @@
 use crate::checks::{Check, Finding, Kind, Place, Verdict};
-use crate::review::Judged;
-
-use super::phrases::check_word;
+use crate::review::{Judged, check_brief};
 
 /// Bands are the ribbon's cells: for every check the worst verdict inside each cell's span of time.
 #[derive(Debug, Clone, Default)]
@@ -62,7 +60,7 @@ impl Bands {
     /// The rows for a ribbon of `count` rows, with their words: all if they fit, else the worst ones, in the order of the checks,
     /// and one for all the others together.
     pub fn in_rows(&self, count: usize) -> Vec<(&'static str, Vec<Option<Verdict>>)> {
-        let whole = |row: &usize| (check_word(self.rows[*row].check), self.rows[*row].cells.clone());
+        let whole = |row: &usize| (check_brief(self.rows[*row].check), self.rows[*row].cells.clone());
         let mut order: Vec<usize> = (0..self.rows.len()).collect();
         if count >= order.len() {
             return order.iter().map(whole).collect();

@@ -1,5 +1,5 @@
 use crate::arm::Joints;
-use crate::checks::{Check, Meter, Reading, Verdict};
+use crate::checks::{Check, Finding, Meter, Reading, Verdict};
 use crate::geometry::Pose;
 use crate::kinematics::{Jacobian, Posture};
 use crate::motion::{Cursor, Follower, Instant, Segment, Side};
@@ -42,7 +42,14 @@ pub struct Probe<'a> {
 impl<'a> Probe<'a> {
     /// A probe for a segment (counted from 0) of a judged recipe; `None` if there is no such segment.
     pub fn of(judged: &'a Judged, segment: usize) -> Option<Self> {
-        let planned = judged.plan.segments.get(segment)?;
+        Self::of_version(judged, segment, false)
+    }
+
+    /// A probe for a segment as it runs on the cycle, or for its version that stops at fly-by points where `stop` says so and there
+    /// is one.
+    pub fn of_version(judged: &'a Judged, segment: usize, stop: bool) -> Option<Self> {
+        judged.plan.segments.get(segment)?;
+        let planned: &Segment = judged.plan.version(segment, stop);
         Some(Self {
             segment: planned,
             follower: Follower::of(&judged.arm, planned),
@@ -68,13 +75,13 @@ impl<'a> Probe<'a> {
         }
         let [_, rate, accel] = segment.law.at(time, Side::Before);
         let mut reading = self.meter.read(&instant, rate, accel);
-        // Where the speed law has a corner the side that asks more of the accelerations counts.
+        // Where the speed law has a corner the side that asks more counts, of whatever jumps there.
         let [_, rate, accel_after] = segment.law.at(time, Side::After);
         if accel_after != accel {
             let other = self.meter.read(&instant, rate, accel_after);
-            for slot in self.meter.slots(Check::Accel) {
+            for slot in [Check::Accel, Check::Moving].into_iter().flat_map(|check| self.meter.slots(check)) {
                 let channel = self.meter.channel(slot);
-                if channel.asked(other[slot]) > channel.asked(reading[slot]) {
+                if channel.asked_in(&other, other[slot]) > channel.asked_in(&reading, reading[slot]) {
                     reading[slot] = other[slot];
                 }
             }
@@ -85,7 +92,8 @@ impl<'a> Probe<'a> {
     /// The gauges of one check in a reading.
     pub fn gauges(&self, reading: &Reading, check: Check) -> impl Iterator<Item = Gauge> {
         self.meter.slots(check).map(move |slot| {
-            let (channel, value) = (self.meter.channel(slot), reading[slot]);
+            // A rating may fall with the rate.
+            let (channel, value) = (self.meter.channel(slot).within(reading), reading[slot]);
             let verdict = if channel.judged { channel.verdict(channel.asked(value)) } else { Verdict::Clear };
             Gauge {
                 check,
@@ -98,6 +106,21 @@ impl<'a> Probe<'a> {
                 judged: channel.judged,
             }
         })
+    }
+
+    /// The arm and all its quantities `time` seconds after the segment's start.
+    fn gauges_at(&self, judged: &Judged, time: f64) -> Gauges {
+        let segment = self.segment;
+        let gone = segment.carried_after.as_ref().filter(|_| time >= segment.duration() + segment.dwell);
+        let load = gone.unwrap_or(&segment.carried).load_mass;
+        if let Some((instant, reading)) = self.read(time) {
+            let all = Check::ALL.into_iter().flat_map(|check| self.gauges(&reading, check).collect::<Vec<_>>()).collect();
+            return Gauges { fraction: instant.u, q: instant.q, posture: instant.posture, tcp: instant.tcp, load, all };
+        }
+        let q = segment.track.lost.map_or(segment.start, |lost| lost.q);
+        let posture = Posture::at(judged.arm.chain(), &q);
+        let tcp = posture.tcp(&segment.carried.tcp);
+        Gauges { fraction: segment.followed_to(), q, posture, tcp, load, all: Vec::new() }
     }
 }
 
@@ -122,17 +145,14 @@ impl Gauges {
     /// The gauges at a cursor; `None` for a recipe without segments.
     pub fn at(judged: &Judged, cursor: Cursor) -> Option<Self> {
         let probe = Probe::of(judged, cursor.segment)?;
-        let segment = probe.segment;
-        let gone = segment.carried_after.as_ref().filter(|_| cursor.time >= segment.duration() + segment.dwell);
-        let load = gone.unwrap_or(&segment.carried).load_mass;
-        if let Some((instant, reading)) = probe.read(cursor.time) {
-            let all = Check::ALL.into_iter().flat_map(|check| probe.gauges(&reading, check).collect::<Vec<_>>()).collect();
-            return Some(Self { fraction: instant.u, q: instant.q, posture: instant.posture, tcp: instant.tcp, load, all });
-        }
-        let q = segment.track.lost.map_or(segment.start, |lost| lost.q);
-        let posture = Posture::at(judged.arm.chain(), &q);
-        let tcp = posture.tcp(&segment.carried.tcp);
-        Some(Self { fraction: segment.followed_to(), q, posture, tcp, load, all: Vec::new() })
+        Some(probe.gauges_at(judged, cursor.time))
+    }
+
+    /// The gauges at the worst instant of a finding, on the version of its segment that it is of; the arm alone where the path could
+    /// not be followed there.
+    pub fn at_worst(judged: &Judged, finding: &Finding) -> Option<Self> {
+        let probe = Probe::of_version(judged, finding.segment, finding.stop)?;
+        Some(probe.gauges_at(judged, Some(finding.worst().time).filter(|time| time.is_finite()).unwrap_or(0.0)))
     }
 
     /// The gauges at rest at joint values that need not be on the segment, with this tool and load; limits and reserves as on the
