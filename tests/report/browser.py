@@ -145,6 +145,9 @@ def on_paper(printed, width, height):
     for number, (page, text) in enumerate(zip(pages, texts), 1):
         if len(text) < 150:
             found.append(f"page {number} is nearly empty")
+        last = [line.strip() for line in text.splitlines() if line.strip()][-1]
+        if last in HEADINGS:
+            found.append(f"\"{last}\" is left behind on page {number}")
         if f"{number} of {len(pages)}" not in text:
             found.append(f"page {number} does not say which it is")
         if abs(float(page.mediabox.width) - 72 * width) > 1 or abs(float(page.mediabox.height) - 72 * height) > 1:

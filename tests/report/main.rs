@@ -21,6 +21,15 @@ struct Written {
     markdown: String,
 }
 
+impl Written {
+    /// Leaves the page where the browser and the validator of `.ci/run` take it from, if they ask for it.
+    fn keep(&self, name: &str) {
+        if let Some(folder) = std::env::var_os("ELBOWROOM_KEEP_REPORTS") {
+            std::fs::write(Path::new(&folder).join(name), &self.html).expect("written");
+        }
+    }
+}
+
 /// A recipe of the tree.
 fn recipe(name: &str) -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).join("recipes").join(name)

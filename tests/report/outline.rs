@@ -67,6 +67,25 @@ fn a_clean_recipe_is_clear_as_far_as_judged() {
 }
 
 #[test]
+fn what_has_no_path_or_is_unproven_is_told_plainly() {
+    let mut opened = files::demo();
+    let elbowroom::program::Taught::Pose { pose, .. } = &mut opened.recipe.waypoints[1].taught else { panic!("a pose") };
+    pose.at.x += 1.0;
+    let written = written(&opened, false);
+    assert_sound(&written.html);
+    written.keep("no-path.html");
+    for told in [
+        "NOT READY: 1 no path, 1 over, 1 unproven, 1 tight, 9 clear",
+        "Not clear: 4 of 13 segments are not clear. 1 segment is unproven: nothing bad was seen, but it is not known to be clear.",
+        "| **no path** | 1 | 2 |",
+        "| **unproven** | 1 | 3 |",
+        "All that comes after the place where the path is lost, on segment 2, 3.",
+    ] {
+        assert!(written.markdown.contains(told), "{told}");
+    }
+}
+
+#[test]
 fn nothing_in_it_comes_from_elsewhere() {
     for name in ["housing-transfer.toml", "lid-placing.toml", "sealant-ring.toml", "tray-feed.toml"] {
         let written = written(&files::open(&recipe(name)).expect("it opens"), false);

@@ -20,19 +20,22 @@ const LINE: f64 = 12.0;
 /// Draws one quantity over time, with its limit, its reserve and its worst instant.
 pub(super) fn draw(page: &mut Markup, curve: &Curve, says: &str) {
     let view = format!("0 0 {WIDTH} {HEIGHT}");
+    let worst = worst(curve);
     page.within("svg", &[("viewBox", &view), ("role", &"img"), ("aria-label", &says)], |page| {
         let scale = Scale::of(curve);
         let [left, right, top, bottom] = AROUND;
         let (end, base) = (WIDTH - right, HEIGHT - bottom);
         page.shape("path", &[("class", &"axis"), ("d", &format!("M{left} {top}V{base}H{end}"))]);
-        guides(page, curve, &scale);
+        guides(page, curve, &scale, worst.map_or(0.0, |point| scale.x(point.time)));
         for run in curve.points.chunk_by(|a, b| a.asked.is_finite() == b.asked.is_finite()) {
             if run[0].asked.is_finite() {
                 line(page, run.iter().map(|point| scale.dot(point.time, point.asked)), "curve");
             }
         }
         flagged(page, curve, &scale);
-        worst(page, curve, &scale);
+        if let Some(point) = worst {
+            mark(page, point, &scale);
+        }
         let [from, to] = curve.span;
         text(page, [left, base + LINE + 2.0], "start", &format!("{from:.2} s"));
         text(page, [end, base + LINE + 2.0], "end", &format!("{to:.2} s"));
@@ -71,8 +74,9 @@ impl Scale {
     }
 }
 
-/// The limit as a line, the reserve as a dashed one, with their figures.
-fn guides(page: &mut Markup, curve: &Curve, scale: &Scale) {
+/// The limit as a line, the reserve as a dashed one, with their figures; their words at the side away from the mark at `marked`.
+fn guides(page: &mut Markup, curve: &Curve, scale: &Scale, marked: f64) {
+    let (words_at, stands) = if marked < 0.5 * WIDTH { (WIDTH - AROUND[1] - 4.0, "end") } else { (AROUND[0] + 4.0, "start") };
     let left = AROUND[0] - 5.0;
     let figure =
         |page: &mut Markup, asked: f64| text(page, [left, scale.y(asked) + 4.0], "end", &format!("{:.0} %", 100.0 * asked));
@@ -82,13 +86,13 @@ fn guides(page: &mut Markup, curve: &Curve, scale: &Scale) {
     }
     let y = scale.y(1.0);
     page.shape("path", &[("class", &"limit"), ("d", &format!("M{} {y:.1}H{}", AROUND[0], WIDTH - AROUND[1]))]);
-    text(page, [AROUND[0] + 4.0, y - 3.0], "start", "limit");
+    text(page, [words_at, y - 3.0], stands, "limit");
     figure(page, 1.0);
     let kept: Vec<&Point> = curve.points.iter().filter(|point| point.allowed < 1.0 - 1e-6).collect();
     let (Some(first), Some(last)) = (kept.first(), kept.last()) else { return };
     line(page, kept.iter().map(|point| scale.dot(point.time, point.allowed)), "reserve");
     let y = scale.y(first.allowed);
-    text(page, [AROUND[0] + 4.0, y + LINE - 2.0], "start", "reserve");
+    text(page, [words_at, y + LINE - 2.0], stands, "reserve");
     if (scale.y(first.allowed) - scale.y(1.0)).abs() >= LINE && (first.allowed - last.allowed).abs() < 1e-6 {
         figure(page, first.allowed);
     }
@@ -109,18 +113,20 @@ fn flagged(page: &mut Markup, curve: &Curve, scale: &Scale) {
     }
 }
 
-/// A mark at the instant that asks most: a circle where it is clear, a square where it is tight, a triangle where it is over.
-fn worst(page: &mut Markup, curve: &Curve, scale: &Scale) {
-    if curve.unlimited.is_some() {
-        return;
-    }
+/// The instant that asks most beyond what is allowed.
+fn worst(curve: &Curve) -> Option<&Point> {
+    let beyond = |point: &Point| point.asked - point.allowed;
     let mut most: Option<&Point> = None;
-    for point in curve.points.iter().filter(|point| point.asked.is_finite()) {
-        if most.is_none_or(|known| point.asked - point.allowed > known.asked - known.allowed) {
+    for point in curve.points.iter().filter(|point| point.asked.is_finite() && curve.unlimited.is_none()) {
+        if most.is_none_or(|known| beyond(point) > beyond(known)) {
             most = Some(point);
         }
     }
-    let Some(point) = most else { return };
+    most
+}
+
+/// A mark at an instant: a circle where it is clear, a square where it is tight, a triangle where it is over.
+fn mark(page: &mut Markup, point: &Point, scale: &Scale) {
     let [x, y] = scale.dot(point.time, point.asked);
     let shape = match point.verdict {
         Verdict::Clear => format!("M{:.1} {y:.1}a4 4 0 1 0 8 0a4 4 0 1 0 -8 0", x - 4.0),

@@ -146,6 +146,8 @@ fn drawn_bar(page: &mut Markup, bar: &Bar, total: f64) {
 
 /// A table of no more rows is kept on one page.
 const SHORT: usize = 16;
+/// In a table of more columns than this figures may stand below their verdicts on paper.
+const MANY: usize = 8;
 /// A table with a cell of more letters than this is not squeezed onto a small screen, but moved.
 const LONG: usize = 120;
 
@@ -154,6 +156,7 @@ fn table(page: &mut Markup, told: &Table) {
     let about = [("class", &"wide" as &dyn std::fmt::Display), ("tabindex", &0), ("role", &"group"), ("aria-label", &told.caption)];
     let mut kind = Vec::new();
     kind.extend((told.rows.len() <= SHORT).then_some("short"));
+    kind.extend((told.columns.len() > MANY).then_some("many"));
     kind.extend(told.rows.iter().flatten().any(|cell| cell.words().len() > LONG).then_some("prose"));
     page.within("div", &about, |page| {
         page.within("table", &[("class", &kind.join(" "))], |page| {

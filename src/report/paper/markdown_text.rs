@@ -25,7 +25,7 @@ pub(super) fn escaped(text: &str) -> String {
                 out.push_str("<!-- -->");
             }
             '#' | '-' | '+' | '=' if at == 0 && next.is_none_or(|next| next.is_whitespace() || next == sign) => {
-                out.extend(['\\', sign])
+                out.extend(['\\', sign]);
             }
             '.' | ')' if is_number(&text[..at]) && next.is_none_or(char::is_whitespace) => out.extend(['\\', sign]),
             _ => out.push(sign),
@@ -81,7 +81,7 @@ mod tests {
             ("$x$", "&#36;x&#36;"),
             ("see ftp://x and www.x", "see ftp\\://x and www\\.x"),
             ("@anna #12", "@<!-- -->anna #<!-- -->12"),
-            ("two\nlines", "two␊lines"),
+            ("two\nlines", "two⟨U+000A⟩lines"),
         ] {
             assert_eq!(escaped(text), written);
         }

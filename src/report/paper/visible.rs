@@ -1,14 +1,13 @@
 /// Text with every sign made visible that a reader could not see, or that would make the text around it read otherwise: control
-/// characters as their pictures (U+2400 and on), signs that turn the direction of writing, that have no width, or that are none as
-/// `⟨U+202E⟩`. Both ways of writing a report put all text through this first.
+/// characters, signs that turn the direction of writing, that have no width, or that are none, each as its number, such as `⟨U+202E⟩`.
+/// Both ways of writing a report put all text through this first.
 pub(super) fn visible(text: &str) -> String {
     let mut shown = String::with_capacity(text.len());
     for sign in text.chars() {
-        match sign {
-            '\u{0}'..='\u{1f}' => shown.extend(char::from_u32(0x2400 + u32::from(sign))),
-            '\u{7f}' => shown.push('\u{2421}'),
-            _ if is_hidden(sign) => shown.push_str(&format!("⟨U+{:04X}⟩", u32::from(sign))),
-            _ => shown.push(sign),
+        if is_hidden(sign) {
+            shown.push_str(&format!("⟨U+{:04X}⟩", u32::from(sign)));
+        } else {
+            shown.push(sign);
         }
     }
     shown
@@ -18,7 +17,7 @@ pub(super) fn visible(text: &str) -> String {
 fn is_hidden(sign: char) -> bool {
     let of_directions = matches!(sign, '\u{61c}' | '\u{200e}' | '\u{200f}' | '\u{202a}'..='\u{202e}' | '\u{2066}'..='\u{2069}');
     let without_width = matches!(sign, '\u{ad}' | '\u{200b}' | '\u{2060}'..='\u{2065}' | '\u{206a}'..='\u{206f}' | '\u{feff}');
-    let of_layout = matches!(sign, '\u{80}'..='\u{9f}' | '\u{2028}' | '\u{2029}' | '\u{fff9}'..='\u{fffb}');
+    let of_layout = sign.is_control() || matches!(sign, '\u{2028}' | '\u{2029}' | '\u{fff9}'..='\u{fffb}');
     let tag = matches!(sign, '\u{e0000}'..='\u{e007f}');
     let none = matches!(u32::from(sign) & 0xffff, 0xfffe | 0xffff) || matches!(sign, '\u{fdd0}'..='\u{fdef}');
     of_directions || without_width || of_layout || tag || none
@@ -30,7 +29,7 @@ mod tests {
 
     #[test]
     fn what_can_not_be_seen_is_shown() {
-        assert_eq!(visible("a\nb\u{7}\u{7f}"), "a␊b␇␡");
+        assert_eq!(visible("a\nb\u{7}\u{7f}"), "a⟨U+000A⟩b⟨U+0007⟩⟨U+007F⟩");
         assert_eq!(visible("gate\u{202e}txt.exe"), "gate⟨U+202E⟩txt.exe");
         assert_eq!(visible("\u{feff}x\u{200b}\u{85}\u{ffff}"), "⟨U+FEFF⟩x⟨U+200B⟩⟨U+0085⟩⟨U+FFFF⟩");
     }
