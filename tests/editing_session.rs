@@ -243,6 +243,96 @@ fn a_file_that_was_changed_meanwhile_is_not_overwritten_unasked() {
     assert!(running.end().success());
 }
 
+/// Presses Down often enough to come to a row of the menu, and takes it.
+fn choose(running: &mut Running, downs: usize) {
+    running.press(&("\x1b[B".repeat(downs) + "\r"));
+}
+
+#[test]
+fn comments_of_a_deleted_waypoint_are_told_and_come_back_by_undo_after_a_save() {
+    for size in [[80, 24], [120, 40]] {
+        let folder = cell();
+        let before = text(&folder)
+            .replace("[[waypoint]]\nname   = \"window out\"", "# Mind the frame.\n[[waypoint]]\nname   = \"window out\"");
+        std::fs::write(recipe(&folder), &before).expect("written");
+        let mut running = open(&folder, size);
+        // The last in the menu of stretches deletes.
+        running.press("x\x1b[A\r");
+        running.until("deleted");
+        running.press("s");
+        running.until("went with what");
+        assert!(!text(&folder).contains("Mind the frame"));
+        running.press("u");
+        running.until("undone");
+        running.press("s");
+        running.until("saved to");
+        assert_eq!(text(&folder), before);
+        running.press("q");
+        assert!(running.end().success());
+    }
+}
+
+#[test]
+fn a_target_that_cannot_be_written_is_told_and_the_edits_are_kept() {
+    use std::os::unix::fs::PermissionsExt;
+    for size in [[80, 24], [120, 40]] {
+        let folder = cell();
+        let before = text(&folder);
+        let mut running = open(&folder, size);
+        slow_down(&mut running);
+        let allow = |mode| std::fs::set_permissions(recipe(&folder), std::fs::Permissions::from_mode(mode)).expect("set");
+        allow(0o444);
+        running.press("s");
+        running.until("not saved, the edits are kept");
+        running.wait_for("the reason, whole", |running| running.text().replace('\n', " ").contains("marked as read-only"));
+        assert_eq!(text(&folder), before);
+        allow(0o644);
+        // The folder is gone, and comes back.
+        let (here, away) = (folder.path().join("housing-transfer.toml"), tempfile::tempdir().expect("a folder"));
+        let elsewhere = away.path().join("moved");
+        std::fs::rename(folder.path(), &elsewhere).expect("moved");
+        running.press("s");
+        running.wait_for("the folder, whole", |running| running.text().replace('\n', " ").contains("is not there any more"));
+        assert!(!here.exists());
+        std::fs::rename(&elsewhere, folder.path()).expect("back");
+        running.press("s");
+        running.until("saved to");
+        assert!(text(&folder).contains("speed  = 210"));
+        running.press("q");
+        assert!(running.end().success());
+    }
+}
+
+/// A full disk by a limit on the size of files, set before the program starts.
+#[cfg(target_os = "linux")]
+#[test]
+fn a_full_disk_is_told_and_the_edits_are_kept() {
+    for size in [[80, 24], [120, 40]] {
+        let folder = cell();
+        let before = text(&folder);
+        let mut command = CommandBuilder::new("bash");
+        command.args(["-c", "trap '' XFSZ; ulimit -f 1; exec \"$0\" \"$1\"", env!("CARGO_BIN_EXE_elbowroom")]);
+        command.arg(recipe(&folder));
+        command.env("XDG_STATE_HOME", folder.path().join("state"));
+        command.env("XDG_CONFIG_HOME", folder.path().join("config"));
+        let mut running = Running::sized(command, size);
+        running.until("NOT READY");
+        running.press("e\x1b[B\r\x7f\x7f\x7f");
+        running.until("take it");
+        running.press("210\r");
+        running.until("edits can't be noted down");
+        running.press("\x7fs");
+        running.wait_for("the reason, whole", |running| running.text().replace('\n', " ").contains("no room left on the disk"));
+        assert!(running.text().contains("not saved, the edits are kept"), "{}", running.text());
+        assert_eq!(text(&folder), before);
+        assert!(!folder.path().join("housing-transfer.toml~").exists());
+        running.press("q");
+        running.until("discard the edits and quit");
+        choose(&mut running, 2);
+        assert!(running.end().success());
+    }
+}
+
 /// Signs off on the screen, datum by datum; others can check the record on the command line.
 #[test]
 fn a_program_is_signed_off_on_the_screen() {

@@ -54,7 +54,9 @@ pub use recipe_file::read_recipe;
 pub use record_file::read_record;
 pub use record_text::{record_text, signed_part};
 pub use records::{Kept, NotKept, earlier_record, keep_record};
-pub use save::{Content, NewText, NotSaved, Saved, changes_on_disk, make_folder, text_of_edited, text_of_new, write, write_anyway};
+pub use save::{
+    Content, NewText, NotSaved, Saved, Texts, changes_on_disk, make_folder, text_of_edited, text_of_new, write, write_anyway,
+};
 pub use source::Source;
 pub use sources::{MOST_PEOPLE, is_there, no_link, open_itself, read_text, record_path, set_aside, signature_path, sources};
 pub use starter::{starting_arm, starting_postures, starting_recipe};
