@@ -6,6 +6,7 @@
 
 mod arm_file;
 mod aside;
+mod below;
 mod body;
 mod cell;
 mod complaint;
@@ -33,6 +34,7 @@ mod save;
 mod source;
 mod sources;
 mod stand_in;
+mod standing;
 mod starter;
 mod table;
 mod value;
@@ -40,6 +42,7 @@ mod waypoint;
 
 pub use arm_file::read_arm;
 pub use aside::Aside;
+pub use below::{Below, is_folder, recipes_below};
 pub use complaint::{Complaint, Rejected};
 pub use content::content;
 pub use demo::demo;
@@ -59,4 +62,5 @@ pub use save::{
 };
 pub use source::Source;
 pub use sources::{MOST_PEOPLE, is_there, no_link, open_itself, read_text, record_path, set_aside, signature_path, sources};
+pub use standing::out_of_date;
 pub use starter::{starting_arm, starting_postures, starting_recipe};

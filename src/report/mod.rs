@@ -4,6 +4,7 @@ mod check_json;
 mod finding_json;
 mod grid;
 mod judged_json;
+mod not_judged_json;
 mod plan_json;
 mod save;
 mod stopping_json;
@@ -12,6 +13,7 @@ mod wall_page;
 
 pub use check_json::{FORMAT, check_json};
 pub use grid::{MOST_ROWS, TooManyRows};
+pub use not_judged_json::{NOT_JUDGED_FORMAT, not_judged_json};
 pub use plan_json::{PLAN_FORMAT, plan_json};
 pub use save::save;
 pub use trace_csv::{TraceError, trace_csv};
