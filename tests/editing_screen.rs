@@ -167,3 +167,42 @@ fn what_is_only_looked_at_is_not_edited() {
     }
     assert_eq!(**app.taught(), *taught);
 }
+
+#[test]
+fn an_edit_that_changes_nothing_is_no_step() {
+    let mut app = opened(80, 24);
+    let index = 9;
+    let same = Box::new(app.taught().waypoints[index].clone());
+    update(&mut app, Action::Change(Box::new(elbowroom::program::Edit::Change { index, waypoint: same })));
+    assert_eq!(app.message.as_deref(), Some("nothing is changed by that"));
+    assert!(app.history.done().is_empty() && app.made.is_empty());
+}
+
+#[test]
+fn that_something_is_not_saved_is_told_however_long_the_name() {
+    let mut app = opened(80, 24);
+    let name = "Housing transfer with the wide gripper on the second line".to_owned();
+    update(&mut app, Action::Change(Box::new(elbowroom::program::Edit::Name(name))));
+    check(&mut app);
+    let first = shown(&app).lines().next().expect("a headline").to_owned();
+    assert!(first.contains("NOT READY: 1 over, 1 tight, 11 clear; not saved") && first.starts_with("Housing"), "{first}");
+}
+
+#[test]
+fn a_mark_is_forgotten_by_escape_and_never_leads_out_of_the_recipe() {
+    let mut app = opened(80, 24);
+    update(&mut app, Action::OnStretch(OnStretch::Duplicate));
+    check(&mut app);
+    for _ in 0..20 {
+        update(&mut app, Action::Down);
+    }
+    update(&mut app, Action::OnStretch(OnStretch::Mark));
+    assert!(shown(&app).contains("marked from 15"));
+    update(&mut app, Action::Undo);
+    check(&mut app);
+    update(&mut app, Action::OnStretch(OnStretch::Duplicate));
+    assert!(app.message.as_ref().is_some_and(|told| told.contains("u undoes it")), "{:?}", app.message);
+    update(&mut app, Action::OnStretch(OnStretch::Mark));
+    update(&mut app, Action::Back);
+    assert_eq!(app.mark, None);
+}

@@ -1,6 +1,7 @@
 use std::path::PathBuf;
 
 use clap::{ArgGroup, Args as ClapArgs, Parser, Subcommand};
+use clap_complete::Shell;
 
 use crate::review::{CellTool, Date, Role};
 use crate::units::{Length, Seconds};
@@ -56,6 +57,8 @@ pub(super) enum Command {
         after_help = "Exit codes: 0 every recipe is clear, 1 something is not clear, 2 something could not be judged (a file \
                             that can't be taken, a mistake in the arguments). With several recipes the worst of them; one that can't be \
                             judged does not stop the others.\n\
+                            Of a folder all recipes below are judged and told on a line each: files whose name ends in .toml and that \
+                            have the line elbowroom-recipe. Hidden ones are left out. Where there is none the code is 2.\n\
                             With --json every recipe is one JSON object on one line."
     )]
     Check(CheckArgs),
@@ -107,6 +110,15 @@ pub(super) enum Command {
     /// Write a starting file with comments: an arm, or a recipe for an arm
     #[command(after_help = "A file that is there already is never written over. Exit codes: 0 written, 2 not.")]
     New(NewArgs),
+    /// Print what a shell needs to complete commands and options
+    #[command(after_help = "For bash: elbowroom completions bash > ~/.local/share/bash-completion/completions/elbowroom")]
+    Completions {
+        /// The shell
+        shell: Shell,
+    },
+    /// Print the manual page
+    #[command(after_help = "To read it: elbowroom manual | man -l -")]
+    Manual,
 }
 
 /// Arguments of `new`.
@@ -227,9 +239,10 @@ fn typed(text: &str) -> Result<CellTool, String> {
 
 /// Arguments of `check`.
 #[derive(Debug, ClapArgs)]
+#[expect(clippy::struct_excessive_bools, reason = "each is a switch of its own on the command line")]
 pub(super) struct CheckArgs {
-    /// The recipes to judge
-    #[arg(required_unless_present = "demo")]
+    /// The recipes to judge, or folders that hold them
+    #[arg(required_unless_present = "demo", value_name = "RECIPE")]
     pub recipes: Vec<PathBuf>,
     /// Judge the built-in demonstration cell
     #[arg(long, conflicts_with = "recipes")]
@@ -240,6 +253,12 @@ pub(super) struct CheckArgs {
     /// Print one line a recipe
     #[arg(long, conflicts_with = "json")]
     pub quiet: bool,
+    /// Leave out recipes whose record was made of the very same recipe and arm file by this version; nothing else of it is looked at
+    #[arg(long, conflicts_with = "demo")]
+    pub changed: bool,
+    /// Name the recipes, a line each, and judge none
+    #[arg(long, conflicts_with_all = ["demo", "json", "quiet"])]
+    pub list: bool,
     /// Columns to wrap text at
     #[arg(long, value_name = "COLUMNS", default_value_t = 100, value_parser = clap::value_parser!(u16).range(40..=400))]
     pub width: u16,

@@ -2,6 +2,7 @@
 //! file.
 
 mod args;
+mod bar;
 mod check;
 mod chosen;
 mod code;
@@ -9,6 +10,7 @@ mod columns;
 mod compare;
 mod explain;
 mod findings_text;
+mod generated;
 mod key;
 mod new;
 mod not_checked_text;
@@ -52,6 +54,8 @@ pub fn run() -> ExitCode {
         Some(Command::Compare(compare)) => compare::run(&compare),
         Some(Command::Page { record }) => verify::page(&record),
         Some(Command::New(new)) => new::run(&new),
+        Some(Command::Completions { shell }) => generated::completions(shell),
+        Some(Command::Manual) => generated::manual(),
     };
     match done {
         Ok(code) => code.into(),

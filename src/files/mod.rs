@@ -6,6 +6,7 @@
 
 mod arm_file;
 mod aside;
+mod below;
 mod body;
 mod cell;
 mod complaint;
@@ -34,6 +35,7 @@ mod save;
 mod source;
 mod sources;
 mod stand_in;
+mod standing;
 mod starter;
 mod table;
 mod value;
@@ -41,6 +43,7 @@ mod waypoint;
 
 pub use arm_file::read_arm;
 pub use aside::Aside;
+pub use below::{Below, is_folder, recipes_below};
 pub use complaint::{Complaint, Rejected};
 pub use content::content;
 pub use demo::demo;
@@ -56,7 +59,10 @@ pub use recipe_file::read_recipe;
 pub use record_file::read_record;
 pub use record_text::{record_text, signed_part};
 pub use records::{Kept, NotKept, earlier_record, keep_record};
-pub use save::{Content, NewText, NotSaved, Saved, changes_on_disk, make_folder, text_of_edited, text_of_new, write, write_anyway};
+pub use save::{
+    Content, NewText, NotSaved, Saved, Texts, changes_on_disk, make_folder, text_of_edited, text_of_new, write, write_anyway,
+};
 pub use source::Source;
 pub use sources::{MOST_PEOPLE, is_there, no_link, open_itself, read_text, record_path, set_aside, signature_path, sources};
+pub use standing::out_of_date;
 pub use starter::{starting_arm, starting_postures, starting_recipe};

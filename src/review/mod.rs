@@ -7,6 +7,7 @@ mod first_run;
 mod history;
 pub mod jog;
 mod judged;
+mod many;
 mod not_checked;
 mod recheck;
 pub mod record;
@@ -27,6 +28,7 @@ pub use explain::{
 pub use first_run::{FirstRun, HeldBack, SegmentRun, Stage, first_run};
 pub use history::{History, Step};
 pub use judged::Judged;
+pub use many::many;
 pub use not_checked::not_checked;
 pub use recheck::{Done, Progress, Recheck, Reply, Ticket};
 pub use reduced_speed::{REDUCED_SPEED, Reduced, reduced_speed};

@@ -115,7 +115,7 @@ pub(super) fn handle(app: &mut App, action: &Action) {
         Action::LeapOn => editing.chosen = (editing.chosen + 10).min(last),
         Action::ToStart => editing.chosen = 0,
         Action::ToEnd => editing.chosen = last,
-        Action::Left | Action::Right => {
+        Action::Left | Action::Right if editing.group == Group::Waypoint => {
             let (count, back) = (app.taught().waypoints.len(), matches!(action, Action::Left));
             editing.waypoint = next_waypoint(app, editing.waypoint, count, back);
         }

@@ -8,6 +8,11 @@ pub(super) fn make(app: &mut App, edit: &Edit) {
         app.message = Some(format!("not done: {why}"));
         return;
     }
+    let mut after = (**app.taught()).clone();
+    if edit.apply(&mut after).is_ok() && after == **app.taught() {
+        app.message = Some("nothing is changed by that".to_owned());
+        return;
+    }
     let made = refuse_new_faults(app.taught(), &app.arm, edit)
         .and_then(|()| app.history.make(&app.arm, edit.clone()).map(str::to_owned).map_err(|fault| fault.to_string()));
     match made {

@@ -4,6 +4,7 @@ use unicode_width::UnicodeWidthStr;
 use super::action::Action;
 use super::app::{App, Mode, Page, Question};
 use super::ask;
+use super::editing::Group;
 use super::keys::{BINDINGS, Binding};
 use super::sheet::{Sheet, fit, wrap};
 
@@ -74,7 +75,8 @@ fn hints(app: &App, width: usize) -> Vec<(String, String)> {
         (_, Action::StepSize) => false,
         (Mode::Menu(_), action) => matches!(action, Action::Up | Action::Enter),
         (Mode::Editing(editing), _) if editing.typing.is_some() => false,
-        (Mode::Editing(_), action) => matches!(action, Action::Up | Action::Left | Action::Enter | Action::NextPane | Action::Undo),
+        (Mode::Editing(editing), Action::Left) => editing.group == Group::Waypoint,
+        (Mode::Editing(_), action) => matches!(action, Action::Up | Action::Enter | Action::NextPane | Action::Undo),
         (Mode::SignOff, action) => matches!(action, Action::Up | Action::Enter | Action::NotChecked),
         (Mode::Remedies, Action::Remedies) => app.remedies.stopped().is_some(),
         (Mode::Remedies, action) => matches!(action, Action::Up | Action::Enter | Action::NextFinding | Action::Undo),

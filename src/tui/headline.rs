@@ -8,6 +8,9 @@ use crate::checks::Verdict;
 /// Stands wherever a verdict stands: the program moves nothing.
 const NO_ARM: &str = "no arm connected";
 
+/// A recipe's name is not cut shorter than this.
+const SHORTEST_NAME: usize = 6;
+
 /// Draws the sentence on the whole recipe, and that no arm is connected.
 pub fn draw(sheet: &mut Sheet, app: &App) {
     let theme = app.theme;
@@ -37,6 +40,12 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
     let whole = format!("{doubts}{unsaved}");
     if let Some(more) = [whole.as_str(), unsaved].into_iter().find(|more| two_rows || sentence.width() + more.width() <= left) {
         sentence += more;
+    } else if let Some((name, rest)) = sentence.split_once(": NOT READY").or_else(|| sentence.split_once(": READY")) {
+        // That something is not saved is never left out: a long name is cut before.
+        let rest = &sentence[sentence.len() - rest.len()..];
+        let head = sentence[name.len()..sentence.len() - rest.len()].to_owned();
+        let room = left.saturating_sub(head.width() + rest.width() + unsaved.width());
+        sentence = format!("{}{head}{rest}{unsaved}", fit(name, room.max(SHORTEST_NAME), theme));
     }
     let (sentence, more) = if two_rows {
         let mut lines = wrap(&sentence, left).into_iter();

@@ -39,7 +39,8 @@ pub enum OnStretch {
 /// The waypoints that an edit would be of: from the mark to the cursor, or the cursor's alone.
 pub fn meant(app: &App) -> RangeInclusive<usize> {
     let here = app.session.as_ref().map_or(0, Session::waypoint);
-    let from = app.mark.unwrap_or(here);
+    // Waypoints may have gone since it was marked.
+    let from = app.mark.unwrap_or(here).min(app.taught().waypoints.len().saturating_sub(1));
     from.min(here)..=from.max(here)
 }
 
@@ -88,7 +89,7 @@ pub(super) fn act(app: &mut App, what: &OnStretch) {
     let edit = match what {
         OnStretch::Mark => {
             app.mark = app.session.as_ref().map(Session::waypoint);
-            app.message = Some(format!("stretch marked from waypoint {}; x edits it up to the cursor", from + 1));
+            app.message = Some(format!("stretch marked from waypoint {}; x edits it up to the cursor, Esc forgets it", from + 1));
             return;
         }
         OnStretch::AskShift => {

@@ -141,6 +141,9 @@ fn in_panes(app: &mut App, action: &Action) {
         Action::ToStart => to_end(app, false),
         Action::ToEnd => to_end(app, true),
         Action::NextPane => app.pane = app.pane.next(),
+        Action::Back if app.pane == Pane::List && app.mark.take().is_some() => {
+            app.message = Some("no stretch is marked any more".to_owned());
+        }
         Action::Back if app.pane == Pane::List => filter::lift(app),
         Action::Back => app.pane = Pane::List,
         Action::Enter => app.mode = Mode::Menu(actions(app)),

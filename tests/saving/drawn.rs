@@ -16,7 +16,13 @@ pub fn every<S: Strategy>(cases: u32, strategy: &S, holds: impl Fn(S::Value)) {
     let set = |name: &str| std::env::var(name).ok().map(|text| text.parse::<u64>().expect("a number"));
     let seed = set("ELBOWROOM_TEST_SEED").unwrap_or(1901);
     let cases = set("ELBOWROOM_TEST_CASES").map_or(cases, |cases| cases as u32);
-    let config = ProptestConfig { cases, rng_seed: RngSeed::Fixed(seed), failure_persistence: None, ..ProptestConfig::default() };
+    let config = ProptestConfig {
+        cases,
+        rng_seed: RngSeed::Fixed(seed),
+        failure_persistence: None,
+        max_shrink_iters: 4000,
+        ..ProptestConfig::default()
+    };
     let outcome = TestRunner::new(config).run(strategy, |case| {
         holds(case);
         Ok(())

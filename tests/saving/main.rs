@@ -1,5 +1,6 @@
 //! Nothing that a person made is lost: undo, saving into their text, the disk, the lock, the journal.
 
+mod deleted;
 mod disk;
 mod drawn;
 mod fields;

@@ -2,6 +2,8 @@ use std::ops::Range;
 
 use toml_edit::{Item, Key, Table, TableLike, Value};
 
+use super::comments::is_ruled;
+
 /// The way to a table: keys, and which item where the key names an array.
 pub(super) type Way = Vec<(String, usize)>;
 
@@ -29,13 +31,14 @@ pub(super) fn sections(text: &str, root: &Table) -> Vec<Section> {
         let above = comments_above(text, content_end, line_start(text, start));
         close(text, &mut sections, content_end, above);
         sections.push(Section { way, heading: Some(start), range: above..above });
-        content_end = end.max(line_end(text, start));
+        content_end = line_end(text, end.max(start));
     }
     close(text, &mut sections, content_end, text.len());
     sections
 }
 
-/// Ends the last section before `end`: comments behind a blank line are a section of their own, so that they stay where they are.
+/// Ends the last section before `end`: comments behind a blank line, or from a ruled one on, are a section of their own, so that they
+/// stay where they are.
 fn close(text: &str, sections: &mut Vec<Section>, content_end: usize, end: usize) {
     let mut at = content_end.min(end);
     let mut blank = false;
@@ -45,7 +48,7 @@ fn close(text: &str, sections: &mut Vec<Section>, content_end: usize, end: usize
         let line = text[at..next].trim();
         if line.is_empty() {
             blank = true;
-        } else if blank {
+        } else if blank || is_ruled(line) {
             alone = at;
             break;
         }
@@ -59,12 +62,13 @@ fn close(text: &str, sections: &mut Vec<Section>, content_end: usize, end: usize
     }
 }
 
-/// Where the comment lines start that stand directly above the line `from`, not above `least`.
+/// Where the comment lines start that stand directly above the line `from`, not above `least` and below any that is ruled.
 fn comments_above(text: &str, least: usize, from: usize) -> usize {
     let mut at = from;
     while at > least {
         let above = line_start(text, at - 1);
-        if above < least || !text[above..at].trim_start().starts_with('#') {
+        let line = &text[above..at];
+        if above < least || !line.trim_start().starts_with('#') || is_ruled(line) {
             break;
         }
         at = above;

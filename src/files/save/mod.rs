@@ -4,6 +4,7 @@
 //! is changed at just that place. A new text is read again before it is given out.
 
 mod comma_list;
+mod comments;
 mod content;
 mod disk;
 mod elements;
@@ -15,6 +16,7 @@ mod order;
 mod outline;
 mod rework;
 mod splice;
+mod texts;
 
 use crate::arm::Arm;
 use crate::program::Recipe;
@@ -27,6 +29,7 @@ use super::recipe_file::{read_recipe, walked};
 pub use content::Content;
 pub(super) use disk::beside;
 pub use disk::{NotSaved, Saved, make_folder, write, write_anyway};
+pub use texts::Texts;
 
 /// How far a number may be off, as a share of itself, after it was written and read again: one last digit of a double, and for the
 /// elements of an orientation a few. See [`figure`].

@@ -27,7 +27,9 @@ pub(super) fn escaped(text: &str) -> String {
             '#' | '-' | '+' | '=' if at == 0 && next.is_none_or(|next| next.is_whitespace() || next == sign) => {
                 out.extend(['\\', sign]);
             }
-            '.' | ')' if is_number(&text[..at]) && next.is_none_or(char::is_whitespace) => out.extend(['\\', sign]),
+            '.' | ')' if is_number(&text[..at]) && next.is_none_or(char::is_whitespace) => {
+                out.extend(['\\', sign]);
+            }
             _ => out.push(sign),
         }
     }

@@ -4,10 +4,9 @@ use std::time::SystemTime;
 
 use crate::arm::Arm;
 use crate::files::{
-    Aside, Content, Journal, Lock, NotLocked, NotSaved, OwnKey, Recovered, changes_on_disk, left_behind, open, read_recipe,
+    Aside, Content, Journal, Lock, NotLocked, NotSaved, OwnKey, Recovered, Texts, changes_on_disk, left_behind, open, read_recipe,
     text_of_edited, write, write_anyway,
 };
-use crate::program::Recipe;
 use crate::review::History;
 use crate::tui::action::Action;
 use crate::tui::app::{App, FileWish, Menu, Mode, Wish};
@@ -22,9 +21,8 @@ pub(super) struct Keeper {
     pub(super) path: Option<PathBuf>,
     /// Where the recipe and its arm came from, as they are told.
     source: String,
-    /// The text that stands in the file, as far as is known, and the recipe that it gives.
-    pub(super) text: String,
-    saved: Arc<Recipe>,
+    /// The texts of the file, and what they give.
+    pub(super) texts: Texts,
     pub(super) arm_text: String,
     aside: Aside,
     journal: Option<Journal>,
@@ -47,8 +45,7 @@ impl Keeper {
             journal: path.as_ref().map(|path| Journal::of(path, &aside, &started.recipe_text)),
             path,
             source: started.recipe_path.clone(),
-            text: started.recipe_text.clone(),
-            saved: Arc::clone(&started.recipe),
+            texts: Texts::of(started.recipe_text.clone(), Arc::clone(&started.recipe)),
             arm_text: started.arm_text.clone(),
             aside,
             lock: None,
@@ -71,7 +68,7 @@ impl Keeper {
                 app.look_only = None;
                 self.left_behind = left_behind(path, &self.aside).and_then(|found| self.unless_saved(found, &app.arm));
                 if let Some(found) = &self.left_behind {
-                    app.mode = Mode::Menu(recovery(found, found.fits(&self.text)));
+                    app.mode = Mode::Menu(recovery(found, found.fits(self.texts.text())));
                 }
             }
             Err(held @ (NotLocked::Held { .. } | NotLocked::Unreadable { .. })) => {
@@ -88,7 +85,7 @@ impl Keeper {
         let is_saved = read_recipe(&found.text, &self.source, arm).is_ok_and(|before| {
             let mut now = before.clone();
             let all = found.lost == 0 && found.edits.iter().all(|edit| edit.apply(&mut now).is_ok());
-            all && text_of_edited(&found.text, &before, &now, arm).text == self.text
+            all && text_of_edited(&found.text, &before, &now, arm).text == self.texts.text()
         });
         if !is_saved {
             return Some(found);
@@ -142,14 +139,19 @@ impl Keeper {
             ));
             return;
         };
-        let new = text_of_edited(&self.text, &self.saved, app.taught(), &app.arm);
-        let written =
-            if over { write_anyway(&path, &new.text) } else { write(&path, &new.text, Some(&Content::of(self.text.as_bytes()))) };
+        let new = self.texts.next(app.taught(), &app.arm);
+        let known = Content::of(self.texts.text().as_bytes());
+        let written = if over { write_anyway(&path, &new.text) } else { write(&path, &new.text, Some(&known)) };
         match written {
             Ok(saved) => {
                 let kept = if new.kept { "" } else { "; its layout could not be kept and was made anew" };
                 let before = saved.backup.map_or(String::new(), |backup| format!("; the version before is {}", backup.display()));
-                app.message = Some(format!("saved to {}{before}{kept}", saved.path.display()));
+                let gone = match self.texts.gone_in(&new.text) {
+                    0 => "",
+                    1 => "; a comment went with what it stood at, and comes back with it by undo",
+                    _ => "; comments went with what they stood at, and come back with it by undo",
+                };
+                app.message = Some(format!("saved to {}{gone}{before}{kept}", saved.path.display()));
                 self.is_saved(app, new.text);
                 if then_quit {
                     app.wish = Wish::Quit;
@@ -165,16 +167,15 @@ impl Keeper {
 
     fn is_saved(&mut self, app: &mut App, text: String) {
         app.history.mark_saved();
-        self.saved = Arc::clone(app.taught());
         if let Some(Err(error)) = self.journal.as_mut().map(|journal| journal.saved(&text)) {
             app.message = Some(format!("saved; the notes against a crash can't be removed: {error}"));
         }
-        self.text = text;
+        self.texts.saved(text, Arc::clone(app.taught()));
     }
 
     /// What to do about a file that somebody else has written.
     fn changed(&self, app: &mut App, text: Option<&str>) -> Menu {
-        let told = changes_on_disk(text, &self.source, &self.saved, &app.arm);
+        let told = changes_on_disk(text, &self.source, self.texts.recipe(), &app.arm);
         app.changes = ("Changed on the disk meanwhile".to_owned(), told.clone());
         let first = told.first().map_or(String::new(), |first| format!(": {first}"));
         let more = if told.len() > 1 { format!(" and {} more", told.len() - 1) } else { String::new() };
@@ -201,7 +202,7 @@ impl Keeper {
             Some(path) => path.with_file_name(typed),
             None => typed.to_owned(),
         };
-        let new = text_of_edited(&self.text, &self.saved, app.taught(), &app.arm);
+        let new = self.texts.next(app.taught(), &app.arm);
         let with_arm = if self.path.is_none() { write_arm(&target, &app.taught().arm, &self.arm_text) } else { Ok(()) };
         match with_arm.and_then(|()| write(&target, &new.text, None)) {
             Ok(saved) => {
@@ -224,11 +225,10 @@ impl Keeper {
         let Some(path) = &self.path else { return };
         match open(path) {
             Ok(opened) => {
-                self.text = opened.recipe_source.text;
                 app.arm = Arc::new(opened.arm);
                 app.history = History::of(opened.recipe);
-                self.saved = Arc::clone(app.taught());
-                if let Some(Err(error)) = self.journal.as_mut().map(|journal| journal.saved(&self.text)) {
+                self.texts = Texts::of(opened.recipe_source.text, Arc::clone(app.taught()));
+                if let Some(Err(error)) = self.journal.as_mut().map(|journal| journal.saved(self.texts.text())) {
                     app.message = Some(error.to_string());
                 }
                 app.unchecked = true;
@@ -253,8 +253,7 @@ impl Keeper {
             }
         };
         app.history = History::of(base);
-        self.saved = Arc::clone(app.taught());
-        found.text.clone_into(&mut self.text);
+        self.texts = Texts::of(found.text.clone(), Arc::clone(app.taught()));
         let (count, lost) = (found.edits.len(), found.lost);
         for edit in &found.edits {
             if app.history.make(&app.arm, edit.clone()).is_err() {

@@ -75,7 +75,10 @@ impl Keeper {
                 return;
             }
         };
-        if opened.recipe != *judged.recipe || opened.recipe_source.text != self.text || opened.arm_source.text != self.arm_text {
+        if opened.recipe != *judged.recipe
+            || opened.recipe_source.text != self.texts.text()
+            || opened.arm_source.text != self.arm_text
+        {
             app.message = Some("the files are not what is shown here any more; quit and open the recipe again".to_owned());
             return;
         }

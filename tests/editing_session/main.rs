@@ -2,7 +2,10 @@
 #![cfg(unix)]
 
 #[expect(dead_code, reason = "other tests use other parts")]
+#[path = "../pty/mod.rs"]
 mod pty;
+mod refused;
+mod signed;
 
 use std::path::{Path, PathBuf};
 
@@ -198,149 +201,25 @@ fn a_hang_up_keeps_the_edits_for_the_next_start() {
 }
 
 #[test]
-fn a_second_person_is_told_who_has_it_open() {
-    let folder = cell();
-    let mut first = open(&folder, [80, 24]);
-    let mut second = open(&folder, [80, 24]);
-    second.until("has this recipe open");
-    second.press("\r");
-    second.press("e");
-    second.until("look only");
-    second.press("q");
-    assert!(second.end().success());
-    first.press("q");
-    assert!(first.end().success());
-    let mut third = open(&folder, [80, 24]);
-    assert!(!third.text().contains("has this recipe open"));
-    third.press("q");
-    assert!(third.end().success());
-}
-
-#[test]
-fn a_file_that_was_changed_meanwhile_is_not_overwritten_unasked() {
-    let folder = cell();
-    let mut running = open(&folder, [80, 24]);
-    slow_down(&mut running);
-    let theirs = text(&folder).replace("speed  = 100", "speed  = 90");
-    std::fs::write(recipe(&folder), &theirs).expect("written");
-    running.press("s");
-    running.until("Changed on the disk meanwhile");
-    running.press("\r");
-    assert_eq!(text(&folder), theirs);
-    running.press("s");
-    running.until("Changed on the disk meanwhile");
-    running.press("\x1b[B\r");
-    running.until("100 mm/s -> 90 mm/s");
-    running.press("\x7f");
-    running.until("At the cursor");
-    running.press("s");
-    running.until("save mine over it");
-    running.press("\x1b[B\x1b[B\x1b[B\r");
-    running.until("saved to");
-    assert!(text(&folder).contains("speed  = 210"));
-    assert_eq!(std::fs::read_to_string(folder.path().join("housing-transfer.toml~")).expect("a backup"), theirs);
-    running.press("q");
-    assert!(running.end().success());
-}
-
-/// Signs off on the screen, datum by datum; others can check the record on the command line.
-#[test]
-fn a_program_is_signed_off_on_the_screen() {
-    let folder = cell();
-    let from = Path::new(env!("CARGO_MANIFEST_DIR")).join("recipes");
-    for name in ["lid-placing.toml", "arms/four-axis-rrpr.toml"] {
-        std::fs::copy(from.join(name), folder.path().join(name)).expect("copied");
+fn comments_of_a_deleted_waypoint_are_told_and_come_back_by_undo_after_a_save() {
+    for size in [[80, 24], [120, 40]] {
+        let folder = cell();
+        let before = text(&folder)
+            .replace("[[waypoint]]\nname   = \"window out\"", "# Mind the frame.\n[[waypoint]]\nname   = \"window out\"");
+        std::fs::write(recipe(&folder), &before).expect("written");
+        let mut running = open(&folder, size);
+        // The last in the menu of stretches deletes.
+        running.press("x\x1b[A\r");
+        running.until("deleted");
+        running.press("s");
+        running.until("went with what");
+        assert!(!text(&folder).contains("Mind the frame"));
+        running.press("u");
+        running.until("undone");
+        running.press("s");
+        running.until("saved to");
+        assert_eq!(text(&folder), before);
+        running.press("q");
+        assert!(running.end().success());
     }
-    let mut command = CommandBuilder::new(env!("CARGO_BIN_EXE_elbowroom"));
-    command.arg(folder.path().join("lid-placing.toml"));
-    command.env("XDG_STATE_HOME", folder.path().join("state"));
-    command.env("XDG_CONFIG_HOME", folder.path().join("config"));
-    let mut running = Running::sized(command, [100, 40]);
-    running.until("READY TO SIGN");
-    running.press("d");
-    running.until("to answer");
-    // Nothing is signed while something is open.
-    running.press("\x1b[F\r");
-    running.until("not signed:");
-    running.press("\x1b[H");
-    let open = running.text().matches("[ ]").count();
-    assert!(open > 5, "{}", running.text());
-    for _ in 0..open {
-        running.press("\r\x1b[B");
-    }
-    // Behind the data stands the plan of the first run, then the name.
-    running.until("first run: clear up to 100 %");
-    running.press("\x1b[B\r");
-    running.until("Your name:");
-    running.press("Anna\r");
-    running.until("name: Anna");
-    running.until("nothing stands in the way");
-    running.press("\x1b[F\r");
-    running.until("write the record");
-    running.press("\x1b[B\r");
-    running.until("seal");
-    // What was changed since is told on the screen too.
-    running.press("e");
-    running.until("Edit waypoint");
-    running.press("\x1b[B\r\x7f\x7f\x7f");
-    running.until("take it");
-    running.press("33\r");
-    running.until("u undoes it");
-    running.press("\x7f");
-    running.until("At the cursor");
-    running.press("u");
-    running.until("undone");
-    running.press("\r");
-    running.until("changed since the record");
-    running.press("\x7f");
-    running.press("q");
-    assert!(running.end().success());
-    let verified = std::process::Command::new(env!("CARGO_BIN_EXE_elbowroom"))
-        .arg("verify")
-        .arg(folder.path().join("lid-placing.signoff.toml"))
-        .output()
-        .expect("runs");
-    assert_eq!(verified.status.code(), Some(0), "{verified:?}");
-    let record = std::fs::read_to_string(folder.path().join("lid-placing.signoff.toml")).expect("a record");
-    assert!(record.contains("Anna"));
-}
-
-/// A finding is accepted with a reason in words, and a doubt looked into, before the demonstration can be signed.
-#[test]
-fn findings_are_accepted_with_reasons_on_the_screen() {
-    let folder = cell();
-    let mut running = open(&folder, [100, 40]);
-    running.press("d");
-    running.until("doubt:");
-    running.press("\r");
-    running.until("Your name:");
-    running.press("Bert\r");
-    running.until("name: Bert");
-    running.press("\r");
-    running.until("What you found:");
-    running.press("noted with another tool\r");
-    running.until("[x] doubt");
-    running.press("\x1b[B\r");
-    running.until("accept it with a reason");
-    running.press("\r");
-    running.until("Accepted because:");
-    // Words that are none are not taken.
-    running.press("-\r");
-    running.until("a reason needs words");
-    running.press("\r");
-    running.until("accept it with a reason");
-    running.press("\r");
-    running.until("Accepted because:");
-    running.press("runs at 50 percent only\r");
-    running.until("Accepted by Bert");
-    // An edit gives the answers up: they belong to what was shown.
-    running.press("\x7f");
-    running.until("At the cursor");
-    slow_down(&mut running);
-    running.press("d");
-    running.until("save first");
-    running.press("q");
-    running.until("discard the edits and quit");
-    running.press("\x1b[B\x1b[B\r");
-    assert!(running.end().success());
 }
