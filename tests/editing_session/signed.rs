@@ -75,7 +75,7 @@ fn findings_are_accepted_with_reasons_on_the_screen() {
     let folder = cell();
     let mut running = open(&folder, [100, 40]);
     running.press("d");
-    running.until("doubt:");
+    running.until("to answer");
     running.press("\r");
     running.until("Your name:");
     running.press("Bert\r");

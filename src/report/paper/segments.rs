@@ -94,6 +94,6 @@ fn cycle(record: &Record) -> impl Iterator<Item = Block> {
         let room = if found.room.is_empty() { String::new() } else { format!(" with room {}", found.room) };
         let mut name = check_words(found.check).to_owned();
         name[..1].make_ascii_uppercase();
-        Block::Says(format!("{name}, the cycle as a whole: {}{joint}{room} ({}).", found.verdict.word(), found.proved))
+        Block::Says(format!("{name}: {}{joint}{room} ({}).", found.verdict.word(), found.proved))
     })
 }
