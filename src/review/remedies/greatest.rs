@@ -1,7 +1,7 @@
 /// In how many even steps a demand that need not fall with speed is looked for from above.
 const STEPS: u32 = 20;
 /// No step is longer than this share of the number it starts from, so that small numbers are looked at as closely.
-const SHORTER: f64 = 0.08;
+const SHORTER: f64 = 0.04;
 
 /// The greatest whole number below `above` that is found clear, where what is clear at one number is clear at every lower one.
 /// `guess` is where the search starts.

@@ -42,10 +42,9 @@ pub(super) fn shortest(directions: &[V3], reach: Reach, mut clear: impl FnMut(&V
     None
 }
 
-/// Directions all round that are tried once the best of those beside is found.
-const ROUND: usize = 72;
-/// A displacement shorter by this share is looked for in them.
-const ROUND_SHORTER: f64 = 0.97;
+/// Once the best of those beside is found, so many directions all round are tried with displacements of this share of its size: what
+/// is clear may be a narrow cone, or an island with nothing clear behind it.
+const ROUND: [(usize, f64); 3] = [(150, 0.965), (72, 0.7), (72, 0.42)];
 /// How often a shorter one may start the search beside it anew.
 const ROUNDS: usize = 4;
 
@@ -53,8 +52,8 @@ const ROUNDS: usize = 4;
 fn all_round(direction: V3, size: f64, clear: &mut impl FnMut(&V3) -> bool) -> (V3, f64) {
     let mut best = beside(direction, size, clear);
     for _ in 0..ROUNDS {
-        let most = ROUND_SHORTER * best.1;
-        let Some(other) = evenly(ROUND).find(|other| clear(&(other * most))) else { break };
+        let shorter = ROUND.iter().flat_map(|&(count, share)| evenly(count).map(move |other| (other, share * best.1)));
+        let Some((other, most)) = { shorter }.find(|(other, most)| clear(&(other * *most))) else { break };
         let size = along(&other, 0.5 * most, most, clear);
         best = beside(other, size, clear);
     }

@@ -6,8 +6,8 @@ use super::moved::{Displacement, displaced, free_ends};
 use super::trial::{Aim, Nearest, Trial};
 use super::{Change, Ends, Outcome, Short, size};
 
-/// Turns that are tried, rad: one degree to half a turn, none more than seven degrees from the next.
-const TURNS: Reach = Reach { first: 0.017_45, most: std::f64::consts::PI, widest: 0.122 };
+/// Turns that are tried, rad: one degree to half a turn, none more than three and a half degrees from the next.
+const TURNS: Reach = Reach { first: 0.017_45, most: std::f64::consts::PI, widest: 0.061 };
 /// Turns are offered in steps of a tenth of a degree, rounded away from 0.
 const STEP: f64 = 0.1;
 
