@@ -9,6 +9,8 @@ pub struct Session {
     judged: Judged,
     cursor: Cursor,
     finding: Option<usize>,
+    /// Whether the waypoint that the program starts from is meant, not the segment that leaves it.
+    on_start: bool,
 }
 
 /// Steps from one end of a segment to the other.
@@ -21,7 +23,7 @@ const SHORTEST_STEP: f64 = 0.002;
 impl Session {
     /// Opens a judged recipe on its worst finding; without findings on its first segment, where that is nearest to its reserve.
     pub fn open(judged: Judged) -> Self {
-        let mut session = Self { judged, cursor: Cursor { segment: 0, time: 0.0 }, finding: None };
+        let mut session = Self { judged, cursor: Cursor { segment: 0, time: 0.0 }, finding: None, on_start: false };
         if !session.go_to_worst() {
             session.go_to_segment(0);
         }
@@ -47,6 +49,9 @@ impl Session {
         let segment = segment.min(self.segments().saturating_sub(1));
         let time = if share.is_finite() { share * self.lasts(segment) } else { 0.0 };
         self.cursor = Cursor { segment, time };
+        if self.on_start {
+            self.go_to_start();
+        }
         self.finding = before
             .and_then(|old| {
                 let same = |new: &Finding| new.segment == segment && new.check == old.check && new.joint == old.joint;
@@ -134,6 +139,7 @@ impl Session {
         let Some(finding) = self.judged.survey.findings.get(index) else { return false };
         // A segment without motion has no times to speak of.
         let time = Some(self.judged.on_cycle(finding, finding.worst()).time).filter(|time| time.is_finite()).unwrap_or(0.0);
+        self.on_start = false;
         self.cursor = Cursor { segment: finding.segment, time };
         self.finding = Some(index);
         true
@@ -148,6 +154,7 @@ impl Session {
             return;
         }
         let nearest = self.judged.survey.segments.get(segment).and_then(|survey| survey.nearest());
+        self.on_start = false;
         self.cursor = Cursor { segment, time: nearest.map_or(0.0, |(_, peak)| peak.at.time) };
         self.finding = None;
     }
@@ -160,8 +167,22 @@ impl Session {
         }
     }
 
-    /// The waypoint that the cursor's segment arrives at or passes, counted from 0.
+    /// Goes to the waypoint that the program starts from, which no segment arrives at.
+    pub fn go_to_start(&mut self) {
+        self.go_to_time(0.0);
+        self.on_start = true;
+    }
+
+    /// Whether the waypoint that the program starts from is meant, not the segment that leaves it.
+    pub fn is_on_start(&self) -> bool {
+        self.on_start
+    }
+
+    /// The waypoint that the cursor's segment arrives at or passes, counted from 0; 0 itself after [`Session::go_to_start`].
     pub fn waypoint(&self) -> usize {
+        if self.on_start {
+            return 0;
+        }
         self.judged.plan.segments.get(self.cursor.segment).map_or(0, |segment| segment.to)
     }
 
@@ -201,6 +222,7 @@ impl Session {
             self.finding = self.worst_of(cursor.segment);
         }
         self.cursor = cursor;
+        self.on_start = false;
     }
 
     fn worst_of(&self, segment: usize) -> Option<usize> {

@@ -110,7 +110,7 @@ fn go_to(app: &mut App, typed: &str) -> Result<(), String> {
     }
     let count = session.judged().recipe.waypoints.len();
     match typed.parse::<usize>() {
-        Ok(1) => session.go_to_time(0.0),
+        Ok(1) => session.go_to_start(),
         Ok(number) if (2..=count).contains(&number) => {
             session.go_to_waypoint(number - 1);
             follow_finding(app);

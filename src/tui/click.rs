@@ -26,6 +26,11 @@ pub(super) fn click(app: &mut App, column: u16, row: u16) {
     match pane {
         Pane::List => {
             let (_, rows) = app.scene.listed().around(app.segment(), usize::from(area.height) - 1);
+            if let (Some(Row::Start), Some(session)) = (rows.get(line), &mut app.session) {
+                session.go_to_start();
+                follow_finding(app);
+                return;
+            }
             let segment = match rows.get(line) {
                 Some(Row::Segment(segment)) => Some(*segment),
                 Some(Row::Events(waypoint)) => app.judged().and_then(|judged| judged.plan.index_arriving(*waypoint)),

@@ -1,7 +1,7 @@
 use ratatui::style::Style;
 use unicode_width::UnicodeWidthStr;
 
-use crate::review::Judged;
+use crate::review::{Judged, Session};
 
 use super::app::{App, Pane};
 use super::phrases::{events, how, nearest};
@@ -93,11 +93,16 @@ pub fn draw(sheet: &mut Sheet, app: &App) {
         let y = y + 1;
         match row {
             Row::Start => {
-                sheet.put_before(columns.number, y, "1", Style::new());
+                let selected = app.session.as_ref().is_some_and(Session::is_on_start);
+                let plain = if selected { theme.strong() } else { Style::new() };
+                sheet.put_before(columns.number, y, "1", plain);
                 let name = fit(&app.recipe().waypoints[0].name, columns.how - columns.name - 1, theme);
-                sheet.put(columns.name, y, &name, Style::new());
+                sheet.put(columns.name, y, &name, plain);
                 if columns.how < columns.verdict {
-                    sheet.put(columns.how, y, "start", Style::new());
+                    sheet.put(columns.how, y, "start", plain);
+                }
+                if selected {
+                    mark(sheet, app, y, columns);
                 }
             }
             Row::Segment(segment) => draw_segment(sheet, app, *segment, y, columns),
@@ -135,7 +140,7 @@ fn draw_segment(sheet: &mut Sheet, app: &App, segment: usize, y: usize, columns:
     let theme = app.theme;
     let planned = app.judged().and_then(|judged| judged.plan.segments.get(segment));
     let (waypoint, blend) = planned.map_or((segment + 1, false), |planned| (planned.to, planned.blend));
-    let selected = app.session.is_some() && segment == app.segment();
+    let selected = app.session.as_ref().is_some_and(|session| !session.is_on_start()) && segment == app.segment();
     let plain = if selected { theme.strong() } else { Style::new() };
     sheet.put_before(columns.number, y, &(waypoint + 1).to_string(), plain);
     let name = if blend { "  past it" } else { app.recipe().waypoints[waypoint].name.as_str() };
@@ -147,13 +152,19 @@ fn draw_segment(sheet: &mut Sheet, app: &App, segment: usize, y: usize, columns:
         sheet.put(columns.how, y, &asked, plain);
     }
     if selected {
-        sheet.put(0, y, theme.here(), theme.strong());
-        let style = if app.pane == Pane::List { theme.selected() } else { theme.strong() };
-        sheet.tint(1, y, columns.verdict.saturating_sub(2), style);
+        mark(sheet, app, y, columns);
     }
     if let Some(judged) = app.judged() {
         draw_verdict(sheet, judged, segment, y, columns, plain);
     }
+}
+
+/// Marks the row that is meant.
+fn mark(sheet: &mut Sheet, app: &App, y: usize, columns: Columns) {
+    let theme = app.theme;
+    sheet.put(0, y, theme.here(), theme.strong());
+    let style = if app.pane == Pane::List { theme.selected() } else { theme.strong() };
+    sheet.tint(1, y, columns.verdict.saturating_sub(2), style);
 }
 
 fn draw_verdict(sheet: &mut Sheet, judged: &Judged, segment: usize, y: usize, columns: Columns, plain: Style) {

@@ -205,10 +205,17 @@ fn to_end(app: &mut App, last: bool) {
 fn by_rows(app: &mut App, rows: isize) {
     match app.pane {
         Pane::List => {
-            if let (Some(segment), Some(session)) = (filter::by_rows(app, rows), &mut app.session) {
-                session.go_to_segment(segment);
-                follow_finding(app);
+            let to = filter::by_rows(app, rows);
+            let Some(session) = &mut app.session else { return };
+            let first = session.cursor().segment;
+            match to {
+                // Above the first row that a segment has stands the waypoint that the program starts from.
+                _ if rows < 0 && app.scene.shown.is_none() && first == 0 => session.go_to_start(),
+                _ if rows > 0 && session.is_on_start() => session.go_to_segment(first.saturating_add_signed(rows - 1)),
+                Some(segment) => session.go_to_segment(segment),
+                None => return,
             }
+            follow_finding(app);
         }
         Pane::Why => app.why_scroll = app.why_scroll.saturating_add_signed(rows),
         Pane::Joints => app.joint = app.joint.saturating_add_signed(rows).min(app.arm.len() - 1),

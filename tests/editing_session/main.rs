@@ -223,3 +223,50 @@ fn comments_of_a_deleted_waypoint_are_told_and_come_back_by_undo_after_a_save() 
         assert!(running.end().success());
     }
 }
+
+/// The waypoint that the program starts from has no segment of its own, and is selected, edited and deleted like any other.
+#[test]
+fn the_first_waypoint_is_edited_and_deleted_too() {
+    let folder = cell();
+    let mut running = open(&folder, [100, 40]);
+    let names = |text: &str| text.lines().filter(|line| line.starts_with("name")).map(str::to_owned).collect::<Vec<_>>();
+    let before = text(&folder);
+    running.press("g");
+    running.until("Go to waypoint");
+    running.press("1\r");
+    running.press("e");
+    running.until("Edit waypoint 1");
+    running.press("\x7f");
+    running.until("At the cursor");
+    // From the second row up to the first, and down again.
+    running.press("g2\r\x1b[A");
+    running.press("x");
+    running.until("Waypoint 1");
+    running.press("\x7f");
+    running.until("At the cursor");
+    running.press("\x1b[B");
+    running.press("e");
+    running.until("Edit waypoint 2");
+    running.press("\x7f");
+    running.until("At the cursor");
+    running.press("g1\rx");
+    running.until("delete");
+    while !running.text().lines().any(|line| line.contains("▸ delete")) {
+        running.press("\x1b[B");
+        std::thread::sleep(std::time::Duration::from_millis(60));
+    }
+    running.press("\r");
+    running.until("u undoes it");
+    running.press("s");
+    running.until("saved to");
+    let after = text(&folder);
+    assert!(names(&before).len() > names(&after).len());
+    assert!(names(&after).iter().all(|name| names(&before).contains(name)));
+    running.press("u");
+    running.until("undone");
+    running.press("s");
+    running.until("saved to");
+    assert_eq!(text(&folder), before, "undone byte for byte");
+    running.press("q");
+    assert!(running.end().success());
+}
